@@ -1,0 +1,11 @@
+/**
+ * The pictures: what a picture is, the manifest that lists them, and reading them safely.
+ *
+ * <p>What must stay fixed: nothing is allocated for a picture that its manifest does not announce;
+ * every file is checked against its SHA-256 before it is used; samples are row-major, 0 to the peak
+ * of the bit depth.
+ */
+@NullMarked
+package linkworthy.corpus;
+
+import org.jspecify.annotations.NullMarked;

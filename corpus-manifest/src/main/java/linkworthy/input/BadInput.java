@@ -1,0 +1,17 @@
+package linkworthy.input;
+
+/**
+ * Something the user gave cannot be used. The message is one line: where, what was found, what is
+ * accepted. The command line ends with exit code 2.
+ */
+public final class BadInput extends RuntimeException {
+  private static final long serialVersionUID = 1L;
+
+  public BadInput(String message) {
+    super(message);
+  }
+
+  public BadInput(String message, Throwable cause) {
+    super(message, cause);
+  }
+}

@@ -1,0 +1,17 @@
+package linkworthy.input;
+
+/**
+ * The machine refused: a full disk, a folder that cannot be written, a picture that cannot be read.
+ * The message is one line. The command line ends with exit code 3.
+ */
+public final class Unavailable extends RuntimeException {
+  private static final long serialVersionUID = 1L;
+
+  public Unavailable(String message) {
+    super(message);
+  }
+
+  public Unavailable(String message, Throwable cause) {
+    super(message, cause);
+  }
+}

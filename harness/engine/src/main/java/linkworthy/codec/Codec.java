@@ -1,0 +1,51 @@
+package linkworthy.codec;
+
+import java.util.List;
+import java.util.Map;
+import linkworthy.corpus.Picture;
+import linkworthy.input.BadInput;
+
+/**
+ * One option compared: all its parameters are fixed. A codec has no state and may be used by
+ * several threads at once.
+ */
+public interface Codec {
+  /** How the codec is named in tables; derived from its parameters unless the study gives one. */
+  String label();
+
+  /** The descriptive columns of the results. */
+  Description description();
+
+  /** The parameters as a study file writes them, every default included, in a fixed order. */
+  Map<String, Object> settings();
+
+  /**
+   * Checks that pictures of this shape can be coded.
+   *
+   * @throws BadInput if not; one line that says why and what is accepted
+   */
+  void check(PictureShape shape);
+
+  /**
+   * Encodes a picture into packets.
+   *
+   * @param picture what the encoder sees, noise on the samples included
+   * @param memo work on this very picture that several codecs share
+   */
+  Encoding encode(Picture picture, Memo memo);
+
+  /**
+   * Decodes what arrived, in any order, damaged or not. Never throws, whatever the bytes are, and
+   * allocates nothing by a number read from them.
+   */
+  Decoding decode(PictureShape shape, List<byte[]> arrived);
+
+  /**
+   * The columns that describe a codec; empty text where a column does not apply.
+   *
+   * @param transform for the transform codec the basis: {@code mean}, {@code dct}, {@code pca}
+   * @param over {@code rows}, {@code blocks8}, ...
+   * @param step quantiser step in grey levels, or {@code none}
+   */
+  record Description(String transform, String over, String step) {}
+}

@@ -1,0 +1,34 @@
+package linkworthy.noise;
+
+import linkworthy.corpus.Picture;
+import org.apache.commons.rng.UniformRandomProvider;
+
+/** A model at one severity, resolved for one clean picture and ready to be drawn. */
+public sealed interface Impairment {
+  /**
+   * The mean squared error that the impairment alone is expected to cause to the raw, uncoded
+   * picture whose receiver shows the picture mean where samples are missing; grey levels squared.
+   */
+  double equivalentNoiseVariance();
+
+  /** An impairment of the samples, before the encoder. */
+  non-sealed interface OnSamples extends Impairment {
+    /** The picture as the encoder sees it: same size and depth. */
+    Picture apply(Picture clean, UniformRandomProvider random);
+  }
+
+  /** An impairment that erases packets. */
+  non-sealed interface OnPackets extends Impairment {
+    /** Opens one realisation; packet {@code i} of every codec meets the same fate. */
+    Losses losses(UniformRandomProvider random);
+  }
+
+  /**
+   * One realisation of packet losses. Reading is by index and in any order; the fate of packet i
+   * depends on the random stream alone, not on who asks. Not safe for use by several threads.
+   */
+  interface Losses {
+    /** Whether packet {@code index} (from 0) is lost. */
+    boolean lost(int index);
+  }
+}
