@@ -1,0 +1,55 @@
+package linkworthy.trial;
+
+/**
+ * One row of the record: a picture through one realisation of noise, one codec and back.
+ *
+ * @param trial stable id: a hash of the trial's full key
+ * @param picture id of the picture in its manifest
+ * @param impairment name of the noise model, {@code none} for clean
+ * @param actsOn {@code samples}, {@code packets}, {@code bits}, or empty for clean
+ * @param axis key the severity was given by, or empty for clean
+ * @param severity value on that axis; NaN for clean
+ * @param equivalentNoiseVariance grey levels squared; 0 for clean
+ * @param realisedNoiseVariance of this very realisation, grey levels squared; 0 for clean
+ * @param snrDb signal power over equivalent noise variance, in dB; NaN for clean
+ * @param codec label of the codec
+ * @param transform basis of the transform codec, or empty
+ * @param over arrangement, as in {@code blocks8}, or empty
+ * @param keep components in force, or -1
+ * @param step quantiser step in grey levels, {@code none}, or empty
+ * @param replicate from 0
+ * @param mse against the clean picture, grey levels squared
+ * @param psnrDb in dB; positive infinity for identical pictures
+ * @param ssim structural similarity, or NaN where the study does not ask for it
+ * @param payloadBits bits in all packet payloads
+ * @param sentBits payload bits and the link's overhead
+ * @param bitsPerPixel sent bits per sample of the picture
+ * @param packetsSent packets sent
+ * @param packetsLost packets that did not arrive
+ * @param outage whether nothing usable arrived
+ */
+public record Trial(
+    String trial,
+    String picture,
+    String impairment,
+    String actsOn,
+    String axis,
+    double severity,
+    double equivalentNoiseVariance,
+    double realisedNoiseVariance,
+    double snrDb,
+    String codec,
+    String transform,
+    String over,
+    int keep,
+    String step,
+    int replicate,
+    double mse,
+    double psnrDb,
+    double ssim,
+    long payloadBits,
+    long sentBits,
+    double bitsPerPixel,
+    int packetsSent,
+    int packetsLost,
+    boolean outage) {}
