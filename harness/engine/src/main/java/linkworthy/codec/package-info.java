@@ -1,6 +1,18 @@
 /**
- * The options compared: codecs turn a picture into packets and packets that arrive back into a
+ * The options compared: codecs turn a picture into packets, and packets that arrive back into a
  * picture.
+ *
+ * <p>The transform codec is an {@link linkworthy.codec.Arrangement} (rows or blocks) times a {@link
+ * linkworthy.codec.Basis} (mean, dct, pca) times a {@link linkworthy.codec.Keep} times a {@link
+ * linkworthy.codec.Quantizer}, coded by {@link linkworthy.codec.RiceCoder} into units that decode
+ * alone.
+ *
+ * <p>What must stay fixed: every bit is counted; a decoder returns a picture whatever it is fed;
+ * work that several codecs share goes through {@link linkworthy.codec.Memo}.
+ *
+ * <p>To add a codec: one {@link linkworthy.codec.CodecFamily}, one line in {@code
+ * META-INF/services}, one test that extends {@code CodecContractTest}, one line of docs. To add a
+ * basis: one {@link linkworthy.codec.Basis} named in {@link linkworthy.codec.Basis#all()}.
  */
 @NullMarked
 package linkworthy.codec;

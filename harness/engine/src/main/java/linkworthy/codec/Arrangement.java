@@ -1,0 +1,174 @@
+package linkworthy.codec;
+
+import linkworthy.corpus.Picture;
+import linkworthy.input.BadInput;
+import linkworthy.input.Require;
+
+/**
+ * How a picture becomes a matrix of d variables (rows) by n observations (columns).
+ *
+ * <p>Values of one variable stay together: {@code values[i][j]} is variable i in observation j.
+ */
+public sealed interface Arrangement {
+  /** As in the results' column {@code over}: {@code rows}, {@code blocks8}. */
+  String id();
+
+  /** Number of variables d. */
+  int variables(PictureShape shape);
+
+  /** Number of observations n. */
+  int observations(PictureShape shape);
+
+  /**
+   * Checks that pictures of this shape can be arranged.
+   *
+   * @throws BadInput if not
+   */
+  void check(PictureShape shape);
+
+  /** The matrix of a picture, d rows of n samples in grey levels. */
+  double[][] gather(Picture picture);
+
+  /**
+   * Puts variable i of all observations back into its place, rounded half up and clipped to 0..P.
+   * Values within 5e-10 below a half count as halves, so that the order of summation does not show.
+   */
+  void scatter(double[] values, int variable, PictureShape shape, int[] samples);
+
+  /** Rounds a reconstructed value half up and clips it to {@code 0..peak}. */
+  private static int toSample(double value, double peak) {
+    return (int) (Math.max(0, Math.min(peak, value)) + (0.5 + 5e-10));
+  }
+
+  /** Each picture row is a variable, each picture column an observation. */
+  record Rows() implements Arrangement {
+    @Override
+    public String id() {
+      return "rows";
+    }
+
+    @Override
+    public int variables(PictureShape shape) {
+      return shape.height();
+    }
+
+    @Override
+    public int observations(PictureShape shape) {
+      return shape.width();
+    }
+
+    @Override
+    public void check(PictureShape shape) {}
+
+    @Override
+    public double[][] gather(Picture picture) {
+      int width = picture.width();
+      int[] samples = picture.samples();
+      double[][] values = new double[picture.height()][width];
+      for (int y = 0; y < values.length; y++) {
+        double[] row = values[y];
+        for (int x = 0; x < width; x++) {
+          row[x] = samples[y * width + x];
+        }
+      }
+      return values;
+    }
+
+    @Override
+    public void scatter(double[] values, int variable, PictureShape shape, int[] samples) {
+      double peak = (1 << shape.bitDepth()) - 1;
+      int start = variable * shape.width();
+      for (int x = 0; x < shape.width(); x++) {
+        samples[start + x] = toSample(values[x], peak);
+      }
+    }
+  }
+
+  /**
+   * Each place within a square block is a variable, row by row; each block an observation, row by
+   * row. Pictures are padded to whole blocks by half-sample mirroring (the edge sample repeated).
+   *
+   * @param side samples along a block's side
+   */
+  record Blocks(int side) implements Arrangement {
+    public Blocks {
+      Require.inRange(side, 2, 64, "block side (samples)");
+    }
+
+    @Override
+    public String id() {
+      return "blocks" + side;
+    }
+
+    @Override
+    public int variables(PictureShape shape) {
+      return side * side;
+    }
+
+    @Override
+    public int observations(PictureShape shape) {
+      return across(shape) * down(shape);
+    }
+
+    private int across(PictureShape shape) {
+      return (shape.width() + side - 1) / side;
+    }
+
+    private int down(PictureShape shape) {
+      return (shape.height() + side - 1) / side;
+    }
+
+    @Override
+    public void check(PictureShape shape) {
+      if (shape.width() < side || shape.height() < side) {
+        throw new BadInput(
+            "a picture of "
+                + shape.width()
+                + " x "
+                + shape.height()
+                + " samples is smaller than a block of "
+                + side
+                + " x "
+                + side
+                + "; accepted: both sides at least "
+                + side);
+      }
+    }
+
+    @Override
+    public double[][] gather(Picture picture) {
+      PictureShape shape = PictureShape.of(picture);
+      int across = across(shape);
+      int width = picture.width();
+      int[] samples = picture.samples();
+      double[][] values = new double[side * side][observations(shape)];
+      for (int y = 0; y < down(shape) * side; y++) {
+        int row = mirrored(y, picture.height()) * width;
+        int firstVariable = y % side * side;
+        int firstBlock = y / side * across;
+        for (int x = 0; x < across * side; x++) {
+          values[firstVariable + x % side][firstBlock + x / side] =
+              samples[row + mirrored(x, width)];
+        }
+      }
+      return values;
+    }
+
+    private static int mirrored(int at, int length) {
+      return at < length ? at : 2 * length - 1 - at;
+    }
+
+    @Override
+    public void scatter(double[] values, int variable, PictureShape shape, int[] samples) {
+      double peak = (1 << shape.bitDepth()) - 1;
+      int across = across(shape);
+      int left = variable % side;
+      for (int y = variable / side, block = 0; y < shape.height(); y += side, block += across) {
+        int row = y * shape.width();
+        for (int x = left, b = block; x < shape.width(); x += side, b++) {
+          samples[row + x] = toSample(values[b], peak);
+        }
+      }
+    }
+  }
+}

@@ -1,0 +1,57 @@
+package linkworthy.codec;
+
+import java.util.List;
+
+/**
+ * A set of orthonormal directions; the first K of them carry the picture.
+ *
+ * <p>All arithmetic is strict, so the same picture has the same directions on every machine.
+ */
+public interface Basis {
+  /** Stable id, as in a study's key {@code transform}. */
+  String id();
+
+  /** Whether the directions depend on the picture and so travel with it. */
+  boolean isSent();
+
+  /** Whether direction k is the k-th unit vector, so that projecting is copying. */
+  default boolean isIdentity() {
+    return false;
+  }
+
+  /**
+   * The directions for pictures of this shape, or for this very picture if the basis is sent.
+   *
+   * @param centred d variables by n observations, each variable with mean 0
+   */
+  Directions directions(Arrangement arrangement, PictureShape shape, double[][] centred);
+
+  /** Every basis of the transform codec. */
+  static List<Basis> all() {
+    return List.of(new MeanBasis(), new DctBasis(), new PcaBasis());
+  }
+
+  /** Directions, most important first. */
+  final class Directions {
+    private final double[][] rows;
+    private final double[] variances;
+
+    /**
+     * @param rows up to d directions of d entries each, orthonormal
+     * @param variances variance along each direction in grey levels squared (1/n), or empty if it
+     *     is not known without projecting
+     */
+    Directions(double[][] rows, double[] variances) {
+      this.rows = rows;
+      this.variances = variances;
+    }
+
+    double[][] rows() {
+      return rows;
+    }
+
+    double[] variances() {
+      return variances;
+    }
+  }
+}

@@ -1,0 +1,54 @@
+package linkworthy.codec;
+
+import org.jspecify.annotations.Nullable;
+
+/**
+ * What an analysis becomes under a quantiser: the whole numbers that are coded. Computed when first
+ * asked for; shared by every codec that keeps a number of the same components. Safe for several
+ * threads.
+ */
+final class Symbols {
+  private final Analysis analysis;
+  private final Quantizer quantizer;
+  private final int[] @Nullable [] coefficients;
+  private final int[] @Nullable [] directions;
+
+  Symbols(Analysis analysis, Quantizer quantizer) {
+    this.analysis = analysis;
+    this.quantizer = quantizer;
+    this.coefficients = new int[analysis.components()][];
+    this.directions = new int[analysis.components()][];
+  }
+
+  /** Symbols of component k, one for each observation. */
+  synchronized int[] component(int k) {
+    int[] known = coefficients[k];
+    if (known == null) {
+      known = quantizer.symbols(analysis.component(k));
+      coefficients[k] = known;
+    }
+    return known;
+  }
+
+  /** Symbols of the entries of direction k. */
+  synchronized int[] direction(int k) {
+    int[] known = directions[k];
+    if (known == null) {
+      known = directionQuantizer(k).symbols(analysis.direction(k));
+      directions[k] = known;
+    }
+    return known;
+  }
+
+  /**
+   * The quantiser of direction k: step / sqrt(d lambda_k), which makes the error through the
+   * direction equal to the error through its coefficients. Rounded to a 32-bit float, as it is
+   * sent.
+   */
+  Quantizer directionQuantizer(int k) {
+    return quantizer.isNone()
+        ? quantizer
+        : new Quantizer(
+            (float) (quantizer.step() / Math.sqrt(analysis.variables() * analysis.variance(k))));
+  }
+}

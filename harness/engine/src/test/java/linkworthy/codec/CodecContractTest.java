@@ -1,0 +1,207 @@
+package linkworthy.codec;
+
+import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.assertThatThrownBy;
+
+import java.util.ArrayList;
+import java.util.Arrays;
+import java.util.Collections;
+import java.util.List;
+import linkworthy.corpus.Picture;
+import linkworthy.corpus.TestPattern;
+import linkworthy.input.BadInput;
+import linkworthy.input.YamlNode;
+import linkworthy.link.Link;
+import org.apache.commons.rng.UniformRandomProvider;
+import org.apache.commons.rng.core.source32.Philox4x32;
+import org.junit.jupiter.api.Test;
+
+/**
+ * What every codec promises. Extend it, give the study entries to be tested, and the registry is
+ * asked for the codec like a study would.
+ */
+public abstract class CodecContractTest {
+  /** Random damages tried on each codec; {@code -Dlinkworthy.fuzz=N} sets another number. */
+  private static final int DAMAGES = Integer.getInteger("linkworthy.fuzz", 400);
+
+  private static final Link LINK = new Link(96, 23, Link.Order.BY_COMPONENT);
+
+  /** Id of the family, as its service line and the study key have it. */
+  protected abstract String family();
+
+  /** Entries of a study's codec list, as YAML, that work on pictures of 40 x 24 and more. */
+  protected abstract List<String> entries();
+
+  /** Codecs of every entry in both packet orders. */
+  protected final List<Codec> codecs() {
+    List<Codec> codecs = new ArrayList<>();
+    for (Link.Order order : Link.Order.values()) {
+      for (String entry : entries()) {
+        codecs.addAll(CodecFamilies.read(YamlNode.parse("test", entry), new Link(96, 23, order)));
+      }
+    }
+    return codecs;
+  }
+
+  private static List<Picture> pictures() {
+    Picture pattern = TestPattern.cvp(61, 45);
+    int[] deep = Arrays.stream(pattern.samples()).map(s -> s * 257).toArray();
+    return List.of(
+        pattern,
+        TestPattern.cvp(40, 24),
+        new Picture(40, 24, 8, new int[40 * 24]),
+        new Picture(61, 45, 16, deep));
+  }
+
+  @Test
+  void theRegistryKnowsTheFamily() {
+    assertThat(CodecFamilies.all()).extracting(CodecFamily::id).contains(family());
+    assertThat(
+            CodecFamilies.all().stream()
+                .filter(f -> f.id().equals(family()))
+                .findAny()
+                .orElseThrow()
+                .help())
+        .isNotBlank();
+  }
+
+  @Test
+  void unknownKeysAreRefusedWithTheNearestOne() {
+    for (String entry : entries()) {
+      assertThatThrownBy(
+              () -> CodecFamilies.read(YamlNode.parse("test", entry + "\nlabbel: x"), LINK))
+          .isInstanceOf(BadInput.class)
+          .hasMessageContaining("labbel")
+          .hasMessageContaining("label");
+    }
+  }
+
+  @Test
+  void settingsReadBackGiveTheSameCodec() {
+    for (Codec codec : codecs()) {
+      StringBuilder entry = new StringBuilder();
+      codec
+          .settings()
+          .forEach((key, value) -> entry.append(key).append(": ").append(value).append('\n'));
+      List<Codec> again = CodecFamilies.read(YamlNode.parse("test", entry.toString()), LINK);
+      assertThat(again).hasSize(1);
+      assertThat(again.get(0).settings()).isEqualTo(codec.settings());
+    }
+  }
+
+  @Test
+  void packetsKeepToTheLinkAndTheSameEncodingComesTwice() {
+    for (Codec codec : codecs()) {
+      for (Picture picture : pictures()) {
+        Encoding encoding = codec.encode(picture, new Memo());
+        assertThat(encoding.packets()).isNotEmpty().allMatch(p -> p.length > 0 && p.length <= 96);
+        assertThat(encoding.payloadBits())
+            .isEqualTo(8L * encoding.packets().stream().mapToInt(p -> p.length).sum());
+        assertThat(codec.encode(picture, new Memo()).packets())
+            .usingElementComparator(Arrays::compare)
+            .containsExactlyElementsOf(encoding.packets());
+      }
+    }
+  }
+
+  @Test
+  void aSharedMemoChangesNoByte() {
+    for (Picture picture : pictures()) {
+      Memo shared = new Memo();
+      for (Codec codec : codecs()) {
+        assertThat(codec.encode(picture, shared).packets())
+            .usingElementComparator(Arrays::compare)
+            .containsExactlyElementsOf(codec.encode(picture, new Memo()).packets());
+      }
+    }
+  }
+
+  @Test
+  void allPacketsInAnyOrderAndTwiceDecodeAlike() {
+    for (Codec codec : codecs()) {
+      for (Picture picture : pictures()) {
+        PictureShape shape = PictureShape.of(picture);
+        List<byte[]> packets = codec.encode(picture, new Memo()).packets();
+        Decoding plain = codec.decode(shape, packets);
+        List<byte[]> twice = new ArrayList<>(packets);
+        twice.addAll(packets);
+        Collections.reverse(twice);
+        Decoding mixed = codec.decode(shape, twice);
+        assertThat(plain.completeness()).isEqualTo(Decoding.Completeness.COMPLETE);
+        assertThat(mixed.completeness()).isEqualTo(Decoding.Completeness.COMPLETE);
+        assertThat(mixed.picture().samples()).isEqualTo(plain.picture().samples());
+        assertThat(PictureShape.of(plain.picture())).isEqualTo(shape);
+      }
+    }
+  }
+
+  @Test
+  void nothingReceivedIsAnOutageAndShowsMidGrey() {
+    for (Codec codec : codecs()) {
+      Decoding nothing = codec.decode(new PictureShape(61, 45, 8), List.of());
+      assertThat(nothing.completeness()).isEqualTo(Decoding.Completeness.NOTHING);
+      assertThat(nothing.picture().samples()).containsOnly(128);
+    }
+  }
+
+  @Test
+  void everySinglePacketDecodesAlone() {
+    for (Codec codec : codecs()) {
+      Picture picture = TestPattern.cvp(61, 45);
+      List<byte[]> packets = codec.encode(picture, new Memo()).packets();
+      for (byte[] packet : packets) {
+        Decoding alone = codec.decode(PictureShape.of(picture), List.of(packet));
+        assertThat(alone.completeness())
+            .isEqualTo(
+                packets.size() == 1
+                    ? Decoding.Completeness.COMPLETE
+                    : Decoding.Completeness.PARTIAL);
+      }
+    }
+  }
+
+  @Test
+  void damagedStreamsGiveAPictureOfTheRightSize() {
+    UniformRandomProvider random = new Philox4x32(new int[] {20_261_201, 7, 0, 0, 0, 0});
+    List<Codec> codecs = codecs();
+    Picture picture = TestPattern.cvp(61, 45);
+    PictureShape shape = PictureShape.of(picture);
+    List<List<byte[]>> streams =
+        codecs.stream().map(c -> c.encode(picture, new Memo()).packets()).toList();
+    for (int trial = 0; trial < DAMAGES; trial++) {
+      int which = random.nextInt(codecs.size());
+      List<byte[]> other = streams.get(random.nextInt(streams.size()));
+      Decoding decoding =
+          codecs.get(which).decode(shape, damaged(streams.get(which), other, random));
+      assertThat(PictureShape.of(decoding.picture())).isEqualTo(shape);
+    }
+  }
+
+  private static List<byte[]> damaged(
+      List<byte[]> packets, List<byte[]> other, UniformRandomProvider random) {
+    List<byte[]> result = new ArrayList<>();
+    for (byte[] packet : packets) {
+      byte[] copy = packet.clone();
+      switch (random.nextInt(6)) {
+        case 0 -> copy[random.nextInt(copy.length)] ^= (byte) (1 << random.nextInt(8));
+        case 1 -> copy = Arrays.copyOf(copy, random.nextInt(copy.length + 1));
+        case 2 -> copy = other.get(random.nextInt(other.size()));
+        case 3 -> {
+          byte[] noise = new byte[random.nextInt(200)];
+          random.nextBytes(noise);
+          copy = noise;
+        }
+        case 4 -> {
+          for (int i = 7; i < copy.length; i++) {
+            copy[i] = (byte) random.nextInt();
+          }
+        }
+        default -> {}
+      }
+      if (random.nextInt(5) > 0) {
+        result.add(random.nextInt(result.size() + 1), copy);
+      }
+    }
+    return result;
+  }
+}
