@@ -8,10 +8,15 @@ public final class BadInput extends RuntimeException {
   private static final long serialVersionUID = 1L;
 
   public BadInput(String message) {
-    super(message);
+    super(OneLine.of(message));
   }
 
   public BadInput(String message, Throwable cause) {
-    super(message, cause);
+    super(OneLine.of(message), cause);
+  }
+
+  @Override
+  public String getMessage() {
+    return String.valueOf(super.getMessage());
   }
 }

@@ -8,10 +8,15 @@ public final class Unavailable extends RuntimeException {
   private static final long serialVersionUID = 1L;
 
   public Unavailable(String message) {
-    super(message);
+    super(OneLine.of(message));
   }
 
   public Unavailable(String message, Throwable cause) {
-    super(message, cause);
+    super(OneLine.of(message), cause);
+  }
+
+  @Override
+  public String getMessage() {
+    return String.valueOf(super.getMessage());
   }
 }

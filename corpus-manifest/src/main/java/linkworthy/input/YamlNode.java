@@ -1,6 +1,7 @@
 package linkworthy.input;
 
 import java.io.IOException;
+import java.io.InputStream;
 import java.nio.ByteBuffer;
 import java.nio.charset.CharacterCodingException;
 import java.nio.charset.StandardCharsets;
@@ -8,26 +9,35 @@ import java.nio.file.Files;
 import java.nio.file.NoSuchFileException;
 import java.nio.file.Path;
 import java.util.ArrayList;
+import java.util.Iterator;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
 import java.util.Optional;
 import java.util.Set;
-import org.jspecify.annotations.Nullable;
-import tools.jackson.core.JacksonException;
-import tools.jackson.core.JsonParser;
-import tools.jackson.core.JsonToken;
-import tools.jackson.dataformat.yaml.YAMLMapper;
+import org.snakeyaml.engine.v2.api.LoadSettings;
+import org.snakeyaml.engine.v2.api.lowlevel.Parse;
+import org.snakeyaml.engine.v2.events.CollectionStartEvent;
+import org.snakeyaml.engine.v2.events.Event;
+import org.snakeyaml.engine.v2.events.MappingStartEvent;
+import org.snakeyaml.engine.v2.events.NodeEvent;
+import org.snakeyaml.engine.v2.events.ScalarEvent;
+import org.snakeyaml.engine.v2.events.SequenceStartEvent;
+import org.snakeyaml.engine.v2.exceptions.MarkedYamlEngineException;
+import org.snakeyaml.engine.v2.exceptions.YamlEngineException;
 
 /**
  * A value in a YAML file that knows where it stands, so that every error can say file, line and
- * key. Anchors, aliases, tags, repeated keys, files above 1 MiB and nesting deeper than 32 are
- * refused.
+ * key. Anchors, aliases, tags, repeated keys, files above 1 MiB, more than 100 000 values and
+ * nesting deeper than 32 are refused. Numbers are plain decimals as {@code 8}, {@code .5} or {@code
+ * 1e-3}; quoted ones are text.
  */
 public final class YamlNode {
   private static final int MAX_BYTES = 1 << 20;
   private static final int MAX_DEPTH = 32;
   private static final int MAX_NODES = 100_000;
+  private static final String OPTION = "--set ";
+  private static final Set<String> NULLS = Set.of("", "~", "null", "Null", "NULL");
 
   private final String source;
   private final int line;
@@ -52,10 +62,13 @@ public final class YamlNode {
       if (Files.isDirectory(file)) {
         throw new BadInput(file + " is a folder; accepted: a YAML file");
       }
-      if (Files.size(file) > MAX_BYTES) {
+      byte[] bytes;
+      try (InputStream in = Files.newInputStream(file)) {
+        bytes = in.readNBytes(MAX_BYTES + 1);
+      }
+      if (bytes.length > MAX_BYTES) {
         throw new BadInput(file + " is larger than 1 MiB; accepted: a YAML file up to 1 MiB");
       }
-      byte[] bytes = Files.readAllBytes(file);
       return parse(
           file.toString(),
           StandardCharsets.UTF_8.newDecoder().decode(ByteBuffer.wrap(bytes)).toString());
@@ -74,25 +87,29 @@ public final class YamlNode {
    * @throws BadInput if the text is not the YAML accepted here
    */
   public static YamlNode parse(String source, String text) {
-    return new Parser(source, text).document();
+    return new Parser(source, text).document("");
   }
 
-  /** The same document with the value at a dotted path replaced or added, as {@code --set} does. */
+  /**
+   * The same document with the value at a dotted path replaced or added, as {@code --set} does. A
+   * step is a key, or an item's number from 0 where the document has a list.
+   *
+   * @throws BadInput if the path leads nowhere or the value is not the YAML accepted here
+   */
   public YamlNode with(String dottedPath, String yamlValue) {
-    String label = "--set " + dottedPath;
-    YamlNode replacement = parse(label, yamlValue);
-    return replace(List.of(dottedPath.split("\\.", -1)), replacement, label);
+    String label = OPTION + dottedPath;
+    return replace(List.of(dottedPath.split("\\.", -1)), yamlValue, label);
   }
 
-  private YamlNode replace(List<String> steps, YamlNode replacement, String label) {
+  private YamlNode replace(List<String> steps, String yamlValue, String label) {
     if (steps.isEmpty()) {
-      return replacement.at(path);
+      return new Parser(label, yamlValue).document(path);
     }
     String step = steps.get(0);
     List<String> rest = steps.subList(1, steps.size());
     if (value instanceof Sequence sequence) {
       List<YamlNode> items = new ArrayList<>(sequence.items);
-      int index = step.matches("\\d{1,6}") ? Integer.parseInt(step) : -1;
+      int index = step.matches("[0-9]{1,6}") ? Integer.parseInt(step) : -1;
       if (index < 0 || index >= items.size()) {
         throw new BadInput(
             label
@@ -100,32 +117,32 @@ public final class YamlNode {
                 + step
                 + "' is no item of "
                 + describePath()
-                + "; accepted: 0 to "
-                + (items.size() - 1));
+                + "; accepted: "
+                + indices(items));
       }
-      items.set(index, items.get(index).replace(rest, replacement, label));
+      items.set(index, items.get(index).replace(rest, yamlValue, label));
       return new YamlNode(source, line, path, new Sequence(items));
     }
-    if (value instanceof Mapping mapping && !step.isEmpty()) {
+    if (value instanceof Mapping mapping && !step.isBlank()) {
       Map<String, YamlNode> entries = new LinkedHashMap<>(mapping.entries);
-      YamlNode child = entries.get(step);
-      if (child == null) {
-        child =
-            new YamlNode(
-                label, 1, path.isEmpty() ? step : path + "." + step, new Mapping(Map.of()));
-      }
-      entries.put(step, child.replace(rest, replacement, label));
+      String childPath = path.isEmpty() ? step : path + "." + step;
+      YamlNode missing = new YamlNode(label, 1, childPath, new Mapping(Map.of()));
+      YamlNode child = entries.getOrDefault(step, missing);
+      entries.put(step, child.replace(rest, yamlValue, label));
       return new YamlNode(source, line, path, new Mapping(entries));
     }
-    throw new BadInput(label + ": " + describePath() + " has no keys; accepted: a path to a value");
+    throw new BadInput(
+        label
+            + (step.isBlank() ? ": an empty key" : ": " + describePath() + " has no keys")
+            + "; accepted: a path to a value");
   }
 
-  private YamlNode at(String newPath) {
-    return new YamlNode(source, line, newPath, value);
+  private static String indices(List<YamlNode> items) {
+    return items.isEmpty() ? "nothing, the list is empty" : "0 to " + (items.size() - 1);
   }
 
   private String describePath() {
-    return path.isEmpty() ? "the document" : "'" + path + "'";
+    return path.isEmpty() ? "the document" : "'" + shortened(path) + "'";
   }
 
   /** Keys of a mapping, in file order. */
@@ -162,9 +179,9 @@ public final class YamlNode {
         throw new BadInput(
             entry.getValue().where()
                 + "unknown key '"
-                + entry.getKey()
+                + shortened(entry.getKey())
                 + "'"
-                + (path.isEmpty() ? "" : " in " + path)
+                + (path.isEmpty() ? "" : " in " + shortened(path))
                 + "; "
                 + Spelling.hint(entry.getKey(), accepted));
       }
@@ -186,7 +203,7 @@ public final class YamlNode {
     YamlNode child = mapping().entries.get(key);
     if (child == null) {
       throw new BadInput(
-          where() + "missing key '" + key + "'" + (path.isEmpty() ? "" : " in " + path));
+          where() + "missing key '" + key + "'" + (path.isEmpty() ? "" : " in " + shortened(path)));
     }
     return child;
   }
@@ -227,7 +244,7 @@ public final class YamlNode {
   public double number(String accepted) {
     if (value instanceof Scalar scalar
         && scalar.plain
-        && scalar.text.matches("[-+]?(\\d+\\.?\\d*|\\.\\d+)([eE][-+]?\\d+)?")) {
+        && scalar.text.matches("[-+]?([0-9]+\\.?[0-9]*|\\.[0-9]+)([eE][-+]?[0-9]+)?")) {
       double number = Double.parseDouble(scalar.text);
       if (Double.isFinite(number)) {
         return number;
@@ -241,7 +258,7 @@ public final class YamlNode {
    */
   public long integer(long min, long max) {
     String accepted = "a whole number from " + min + " to " + max;
-    if (value instanceof Scalar scalar && scalar.plain && scalar.text.matches("[-+]?\\d{1,18}")) {
+    if (value instanceof Scalar scalar && scalar.plain && scalar.text.matches("[-+]?[0-9]{1,18}")) {
       long number = Long.parseLong(scalar.text);
       if (number >= min && number <= max) {
         return number;
@@ -271,7 +288,7 @@ public final class YamlNode {
   public String oneOf(List<String> accepted) {
     String text = text();
     if (!accepted.contains(text)) {
-      throw refuse("is '" + text + "'; " + Spelling.hint(text, accepted));
+      throw refuse("is '" + shortened(text) + "'; " + Spelling.hint(text, accepted));
     }
     return text;
   }
@@ -303,7 +320,15 @@ public final class YamlNode {
   }
 
   private String where() {
-    return source.startsWith("--set ") ? source + ": " : source + ", line " + line + ": ";
+    return place(source, line);
+  }
+
+  private static String place(String source, int line) {
+    return isOption(source) ? source + ": " : source + ", line " + line + ": ";
+  }
+
+  private static boolean isOption(String source) {
+    return source.startsWith(OPTION);
   }
 
   private Mapping mapping() {
@@ -319,98 +344,121 @@ public final class YamlNode {
 
   private record Scalar(String text, boolean plain, boolean isNull) {}
 
-  /** Walks the token stream; nothing is expanded. */
+  /** Walks the event stream; nothing is expanded. */
   private static final class Parser {
-    private static final YAMLMapper MAPPER = new YAMLMapper();
+    private static final LoadSettings SETTINGS =
+        LoadSettings.builder().setCodePointLimit(MAX_BYTES).build();
 
     private final String source;
-    private final String text;
+    private final Iterator<Event> events;
     private int nodes;
 
     Parser(String source, String text) {
       this.source = source;
-      this.text = text;
+      this.events = new Parse(SETTINGS).parseString(text).iterator();
     }
 
-    YamlNode document() {
-      try (JsonParser parser = MAPPER.createParser(text)) {
-        JsonToken first = parser.nextToken();
-        if (first == null) {
-          throw new BadInput(source + " is empty; accepted: keys with values");
+    YamlNode document(String path) {
+      try {
+        events.next();
+        if (events.next().getEventId() == Event.ID.StreamEnd) {
+          throw empty();
         }
-        YamlNode root = node(parser, first, "", 0);
-        if (parser.nextToken() != null) {
+        Event first = events.next();
+        if (first instanceof ScalarEvent scalar
+            && scalar.isPlain()
+            && scalar.getValue().isEmpty()) {
+          throw empty();
+        }
+        YamlNode root = node(first, path, 0);
+        events.next();
+        if (events.next().getEventId() != Event.ID.StreamEnd) {
           throw new BadInput(source + " holds several documents; accepted: one");
         }
         return root;
-      } catch (JacksonException e) {
-        int line = e.getLocation() == null ? 1 : Math.max(1, e.getLocation().getLineNr());
-        String problem = e.getOriginalMessage().lines().findFirst().orElse("not YAML");
-        throw new BadInput(source + ", line " + line + ": not valid YAML: " + problem, e);
+      } catch (MarkedYamlEngineException e) {
+        int line = e.getProblemMark().map(mark -> mark.getLine() + 1).orElse(1);
+        throw new BadInput(place(source, line) + "not valid YAML: " + e.getProblem(), e);
+      } catch (YamlEngineException e) {
+        String problem = String.valueOf(e.getMessage()).lines().findFirst().orElse("");
+        throw new BadInput(source + ": not valid YAML: " + problem, e);
       }
     }
 
-    private YamlNode node(JsonParser parser, JsonToken token, String path, int depth) {
-      int line = parser.currentTokenLocation().getLineNr();
+    private BadInput empty() {
+      return new BadInput(
+          source + " is empty; accepted: " + (isOption(source) ? "a value" : "keys with values"));
+    }
+
+    private YamlNode node(Event event, String path, int depth) {
+      int line = line(event);
       if (depth > MAX_DEPTH || ++nodes > MAX_NODES) {
         throw new BadInput(
-            source
-                + ", line "
-                + line
-                + ": nested too deep or too long; accepted: depth up to "
+            place(source, line)
+                + "nested too deep or too long; accepted: depth up to "
                 + MAX_DEPTH
                 + ", up to "
                 + MAX_NODES
                 + " values");
       }
-      refuseAnchors(parser, line);
-      return switch (token) {
-        case START_OBJECT -> new YamlNode(source, line, path, mapping(parser, path, depth));
-        case START_ARRAY -> new YamlNode(source, line, path, sequence(parser, path, depth));
-        default -> new YamlNode(source, line, path, scalar(parser, token));
-      };
+      refuseAnchorsAndTags(event, line);
+      if (event instanceof MappingStartEvent) {
+        return new YamlNode(source, line, path, mapping(path, depth));
+      }
+      if (event instanceof SequenceStartEvent) {
+        return new YamlNode(source, line, path, sequence(path, depth));
+      }
+      return new YamlNode(source, line, path, scalar((ScalarEvent) event));
     }
 
-    private void refuseAnchors(JsonParser parser, int line) {
-      Object anchor = parser.getObjectId();
-      if (anchor != null || parser.getTypeId() != null || isAlias(parser)) {
+    private static int line(Event event) {
+      return event.getStartMark().map(mark -> mark.getLine() + 1).orElse(1);
+    }
+
+    private void refuseAnchorsAndTags(Event event, int line) {
+      boolean tagged =
+          (event instanceof ScalarEvent scalar && scalar.getTag().isPresent())
+              || (event instanceof CollectionStartEvent start && start.getTag().isPresent());
+      boolean anchored = event instanceof NodeEvent node && node.getAnchor().isPresent();
+      if (tagged || anchored) {
         throw new BadInput(
-            source + ", line " + line + ": anchors, aliases and tags are not accepted");
+            place(source, line)
+                + "anchors, aliases and tags are not accepted; write the value out");
       }
     }
 
-    private static boolean isAlias(JsonParser parser) {
-      return parser instanceof tools.jackson.dataformat.yaml.YAMLParser yaml
-          && yaml.isCurrentAlias();
-    }
-
-    private Mapping mapping(JsonParser parser, String path, int depth) {
+    private Mapping mapping(String path, int depth) {
       Map<String, YamlNode> entries = new LinkedHashMap<>();
-      while (parser.nextToken() != JsonToken.END_OBJECT) {
-        String key = parser.currentName();
-        int line = parser.currentTokenLocation().getLineNr();
-        refuseAnchors(parser, line);
+      for (Event e = events.next(); e.getEventId() != Event.ID.MappingEnd; e = events.next()) {
+        int line = line(e);
+        refuseAnchorsAndTags(e, line);
+        if (!(e instanceof ScalarEvent scalar) || scalar.getValue().isBlank()) {
+          throw new BadInput(
+              place(source, line) + "a key is a list, a group or empty; accepted: a word");
+        }
+        String key = scalar.getValue();
         String childPath = path.isEmpty() ? key : path + "." + key;
-        YamlNode child = node(parser, parser.nextToken(), childPath, depth + 1);
+        YamlNode child = node(events.next(), childPath, depth + 1);
         if (entries.put(key, new YamlNode(source, line, childPath, child.value)) != null) {
-          throw new BadInput(source + ", line " + line + ": key '" + childPath + "' stands twice");
+          throw new BadInput(
+              place(source, line) + "key '" + shortened(childPath) + "' stands twice");
         }
       }
       return new Mapping(entries);
     }
 
-    private Sequence sequence(JsonParser parser, String path, int depth) {
+    private Sequence sequence(String path, int depth) {
       List<YamlNode> items = new ArrayList<>();
-      for (JsonToken t = parser.nextToken(); t != JsonToken.END_ARRAY; t = parser.nextToken()) {
-        items.add(node(parser, t, path + "[" + items.size() + "]", depth + 1));
+      for (Event e = events.next(); e.getEventId() != Event.ID.SequenceEnd; e = events.next()) {
+        items.add(node(e, path + "[" + items.size() + "]", depth + 1));
       }
       return new Sequence(items);
     }
 
-    private static Scalar scalar(JsonParser parser, JsonToken token) {
-      @Nullable String text = parser.getString();
-      boolean plain = token != JsonToken.VALUE_STRING;
-      return new Scalar(text == null ? "" : text, plain, token == JsonToken.VALUE_NULL);
+    private static Scalar scalar(ScalarEvent event) {
+      String text = event.getValue();
+      boolean plain = event.isPlain();
+      return new Scalar(text, plain, plain && NULLS.contains(text));
     }
   }
 }
