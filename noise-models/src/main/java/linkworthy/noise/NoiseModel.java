@@ -195,8 +195,8 @@ public record NoiseModel(
 
   /**
    * All that decides the numbers and the model's identity, one {@code key: value} a line: not the
-   * source and the notes, but the process's revision. Numbers are in Java's shortest round-trip
-   * form.
+   * source and the notes, but the process's revision. Numbers are in hexadecimal, which no Java
+   * version writes differently.
    */
   public String canonical() {
     StringBuilder text = new StringBuilder();
@@ -205,7 +205,8 @@ public record NoiseModel(
     line(text, "process", process);
     line(text, "revision", Integer.toString(implementation().revision()));
     line(text, "acts-on", actsOn.stream().map(Site::id).collect(Collectors.joining(", ")));
-    parameters.forEach((name, value) -> line(text, "parameters." + name, value.toString()));
+    parameters.forEach(
+        (name, value) -> line(text, "parameters." + name, Double.toHexString(value)));
     line(text, "severity", String.join(", ", axes));
     return text.toString();
   }

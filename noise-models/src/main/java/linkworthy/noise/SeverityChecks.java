@@ -107,8 +107,7 @@ final class SeverityChecks {
   private static void known(
       NoiseProcess process, String what, String found, Collection<String> accepted) {
     if (!accepted.contains(found)) {
-      String hint =
-          accepted.isEmpty() ? "it has none" : Spelling.hint(found, List.copyOf(accepted));
+      String hint = accepted.isEmpty() ? "it has none" : Spelling.hint(found, accepted);
       throw new BadInput("%s has no %s '%s'; %s".formatted(process.id(), what, found, hint));
     }
   }

@@ -71,13 +71,13 @@ class NoiseModelTest {
             process: burst-loss
             revision: 1
             acts-on: packets
-            parameters.delivery-bad: 0.0
-            parameters.delivery-good: 1.0
-            parameters.mean-burst: 6.0
+            parameters.delivery-bad: 0x0.0p0
+            parameters.delivery-good: 0x1.0p0
+            parameters.mean-burst: 0x1.8p2
             severity: loss-rate, snr-db
             """);
     assertThat(parse(YARD).fingerprint())
-        .isEqualTo("2cd2fdc71c6101602d9833fc0735d856b8937feace79dfb563a69af250512891");
+        .isEqualTo("8dd709cd230875a3a93dad1c435da3772d7f55d2d88096774a0e1c82586759a8");
   }
 
   @Test

@@ -163,8 +163,8 @@ public abstract class NoiseProcessContractTest {
 
   /**
    * The mean over 200 independent realisations lies within 6 standard errors of what is expected:
-   * Student's t with 199 degrees of freedom, false-alarm rate 9.2e-9 each. Packets carry 16
-   * samples.
+   * Student's t with 199 degrees of freedom, false-alarm rate 9.2e-9 each, a few times that where
+   * hits are few. Packets carry 16 samples.
    */
   @Test
   void measuredErrorIsTheEquivalentNoiseVariance() {
