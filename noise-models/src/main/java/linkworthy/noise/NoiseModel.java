@@ -1,0 +1,235 @@
+package linkworthy.noise;
+
+import java.nio.charset.StandardCharsets;
+import java.nio.file.Path;
+import java.util.ArrayList;
+import java.util.Collection;
+import java.util.Collections;
+import java.util.Comparator;
+import java.util.HexFormat;
+import java.util.List;
+import java.util.Map;
+import java.util.Set;
+import java.util.TreeMap;
+import java.util.regex.Pattern;
+import java.util.stream.Collectors;
+import linkworthy.input.BadInput;
+import linkworthy.input.Require;
+import linkworthy.input.Spelling;
+import linkworthy.input.YamlNode;
+
+/**
+ * A noise process with its parameters set, as a model file says. The file's keys are described in
+ * the package comment.
+ *
+ * @param id lower-case letters, digits and hyphens, starting with a letter, at most 64
+ * @param version from 1; counts up when the model is changed
+ * @param process id of the noise process
+ * @param actsOn where the model may act, the usual place first
+ * @param parameters every parameter of the process, in the order of the names; those not given take
+ *     the process's default
+ * @param axes severity axes the model may be set by
+ * @param source where the numbers come from
+ * @param notes anything else a reader should know, or empty
+ */
+public record NoiseModel(
+    String id,
+    int version,
+    String process,
+    List<Site> actsOn,
+    Map<String, Double> parameters,
+    List<String> axes,
+    String source,
+    String notes) {
+  private static final Pattern ID = Pattern.compile("[a-z][a-z0-9-]{0,63}");
+  private static final String ID_ACCEPTED =
+      "lower-case letters, digits and hyphens, starting with a letter, at most 64";
+  private static final int MAX_VERSION = 1_000_000;
+  private static final Set<String> KEYS =
+      SeverityChecks.inOrder(
+          "id", "version", "process", "acts-on", "parameters", "severity", "source", "notes");
+
+  /**
+   * @throws BadInput if the process is unknown, does not allow a site, an axis or a parameter, or a
+   *     parameter lies outside its range
+   * @throws IllegalArgumentException if the id, the version or the source is not as described, or a
+   *     list is empty
+   */
+  public NoiseModel {
+    if (!ID.matcher(id).matches()) {
+      throw new IllegalArgumentException("model id is '" + id + "'; accepted: " + ID_ACCEPTED);
+    }
+    Require.inRange(version, 1, MAX_VERSION, "model version");
+    Require.notBlank(source, "model source");
+    NoiseProcess implementation = NoiseProcesses.find(process);
+    actsOn = List.copyOf(actsOn);
+    axes = List.copyOf(axes);
+    Require.inRange(actsOn.size(), 1, Site.values().length, "number of sites");
+    Require.inRange(axes.size(), 1, implementation.axes().size(), "number of severity axes");
+    Map<String, Double> effective = new TreeMap<>(implementation.parameters());
+    effective.putAll(parameters);
+    effective.replaceAll((name, value) -> value + 0.0);
+    parameters = Collections.unmodifiableMap(effective);
+    for (String axis : axes) {
+      SeverityChecks.axis(implementation, axis);
+    }
+    for (Site site : actsOn) {
+      implementation.check(new Severity(Severity.VARIANCE, 0), parameters, site);
+    }
+  }
+
+  /**
+   * Reads a model file.
+   *
+   * @throws BadInput if it is no valid model; the line, what was found and what is accepted
+   */
+  public static NoiseModel read(Path file) {
+    return parse(YamlNode.read(file));
+  }
+
+  /**
+   * Reads a model from YAML.
+   *
+   * @throws BadInput if it is no valid model; the line, what was found and what is accepted
+   */
+  public static NoiseModel parse(YamlNode node) {
+    node.onlyKeys(KEYS);
+    YamlNode id = node.get("id");
+    if (!ID.matcher(id.text()).matches()) {
+      throw id.bad(ID_ACCEPTED);
+    }
+    int version = (int) node.get("version").integer(1, MAX_VERSION);
+    NoiseProcess process =
+        NoiseProcesses.find(node.get("process").oneOf(List.copyOf(NoiseProcesses.all().keySet())));
+    List<Site> actsOn = sites(node.get("acts-on"), process);
+    List<String> axes = distinct(node.get("severity"), process.axes());
+    Map<String, Double> parameters =
+        node.find("parameters").map(given -> parameters(given, process)).orElse(Map.of());
+    String source = node.get("source").text();
+    String notes = node.find("notes").map(YamlNode::text).orElse("");
+    try {
+      return new NoiseModel(
+          id.text(), version, process.id(), actsOn, parameters, axes, source, notes);
+    } catch (BadInput e) {
+      throw node.find("parameters").orElse(node).refuse("cannot be used: " + e.getMessage());
+    }
+  }
+
+  private static List<Site> sites(YamlNode node, NoiseProcess process) {
+    List<String> words =
+        distinct(node, process.sites().stream().map(Site::id).collect(Collectors.toList()));
+    return process.sites().stream()
+        .filter(site -> words.contains(site.id()))
+        .sorted(Comparator.comparingInt(site -> words.indexOf(site.id())))
+        .toList();
+  }
+
+  private static List<String> distinct(YamlNode node, Collection<String> accepted) {
+    List<String> words = new ArrayList<>();
+    for (YamlNode item : node.oneOrMore()) {
+      String word = item.oneOf(List.copyOf(accepted));
+      if (words.contains(word)) {
+        throw item.refuse("is '" + word + "' a second time; accepted: each word once");
+      }
+      words.add(word);
+    }
+    return words;
+  }
+
+  private static Map<String, Double> parameters(YamlNode node, NoiseProcess process) {
+    if (process.parameters().isEmpty() && !node.keys().isEmpty()) {
+      throw node.refuse("has keys, but " + process.id() + " has no parameters; accepted: no keys");
+    }
+    node.onlyKeys(process.parameters().keySet());
+    Map<String, Double> values = new TreeMap<>();
+    for (String name : node.keys()) {
+      values.put(name, node.get(name).number("a number"));
+    }
+    return values;
+  }
+
+  /** The process that draws this model's noise. */
+  public NoiseProcess implementation() {
+    return NoiseProcesses.find(process);
+  }
+
+  /**
+   * The same model with some parameters replaced.
+   *
+   * @throws BadInput if the model has no such parameter, or a value lies outside its range
+   */
+  public NoiseModel with(Map<String, Double> overrides) {
+    for (String name : overrides.keySet()) {
+      requireKnown(name, parameters.keySet(), "parameter");
+    }
+    Map<String, Double> merged = new TreeMap<>(parameters);
+    merged.putAll(overrides);
+    try {
+      return new NoiseModel(id, version, process, actsOn, merged, axes, source, notes);
+    } catch (BadInput e) {
+      throw new BadInput("noise model '" + id + "': " + e.getMessage(), e);
+    }
+  }
+
+  /**
+   * Checks what can be checked without a picture: that the model may be set by this axis at this
+   * site, and the value's range.
+   *
+   * @throws BadInput if not
+   */
+  public void check(Severity severity, Site site) {
+    requireKnown(site.id(), actsOn.stream().map(Site::id).toList(), "site");
+    requireKnown(severity.axis(), axes, "severity axis");
+    implementation().check(severity, parameters, site);
+  }
+
+  /**
+   * Resolves a severity for one picture.
+   *
+   * @throws BadInput as {@link #check}, or if the severity cannot be reached on this picture
+   */
+  public Impairment at(Severity severity, Site site, SignalStatistics signal) {
+    check(severity, site);
+    return implementation().at(severity, parameters, site, signal);
+  }
+
+  /**
+   * All that decides the numbers and the model's identity, one {@code key: value} a line: not the
+   * source and the notes, but the process's revision. Numbers are in hexadecimal, which no Java
+   * version writes differently.
+   */
+  public String canonical() {
+    StringBuilder text = new StringBuilder();
+    line(text, "id", id);
+    line(text, "version", Integer.toString(version));
+    line(text, "process", process);
+    line(text, "revision", Integer.toString(implementation().revision()));
+    line(text, "acts-on", actsOn.stream().map(Site::id).collect(Collectors.joining(", ")));
+    parameters.forEach(
+        (name, value) -> line(text, "parameters." + name, Double.toHexString(value)));
+    line(text, "severity", String.join(", ", axes));
+    return text.toString();
+  }
+
+  /** SHA-256 of {@link #canonical()} in UTF-8, as 64 lower-case hexadecimal digits. */
+  public String fingerprint() {
+    return HexFormat.of()
+        .formatHex(NoiseStreams.sha256(canonical().getBytes(StandardCharsets.UTF_8)));
+  }
+
+  private static void line(StringBuilder text, String key, String value) {
+    text.append(key).append(": ").append(value).append('\n');
+  }
+
+  private void requireKnown(String found, Collection<String> accepted, String what) {
+    if (!accepted.contains(found)) {
+      throw new BadInput(
+          "noise model '%s' has no %s '%s'; %s"
+              .formatted(
+                  id,
+                  what,
+                  found,
+                  accepted.isEmpty() ? "it has none" : Spelling.hint(found, accepted)));
+    }
+  }
+}

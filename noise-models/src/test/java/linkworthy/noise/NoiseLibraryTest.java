@@ -1,0 +1,62 @@
+package linkworthy.noise;
+
+import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.assertThatThrownBy;
+
+import java.io.IOException;
+import java.nio.file.Files;
+import java.nio.file.Path;
+import java.util.List;
+import java.util.stream.Stream;
+import linkworthy.input.BadInput;
+import org.junit.jupiter.api.Test;
+
+class NoiseLibraryTest {
+  @Test
+  void indexListsEveryFileOfTheLibrary() throws IOException {
+    List<String> names = NoiseLibrary.shipped().stream().map(m -> m.id() + ".yaml").toList();
+    try (Stream<Path> files = Files.list(Path.of("library"))) {
+      assertThat(files.map(file -> file.getFileName().toString()).filter(n -> n.endsWith(".yaml")))
+          .containsExactlyInAnyOrderElementsOf(names);
+    }
+    assertThat(names).doesNotHaveDuplicates().contains("gaussian.yaml", "burst-loss.yaml");
+  }
+
+  @Test
+  void everyProcessHasAModelOfItsOwnNameThatOffersAllItsAxesAndSites() {
+    for (NoiseProcess process : NoiseProcesses.all().values()) {
+      NoiseModel model = NoiseLibrary.find(process.id());
+      assertThat(model.implementation()).isSameAs(process);
+      assertThat(model.parameters()).isEqualTo(process.parameters());
+      assertThat(model.actsOn()).isEqualTo(process.sites());
+      assertThat(model.axes()).containsExactlyElementsOf(process.axes());
+      assertThat(model.source()).isNotBlank();
+    }
+  }
+
+  @Test
+  void unknownModelIsRefusedWithWhatExists() {
+    assertThatThrownBy(() -> NoiseLibrary.find("gausian"))
+        .isInstanceOf(BadInput.class)
+        .hasMessage(
+            "no noise model 'gausian'; did you mean 'gaussian'?"
+                + " accepted: gaussian, salt-and-pepper, burst-loss");
+  }
+
+  @Test
+  void unknownProcessIsRefusedWithWhatExists() {
+    assertThatThrownBy(() -> NoiseProcesses.find("snow"))
+        .isInstanceOf(BadInput.class)
+        .hasMessage("no noise process 'snow'; accepted: burst-loss, gaussian, salt-and-pepper");
+  }
+
+  @Test
+  void twoProcessesWithOneIdStopTheProgram() {
+    assertThatThrownBy(
+            () -> NoiseProcesses.index(List.of(new GaussianNoise(), new GaussianNoise())))
+        .isInstanceOf(IllegalStateException.class)
+        .hasMessage(
+            "noise process id 'gaussian' is used twice:"
+                + " by linkworthy.noise.GaussianNoise and by linkworthy.noise.GaussianNoise");
+  }
+}
