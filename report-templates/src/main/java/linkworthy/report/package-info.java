@@ -1,4 +1,12 @@
-/** Page models in, HTML out: knows nothing of trials. */
+/**
+ * Page models in, one self-contained HTML file out. Knows nothing of trials, studies or files.
+ *
+ * <p>What must stay fixed: a page loads nothing and runs no script; the same model gives the same
+ * bytes under every locale; every text of the caller is escaped by the template; a number that is
+ * not available is shown as {@code n/a}, never as a zero. To add a section, add its figures to
+ * {@link linkworthy.report.ReportPage}, lay them out in {@code ReportView} and draw them in {@code
+ * report.html}.
+ */
 @NullMarked
 package linkworthy.report;
 

@@ -1,0 +1,60 @@
+package linkworthy.report;
+
+/**
+ * What was measured of one codec in one condition: a cell of a table. NaN means not available, and
+ * a PSNR of positive infinity that every decoded picture equals its original.
+ */
+public record Figure(
+    Condition condition,
+    CodecColumn codec,
+    Evidence evidence,
+    Quality quality,
+    double bitsPerPixel,
+    double outageRate,
+    Comparison comparison) {
+
+  /**
+   * What a figure rests on.
+   *
+   * @param pictures number of pictures
+   * @param trials number of trials on all of them
+   */
+  public record Evidence(int pictures, int trials) {
+    /**
+     * @throws IllegalArgumentException if a number is negative
+     */
+    public Evidence {
+      if (pictures < 0 || trials < 0) {
+        throw new IllegalArgumentException(
+            pictures + " pictures and " + trials + " trials; accepted: at least 0");
+      }
+    }
+  }
+
+  /**
+   * Decoded pictures against clean originals.
+   *
+   * @param psnrMeanDb mean of the trials' PSNR, in dB
+   * @param noiseHalfWidthDb half the width of its noise interval, in dB
+   * @param pictureHalfWidthDb half the width of its picture interval, in dB
+   * @param psnrOfMeanMseDb PSNR of the mean MSE, in dB
+   * @param psnrP05Db 5th percentile of the trials' PSNR, in dB
+   * @param ssimMean mean structural similarity
+   */
+  public record Quality(
+      double psnrMeanDb,
+      double noiseHalfWidthDb,
+      double pictureHalfWidthDb,
+      double psnrOfMeanMseDb,
+      double psnrP05Db,
+      double ssimMean) {}
+
+  /**
+   * Against the best codec of the same condition.
+   *
+   * @param behindBestDb mean paired difference in dB, 0 for the best
+   * @param adjustedP p value after correction over the condition's codecs
+   * @param standing what may be concluded
+   */
+  public record Comparison(double behindBestDb, double adjustedP, Standing standing) {}
+}

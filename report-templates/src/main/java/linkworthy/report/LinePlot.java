@@ -1,0 +1,307 @@
+package linkworthy.report;
+
+import java.util.ArrayList;
+import java.util.Comparator;
+import java.util.List;
+import java.util.stream.DoubleStream;
+import java.util.stream.Stream;
+
+/**
+ * PSNR against equivalent noise variance: one panel for at most six codecs of a family, the other
+ * codecs faint behind them. All panels of an impairment share their axes. The clean condition has
+ * no place on a logarithmic axis and stands apart on the left. Infinite values are not drawn.
+ */
+record LinePlot(
+    String id,
+    String title,
+    String description,
+    List<Tick> horizontal,
+    List<Tick> vertical,
+    List<Tick> top,
+    String context,
+    List<Line> lines,
+    List<Fact> key) {
+  static final int WIDTH = 300;
+  static final int HEIGHT = 280;
+  static final int LEFT = 34;
+  static final int RIGHT = 248;
+  static final int TOP = 44;
+  static final int BOTTOM = 236;
+
+  private static final int CLEAN_AT = 50;
+  private static final int NOISY_FROM = 68;
+  private static final int LONGEST_LABEL = 7;
+
+  /** A place on an axis and what is written there. */
+  record Tick(String at, String label) {}
+
+  /**
+   * A codec's line as path data.
+   *
+   * @param css classes for colour and dash
+   * @param leader from the last point to a label that had to move, or empty
+   */
+  record Line(
+      String css,
+      String path,
+      String whiskers,
+      String markers,
+      String leader,
+      String label,
+      String labelAt) {}
+
+  /** All panels of an impairment; none if nothing can be drawn. */
+  static List<LinePlot> of(
+      FigureGrid grid, List<CodecFamily> families, FigureGrid.Noise noise, String id) {
+    List<Condition> noisy =
+        noise.conditions().stream()
+            .filter(c -> c.equivalentNoiseVariance() > 0)
+            .filter(c -> Double.isFinite(c.equivalentNoiseVariance()))
+            .toList();
+    Scene scene = new Scene(grid, noise, noisy);
+    if (noisy.isEmpty() || scene.values().length == 0) {
+      return List.of();
+    }
+    List<LinePlot> plots = new ArrayList<>();
+    for (CodecFamily family : families) {
+      List<CodecFamily.Member> members = family.members();
+      int parts = (members.size() + Shape.KINDS - 1) / Shape.KINDS;
+      for (int part = 0; part < parts; part++) {
+        List<CodecFamily.Member> some =
+            members.subList(members.size() * part / parts, members.size() * (part + 1) / parts);
+        String title =
+            family.heading() + (parts > 1 ? " (" + (part + 1) + " of " + parts + ")" : "");
+        plots.add(new Panel(scene, family, some).draw(id + "-" + plots.size(), title));
+      }
+    }
+    return plots;
+  }
+
+  /** What the panels of an impairment share. */
+  private record Scene(FigureGrid grid, FigureGrid.Noise noise, List<Condition> noisy) {
+    double[] values() {
+      return Stream.concat(noisy.stream(), grid.clean().stream())
+          .flatMap(c -> grid.codecs().stream().flatMap(codec -> grid.find(c, codec).stream()))
+          .map(Figure::quality)
+          .flatMapToDouble(
+              q ->
+                  DoubleStream.of(
+                      q.psnrMeanDb(),
+                      q.psnrMeanDb() - q.pictureHalfWidthDb(),
+                      q.psnrMeanDb() + q.pictureHalfWidthDb()))
+          .filter(Double::isFinite)
+          .sorted()
+          .toArray();
+    }
+
+    Axis y() {
+      double[] values = values();
+      return Axis.linear(values[0], values[values.length - 1], BOTTOM, TOP);
+    }
+
+    Axis x() {
+      double[] variances =
+          noisy.stream().mapToDouble(Condition::equivalentNoiseVariance).sorted().toArray();
+      return Axis.log(variances[0], variances[variances.length - 1], NOISY_FROM, RIGHT);
+    }
+
+    /** The clean condition, then the noisy ones from mild to harsh. */
+    List<Condition> places() {
+      return Stream.concat(grid.clean().stream(), noisy.stream()).toList();
+    }
+
+    double across(Condition condition) {
+      return condition.isClean() ? CLEAN_AT : x().at(condition.equivalentNoiseVariance());
+    }
+
+    List<Tick> horizontal() {
+      List<Tick> ticks = new ArrayList<>();
+      Axis x = x();
+      x.ticks().forEach(v -> ticks.add(tick(x.at(v), Numbers.typed(v))));
+      List<Tick> apart = spaced(ticks, 30);
+      grid.clean().ifPresent(c -> apart.add(0, tick(CLEAN_AT, "clean")));
+      return apart;
+    }
+
+    List<Tick> top() {
+      List<Tick> ticks = new ArrayList<>();
+      for (Condition condition : noisy) {
+        if (Double.isFinite(condition.snrDb())) {
+          double snr = Math.rint(condition.snrDb() * 10) / 10;
+          ticks.add(tick(across(condition), Numbers.typed(snr)));
+        }
+      }
+      return spaced(ticks, 22);
+    }
+
+    List<Tick> vertical() {
+      Axis y = y();
+      return y.ticks().stream().map(v -> tick(y.at(v), Numbers.typed(v))).toList();
+    }
+
+    private static Tick tick(double at, String label) {
+      return new Tick(Numbers.coordinate(at), label);
+    }
+
+    private static List<Tick> spaced(List<Tick> ticks, double apart) {
+      List<Tick> kept = new ArrayList<>();
+      double last = Double.NEGATIVE_INFINITY;
+      for (Tick tick : ticks) {
+        double at = Double.parseDouble(tick.at());
+        if (at - last >= apart) {
+          kept.add(tick);
+          last = at;
+        }
+      }
+      return kept;
+    }
+  }
+
+  /** The codecs of one panel. */
+  private record Panel(Scene scene, CodecFamily family, List<CodecFamily.Member> members) {
+    LinePlot draw(String id, String title) {
+      boolean direct = members.stream().allMatch(m -> m.label().length() <= LONGEST_LABEL);
+      List<Fact> key = new ArrayList<>();
+      List<Draft> drafts = new ArrayList<>();
+      for (int i = 0; i < members.size(); i++) {
+        String label = direct ? members.get(i).label() : String.valueOf((char) ('A' + i));
+        if (!direct) {
+          key.add(new Fact(label, members.get(i).label()));
+        }
+        drafts.add(draft(i, label));
+      }
+      return new LinePlot(
+          id,
+          title,
+          "Mean PSNR of "
+              + (title + " against the equivalent noise variance of " + scene.noise().title())
+              + "; the numbers are in the table above.",
+          scene.horizontal(),
+          scene.vertical(),
+          scene.top(),
+          context(),
+          placed(drafts),
+          key);
+    }
+
+    private String context() {
+      StringBuilder path = new StringBuilder();
+      for (CodecColumn codec : scene.grid().codecs()) {
+        if (members.stream().noneMatch(m -> m.codec().equals(codec))) {
+          path.append(path(codec, 0));
+        }
+      }
+      return path.toString();
+    }
+
+    private String path(CodecColumn codec, double shift) {
+      StringBuilder path = new StringBuilder();
+      boolean pen = false;
+      Axis y = scene.y();
+      for (Condition condition : scene.noisy()) {
+        double psnr = scene.grid().psnr(condition, codec);
+        if (Double.isFinite(psnr)) {
+          path.append(pen ? 'L' : 'M').append(point(scene.across(condition) + shift, y.at(psnr)));
+        }
+        pen = Double.isFinite(psnr);
+      }
+      return path.toString();
+    }
+
+    private Draft draft(int i, String label) {
+      CodecFamily.Member member = members.get(i);
+      double shift = (i - (members.size() - 1) / 2.0) * 2;
+      Axis y = scene.y();
+      StringBuilder whiskers = new StringBuilder();
+      StringBuilder markers = new StringBuilder();
+      double endX = RIGHT;
+      double endY = Double.NaN;
+      for (Condition condition : scene.places()) {
+        double psnr = scene.grid().psnr(condition, member.codec());
+        if (Double.isFinite(psnr)) {
+          double x = scene.across(condition) + shift;
+          markers.append(Shape.at(member.index(), x, y.at(psnr)));
+          whiskers.append(whisker(condition, member.codec(), x, y));
+          endX = x;
+          endY = y.at(psnr);
+        }
+      }
+      String css = "c" + family.index() % 6 + " d" + member.index() % Shape.KINDS;
+      return new Draft(
+          css,
+          path(member.codec(), shift),
+          whiskers.toString(),
+          markers.toString(),
+          label,
+          endX,
+          endY);
+    }
+
+    private String whisker(Condition condition, CodecColumn codec, double x, Axis y) {
+      double psnr = scene.grid().psnr(condition, codec);
+      double half =
+          scene
+              .grid()
+              .find(condition, codec)
+              .map(f -> f.quality().pictureHalfWidthDb())
+              .orElse(Double.NaN);
+      return Double.isFinite(half)
+          ? "M" + point(x, y.at(psnr - half)) + "L" + point(x, y.at(psnr + half))
+          : "";
+    }
+
+    private static String point(double x, double y) {
+      return Numbers.coordinate(x) + " " + Numbers.coordinate(y);
+    }
+
+    /** Labels at the right ends, moved apart where they would touch. */
+    private static List<Line> placed(List<Draft> drafts) {
+      List<Draft> order =
+          drafts.stream()
+              .filter(d -> !Double.isNaN(d.endY()))
+              .sorted(Comparator.comparingDouble(Draft::endY))
+              .toList();
+      double[] at = apart(order.stream().mapToDouble(Draft::endY).toArray());
+      List<Line> lines = new ArrayList<>();
+      for (Draft draft : drafts) {
+        int place = order.indexOf(draft);
+        if (place < 0) {
+          lines.add(draft.line("", ""));
+          continue;
+        }
+        String leader =
+            "M" + point(draft.endX() + 5, draft.endY()) + "L" + point(RIGHT + 10, at[place]);
+        lines.add(draft.line(leader, Numbers.coordinate(at[place] + 4)));
+      }
+      return lines;
+    }
+
+    private static double[] apart(double[] wanted) {
+      double gap = 13;
+      double[] at = wanted.clone();
+      for (int i = 1; i < at.length; i++) {
+        at[i] = Math.max(at[i], at[i - 1] + gap);
+      }
+      for (int i = at.length - 1; i >= 0; i--) {
+        double most = i == at.length - 1 ? BOTTOM : at[i + 1] - gap;
+        at[i] = Math.min(at[i], most);
+      }
+      return at;
+    }
+  }
+
+  /** A line whose label has no place yet. */
+  private record Draft(
+      String css,
+      String path,
+      String whiskers,
+      String markers,
+      String label,
+      double endX,
+      double endY) {
+    Line line(String leader, String labelAt) {
+      return new Line(
+          css, path, whiskers, markers, leader, labelAt.isEmpty() ? "" : label, labelAt);
+    }
+  }
+}

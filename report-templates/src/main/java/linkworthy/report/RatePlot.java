@@ -1,0 +1,179 @@
+package linkworthy.report;
+
+import java.util.ArrayList;
+import java.util.Comparator;
+import java.util.List;
+
+/**
+ * Mean PSNR against sent bits per pixel in one condition: a line for each family, a marker for each
+ * codec, a ring around those that no other codec dominates.
+ */
+record RatePlot(
+    String id,
+    String title,
+    String description,
+    List<LinePlot.Tick> horizontal,
+    List<LinePlot.Tick> vertical,
+    List<Curve> curves,
+    List<Ring> rings,
+    List<Label> labels) {
+  static final int WIDTH = 400;
+  static final int HEIGHT = 310;
+  static final int LEFT = 36;
+  static final int RIGHT = 384;
+  static final int TOP = 28;
+  static final int BOTTOM = 266;
+
+  /** A family: its line and its markers as path data. */
+  record Curve(String css, String path, String markers) {}
+
+  /** Centre of a ring. */
+  record Ring(String x, String y) {}
+
+  /** The name of a codec beside its marker. */
+  record Label(String x, String y, String anchor, String text, boolean strong) {}
+
+  private record Point(
+      CodecFamily family, CodecFamily.Member member, double bits, double psnr, boolean front) {}
+
+  /** The plot, or nothing where no codec has both numbers. */
+  static List<RatePlot> of(
+      FigureGrid grid, List<CodecFamily> families, Condition condition, String id, String title) {
+    List<Point> points = points(grid, families, condition);
+    if (points.isEmpty()) {
+      return List.of();
+    }
+    double[] bits = points.stream().mapToDouble(Point::bits).sorted().toArray();
+    double[] psnr = points.stream().mapToDouble(Point::psnr).sorted().toArray();
+    Axis x = Axis.log(bits[0], bits[bits.length - 1], LEFT + 8, RIGHT - 20);
+    Axis y = Axis.linear(psnr[0], psnr[psnr.length - 1], BOTTOM - 6, TOP + 12);
+    List<Ring> rings =
+        points.stream()
+            .filter(Point::front)
+            .map(
+                p ->
+                    new Ring(
+                        Numbers.coordinate(x.at(p.bits())), Numbers.coordinate(y.at(p.psnr()))))
+            .toList();
+    return List.of(
+        new RatePlot(
+            id,
+            title,
+            "Mean PSNR against sent bits per pixel, "
+                + title
+                + "; the numbers are in the table below.",
+            ticks(x),
+            ticks(y),
+            curves(families, points, x, y),
+            rings,
+            labels(points, x, y)));
+  }
+
+  /** Codecs that no other one dominates in this condition. */
+  static List<CodecColumn> front(FigureGrid grid, Condition condition) {
+    return grid.codecs().stream()
+        .filter(c -> !Double.isNaN(grid.bits(condition, c) + grid.psnr(condition, c)))
+        .filter(
+            c ->
+                grid.codecs().stream()
+                    .noneMatch(
+                        o ->
+                            Dominance.over(
+                                grid.bits(condition, o),
+                                grid.psnr(condition, o),
+                                grid.bits(condition, c),
+                                grid.psnr(condition, c))))
+        .toList();
+  }
+
+  private static List<Point> points(
+      FigureGrid grid, List<CodecFamily> families, Condition condition) {
+    List<CodecColumn> front = front(grid, condition);
+    List<Point> points = new ArrayList<>();
+    for (CodecFamily family : families) {
+      for (CodecFamily.Member member : family.members()) {
+        double bits = grid.bits(condition, member.codec());
+        double psnr = grid.psnr(condition, member.codec());
+        if (bits > 0 && Double.isFinite(bits) && Double.isFinite(psnr)) {
+          points.add(new Point(family, member, bits, psnr, front.contains(member.codec())));
+        }
+      }
+    }
+    return points;
+  }
+
+  private static List<LinePlot.Tick> ticks(Axis axis) {
+    return axis.ticks().stream()
+        .map(v -> new LinePlot.Tick(Numbers.coordinate(axis.at(v)), Numbers.typed(v)))
+        .toList();
+  }
+
+  private static List<Curve> curves(
+      List<CodecFamily> families, List<Point> points, Axis x, Axis y) {
+    List<Curve> curves = new ArrayList<>();
+    for (CodecFamily family : families) {
+      StringBuilder path = new StringBuilder();
+      StringBuilder markers = new StringBuilder();
+      points.stream()
+          .filter(p -> p.family().index() == family.index())
+          .sorted(Comparator.comparingDouble(Point::bits))
+          .forEach(
+              p -> {
+                path.append(path.isEmpty() ? 'M' : 'L')
+                    .append(Numbers.coordinate(x.at(p.bits())))
+                    .append(' ')
+                    .append(Numbers.coordinate(y.at(p.psnr())));
+                markers.append(Shape.at(p.member().index(), x.at(p.bits()), y.at(p.psnr())));
+              });
+      String css = "c" + family.index() % 6 + " d" + family.index() % Shape.KINDS;
+      curves.add(new Curve(css, path.toString(), markers.toString()));
+    }
+    return curves;
+  }
+
+  /**
+   * Names beside markers, the rings' first; a name that finds no free place is left to the table.
+   */
+  private static List<Label> labels(List<Point> points, Axis x, Axis y) {
+    List<double[]> taken = new ArrayList<>();
+    for (Point p : points) {
+      taken.add(new double[] {x.at(p.bits()) - 5, y.at(p.psnr()) - 5, 10, 10});
+    }
+    List<Label> labels = new ArrayList<>();
+    points.stream()
+        .sorted(Comparator.comparing((Point p) -> !p.front()))
+        .forEach(p -> place(p, x.at(p.bits()), y.at(p.psnr()), taken, labels));
+    return labels;
+  }
+
+  private static void place(
+      Point point, double x, double y, List<double[]> taken, List<Label> labels) {
+    String text = point.member().label();
+    double width = 6.2 * text.codePointCount(0, text.length());
+    double[][] boxes = {
+      {x + 7, y - 6, width, 12},
+      {x - 7 - width, y - 6, width, 12},
+      {x - width / 2, y - 20, width, 12},
+      {x - width / 2, y + 8, width, 12},
+    };
+    for (double[] box : boxes) {
+      boolean inside =
+          box[0] > LEFT && box[0] + width < WIDTH && box[1] > TOP - 12 && box[1] + 12 < BOTTOM;
+      if (inside && taken.stream().noneMatch(other -> overlap(box, other))) {
+        taken.add(box);
+        labels.add(
+            new Label(
+                Numbers.coordinate(box[0] + width / 2),
+                Numbers.coordinate(box[1] + 10),
+                "middle",
+                text,
+                point.front()));
+        return;
+      }
+    }
+  }
+
+  private static boolean overlap(double[] a, double[] b) {
+    return a[0] < b[0] + b[2] && b[0] < a[0] + a[2] && a[1] < b[1] + b[3] && b[1] < a[1] + a[3];
+  }
+}

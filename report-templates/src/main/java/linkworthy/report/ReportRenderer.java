@@ -1,0 +1,91 @@
+package linkworthy.report;
+
+import java.io.IOException;
+import java.io.InputStream;
+import java.io.UncheckedIOException;
+import java.nio.charset.StandardCharsets;
+import java.security.MessageDigest;
+import java.security.NoSuchAlgorithmException;
+import java.util.Base64;
+import java.util.Locale;
+import org.thymeleaf.TemplateEngine;
+import org.thymeleaf.context.Context;
+import org.thymeleaf.templatemode.TemplateMode;
+import org.thymeleaf.templateresolver.ClassLoaderTemplateResolver;
+
+/**
+ * Renders a page model as one self-contained HTML file, which is also well-formed XML. The file
+ * loads nothing and runs nothing: its content security policy admits only its own style sheet, by
+ * hash. The same model gives the same text under every locale. May be used by several threads.
+ */
+public final class ReportRenderer {
+  private static final String FOLDER = "linkworthy/report/";
+
+  private final TemplateEngine engine = new TemplateEngine();
+  private final String style = resource("report.css").replace("\r", "");
+
+  public ReportRenderer() {
+    ClassLoaderTemplateResolver resolver =
+        new ClassLoaderTemplateResolver(ReportRenderer.class.getClassLoader());
+    resolver.setPrefix(FOLDER);
+    resolver.setTemplateMode(TemplateMode.HTML);
+    resolver.setCharacterEncoding(StandardCharsets.UTF_8.name());
+    engine.setTemplateResolver(resolver);
+  }
+
+  /**
+   * The page as HTML text, to be written as UTF-8. Characters that no HTML file may hold are
+   * replaced by U+FFFD.
+   *
+   * @throws IllegalArgumentException if two figures are of one codec in one condition
+   */
+  public String render(ReportPage page) {
+    Context context = new Context(Locale.ROOT);
+    context.setVariable("page", page);
+    context.setVariable("view", ReportView.of(page));
+    context.setVariable("style", style);
+    context.setVariable(
+        "policy",
+        "default-src 'none'; style-src '"
+            + hash(style)
+            + "'; img-src data:; base-uri 'none'; form-action 'none'");
+    return printable(engine.process("report.html", context));
+  }
+
+  private static String printable(String html) {
+    StringBuilder text = new StringBuilder(html.length());
+    html.codePoints()
+        .map(c -> isPrintable(c) ? c : 0xFFFD)
+        .filter(c -> c != '\r')
+        .forEach(text::appendCodePoint);
+    return text.toString();
+  }
+
+  private static boolean isPrintable(int c) {
+    boolean control = (c < 0x20 && c != '\t' && c != '\n' && c != '\r') || (c >= 0x7F && c <= 0x9F);
+    boolean surrogate = c >= 0xD800 && c <= 0xDFFF;
+    return !control && !surrogate && (c & 0xFFFE) != 0xFFFE;
+  }
+
+  private static String hash(String text) {
+    try {
+      byte[] digest =
+          MessageDigest.getInstance("SHA-256").digest(text.getBytes(StandardCharsets.UTF_8));
+      return "sha256-" + Base64.getEncoder().encodeToString(digest);
+    } catch (NoSuchAlgorithmException e) {
+      throw new IllegalStateException("every Java runtime has SHA-256", e);
+    }
+  }
+
+  private static String resource(String name) {
+    try (InputStream in =
+        ReportRenderer.class.getClassLoader().getResourceAsStream(FOLDER + name)) {
+      if (in == null) {
+        throw new IllegalStateException(FOLDER + name + " is missing from the jar");
+      }
+      return new String(in.readAllBytes(), StandardCharsets.UTF_8);
+    } catch (IOException e) {
+      throw new UncheckedIOException(e);
+    }
+  }
+}

@@ -1,0 +1,14 @@
+package linkworthy.report;
+
+import java.io.IOException;
+import java.nio.file.Files;
+import java.nio.file.Path;
+
+/** Writes the sample page, to be looked at. */
+final class SampleFile {
+  private SampleFile() {}
+
+  public static void main(String[] arguments) throws IOException {
+    Files.writeString(Path.of(arguments[0]), new ReportRenderer().render(SamplePages.full()));
+  }
+}
