@@ -1,0 +1,148 @@
+package linkworthy.study;
+
+import java.nio.file.InvalidPathException;
+import java.nio.file.Path;
+import java.util.ArrayList;
+import java.util.Collection;
+import java.util.HashMap;
+import java.util.HashSet;
+import java.util.LinkedHashSet;
+import java.util.List;
+import java.util.Map;
+import java.util.Set;
+import java.util.TreeMap;
+import linkworthy.input.BadInput;
+import linkworthy.input.Decimal;
+import linkworthy.input.YamlNode;
+import linkworthy.noise.NoiseLibrary;
+import linkworthy.noise.NoiseModel;
+import linkworthy.noise.Severity;
+import linkworthy.noise.Site;
+
+/** Reads the impairments of a study and keeps watch over their labels. */
+final class ImpairmentReader {
+  private static final int MAX_LABEL = 64;
+
+  private final Path baseFolder;
+  private final Map<Place, NoiseModel> models = new HashMap<>();
+  private final Set<Level> levels = new HashSet<>();
+
+  ImpairmentReader(Path baseFolder) {
+    this.baseFolder = baseFolder;
+  }
+
+  private record Place(String label, Site site) {}
+
+  private record Level(Place place, String axis, double severity) {}
+
+  ImpairmentChoice read(YamlNode entry) {
+    NoiseModel plain = model(entry.get("noise"));
+    Set<String> parameters = plain.implementation().parameters().keySet();
+    Set<String> accepted = new LinkedHashSet<>(List.of("noise", "acts-on", "label"));
+    accepted.addAll(parameters);
+    accepted.addAll(plain.axes());
+    entry.onlyKeys(accepted);
+
+    NoiseModel model = plain.with(parametersInForce(entry, plain));
+    String label = entry.find("label").map(ImpairmentReader::label).orElse(model.id());
+    Place place = new Place(label, site(entry, model));
+    String axis = axis(entry, model.axes());
+    List<Double> severities = new ArrayList<>();
+    for (YamlNode item : entry.get(axis).oneOrMore()) {
+      severities.add(severity(entry, item, axis, model, place));
+    }
+    NoiseModel known = models.putIfAbsent(place, model);
+    if (known != null && !known.equals(model)) {
+      throw entry.refuse(
+          "gives the label '"
+              + label
+              + "' to a second model that acts on "
+              + place.site().id()
+              + "; add label: with a name of its own");
+    }
+    return new ImpairmentChoice(label, model, place.site(), axis, severities);
+  }
+
+  /** A shipped model's id, or a path: one that has a slash or ends like a YAML file. */
+  private NoiseModel model(YamlNode noise) {
+    String text = noise.text();
+    try {
+      return StudyWriter.isModelPath(text)
+          ? NoiseModel.read(baseFolder.resolve(text))
+          : NoiseLibrary.find(text);
+    } catch (BadInput | InvalidPathException e) {
+      throw noise.refuse("cannot be used: " + e.getMessage());
+    }
+  }
+
+  /** Every parameter: the process' default, unless the model or, before it, the study has one. */
+  private static Map<String, Double> parametersInForce(YamlNode entry, NoiseModel model) {
+    Map<String, Double> all = new TreeMap<>(model.implementation().parameters());
+    all.putAll(model.parameters());
+    for (String name : List.copyOf(all.keySet())) {
+      entry.find(name).ifPresent(node -> all.put(name, node.number("a finite number")));
+    }
+    return all;
+  }
+
+  private static String label(YamlNode node) {
+    String label = node.text().strip();
+    if (label.equals(ImpairmentChoice.CLEAN)) {
+      throw node.refuse("is 'none', which is kept for clean pictures; accepted: another name");
+    }
+    if (label.length() > MAX_LABEL || label.codePoints().anyMatch(Character::isISOControl)) {
+      throw node.bad("one line of up to " + MAX_LABEL + " characters");
+    }
+    return label;
+  }
+
+  private static Site site(YamlNode entry, NoiseModel model) {
+    List<String> words = model.actsOn().stream().map(Site::id).toList();
+    return entry
+        .find("acts-on")
+        .map(node -> model.actsOn().get(words.indexOf(node.oneOf(words))))
+        .orElse(model.actsOn().get(0));
+  }
+
+  private static String axis(YamlNode entry, Collection<String> axes) {
+    List<String> given = axes.stream().filter(axis -> entry.find(axis).isPresent()).toList();
+    if (given.size() != 1) {
+      String found = given.isEmpty() ? "no severity" : "several: " + String.join(", ", given);
+      throw entry.refuse("has " + found + "; accepted: one of " + String.join(", ", axes));
+    }
+    return given.get(0);
+  }
+
+  private double severity(
+      YamlNode entry, YamlNode item, String axis, NoiseModel model, Place place) {
+    double value = item.number("a finite number") + 0.0;
+    try {
+      model.implementation().check(new Severity(axis, value), model.parameters(), place.site());
+    } catch (BadInput e) {
+      String complaint = String.valueOf(e.getMessage());
+      throw culprit(entry, item, complaint).refuse("cannot be used: " + complaint);
+    }
+    if (!levels.add(new Level(place, axis, value))) {
+      throw item.refuse(
+          "gives "
+              + place.label()
+              + " on "
+              + place.site().id()
+              + " at "
+              + axis
+              + " "
+              + Decimal.shortest(value)
+              + " a second time; remove it, or add label: to tell the two apart");
+    }
+    return value;
+  }
+
+  /** The place of the key that a complaint begins with, or else of the severity. */
+  private static YamlNode culprit(YamlNode entry, YamlNode severity, String complaint) {
+    return entry.keys().stream()
+        .filter(key -> complaint.startsWith(key + " ") && !entry.get(key).isSequence())
+        .findFirst()
+        .map(entry::get)
+        .orElse(severity);
+  }
+}

@@ -1,0 +1,73 @@
+package linkworthy.study;
+
+import java.nio.file.Path;
+import java.util.List;
+import java.util.regex.Pattern;
+import linkworthy.codec.Codec;
+import linkworthy.input.Require;
+import linkworthy.link.Link;
+
+/**
+ * A question put to the harness: which codecs, on which pictures, under which impairments. Made by
+ * {@link StudyReader}; written out by {@link StudyWriter}.
+ *
+ * @param name names the results folder; see {@link #NAME}
+ * @param purpose why it is asked, shown first in the report
+ * @param seed of every random draw, 0 to {@link #MAX_SEED}
+ * @param pictures which pictures
+ * @param impairments what hurts them, in study order; the clean severity is always added by the
+ *     plan
+ * @param codecs the options compared, in study order, labels distinct
+ * @param link the packets they are sent in
+ * @param replicates noise realisations of each picture and severity, 1 to {@link #MAX_REPLICATES}
+ * @param measures ids of quality measures, {@code psnr} among them
+ */
+public record Study(
+    String name,
+    String purpose,
+    long seed,
+    PictureChoice pictures,
+    List<ImpairmentChoice> impairments,
+    List<Codec> codecs,
+    Link link,
+    int replicates,
+    List<String> measures) {
+  /** A name becomes a folder, so it has only letters, digits, dots, dashes and underscores. */
+  public static final Pattern NAME = Pattern.compile("[A-Za-z0-9][A-Za-z0-9._-]{0,63}");
+
+  /** The largest seed: every JSON reader keeps whole numbers up to 2^53 - 1 exactly. */
+  public static final long MAX_SEED = (1L << 53) - 1;
+
+  public static final int MAX_REPLICATES = 1_000_000;
+
+  /**
+   * @throws IllegalArgumentException if the name, seed or replicates are outside their range
+   */
+  public Study {
+    if (!NAME.matcher(name).matches()) {
+      throw new IllegalArgumentException(
+          "study name is '" + name + "'; accepted: " + NAME.pattern());
+    }
+    if (seed < 0 || seed > MAX_SEED) {
+      throw new IllegalArgumentException("seed is " + seed + "; accepted: 0 to " + MAX_SEED);
+    }
+    Require.inRange(replicates, 1, MAX_REPLICATES, "replicates");
+    impairments = List.copyOf(impairments);
+    codecs = List.copyOf(codecs);
+    measures = List.copyOf(measures);
+  }
+
+  /** The same study whose manifest, if it has one of its own, is looked for in another place. */
+  public Study withManifestAt(Path file) {
+    return new Study(
+        name,
+        purpose,
+        seed,
+        pictures.withManifestAt(file),
+        impairments,
+        codecs,
+        link,
+        replicates,
+        measures);
+  }
+}

@@ -1,0 +1,196 @@
+package linkworthy.study;
+
+import java.math.BigDecimal;
+import java.nio.charset.StandardCharsets;
+import java.security.MessageDigest;
+import java.security.NoSuchAlgorithmException;
+import java.util.HexFormat;
+import java.util.LinkedHashMap;
+import java.util.List;
+import java.util.Map;
+import java.util.SortedMap;
+import java.util.TreeMap;
+import linkworthy.codec.Codec;
+import linkworthy.input.Decimal;
+import linkworthy.link.Link;
+import linkworthy.noise.NoiseLibrary;
+import linkworthy.noise.NoiseModel;
+import linkworthy.noise.Site;
+import tools.jackson.dataformat.yaml.YAMLMapper;
+import tools.jackson.dataformat.yaml.YAMLWriteFeature;
+
+/**
+ * Writes a study with every default in it, always the same bytes for the same study.
+ *
+ * <p>The text holds no path of the machine it was written on. A noise model of the user's own is
+ * named by a file under {@code models/}, with its version in force in its name; {@link #modelFiles}
+ * gives these files, to be put beside the study, so that the record can be read and repeated
+ * without the user's folder. A manifest of the user's own keeps the path as the study had it:
+ * pictures are not copied, and where the manifest was on the machine of the run stands in the run's
+ * record.
+ */
+public final class StudyWriter {
+  static final String SHIPPED = "shipped";
+  static final String NONE = "none";
+
+  /** Folder of the models that are not shipped, beside the study. */
+  public static final String MODEL_FOLDER = "models";
+
+  private static final int SHORT_HASH = 8;
+
+  private static final YAMLMapper YAML =
+      YAMLMapper.builder()
+          .disable(YAMLWriteFeature.WRITE_DOC_START_MARKER)
+          .disable(YAMLWriteFeature.SPLIT_LINES)
+          .build();
+
+  private StudyWriter() {}
+
+  /** The study as YAML; {@link StudyReader} makes an equal study of it. */
+  public static String canonical(Study study) {
+    return YAML.writeValueAsString(tree(study));
+  }
+
+  /**
+   * SHA-256, in hex, of what determines the rows of the record: the canonical text without {@code
+   * name}, {@code purpose} and the manifest's path, then the fingerprint of every noise model.
+   * Equal numbers need equal pictures as well; those have the fingerprint of their manifest.
+   */
+  public static String fingerprint(Study study) {
+    Map<String, Object> tree = tree(study);
+    tree.remove("name");
+    tree.remove("purpose");
+    tree.put("pictures", pictures(study.pictures(), false));
+    StringBuilder text = new StringBuilder(YAML.writeValueAsString(tree));
+    for (ImpairmentChoice impairment : study.impairments()) {
+      text.append(impairment.model().fingerprint()).append('\n');
+    }
+    try {
+      byte[] bytes = text.toString().getBytes(StandardCharsets.UTF_8);
+      return HexFormat.of().formatHex(MessageDigest.getInstance("SHA-256").digest(bytes));
+    } catch (NoSuchAlgorithmException e) {
+      throw new IllegalStateException("every Java has SHA-256", e);
+    }
+  }
+
+  /** The models that are not shipped: path beside the study, then the file's text. */
+  public static SortedMap<String, String> modelFiles(Study study) {
+    SortedMap<String, String> files = new TreeMap<>();
+    for (ImpairmentChoice impairment : study.impairments()) {
+      String reference = reference(impairment.model());
+      if (isModelPath(reference)) {
+        files.put(reference, YAML.writeValueAsString(tree(impairment.model())));
+      }
+    }
+    return files;
+  }
+
+  /** Whether the value of {@code noise} is a path, not the id of a shipped model. */
+  static boolean isModelPath(String noise) {
+    return noise.contains("/") || noise.endsWith(".yaml") || noise.endsWith(".yml");
+  }
+
+  private static String reference(NoiseModel model) {
+    boolean shipped =
+        NoiseLibrary.shipped().stream()
+            .filter(known -> known.id().equals(model.id()))
+            .anyMatch(known -> known.with(model.parameters()).equals(model));
+    return shipped
+        ? model.id()
+        : MODEL_FOLDER
+            + "/"
+            + model.id()
+            + "-"
+            + model.fingerprint().substring(0, SHORT_HASH)
+            + ".yaml";
+  }
+
+  private static Map<String, Object> tree(Study study) {
+    Map<String, Object> tree = new LinkedHashMap<>();
+    tree.put("name", study.name());
+    tree.put("purpose", study.purpose());
+    tree.put("seed", study.seed());
+    tree.put("pictures", pictures(study.pictures(), true));
+    tree.put("impairments", study.impairments().stream().map(StudyWriter::impairment).toList());
+    tree.put("codecs", study.codecs().stream().map(StudyWriter::codec).toList());
+    tree.put("link", link(study.link()));
+    tree.put("replicates", study.replicates());
+    tree.put("measures", study.measures());
+    return tree;
+  }
+
+  private static Map<String, Object> pictures(PictureChoice pictures, boolean withManifest) {
+    Map<String, Object> tree = new LinkedHashMap<>();
+    if (withManifest) {
+      PictureChoice.ManifestFile manifest = pictures.manifest();
+      tree.put("manifest", manifest == null ? SHIPPED : manifest.written());
+    }
+    tree.put("select", pictures.select());
+    Object side = pictures.longestSide().isPresent() ? pictures.longestSide().getAsInt() : NONE;
+    tree.put("longest-side", side);
+    tree.put("planes", pictures.planes());
+    tree.put("signal-power", pictures.signalPower().id());
+    return tree;
+  }
+
+  private static Map<String, Object> impairment(ImpairmentChoice impairment) {
+    Map<String, Object> tree = new LinkedHashMap<>();
+    tree.put("noise", reference(impairment.model()));
+    tree.put("label", impairment.label());
+    tree.put("acts-on", impairment.site().id());
+    tree.putAll(numbers(impairment.model().parameters()));
+    tree.put(
+        impairment.axis(), impairment.severities().stream().map(StudyWriter::plainValue).toList());
+    return tree;
+  }
+
+  private static Map<String, Object> codec(Codec codec) {
+    Map<String, Object> tree = new LinkedHashMap<>();
+    codec.settings().forEach((key, value) -> tree.put(key, plainValue(value)));
+    tree.put("label", codec.label());
+    return tree;
+  }
+
+  private static Map<String, Object> link(Link link) {
+    Map<String, Object> tree = new LinkedHashMap<>();
+    tree.put("payload-bytes", link.payloadBytes());
+    tree.put("header-bytes", link.headerBytes());
+    tree.put("order", link.order().id());
+    return tree;
+  }
+
+  private static Map<String, Object> tree(NoiseModel model) {
+    Map<String, Object> tree = new LinkedHashMap<>();
+    tree.put("id", model.id());
+    tree.put("version", model.version());
+    tree.put("process", model.process());
+    tree.put("acts-on", model.actsOn().stream().map(Site::id).toList());
+    if (!model.parameters().isEmpty()) {
+      tree.put("parameters", numbers(model.parameters()));
+    }
+    tree.put("axes", model.axes());
+    if (!model.source().isBlank()) {
+      tree.put("source", model.source());
+    }
+    if (!model.notes().isBlank()) {
+      tree.put("notes", model.notes());
+    }
+    return tree;
+  }
+
+  private static Map<String, Object> numbers(Map<String, Double> named) {
+    Map<String, Object> tree = new LinkedHashMap<>();
+    new TreeMap<>(named).forEach((name, number) -> tree.put(name, plainValue(number)));
+    return tree;
+  }
+
+  /** Numbers in the one form that does not depend on the JDK. */
+  private static Object plainValue(Object value) {
+    if (value instanceof Double number) {
+      return new BigDecimal(Decimal.shortest(number));
+    }
+    return value instanceof List<?> list
+        ? list.stream().map(StudyWriter::plainValue).toList()
+        : value;
+  }
+}
