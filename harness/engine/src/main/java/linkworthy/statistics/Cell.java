@@ -31,6 +31,8 @@ import linkworthy.input.Require;
  * @param behindBestDb how far the mean PSNR lies below the row's best, in dB; 0 for the best
  * @param behindBestPAdjusted adjusted p value of that difference, or NaN
  * @param standing what may be said of that difference
+ * @throws IllegalArgumentException if a name is empty, there is no picture, a picture without
+ *     trial, or the outage rate is not 0 to 1
  */
 public record Cell(
     String impairment,
@@ -62,7 +64,10 @@ public record Cell(
     Require.notBlank(impairment, "impairment");
     Require.notBlank(codec, "codec");
     Require.inRange(pictures, 1, Integer.MAX_VALUE, "number of pictures");
-    Require.inRange((double) trials, pictures, Double.MAX_VALUE, "number of trials");
+    if (trials < pictures) {
+      throw new IllegalArgumentException(
+          "number of trials is " + trials + "; accepted: at least one for each picture");
+    }
     Require.inRange(outageRate, 0, 1, "outage rate");
   }
 }

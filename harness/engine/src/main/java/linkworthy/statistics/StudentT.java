@@ -26,10 +26,8 @@ public final class StudentT {
     Require.inRange(probability, 0, 1, "probability");
     TDistribution distribution = distribution(degreesOfFreedom);
     double t = distribution.inverseCumulativeProbability(probability);
-    if (Double.isInfinite(t)) {
-      return t;
-    }
-    return t + (probability - distribution.cumulativeProbability(t)) / distribution.density(t);
+    double density = distribution.density(t);
+    return density > 0 ? t + (probability - distribution.cumulativeProbability(t)) / density : t;
   }
 
   /** Half-width of the interval for the mean: {@code t s / sqrt(n)} with n - 1 degrees. */
