@@ -68,6 +68,16 @@ class ManifestTest {
   }
 
   @Test
+  void picturesAreTheSameWhenReadAtOnce() {
+    Manifest shipped = Manifest.shipped();
+    List<int[]> together =
+        shipped.entries().parallelStream().map(entry -> shipped.load(entry).samples()).toList();
+    for (int i = 0; i < together.size(); i++) {
+      assertThat(together.get(i)).isEqualTo(shipped.load(shipped.entries().get(i)).samples());
+    }
+  }
+
+  @Test
   void everyShippedPictureIsCredited() throws IOException {
     String credits = Files.readString(Path.of("ATTRIBUTION.md"));
     for (ManifestEntry entry : Manifest.shipped().entries()) {
