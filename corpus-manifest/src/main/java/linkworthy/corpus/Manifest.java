@@ -72,7 +72,7 @@ public final class Manifest {
       byte[] csv = in.readNBytes(MAX_BYTES + 1);
       return new Manifest(source, new PictureStore.Shipped(SHIPPED), csv);
     } catch (IOException e) {
-      throw new Unavailable("cannot read " + source + ": " + e.getMessage(), e);
+      throw Unavailable.cannot("read " + source, e);
     }
   }
 
@@ -92,7 +92,7 @@ public final class Manifest {
     } catch (NoSuchFileException e) {
       throw new BadInput(csv + " does not exist; accepted: a manifest in CSV", e);
     } catch (IOException e) {
-      throw new Unavailable("cannot read " + csv + ": " + e.getMessage(), e);
+      throw Unavailable.cannot("read " + csv, e);
     }
     Path parent = csv.toAbsolutePath().getParent();
     PictureStore store = new PictureStore.Folder(parent == null ? csv.toAbsolutePath() : parent);

@@ -56,23 +56,30 @@ final class ManifestCsv {
       List<String> columns = columns(records.next());
       List<ManifestEntry> entries = new ArrayList<>();
       Set<String> ids = new HashSet<>();
-      line = parser.getCurrentLineNumber() + 1;
       while (records.hasNext()) {
         CSVRecord row = records.next();
+        line = parser.getCurrentLineNumber() - breaks(row);
         ManifestEntry entry = entry(row, columns, line);
         if (!ids.add(entry.id())) {
           throw at(line, "id is '" + entry.id() + "', which stands twice; accepted: each id once");
         }
         entries.add(entry);
-        line = parser.getCurrentLineNumber() + 1;
       }
       if (entries.isEmpty()) {
         throw new BadInput(source + " lists no picture");
       }
       return List.copyOf(entries);
     } catch (UncheckedIOException e) {
-      throw at(line, "is not CSV: " + e.getMessage());
+      throw at(line + 1, "is not CSV: " + e.getMessage());
     }
+  }
+
+  /** How many lines a row has behind its first. */
+  private static long breaks(CSVRecord row) {
+    return row.stream()
+        .mapToLong(value -> value.lines().count())
+        .map(n -> Math.max(0, n - 1))
+        .sum();
   }
 
   private String decode(byte[] csv) {

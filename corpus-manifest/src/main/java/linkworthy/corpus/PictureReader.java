@@ -8,6 +8,7 @@ import java.awt.image.DataBuffer;
 import java.awt.image.IndexColorModel;
 import java.awt.image.Raster;
 import java.awt.image.SampleModel;
+import java.io.EOFException;
 import java.io.IOException;
 import java.util.ArrayList;
 import java.util.Arrays;
@@ -29,8 +30,8 @@ import org.jspecify.annotations.Nullable;
  * bits, the plain ramp of less than 8 bits as gray of that depth. Transparency, four-colour print,
  * signed and floating-point samples are refused.
  *
- * <p>The header is compared with what was announced before any sample is decoded, and a reader's
- * warning counts as damage.
+ * <p>The header is compared with what was announced before any sample is decoded. A reader's
+ * warning counts as damage, except for BMP, whose reader warns of short palettes only.
  */
 public final class PictureReader {
   private PictureReader() {}
@@ -85,10 +86,12 @@ public final class PictureReader {
     try (ImageInputStream in = new ByteArrayImageInputStream(stored.bytes())) {
       ImageReader reader = format.newReader();
       try {
-        reader.addIIOReadWarningListener(
-            (from, warning) -> {
-              throw new IllegalStateException(warning);
-            });
+        if (format != PictureFormat.BMP) {
+          reader.addIIOReadWarningListener(
+              (from, warning) -> {
+                throw new IllegalStateException(warning);
+              });
+        }
         reader.setInput(in, false, true);
         return work.with(reader, stored);
       } finally {
@@ -101,9 +104,18 @@ public final class PictureReader {
         | AssertionError
         | OutOfMemoryError
         | StackOverflowError e) {
-      String reason = e.getMessage() == null ? e.getClass().getSimpleName() : e.getMessage();
-      throw new Unavailable(unreadable(name) + "damaged " + format + ", " + reason, e);
+      throw new Unavailable(unreadable(name) + "damaged " + format + ", " + reason(e), e);
     }
+  }
+
+  private static String reason(Throwable problem) {
+    for (@Nullable Throwable cause = problem; cause != null; cause = cause.getCause()) {
+      if (cause instanceof EOFException) {
+        return "it ends too early";
+      }
+    }
+    String message = problem.getMessage();
+    return message == null ? problem.getClass().getSimpleName() : message;
   }
 
   private static String unreadable(String name) {
@@ -254,9 +266,12 @@ public final class PictureReader {
     }
   }
 
-  /** For each channel the level of every palette entry; a ramp's entries stand for themselves. */
+  /**
+   * For each channel the level of every palette entry; a ramp's entries stand for themselves. An
+   * index behind the last entry is left to fail as damage.
+   */
   private static int[][] levels(IndexColorModel palette) {
-    int[][] levels = new int[3][1 << palette.getPixelSize()];
+    int[][] levels = new int[3][palette.getMapSize()];
     boolean ramp = isRamp(palette);
     for (int i = 0; i < palette.getMapSize(); i++) {
       levels[0][i] = ramp ? i : palette.getRed(i);

@@ -45,7 +45,7 @@ interface PictureStore {
       } catch (NoSuchFileException e) {
         return Optional.empty();
       } catch (IOException e) {
-        throw new Unavailable("picture " + describe(file) + " cannot be read: " + reason(e), e);
+        throw Unavailable.cannot("read picture " + describe(file), e);
       }
     }
 
@@ -74,12 +74,8 @@ interface PictureStore {
       } catch (InvalidPathException e) {
         throw new BadInput("file is '" + file + "'; this system has no such names", e);
       } catch (IOException e) {
-        throw new Unavailable("picture " + describe(file) + " cannot be read: " + reason(e), e);
+        throw Unavailable.cannot("read picture " + describe(file), e);
       }
-    }
-
-    private static String reason(IOException e) {
-      return e.getClass().getSimpleName() + " " + e.getMessage();
     }
   }
 
@@ -90,8 +86,7 @@ interface PictureStore {
       try (InputStream in = Manifest.class.getResourceAsStream(prefix + file)) {
         return in == null ? Optional.empty() : Optional.of(in.readNBytes(limit));
       } catch (IOException e) {
-        throw new Unavailable(
-            "picture " + describe(file) + " cannot be read: " + e.getMessage(), e);
+        throw Unavailable.cannot("read picture " + describe(file), e);
       }
     }
 

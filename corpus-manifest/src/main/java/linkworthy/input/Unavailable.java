@@ -1,5 +1,9 @@
 package linkworthy.input;
 
+import java.io.IOException;
+import java.nio.file.AccessDeniedException;
+import java.nio.file.FileSystemException;
+
 /**
  * The machine refused: a full disk, a folder that cannot be written, a picture that cannot be read.
  * The message is one line. The command line ends with exit code 3.
@@ -13,6 +17,25 @@ public final class Unavailable extends RuntimeException {
 
   public Unavailable(String message, Throwable cause) {
     super(OneLine.of(message), cause);
+  }
+
+  /**
+   * The message {@code cannot <task>: <reason>}, where the reason is readable even for the
+   * exceptions that carry no more than a file's name.
+   *
+   * @param task what was tried, as in {@code read my.csv}
+   */
+  public static Unavailable cannot(String task, IOException problem) {
+    return new Unavailable("cannot " + task + ": " + reason(problem), problem);
+  }
+
+  private static String reason(IOException problem) {
+    if (problem instanceof AccessDeniedException) {
+      return "permission denied";
+    }
+    String reason =
+        problem instanceof FileSystemException file ? file.getReason() : problem.getMessage();
+    return reason == null ? problem.getClass().getSimpleName() : reason;
   }
 
   @Override

@@ -77,7 +77,7 @@ public final class YamlNode {
     } catch (CharacterCodingException e) {
       throw new BadInput(file + " is not UTF-8 text; accepted: a YAML file in UTF-8", e);
     } catch (IOException e) {
-      throw new Unavailable("cannot read " + file + ": " + e.getMessage(), e);
+      throw Unavailable.cannot("read " + file, e);
     }
   }
 
