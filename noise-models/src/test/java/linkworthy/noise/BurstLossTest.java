@@ -66,6 +66,11 @@ class BurstLossTest extends NoiseProcessContractTest {
                 .at(new Severity(Severity.SNR_DB, snr), Map.of(), Site.PACKETS, meanSquare);
     assertThat(impairment.equivalentNoiseVariance())
         .isCloseTo(lossRate * SIGNAL.variance(), within(1e-9));
+    assertThat(
+            new BurstLoss()
+                .at(new Severity("loss-rate", lossRate), Map.of(), Site.PACKETS, meanSquare)
+                .equivalentNoiseVariance())
+        .isEqualTo(lossRate * SIGNAL.variance());
     assertThat(lost(impairment, Measured.stream(32), 2000))
         .isEqualTo(
             lost(
