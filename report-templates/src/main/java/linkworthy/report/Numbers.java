@@ -40,6 +40,11 @@ final class Numbers {
     return rounded.setScale(Math.max(0, 3 - integerDigits), RoundingMode.HALF_EVEN).toPlainString();
   }
 
+  /** Bits per pixel in a narrow column: two decimals, three below 0.1. */
+  static String narrowBits(double value) {
+    return fixed(value, value < 0.0995 ? 3 : 2);
+  }
+
   /** A value that a person typed: at most six significant digits, no trailing zeros. */
   static String typed(double value) {
     if (!Double.isFinite(value) || value == 0) {
