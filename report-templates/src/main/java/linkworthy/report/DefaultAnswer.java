@@ -259,8 +259,10 @@ final class DefaultAnswer {
               + (Numbers.db(cheapest.behind(best(scores))) + " dB behind the best."));
       reasons.add(
           front.size()
-              + (" of " + scores.size() + " codecs are non-dominated: no other one sends fewer ")
-              + "bits at no lower mean PSNR.");
+              + (" of "
+                  + scores.size()
+                  + " codecs are non-dominated: no other is at least as cheap and as ")
+              + "good, and better in one of the two.");
     }
     int left = grid.codecs().size() - scores.size();
     if (left > 0) {

@@ -117,6 +117,11 @@ class ReportRendererTest {
         .contains("30\u202f408 of 30\u202f408 planned");
     given.noiseModels().forEach(m -> assertThat(provenance).contains(m.name(), m.fingerprint()));
     given.settings().forEach(s -> assertThat(provenance).contains(s.name(), s.value()));
+    String severities = "//caption[@id='severities-caption']/../tbody/tr";
+    assertThat(shown.texts(severities)).hasSize(18);
+    // 2400 / 10^2 grey levels squared, and 97 % of it as the sample has it
+    assertThat(shown.texts(severities + "[3]/*"))
+        .containsExactly("gaussian on samples", "SNR 20 dB", "20.00", "24.0", "23.3");
     assertThat(provenance).contains("field-12", "256 \u00d7 192", "CC BY 4.0");
     assertThat(shown.texts("//section[@id='provenance']//a/@href")).hasSize(12);
   }
