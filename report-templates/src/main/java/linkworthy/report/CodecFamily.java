@@ -54,6 +54,7 @@ record CodecFamily(int index, String name, String common, List<Member> members) 
             .toList();
     boolean split =
         codecs.size() > 1
+            && codecs.stream().allMatch(codec -> codec.label().startsWith(name + " "))
             && labels.stream().distinct().count() == codecs.size()
             && labels.stream().noneMatch(String::isEmpty);
     List<Member> members = new ArrayList<>();

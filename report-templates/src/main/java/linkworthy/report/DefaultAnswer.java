@@ -4,7 +4,6 @@ import java.util.ArrayList;
 import java.util.Comparator;
 import java.util.List;
 import java.util.Optional;
-import java.util.stream.Collectors;
 
 /** Finds and words the answer that {@link Answer#from} describes. */
 final class DefaultAnswer {
@@ -233,38 +232,37 @@ final class DefaultAnswer {
   }
 
   private List<String> reasons(List<Score> scores) {
+    if (grid.codecs().size() == 1) {
+      return List.of();
+    }
     List<String> reasons = new ArrayList<>();
     for (FigureGrid.Noise noise : grid.noises()) {
       List<Score> here = scores(noise.conditions());
-      if (here.size() > 1) {
+      if (!here.isEmpty()) {
         Score best = best(here);
         reasons.add(
-            "Best mean PSNR under "
+            "Best under "
                 + (noise.title() + ": " + best.priced() + ", " + Numbers.db(best.psnr()) + " dB."));
       }
     }
     List<Score> front =
         scores.stream()
-            .filter(
-                s ->
-                    scores.stream()
-                        .noneMatch(o -> Dominance.over(o.bits(), o.psnr(), s.bits(), s.psnr())))
             .filter(s -> Double.isFinite(s.bits()))
+            .filter(s -> scores.stream().noneMatch(o -> dominates(o, s)))
             .sorted(Comparator.comparingDouble(Score::bits))
             .toList();
-    if (scores.size() > 1 && !front.isEmpty()) {
+    if (!front.isEmpty()) {
       Score cheapest = front.get(0);
       reasons.add(
           "Cheapest: "
               + (cheapest.priced() + ", " + Numbers.db(cheapest.psnr()) + " dB, ")
               + (Numbers.db(cheapest.behind(best(scores))) + " dB behind the best."));
       reasons.add(
-          "No other codec is both cheaper and better than: "
-              + front.stream().map(Score::label).collect(Collectors.joining("; "))
-              + ".");
-    }
-    if (conditions.size() > 1) {
-      reasons.add("Every condition weighs the same; another mix of conditions may choose another.");
+          front.size()
+              + (" of "
+                  + scores.size()
+                  + " codecs are non-dominated: no other is at least as cheap and as ")
+              + "good, and better in one of the two.");
     }
     int left = grid.codecs().size() - scores.size();
     if (left > 0) {
@@ -273,5 +271,9 @@ final class DefaultAnswer {
               + " a figure in some condition and did not compete.");
     }
     return reasons;
+  }
+
+  private static boolean dominates(Score one, Score other) {
+    return Dominance.over(one.bits(), one.psnr(), other.bits(), other.psnr());
   }
 }

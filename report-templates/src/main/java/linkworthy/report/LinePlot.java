@@ -24,13 +24,13 @@ record LinePlot(
   static final int WIDTH = 300;
   static final int HEIGHT = 280;
   static final int LEFT = 34;
-  static final int RIGHT = 248;
+  static final int RIGHT = 234;
   static final int TOP = 44;
   static final int BOTTOM = 236;
 
   private static final int CLEAN_AT = 50;
   private static final int NOISY_FROM = 68;
-  private static final int LONGEST_LABEL = 7;
+  private static final int LONGEST_LABEL = 6;
 
   /** A place on an axis and what is written there. */
   record Tick(String at, String label) {}
@@ -118,7 +118,7 @@ record LinePlot(
       List<Tick> ticks = new ArrayList<>();
       Axis x = x();
       x.ticks().forEach(v -> ticks.add(tick(x.at(v), Numbers.typed(v))));
-      List<Tick> apart = spaced(ticks, 30);
+      List<Tick> apart = spaced(ticks);
       grid.clean().ifPresent(c -> apart.add(0, tick(CLEAN_AT, "clean")));
       return apart;
     }
@@ -131,7 +131,7 @@ record LinePlot(
           ticks.add(tick(across(condition), Numbers.typed(snr)));
         }
       }
-      return spaced(ticks, 22);
+      return spaced(ticks);
     }
 
     List<Tick> vertical() {
@@ -143,14 +143,16 @@ record LinePlot(
       return new Tick(Numbers.coordinate(at), label);
     }
 
-    private static List<Tick> spaced(List<Tick> ticks, double apart) {
+    /** Leaves out the ticks whose label would touch the one before. */
+    private static List<Tick> spaced(List<Tick> ticks) {
       List<Tick> kept = new ArrayList<>();
       double last = Double.NEGATIVE_INFINITY;
       for (Tick tick : ticks) {
         double at = Double.parseDouble(tick.at());
-        if (at - last >= apart) {
+        double half = 3.4 * tick.label().length();
+        if (at - half >= last + 4) {
           kept.add(tick);
-          last = at;
+          last = at + half;
         }
       }
       return kept;
@@ -255,7 +257,7 @@ record LinePlot(
     }
 
     /** Labels at the right ends, moved apart where they would touch. */
-    private static List<Line> placed(List<Draft> drafts) {
+    private List<Line> placed(List<Draft> drafts) {
       List<Draft> order =
           drafts.stream()
               .filter(d -> !Double.isNaN(d.endY()))
@@ -263,28 +265,44 @@ record LinePlot(
               .toList();
       double[] at = apart(order.stream().mapToDouble(Draft::endY).toArray());
       List<Line> lines = new ArrayList<>();
-      for (Draft draft : drafts) {
+      for (int i = 0; i < drafts.size(); i++) {
+        Draft draft = drafts.get(i);
         int place = order.indexOf(draft);
         if (place < 0) {
-          lines.add(draft.line("", ""));
+          lines.add(draft.line("", "", ""));
           continue;
         }
         String leader =
-            "M" + point(draft.endX() + 5, draft.endY()) + "L" + point(RIGHT + 10, at[place]);
-        lines.add(draft.line(leader, Numbers.coordinate(at[place] + 4)));
+            "M" + point(draft.endX() + 5, draft.endY()) + "L" + point(RIGHT + 7, at[place]);
+        String sign = Shape.at(members.get(i).index(), RIGHT + 12, at[place]);
+        lines.add(draft.line(leader, sign, Numbers.coordinate(at[place] + 4)));
       }
       return lines;
     }
 
+    /**
+     * The places nearest to the wanted ones, in the least-squares sense, that keep a gap: isotonic
+     * regression by pooling adjacent violators, then moved up where it would leave the frame.
+     */
     private static double[] apart(double[] wanted) {
       double gap = 13;
-      double[] at = wanted.clone();
-      for (int i = 1; i < at.length; i++) {
-        at[i] = Math.max(at[i], at[i - 1] + gap);
+      List<double[]> pools = new ArrayList<>();
+      for (int i = 0; i < wanted.length; i++) {
+        double[] pool = {wanted[i] - i * gap, 1};
+        while (!pools.isEmpty() && pools.get(pools.size() - 1)[0] > pool[0]) {
+          double[] last = pools.remove(pools.size() - 1);
+          double size = last[1] + pool[1];
+          pool = new double[] {(last[0] * last[1] + pool[0] * pool[1]) / size, size};
+        }
+        pools.add(pool);
       }
-      for (int i = at.length - 1; i >= 0; i--) {
-        double most = i == at.length - 1 ? BOTTOM : at[i + 1] - gap;
-        at[i] = Math.min(at[i], most);
+      double[] at = new double[wanted.length];
+      int i = 0;
+      for (double[] pool : pools) {
+        for (int k = 0; k < pool[1]; k++, i++) {
+          double most = BOTTOM - (wanted.length - 1 - i) * gap;
+          at[i] = Math.min(pool[0] + i * gap, most);
+        }
       }
       return at;
     }
@@ -299,9 +317,9 @@ record LinePlot(
       String label,
       double endX,
       double endY) {
-    Line line(String leader, String labelAt) {
+    Line line(String leader, String sign, String labelAt) {
       return new Line(
-          css, path, whiskers, markers, leader, labelAt.isEmpty() ? "" : label, labelAt);
+          css, path, whiskers, markers + sign, leader, labelAt.isEmpty() ? "" : label, labelAt);
     }
   }
 }

@@ -98,8 +98,8 @@ record MatrixTable(String part, List<Head> families, List<Column> columns, List<
     if (bits.length == 0) {
       return Numbers.significant(Double.NaN);
     }
-    String least = Numbers.significant(bits[0]);
-    String most = Numbers.significant(bits[bits.length - 1]);
+    String least = Numbers.narrowBits(bits[0]);
+    String most = Numbers.narrowBits(bits[bits.length - 1]);
     return least.equals(most) ? most : least + "\u2013" + most;
   }
 

@@ -3,11 +3,10 @@ package linkworthy.report;
 import java.math.BigDecimal;
 import java.math.MathContext;
 import java.math.RoundingMode;
-import java.util.Locale;
 
 /**
- * Numbers as a reader sees them, the same under every locale: decimal point, no grouping sign but a
- * narrow no-break space in counts. NaN is {@code n/a}, infinity is {@code inf}.
+ * Numbers as a reader sees them, the same under every locale and Java release: decimal point, no
+ * grouping sign but a narrow no-break space in counts. NaN is {@code n/a}, infinity is {@code inf}.
  */
 final class Numbers {
   private static final String NOT_AVAILABLE = "n/a";
@@ -38,6 +37,11 @@ final class Numbers {
     BigDecimal rounded = new BigDecimal(value).round(new MathContext(3, RoundingMode.HALF_EVEN));
     int integerDigits = rounded.precision() - rounded.scale();
     return rounded.setScale(Math.max(0, 3 - integerDigits), RoundingMode.HALF_EVEN).toPlainString();
+  }
+
+  /** Bits per pixel in a narrow column: two decimals, three below 0.1. */
+  static String narrowBits(double value) {
+    return fixed(value, value < 0.0995 ? 3 : 2);
   }
 
   /** A value that a person typed: at most six significant digits, no trailing zeros. */
@@ -74,8 +78,7 @@ final class Numbers {
     if (!Double.isFinite(value)) {
       return special(value);
     }
-    String text = String.format(Locale.ROOT, "%." + decimals + "f", value);
-    return text.matches("-0\\.?0*") ? text.substring(1) : text;
+    return new BigDecimal(value).setScale(decimals, RoundingMode.HALF_UP).toPlainString();
   }
 
   private static String special(double value) {

@@ -149,12 +149,13 @@ record RatePlot(
   private static void place(
       Point point, double x, double y, List<double[]> taken, List<Label> labels) {
     String text = point.member().label();
-    double width = 6.2 * text.codePointCount(0, text.length());
+    double width = (point.front() ? 7.2 : 6.4) * text.codePointCount(0, text.length());
+    double near = point.front() ? 10 : 7;
     double[][] boxes = {
-      {x + 7, y - 6, width, 12},
-      {x - 7 - width, y - 6, width, 12},
-      {x - width / 2, y - 20, width, 12},
-      {x - width / 2, y + 8, width, 12},
+      {x + near, y - 6, width, 12},
+      {x - near - width, y - 6, width, 12},
+      {x - width / 2, y - 13 - near, width, 12},
+      {x - width / 2, y + near + 1, width, 12},
     };
     for (double[] box : boxes) {
       boolean inside =

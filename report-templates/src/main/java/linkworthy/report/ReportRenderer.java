@@ -8,6 +8,7 @@ import java.security.MessageDigest;
 import java.security.NoSuchAlgorithmException;
 import java.util.Base64;
 import java.util.Locale;
+import java.util.regex.Pattern;
 import org.thymeleaf.TemplateEngine;
 import org.thymeleaf.context.Context;
 import org.thymeleaf.templatemode.TemplateMode;
@@ -20,6 +21,8 @@ import org.thymeleaf.templateresolver.ClassLoaderTemplateResolver;
  */
 public final class ReportRenderer {
   private static final String FOLDER = "linkworthy/report/";
+
+  private static final Pattern REFERENCE = Pattern.compile("&#(x[0-9a-f]{1,6}|[0-9]{1,7});");
 
   private final TemplateEngine engine = new TemplateEngine();
   private final String style = resource("report.css").replace("\r", "");
@@ -52,13 +55,24 @@ public final class ReportRenderer {
     return printable(engine.process("report.html", context));
   }
 
+  /** The template engine writes some characters as references, so those are looked through too. */
   private static String printable(String html) {
-    StringBuilder text = new StringBuilder(html.length());
-    html.codePoints()
-        .map(c -> isPrintable(c) ? c : 0xFFFD)
+    String text =
+        REFERENCE
+            .matcher(html)
+            .replaceAll(match -> isPrintable(codePoint(match.group(1))) ? match.group() : "\ufffd");
+    StringBuilder printable = new StringBuilder(text.length());
+    text.codePoints()
         .filter(c -> c != '\r')
-        .forEach(text::appendCodePoint);
-    return text.toString();
+        .map(c -> isPrintable(c) ? c : 0xFFFD)
+        .forEach(printable::appendCodePoint);
+    return printable.toString();
+  }
+
+  private static int codePoint(String number) {
+    return number.startsWith("x")
+        ? Integer.parseInt(number.substring(1), 16)
+        : Integer.parseInt(number);
   }
 
   private static boolean isPrintable(int c) {

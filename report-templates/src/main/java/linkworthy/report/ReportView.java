@@ -17,6 +17,7 @@ record ReportView(
     List<LossTable> lossTables,
     List<OutageTable> outageTables,
     String outageSentence,
+    List<SeverityRow> severities,
     List<Fact> provenance) {
 
   /** An impairment with its tables and its panels. */
@@ -51,6 +52,9 @@ record ReportView(
   /** Outage rates of an impairment that has any. */
   record OutageTable(String title, List<MatrixTable> tables) {}
 
+  /** A condition as it was asked for and as it came out. */
+  record SeverityRow(String noise, String given, String snr, String equivalent, String realised) {}
+
   static ReportView of(ReportPage page) {
     FigureGrid grid = new FigureGrid(page.figures());
     List<CodecFamily> families = CodecFamily.of(grid.codecs());
@@ -68,6 +72,7 @@ record ReportView(
         lossTables(grid, noises),
         outages,
         outageSentence(page, outages),
+        severities(noises),
         provenance(page.provenance()));
   }
 
@@ -215,6 +220,22 @@ record ReportView(
             + Numbers.count(trials, "trial", "trials")
             + "; that does not show that none can happen."
         : "Outages were seen under the noises tabled below, and under no other.";
+  }
+
+  private static List<SeverityRow> severities(List<FigureGrid.Noise> noises) {
+    List<SeverityRow> rows = new ArrayList<>();
+    for (FigureGrid.Noise noise : noises) {
+      for (Condition condition : noise.conditions()) {
+        rows.add(
+            new SeverityRow(
+                noise.title(),
+                MatrixTable.given(condition),
+                Numbers.db(condition.snrDb()),
+                Numbers.significant(condition.equivalentNoiseVariance()),
+                Numbers.significant(condition.realisedNoiseVariance())));
+      }
+    }
+    return rows;
   }
 
   private static List<Fact> provenance(Provenance from) {

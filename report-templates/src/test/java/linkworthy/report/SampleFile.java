@@ -4,7 +4,7 @@ import java.io.IOException;
 import java.nio.file.Files;
 import java.nio.file.Path;
 
-/** Writes the sample page, to be looked at. */
+/** Writes the sample page to the file named by the first argument, to be looked at. */
 final class SampleFile {
   private SampleFile() {}
 

@@ -1,0 +1,360 @@
+package linkworthy.report;
+
+import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.assertThatThrownBy;
+
+import java.nio.charset.StandardCharsets;
+import java.security.MessageDigest;
+import java.util.ArrayList;
+import java.util.Base64;
+import java.util.List;
+import java.util.Locale;
+import org.junit.jupiter.api.Test;
+import org.junit.jupiter.params.ParameterizedTest;
+import org.junit.jupiter.params.provider.ValueSource;
+
+class ReportRendererTest {
+  private static final String HOSTILE = "<script>alert(1)</script>";
+  private static final Condition GAUSSIAN =
+      SamplePages.condition("gaussian", "samples", "snr-db", 20, 20);
+
+  @Test
+  void everyFigureIsInItsCell() {
+    ReportPage page = SamplePages.full();
+    RenderedPage shown = RenderedPage.of(page);
+    FigureGrid grid = new FigureGrid(page.figures());
+    List<CodecFamily> families = CodecFamily.of(grid.codecs());
+    List<String> expected = new ArrayList<>();
+    List<String> intervals = new ArrayList<>();
+    for (FigureGrid.Noise noise : grid.noises()) {
+      List<Condition> rows = new ArrayList<>(grid.clean().stream().toList());
+      rows.addAll(noise.conditions());
+      for (Condition row : rows) {
+        for (CodecFamily family : families) {
+          for (CodecFamily.Member member : family.members()) {
+            Figure.Quality quality = grid.find(row, member.codec()).orElseThrow().quality();
+            expected.add(Numbers.db(quality.psnrMeanDb()));
+            intervals.add(
+                "\u00b1"
+                    + Numbers.db(quality.pictureHalfWidthDb())
+                    + (" (" + Numbers.db(quality.noiseHalfWidthDb()) + ")"));
+          }
+        }
+      }
+    }
+    String cells = "//section[@class='noise']//table//tbody//td";
+    assertThat(expected).hasSize(3 * 7 * 14);
+    assertThat(shown.texts(cells + "//b")).isEqualTo(expected);
+    assertThat(shown.texts(cells + "/small")).isEqualTo(intervals);
+  }
+
+  @Test
+  void rowsAndColumnsAreNamed() {
+    RenderedPage shown = RenderedPage.of(SamplePages.full());
+    String table = "//section[@id='noise-1']//table";
+    assertThat(shown.texts(table + "//tbody//th/span"))
+        .containsExactly(
+            "clean", "SNR 30 dB", "SNR 25 dB", "SNR 20 dB", "SNR 15 dB", "SNR 10 dB", "SNR 5 dB");
+    // 2400 * 10^(-SNR/10) grey levels squared, worked out by hand
+    assertThat(shown.texts(table + "//tbody//th/small"))
+        .containsExactly(
+            "var. 0", "var. 2.40", "var. 7.59", "var. 24.0", "var. 75.9", "var. 240", "var. 759");
+    assertThat(shown.texts(table + "//tr[@class='families']/th"))
+        .containsExactly("pca rows step8", "pca blocks8 step8", "dct blocks8 step8", "mean rows");
+    assertThat(shown.texts(table + "//tr[@class='codecs']/th[position()>1]"))
+        .containsExactly(
+            "K4", "K8", "K16", "K32", "K4", "K8", "K16", "K32", "K4", "K8", "K16", "K32", "step16",
+            "step32");
+  }
+
+  @Test
+  void standingIsShownByMarkWordAndClass() {
+    ReportPage page = SamplePages.full();
+    RenderedPage shown = RenderedPage.of(page);
+    long clean = count(page, Standing.BEST, true);
+    long noisy = count(page, Standing.BEST, false);
+    String best = "//section[@class='noise']//td[contains(@class, 'best')]";
+    // the clean row stands in each of the three tables
+    assertThat(shown.texts(best))
+        .hasSize((int) (3 * clean + noisy))
+        .allMatch(t -> t.contains("\u25cf"));
+    assertThat(shown.texts(best + "//span[@class='spoken']")).allMatch(t -> t.equals("best"));
+    assertThat(shown.texts("//section[@class='noise']//td[contains(@class, 'not-dist')]"))
+        .hasSize(
+            (int)
+                (3 * count(page, Standing.NOT_DISTINGUISHABLE, true)
+                    + count(page, Standing.NOT_DISTINGUISHABLE, false)))
+        .allMatch(t -> t.startsWith("\u25cb"));
+  }
+
+  private static long count(ReportPage page, Standing standing, boolean clean) {
+    return page.figures().stream()
+        .filter(f -> f.condition().isClean() == clean)
+        .filter(f -> f.comparison().standing() == standing)
+        .count();
+  }
+
+  @Test
+  void questionAnswerAndConfidenceComeFirst() {
+    ReportPage page = SamplePages.full();
+    RenderedPage shown = RenderedPage.of(page);
+    assertThat(shown.text("//h1")).isEqualTo(page.question());
+    assertThat(shown.text("//main/*[1]//p[@class='sentence']")).isEqualTo(page.answer().sentence());
+    assertThat(shown.text("//main/*[1]//p[@class='confidence']/span"))
+        .isEqualTo(page.answer().confidence());
+    assertThat(shown.text("//main/*[2]/@id")).isEqualTo("tables");
+  }
+
+  @Test
+  void provenanceCreditsAndModelsAreListed() {
+    RenderedPage shown = RenderedPage.of(SamplePages.full());
+    String provenance = shown.text("//section[@id='provenance']");
+    Provenance given = SamplePages.provenance();
+    assertThat(provenance)
+        .contains(given.program().version(), given.program().java())
+        .contains(given.program().operatingSystem(), given.run().start(), given.run().end())
+        .contains(given.fingerprints().study(), given.fingerprints().corpus())
+        .contains("30\u202f408 of 30\u202f408 planned");
+    given.noiseModels().forEach(m -> assertThat(provenance).contains(m.name(), m.fingerprint()));
+    given.settings().forEach(s -> assertThat(provenance).contains(s.name(), s.value()));
+    String severities = "//caption[@id='severities-caption']/../tbody/tr";
+    assertThat(shown.texts(severities)).hasSize(18);
+    // 2400 / 10^2 grey levels squared, and 97 % of it as the sample has it
+    assertThat(shown.texts(severities + "[3]/*"))
+        .containsExactly("gaussian on samples", "SNR 20 dB", "20.00", "24.0", "23.3");
+    assertThat(provenance).contains("field-12", "256 \u00d7 192", "CC BY 4.0");
+    assertThat(shown.texts("//section[@id='provenance']//a/@href")).hasSize(12);
+  }
+
+  @Test
+  void everyPlotHasATitleADescriptionAndAFamily() {
+    RenderedPage shown = RenderedPage.of(SamplePages.full());
+    // three noises of four families, and a rate plot for each noise
+    assertThat(shown.texts("//*[local-name()='svg'][@role='img']")).hasSize(15);
+    assertThat(shown.texts("//*[local-name()='svg']/*[local-name()='title']"))
+        .hasSize(15)
+        .doesNotHaveDuplicates();
+    assertThat(shown.texts("//*[local-name()='svg']/*[local-name()='desc']"))
+        .hasSize(15)
+        .noneMatch(String::isEmpty);
+    assertThat(shown.texts("//@id")).doesNotHaveDuplicates();
+  }
+
+  @Test
+  void theRingsAreTheNonDominatedSet() {
+    List<Figure> figures =
+        List.of(
+            SamplePages.bare(GAUSSIAN, SamplePages.codec("dct", "rows", "K4"), 25, 0.5),
+            SamplePages.bare(GAUSSIAN, SamplePages.codec("dct", "rows", "K8"), 24, 0.7),
+            SamplePages.bare(GAUSSIAN, SamplePages.codec("dct", "rows", "K16"), 28, 0.9));
+    RenderedPage shown = RenderedPage.of(SamplePages.page(figures));
+    assertThat(shown.texts("//*[@class='ring']")).hasSize(2);
+    assertThat(shown.texts("//section[@id='rate']//tbody/tr/td[last()]"))
+        .containsExactly("\u25ce no", "yes", "\u25ce no");
+  }
+
+  @Test
+  void textIsEscapedWhereverItComesFrom() {
+    CodecColumn codec = new CodecColumn(HOSTILE, HOSTILE, HOSTILE, HOSTILE, HOSTILE);
+    Condition condition = new Condition(HOSTILE, HOSTILE, HOSTILE, 1, 9, 9, 20);
+    Fact fact = new Fact(HOSTILE, HOSTILE);
+    ReportPage page =
+        new ReportPage(
+            HOSTILE,
+            HOSTILE,
+            new Answer(HOSTILE, HOSTILE, List.of(HOSTILE), List.of(HOSTILE)),
+            List.of(SamplePages.bare(condition, codec, 30, 1)),
+            0.95,
+            List.of(new PictureCredit(HOSTILE, 1, 1, HOSTILE, HOSTILE, "https://x/\"onload=\"a")),
+            new Provenance(
+                new Provenance.Program(HOSTILE, HOSTILE, HOSTILE),
+                new Provenance.Fingerprints(HOSTILE, HOSTILE),
+                List.of(new Provenance.NoiseModel(HOSTILE, HOSTILE, HOSTILE)),
+                1,
+                new Provenance.Run(HOSTILE, HOSTILE, 1, 1),
+                List.of(fact)));
+    String html = new ReportRenderer().render(page);
+    assertThat(html).doesNotContain("<script").contains("&lt;script&gt;");
+    RenderedPage shown = new RenderedPage(html);
+    assertThat(shown.text("//h1")).isEqualTo(HOSTILE);
+    assertThat(shown.texts("//@onload")).isEmpty();
+  }
+
+  @Test
+  void onlyWebAddressesBecomeLinks() {
+    for (String source : List.of("javascript:alert(1)", "data:text/html,x", "own picture")) {
+      PictureCredit picture = new PictureCredit("a", 1, 1, "CC0", "me", source);
+      ReportPage page = SamplePages.full();
+      RenderedPage shown =
+          RenderedPage.of(
+              new ReportPage(
+                  page.title(),
+                  page.question(),
+                  page.answer(),
+                  List.of(),
+                  0.95,
+                  List.of(picture),
+                  page.provenance()));
+      assertThat(shown.texts("//section[@id='provenance']//a")).isEmpty();
+      assertThat(shown.text("//section[@id='provenance']")).contains(source);
+    }
+  }
+
+  @Test
+  void charactersThatNoPageMayHoldAreReplaced() {
+    String label = "a\u0000b\u0008c\ud800d\uffff";
+    Figure figure = SamplePages.bare(GAUSSIAN, new CodecColumn(label, "", "", "", ""), 30, 1);
+    RenderedPage shown = RenderedPage.of(SamplePages.page(List.of(figure)));
+    assertThat(shown.texts("//section[@id='rate']//tbody//th"))
+        .containsExactly("a\ufffdb\ufffdc\ufffdd\ufffd");
+  }
+
+  @Test
+  void whatIsNotAvailableIsNotZero() {
+    CodecColumn codec = SamplePages.codec("dct", "rows", "K4");
+    CodecColumn missing = SamplePages.codec("dct", "rows", "K8");
+    Figure none =
+        new Figure(
+            GAUSSIAN,
+            codec,
+            new Figure.Evidence(1, 1),
+            new Figure.Quality(
+                Double.NaN, Double.NaN, Double.NaN, Double.NaN, Double.NaN, Double.NaN),
+            Double.NaN,
+            Double.NaN,
+            new Figure.Comparison(Double.NaN, Double.NaN, Standing.UNTESTED));
+    Figure lossless = SamplePages.bare(Condition.clean(), codec, Double.POSITIVE_INFINITY, 8);
+    Figure clean = SamplePages.bare(Condition.clean(), missing, 40, 2);
+    RenderedPage shown = RenderedPage.of(SamplePages.page(List.of(lossless, clean, none)));
+    assertThat(shown.texts("//section[@class='noise']//tbody//td//b"))
+        .containsExactly("inf", "40.00", "n/a", "n/a");
+    assertThat(shown.texts("//section[@class='noise']//tbody//td/small"))
+        .containsExactly("\u00b1n/a (n/a)", "\u00b1n/a (n/a)", "\u00b1n/a (n/a)", "not measured");
+    assertThat(shown.texts("//section[@id='losses']//tbody//td"))
+        .containsExactly("n/a", "n/a", "n/a", "n/a", "n/a");
+  }
+
+  @ParameterizedTest
+  @ValueSource(strings = {"de-DE", "tr-TR", "ar-EG", "hi-IN"})
+  void noLocaleChangesAByte(String tag) {
+    String reference = under(Locale.US);
+    assertThat(under(Locale.forLanguageTag(tag))).isEqualTo(reference);
+  }
+
+  private static String under(Locale locale) {
+    Locale before = Locale.getDefault();
+    try {
+      Locale.setDefault(locale);
+      return new ReportRenderer().render(SamplePages.full());
+    } finally {
+      Locale.setDefault(before);
+    }
+  }
+
+  @Test
+  void thePolicyAdmitsTheStyleSheetAndNothingElse() throws Exception {
+    RenderedPage shown = RenderedPage.of(SamplePages.full());
+    String html = new ReportRenderer().render(SamplePages.full());
+    String style = html.substring(html.indexOf("<style>") + 7, html.indexOf("</style>"));
+    String hash =
+        Base64.getEncoder()
+            .encodeToString(
+                MessageDigest.getInstance("SHA-256")
+                    .digest(style.getBytes(StandardCharsets.UTF_8)));
+    assertThat(shown.text("//meta[@http-equiv='Content-Security-Policy']/@content"))
+        .isEqualTo(
+            "default-src 'none'; style-src 'sha256-"
+                + (hash + "'; img-src data:; base-uri 'none'; form-action 'none'"));
+    assertThat(shown.texts("//@style | //@src | //script | //iframe | //object | //form"))
+        .isEmpty();
+    assertThat(style).doesNotContain("url(", "@import");
+    assertThat(html).doesNotContain(" th:", "\r");
+  }
+
+  @Test
+  void fortyCodecsAreSharedOutAmongTables() {
+    List<Figure> figures = new ArrayList<>();
+    for (Condition condition : List.of(Condition.clean(), GAUSSIAN)) {
+      for (int i = 0; i < 40; i++) {
+        CodecColumn codec = SamplePages.codec("pca", "rows", "K" + (i + 1) + " step8");
+        figures.add(SamplePages.bare(condition, codec, 20 + i / 4.0, 0.1 + i / 10.0));
+      }
+    }
+    RenderedPage shown = RenderedPage.of(SamplePages.page(figures));
+    assertThat(shown.texts("//section[@class='noise']//table")).hasSize(3);
+    assertThat(shown.texts("//section[@class='noise']//tr[@class='codecs']/th[position()>1]"))
+        .hasSize(40)
+        .doesNotHaveDuplicates();
+    // at most six lines a panel: seven panels
+    assertThat(shown.texts("//section[@class='noise']//figure")).hasSize(7);
+  }
+
+  @Test
+  void longLabelsGetLettersInThePlotsAndAKey() {
+    String label = "our present vendor's codec, ".repeat(8).strip();
+    List<Figure> figures =
+        List.of(
+            SamplePages.bare(GAUSSIAN, new CodecColumn(label + " A", "", "", "", ""), 30, 1),
+            SamplePages.bare(GAUSSIAN, new CodecColumn(label + " B", "", "", "", ""), 31, 2));
+    RenderedPage shown = RenderedPage.of(SamplePages.page(figures));
+    assertThat(shown.texts("//section[@class='noise']//p[@class='key']/span/b"))
+        .containsExactly("A", "B");
+    assertThat(shown.texts("//section[@id='rate']//tbody//th"))
+        .containsExactly(label + " A", label + " B");
+  }
+
+  @Test
+  void oneCodecInOneConditionIsAPage() {
+    Figure figure = SamplePages.bare(GAUSSIAN, SamplePages.codec("dct", "rows", "K4"), 30, 1);
+    RenderedPage shown = RenderedPage.of(SamplePages.page(List.of(figure)));
+    assertThat(shown.texts("//section[@class='noise']//tbody//td//b")).containsExactly("30.00");
+    assertThat(shown.text("//section[@class='noise']//td//i")).isEqualTo("?");
+    assertThat(shown.texts("//section[@class='noise']//figure")).hasSize(1);
+  }
+
+  @Test
+  void withoutNoiseTheCleanRowStandsAlone() {
+    Figure figure =
+        SamplePages.bare(Condition.clean(), SamplePages.codec("dct", "rows", "K4"), 30, 1);
+    RenderedPage shown = RenderedPage.of(SamplePages.page(List.of(figure)));
+    assertThat(shown.texts("//section[@class='noise']/h3")).containsExactly("no noise");
+    assertThat(shown.texts("//section[@class='noise']//figure")).isEmpty();
+  }
+
+  @Test
+  void withoutFiguresThePageSaysSo() {
+    RenderedPage shown = RenderedPage.of(SamplePages.page(List.of()));
+    assertThat(shown.text("//section[@id='tables']")).contains("No condition was measured.");
+    assertThat(shown.text("//section[@id='losses']")).contains("Outage rates are not available.");
+  }
+
+  @Test
+  void outagesAreTabledWhereThereAreAny() {
+    RenderedPage shown = RenderedPage.of(SamplePages.full());
+    assertThat(shown.texts("//section[@id='losses']//table[@class='matrix']/caption"))
+        .hasSize(1)
+        .allMatch(caption -> caption.startsWith("Outage rate under burst-loss on packets"));
+    Figure none = SamplePages.bare(GAUSSIAN, SamplePages.codec("dct", "rows", "K4"), 30, 1);
+    assertThat(RenderedPage.of(SamplePages.page(List.of(none))).text("//section[@id='losses']/p"))
+        .startsWith("No outage was seen in 1 trial;");
+  }
+
+  @Test
+  void refusesAConfidenceLevelOutOfRange() {
+    ReportPage page = SamplePages.full();
+    for (double level : new double[] {0, 1, -0.1, Double.NaN}) {
+      assertThatThrownBy(
+              () ->
+                  new ReportPage(
+                      page.title(),
+                      page.question(),
+                      page.answer(),
+                      page.figures(),
+                      level,
+                      page.pictures(),
+                      page.provenance()))
+          .isInstanceOf(IllegalArgumentException.class)
+          .hasMessageContaining("confidence level");
+    }
+  }
+}
