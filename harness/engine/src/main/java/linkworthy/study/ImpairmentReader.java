@@ -43,7 +43,7 @@ final class ImpairmentReader {
     accepted.addAll(plain.axes());
     entry.onlyKeys(accepted);
 
-    NoiseModel model = plain.with(parametersInForce(entry, plain));
+    NoiseModel model = inForce(entry, plain);
     String label = entry.find("label").map(ImpairmentReader::label).orElse(model.id());
     Place place = new Place(label, site(entry, model));
     String axis = axis(entry, model.axes());
@@ -75,14 +75,21 @@ final class ImpairmentReader {
     }
   }
 
-  /** Every parameter: the process' default, unless the model or, before it, the study has one. */
-  private static Map<String, Double> parametersInForce(YamlNode entry, NoiseModel model) {
+  /**
+   * The model with every parameter: the process' default, unless the model or, before it, the study
+   * has one.
+   */
+  private static NoiseModel inForce(YamlNode entry, NoiseModel model) {
     Map<String, Double> all = new TreeMap<>(model.implementation().parameters());
     all.putAll(model.parameters());
     for (String name : List.copyOf(all.keySet())) {
       entry.find(name).ifPresent(node -> all.put(name, node.number("a finite number")));
     }
-    return all;
+    try {
+      return model.with(all);
+    } catch (BadInput e) {
+      throw refuse(entry, entry, e);
+    }
   }
 
   private static String label(YamlNode node) {
@@ -119,8 +126,7 @@ final class ImpairmentReader {
     try {
       model.implementation().check(new Severity(axis, value), model.parameters(), place.site());
     } catch (BadInput e) {
-      String complaint = String.valueOf(e.getMessage());
-      throw culprit(entry, item, complaint).refuse("cannot be used: " + complaint);
+      throw refuse(entry, item, e);
     }
     if (!levels.add(new Level(place, axis, value))) {
       throw item.refuse(
@@ -137,12 +143,15 @@ final class ImpairmentReader {
     return value;
   }
 
-  /** The place of the key that a complaint begins with, or else of the severity. */
-  private static YamlNode culprit(YamlNode entry, YamlNode severity, String complaint) {
+  /** The complaint at the key it speaks of, or else at another place. */
+  private static BadInput refuse(YamlNode entry, YamlNode otherwise, BadInput cause) {
+    String complaint = String.valueOf(cause.getMessage());
     return entry.keys().stream()
-        .filter(key -> complaint.startsWith(key + " ") && !entry.get(key).isSequence())
+        .filter(key -> complaint.startsWith(key + " ") || complaint.contains(": " + key + " "))
+        .filter(key -> !entry.get(key).isSequence())
         .findFirst()
         .map(entry::get)
-        .orElse(severity);
+        .orElse(otherwise)
+        .refuse("cannot be used: " + complaint);
   }
 }

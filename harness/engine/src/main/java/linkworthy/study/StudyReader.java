@@ -205,7 +205,7 @@ public final class StudyReader {
     List<String> ids = distinct(list);
     for (YamlNode item : list.oneOrMore()) {
       try {
-        QualityMeasure unused = QualityMeasures.find(item.text());
+        QualityMeasure unused = QualityMeasures.get(item.text());
       } catch (BadInput e) {
         throw item.refuse("cannot be used: " + e.getMessage());
       }

@@ -168,10 +168,8 @@ public final class StudyWriter {
     if (!model.parameters().isEmpty()) {
       tree.put("parameters", numbers(model.parameters()));
     }
-    tree.put("axes", model.axes());
-    if (!model.source().isBlank()) {
-      tree.put("source", model.source());
-    }
+    tree.put("severity", model.axes());
+    tree.put("source", model.source());
     if (!model.notes().isBlank()) {
       tree.put("notes", model.notes());
     }

@@ -23,7 +23,7 @@ class StudyWriterTest {
       process: burst-loss
       acts-on: [packets]
       parameters: {mean-burst: 3}
-      axes: [snr-db, loss-rate]
+      severity: [snr-db, loss-rate]
       source: "Measured: between the gate and the shed"
       notes: One day in autumn
       """;
