@@ -1,0 +1,164 @@
+package linkworthy.results;
+
+import java.io.BufferedReader;
+import java.io.IOException;
+import java.io.UncheckedIOException;
+import java.nio.ByteBuffer;
+import java.nio.channels.FileChannel;
+import java.nio.charset.CharacterCodingException;
+import java.nio.charset.StandardCharsets;
+import java.nio.file.Files;
+import java.nio.file.NoSuchFileException;
+import java.nio.file.Path;
+import java.util.List;
+import java.util.function.Consumer;
+import java.util.function.Function;
+import linkworthy.input.BadInput;
+import linkworthy.input.Decimal;
+import org.apache.commons.csv.CSVException;
+import org.apache.commons.csv.CSVFormat;
+import org.apache.commons.csv.CSVParser;
+import org.apache.commons.csv.CSVRecord;
+
+/**
+ * A CSV file with fixed columns, one row for each value: RFC 4180 in UTF-8, except that lines end
+ * in LF alone, as all text files of the project do. Numbers are in the form of {@link
+ * Decimal#shortest}; infinity is {@code inf} and NaN an empty field, or {@code n/a} in a column
+ * that says so.
+ */
+final class CsvTable<T> {
+  private static final String INFINITE = "inf";
+  private static final CSVFormat FORMAT =
+      CSVFormat.RFC4180.builder().setRecordSeparator("\n").get();
+
+  private final List<Column<T>> columns;
+  private final List<String> names;
+  private final Function<CsvRow, T> maker;
+
+  /** A column: its name and what a row has there. */
+  record Column<T>(String name, Function<T, String> text) {}
+
+  /** A table whose rows are made of the fields by {@code maker}. */
+  CsvTable(List<Column<T>> columns, Function<CsvRow, T> maker) {
+    this.columns = List.copyOf(columns);
+    this.names = columns.stream().map(Column::name).toList();
+    this.maker = maker;
+  }
+
+  static <T> Column<T> words(String name, Function<T, String> value) {
+    return new Column<>(name, value);
+  }
+
+  static <T> Column<T> whole(String name, Function<T, Number> value) {
+    return new Column<>(name, row -> Long.toString(value.apply(row).longValue()));
+  }
+
+  /** A column of numbers; NaN is an empty field. */
+  static <T> Column<T> number(String name, Function<T, Double> value) {
+    return new Column<>(name, row -> number(value.apply(row), ""));
+  }
+
+  /** A column of numbers for which there may be too little evidence; NaN is {@code n/a}. */
+  static <T> Column<T> evidence(String name, Function<T, Double> value) {
+    return new Column<>(name, row -> number(value.apply(row), CsvRow.NO_EVIDENCE));
+  }
+
+  private static String number(double value, String forNan) {
+    if (Double.isNaN(value)) {
+      return forNan;
+    }
+    if (Double.isInfinite(value)) {
+      return value > 0 ? INFINITE : "-" + INFINITE;
+    }
+    return Decimal.shortest(value);
+  }
+
+  List<String> names() {
+    return names;
+  }
+
+  /** The header line. */
+  String header() {
+    return line(names);
+  }
+
+  /** The lines of these rows. */
+  String lines(List<T> rows) {
+    StringBuilder text = new StringBuilder();
+    for (T row : rows) {
+      text.append(line(columns.stream().map(column -> column.text().apply(row)).toList()));
+    }
+    return text.toString();
+  }
+
+  private static String line(List<String> fields) {
+    return FORMAT.format(fields.toArray()) + "\n";
+  }
+
+  /**
+   * Reads a file row by row.
+   *
+   * @return the number of rows
+   * @throws BadInput if it is missing, has other columns or a row that is none
+   * @throws linkworthy.input.Unavailable if it cannot be read
+   */
+  long read(Path file, Consumer<? super T> each) {
+    requireWholeLines(file);
+    try (BufferedReader reader = Files.newBufferedReader(file, StandardCharsets.UTF_8);
+        CSVParser parser = FORMAT.parse(reader)) {
+      long rows = -1;
+      for (CSVRecord record : parser) {
+        CsvRow row = new CsvRow(file, parser.getCurrentLineNumber(), names, record);
+        if (rows < 0) {
+          row.requireHeader();
+        } else {
+          row.requireComplete();
+          each.accept(make(row));
+        }
+        rows++;
+      }
+      return rows;
+    } catch (UncheckedIOException | IOException e) {
+      throw unreadable(file, e);
+    }
+  }
+
+  private T make(CsvRow row) {
+    try {
+      return maker.apply(row);
+    } catch (IllegalArgumentException e) {
+      throw row.bad(String.valueOf(e.getMessage()), e);
+    }
+  }
+
+  /** A file that was cut off inside a row must not pass for a shorter one. */
+  private static void requireWholeLines(Path file) {
+    try (FileChannel channel = FileChannel.open(file)) {
+      ByteBuffer last = ByteBuffer.allocate(1);
+      if (channel.size() > 0 && channel.read(last, channel.size() - 1) == 1) {
+        if (last.get(0) == '\n') {
+          return;
+        }
+        throw new BadInput(
+            file + " ends inside a line; accepted: whole lines (was its run killed?)");
+      }
+      throw new BadInput(file + " is empty; accepted: a table with a header");
+    } catch (IOException e) {
+      throw unreadable(file, e);
+    }
+  }
+
+  private static RuntimeException unreadable(Path file, Exception e) {
+    Throwable cause = e instanceof UncheckedIOException && e.getCause() != null ? e.getCause() : e;
+    if (cause instanceof NoSuchFileException) {
+      return new BadInput(file + " does not exist", e);
+    }
+    if (cause instanceof CharacterCodingException) {
+      return new BadInput(file + " is not UTF-8 text; accepted: a table in UTF-8", e);
+    }
+    if (cause instanceof CSVException) {
+      return new BadInput(file + " is no table: " + cause.getMessage(), e);
+    }
+    return FolderFiles.unavailable("read", file, (IOException) cause);
+  }
+}

@@ -1,0 +1,177 @@
+package linkworthy.results;
+
+import java.io.IOException;
+import java.nio.charset.CharacterCodingException;
+import java.nio.file.Files;
+import java.nio.file.Path;
+import java.time.Clock;
+import java.time.ZoneOffset;
+import java.time.format.DateTimeFormatter;
+import java.util.List;
+import java.util.Locale;
+import java.util.function.Consumer;
+import linkworthy.input.BadInput;
+import linkworthy.statistics.Cell;
+import linkworthy.study.Study;
+import linkworthy.study.StudyReader;
+import linkworthy.study.StudyWriter;
+import linkworthy.trial.Trial;
+
+/**
+ * The record of one run, open for reading. {@code study.yaml} (with {@code models/} beside it where
+ * the study has models of its own), {@code run.json} and {@code trials.csv} are always there;
+ * {@code cells.csv} once the run is complete.
+ */
+public final class ResultsFolder {
+  static final String STUDY = "study.yaml";
+
+  /** Name of the report in a results folder. */
+  public static final String REPORT = "report.html";
+
+  private static final DateTimeFormatter TIME =
+      DateTimeFormatter.ofPattern("uuuuMMdd'T'HHmmss'Z'", Locale.ROOT).withZone(ZoneOffset.UTC);
+  private static final int SHORT_HASH = 8;
+
+  private final Path folder;
+  private final RunRecord run;
+
+  private ResultsFolder(Path folder, RunRecord run) {
+    this.folder = folder;
+    this.run = run;
+  }
+
+  /**
+   * The folder of a run that has none given: {@code <study name>/<UTC time>-<first 8 digits of the
+   * study's fingerprint>}.
+   */
+  public static Path defaultPath(Path resultsRoot, Study study, Clock clock) {
+    String hash = StudyWriter.fingerprint(study).substring(0, SHORT_HASH);
+    return resultsRoot.resolve(study.name()).resolve(TIME.format(clock.instant()) + "-" + hash);
+  }
+
+  /**
+   * Makes a folder and holds it for writing until the writer is closed.
+   *
+   * @param overwrite whether the record of an earlier run may be removed; other files are left
+   * @throws BadInput if the folder is not empty and may not be overwritten, or another run holds it
+   * @throws linkworthy.input.Unavailable if it cannot be written
+   */
+  public static ResultsWriter create(Path out, boolean overwrite) {
+    return ResultsWriter.create(out, overwrite);
+  }
+
+  /**
+   * Opens a record.
+   *
+   * @throws BadInput if the folder is none, or lacks a file
+   * @throws linkworthy.input.Unavailable if it cannot be read
+   */
+  public static ResultsFolder open(Path folder) {
+    if (!Files.isDirectory(folder)) {
+      throw new BadInput(
+          folder
+              + (Files.exists(folder) ? " is no folder" : " does not exist")
+              + "; accepted: a results folder");
+    }
+    for (String name : List.of(RunRecord.FILE, STUDY, TrialsCsv.FILE)) {
+      requireFile(folder, name);
+    }
+    RunRecord run = readRun(folder);
+    if (run.complete()) {
+      requireFile(folder, CellsCsv.FILE);
+    }
+    return new ResultsFolder(folder, run);
+  }
+
+  static RunRecord readRun(Path folder) {
+    Path file = folder.resolve(RunRecord.FILE);
+    try {
+      return RunRecord.parse(file.toString(), Files.readString(file));
+    } catch (CharacterCodingException e) {
+      throw new BadInput(file + " is not UTF-8 text; accepted: the record of a run", e);
+    } catch (IOException e) {
+      throw FolderFiles.unavailable("read", file, e);
+    }
+  }
+
+  private static void requireFile(Path folder, String name) {
+    if (!Files.isRegularFile(folder.resolve(name))) {
+      throw new BadInput(
+          folder + " has no " + name + "; accepted: a results folder, as 'assess' makes it");
+    }
+  }
+
+  public Path path() {
+    return folder;
+  }
+
+  /** The circumstances of the run. */
+  public RunRecord run() {
+    return run;
+  }
+
+  /**
+   * The study as run, ready to be repeated: a manifest of the user's own is looked for where it was
+   * at the time of the run.
+   *
+   * @throws BadInput if the file cannot be used
+   */
+  public Study study() {
+    Study study = StudyReader.read(folder.resolve(STUDY));
+    Path manifest = run.manifestFile();
+    return manifest == null ? study : study.withManifestAt(manifest);
+  }
+
+  /**
+   * The study as run, for work that must give the same numbers.
+   *
+   * @throws BadInput if its fingerprint is no longer that of the run: the file was changed, or this
+   *     version of the program has other noise models
+   */
+  public Study unchangedStudy() {
+    Study study = study();
+    String found = StudyWriter.fingerprint(study);
+    if (!found.equals(run.studyFingerprint())) {
+      throw new BadInput(
+          folder.resolve(STUDY)
+              + " has the fingerprint "
+              + found.substring(0, SHORT_HASH)
+              + "...; accepted: "
+              + run.studyFingerprint()
+              + ", that of the run (was the file changed, or is this another version than "
+              + run.programVersion()
+              + "?)");
+    }
+    return study;
+  }
+
+  /**
+   * Reads the trials one by one, in the order of the plan.
+   *
+   * @return the number of trials
+   * @throws BadInput if the file is cut off or no table of trials
+   */
+  public long trials(Consumer<? super Trial> each) {
+    return TrialsCsv.read(folder.resolve(TrialsCsv.FILE), each);
+  }
+
+  /**
+   * The cells of a complete run.
+   *
+   * @throws BadInput if there are none yet, or the file is no table of cells
+   */
+  public List<Cell> cells() {
+    requireFile(folder, CellsCsv.FILE);
+    return CellsCsv.read(folder.resolve(CellsCsv.FILE));
+  }
+
+  /**
+   * Reads the timings one by one.
+   *
+   * @return the number of rows
+   * @throws BadInput if the file is missing, cut off or no table of timings
+   */
+  public long timings(Consumer<? super Timing> each) {
+    return TimingsCsv.read(folder.resolve(TimingsCsv.FILE), each);
+  }
+}

@@ -1,0 +1,243 @@
+package linkworthy.results;
+
+import java.nio.file.Path;
+import java.time.Clock;
+import java.time.Instant;
+import java.time.temporal.ChronoUnit;
+import java.util.LinkedHashSet;
+import java.util.List;
+import java.util.Set;
+import linkworthy.corpus.ManifestEntry;
+import linkworthy.input.BadInput;
+import linkworthy.input.Require;
+import linkworthy.noise.NoiseModel;
+import linkworthy.study.ImpairmentChoice;
+import linkworthy.study.PictureChoice.ManifestFile;
+import linkworthy.study.Study;
+import linkworthy.study.StudyWriter;
+import org.jspecify.annotations.Nullable;
+import tools.jackson.core.JacksonException;
+import tools.jackson.core.util.DefaultIndenter;
+import tools.jackson.core.util.DefaultPrettyPrinter;
+import tools.jackson.databind.DeserializationFeature;
+import tools.jackson.databind.MapperFeature;
+import tools.jackson.databind.PropertyNamingStrategies;
+import tools.jackson.databind.SerializationFeature;
+import tools.jackson.databind.json.JsonMapper;
+
+/**
+ * {@code run.json}: the circumstances of a run. The only file of a results folder, besides the
+ * timings, that differs between machines.
+ *
+ * @param program always {@link #PROGRAM}
+ * @param programVersion version of the program
+ * @param study name of the study
+ * @param purpose why it was run
+ * @param studyFingerprint {@link StudyWriter#fingerprint}
+ * @param corpusFingerprint fingerprint of the manifest
+ * @param manifest where the manifest was, or null for the shipped pictures
+ * @param noiseModels the models in force, in study order, each once
+ * @param seed of the study
+ * @param javaVersion version of the Java runtime
+ * @param javaVendor who built it
+ * @param operatingSystem name, version and processor architecture
+ * @param start of the run, UTC, whole seconds
+ * @param end of the run, or null while it is not finished
+ * @param trialsPlanned how many trials the plan has
+ * @param trialsDone how many are in the record
+ * @param complete whether the record has every planned trial and its cells
+ * @param pictures the pictures used, with their credits
+ */
+public record RunRecord(
+    String program,
+    String programVersion,
+    String study,
+    String purpose,
+    String studyFingerprint,
+    String corpusFingerprint,
+    @Nullable String manifest,
+    List<ModelUsed> noiseModels,
+    long seed,
+    String javaVersion,
+    String javaVendor,
+    String operatingSystem,
+    Instant start,
+    @Nullable Instant end,
+    long trialsPlanned,
+    long trialsDone,
+    boolean complete,
+    List<PictureUsed> pictures) {
+  /** Name of the file in a results folder. */
+  public static final String FILE = "run.json";
+
+  /** Value of {@link #program}: how the program recognises its own folders. */
+  public static final String PROGRAM = "linkworthy";
+
+  private static final JsonMapper JSON =
+      JsonMapper.builder()
+          .propertyNamingStrategy(PropertyNamingStrategies.SNAKE_CASE)
+          .disable(MapperFeature.SORT_PROPERTIES_ALPHABETICALLY)
+          .enable(SerializationFeature.INDENT_OUTPUT)
+          .enable(
+              DeserializationFeature.FAIL_ON_UNKNOWN_PROPERTIES,
+              DeserializationFeature.FAIL_ON_MISSING_CREATOR_PROPERTIES,
+              DeserializationFeature.FAIL_ON_NULL_FOR_PRIMITIVES,
+              DeserializationFeature.FAIL_ON_TRAILING_TOKENS)
+          .defaultPrettyPrinter(
+              new DefaultPrettyPrinter()
+                  .withObjectIndenter(new DefaultIndenter("  ", "\n"))
+                  .withArrayIndenter(new DefaultIndenter("  ", "\n")))
+          .build();
+
+  /** A noise model in force. */
+  public record ModelUsed(String id, int version, String fingerprint) {}
+
+  /** A picture used, as its manifest announces it. */
+  public record PictureUsed(
+      String id,
+      String set,
+      String file,
+      int width,
+      int height,
+      String licence,
+      String attribution,
+      String source,
+      String sha256) {
+    static PictureUsed of(ManifestEntry entry) {
+      return new PictureUsed(
+          entry.id(),
+          entry.set(),
+          entry.file(),
+          entry.width(),
+          entry.height(),
+          entry.licence(),
+          entry.attribution(),
+          entry.source(),
+          entry.sha256());
+    }
+  }
+
+  /**
+   * @throws IllegalArgumentException if this is no record of this program, or its counts contradict
+   *     each other
+   */
+  public RunRecord {
+    if (!program.equals(PROGRAM)) {
+      throw new IllegalArgumentException("program is '" + program + "'; accepted: " + PROGRAM);
+    }
+    Require.notBlank(programVersion, "program_version");
+    Require.notBlank(study, "study");
+    Require.notBlank(purpose, "purpose");
+    Require.notBlank(studyFingerprint, "study_fingerprint");
+    Require.notBlank(corpusFingerprint, "corpus_fingerprint");
+    if (trialsDone < 0 || trialsDone > trialsPlanned) {
+      throw new IllegalArgumentException(
+          "trials_done is " + trialsDone + "; accepted: 0 to " + trialsPlanned);
+    }
+    if (complete && (end == null || trialsDone != trialsPlanned)) {
+      throw new IllegalArgumentException(
+          "complete is true; accepted: true only with an end and every planned trial done");
+    }
+    noiseModels = List.copyOf(noiseModels);
+    pictures = List.copyOf(pictures);
+  }
+
+  /** The record of a run that begins now, on this machine. */
+  public static RunRecord begin(
+      Study study,
+      String programVersion,
+      String corpusFingerprint,
+      List<ManifestEntry> pictures,
+      long trialsPlanned,
+      Clock clock) {
+    ManifestFile manifest = study.pictures().manifest();
+    return new RunRecord(
+        PROGRAM,
+        programVersion,
+        study.name(),
+        study.purpose(),
+        StudyWriter.fingerprint(study),
+        corpusFingerprint,
+        manifest == null ? null : manifest.file().toAbsolutePath().normalize().toString(),
+        models(study),
+        study.seed(),
+        property("java.version"),
+        property("java.vendor"),
+        property("os.name") + " " + property("os.version") + " " + property("os.arch"),
+        now(clock),
+        null,
+        trialsPlanned,
+        0,
+        false,
+        pictures.stream().map(PictureUsed::of).toList());
+  }
+
+  /** The same record at the end of the run, or of a part of it. */
+  public RunRecord end(long done, Clock clock) {
+    return new RunRecord(
+        program,
+        programVersion,
+        study,
+        purpose,
+        studyFingerprint,
+        corpusFingerprint,
+        manifest,
+        noiseModels,
+        seed,
+        javaVersion,
+        javaVendor,
+        operatingSystem,
+        start,
+        now(clock),
+        trialsPlanned,
+        done,
+        done == trialsPlanned,
+        pictures);
+  }
+
+  /** Where the manifest was, or null for the shipped pictures. */
+  @Nullable Path manifestFile() {
+    return manifest == null ? null : Path.of(manifest);
+  }
+
+  /** The record as JSON, keys in the order above. */
+  public String toJson() {
+    return JSON.writeValueAsString(this) + "\n";
+  }
+
+  /**
+   * Reads a record.
+   *
+   * @param source names the text in messages
+   * @throws BadInput if it is none
+   */
+  public static RunRecord parse(String source, String text) {
+    try {
+      return JSON.readValue(text, RunRecord.class);
+    } catch (JacksonException e) {
+      int line = e.getLocation() == null ? 1 : Math.max(1, e.getLocation().getLineNr());
+      String problem =
+          e.getCause() instanceof IllegalArgumentException own
+              ? String.valueOf(own.getMessage())
+              : String.valueOf(e.getOriginalMessage()).split("[;\n(]", 2)[0].strip();
+      throw new BadInput(source + ", line " + line + ": not the record of a run: " + problem, e);
+    }
+  }
+
+  private static List<ModelUsed> models(Study study) {
+    Set<ModelUsed> models = new LinkedHashSet<>();
+    for (ImpairmentChoice impairment : study.impairments()) {
+      NoiseModel model = impairment.model();
+      models.add(new ModelUsed(model.id(), model.version(), model.fingerprint()));
+    }
+    return List.copyOf(models);
+  }
+
+  private static Instant now(Clock clock) {
+    return clock.instant().truncatedTo(ChronoUnit.SECONDS);
+  }
+
+  private static String property(String name) {
+    return System.getProperty(name, "unknown");
+  }
+}

@@ -1,0 +1,171 @@
+package linkworthy.results;
+
+import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.assertThatExceptionOfType;
+
+import java.io.IOException;
+import java.nio.charset.StandardCharsets;
+import java.nio.file.Files;
+import java.nio.file.Path;
+import java.util.ArrayList;
+import java.util.Arrays;
+import java.util.List;
+import java.util.Locale;
+import java.util.SplittableRandom;
+import linkworthy.input.BadInput;
+import linkworthy.trial.Trial;
+import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.io.TempDir;
+import org.junit.jupiter.params.ParameterizedTest;
+import org.junit.jupiter.params.provider.CsvSource;
+import org.junit.jupiter.params.provider.ValueSource;
+
+class CsvFilesTest {
+  @TempDir Path folder;
+
+  private List<Trial> read(String text) throws IOException {
+    Path file = folder.resolve("trials.csv");
+    Files.writeString(file, text);
+    List<Trial> trials = new ArrayList<>();
+    assertThat(TrialsCsv.read(file, trials::add)).isEqualTo(trials.size());
+    return trials;
+  }
+
+  @ParameterizedTest
+  @ValueSource(strings = {"en-US", "de-DE", "tr-TR"})
+  void tablesAreTheSameInEveryLocale(String tag) throws IOException {
+    Locale before = Locale.getDefault();
+    try {
+      Locale.setDefault(Locale.forLanguageTag(tag));
+      assertThat(TrialsCsv.text(List.of(Samples.CLEAN, Samples.NOISY))).isEqualTo(Samples.TRIALS);
+      assertThat(read(Samples.TRIALS)).containsExactly(Samples.CLEAN, Samples.NOISY);
+      assertThat(CellsCsv.text(Samples.CELLS)).isEqualTo(Samples.CELLS_TEXT);
+    } finally {
+      Locale.setDefault(before);
+    }
+  }
+
+  @Test
+  void cellsReadBack() throws IOException {
+    Path file = folder.resolve("cells.csv");
+    Files.writeString(file, Samples.CELLS_TEXT);
+    assertThat(CellsCsv.read(file)).isEqualTo(Samples.CELLS);
+  }
+
+  @Test
+  void timingsHaveTheirColumns() throws IOException {
+    Path file = folder.resolve("timings.csv");
+    String text =
+        """
+        picture,impairment,severity,replicate,codec,encode_ms,decode_ms
+        cat,gaussian,20.0,0,mean rows step16,1.5,0.25
+        """;
+    assertThat(TimingsCsv.TABLE.header() + TimingsCsv.TABLE.lines(List.of(Samples.TIMING)))
+        .isEqualTo(text);
+    Files.writeString(file, text);
+    List<Timing> timings = new ArrayList<>();
+    TimingsCsv.read(file, timings::add);
+    assertThat(timings).containsExactly(Samples.TIMING);
+  }
+
+  @Test
+  void anyTextAndNumberReadsBack() throws IOException {
+    SplittableRandom random = new SplittableRandom(20261203);
+    List<Trial> trials = new ArrayList<>();
+    for (int i = 0; i < 2000; i++) {
+      trials.add(
+          new Trial(
+              Long.toHexString(random.nextLong()),
+              text(random),
+              text(random),
+              text(random),
+              text(random),
+              number(random),
+              number(random),
+              number(random),
+              number(random),
+              text(random),
+              text(random),
+              text(random),
+              random.nextInt(-1, 100),
+              text(random),
+              random.nextInt(1000),
+              number(random),
+              number(random),
+              number(random),
+              random.nextLong(1L << 50),
+              random.nextLong(1L << 50),
+              number(random),
+              random.nextInt(1 << 30),
+              random.nextInt(1 << 30),
+              random.nextBoolean()));
+    }
+    assertThat(read(TrialsCsv.text(trials))).isEqualTo(trials);
+  }
+
+  private static String text(SplittableRandom random) {
+    StringBuilder text = new StringBuilder();
+    String letters = "ab ,\"\n\r;#'\\=+-@\u00e9\u2028\ud83d\ude00";
+    for (int i = random.nextInt(8); i > 0; i--) {
+      int at = random.nextInt(letters.codePointCount(0, letters.length()));
+      text.appendCodePoint(letters.codePointAt(letters.offsetByCodePoints(0, at)));
+    }
+    return text.toString();
+  }
+
+  private static double number(SplittableRandom random) {
+    double number = Double.longBitsToDouble(random.nextLong());
+    return Double.isNaN(number) ? Double.POSITIVE_INFINITY : number;
+  }
+
+  @ParameterizedTest
+  @CsvSource(
+      delimiter = '|',
+      value = {
+        "00ff,cat | 00ff,cat,cat | line 2: the row has 25 fields; accepted: 24",
+        "psnr_db | psnr | line 1: the columns are",
+        "inf | infinity | line 2: psnr_db is 'infinity'; accepted: a number",
+        "0.1, | 0x1p3, | line 3: severity is '0x1p3'",
+        "1234.5 | 1234,5 | line 3: the row has 25 fields",
+        "4096,8192,2.5 | -1,8192,2.5 | line 2: payload_bits is '-1'; accepted: a whole number from 0",
+        "true | TRUE | line 3: outage is 'TRUE'; accepted: false, true",
+        "\"mine | \"m\"ine | is no table"
+      })
+  void aRowThatIsNoneIsNamedWithItsPlace(String right, String wrong, String complaint) {
+    String text = Samples.TRIALS.replace(right, wrong);
+    assertThat(text).isNotEqualTo(Samples.TRIALS);
+    assertThatExceptionOfType(BadInput.class)
+        .isThrownBy(() -> read(text))
+        .withMessageContaining("trials.csv")
+        .withMessageContaining(complaint)
+        .satisfies(e -> assertThat(String.valueOf(e.getMessage()).lines()).hasSize(1));
+  }
+
+  @Test
+  void aFileCutOffAnywhereIsNotTakenForAWholeOne() throws IOException {
+    byte[] whole = Samples.TRIALS.getBytes(StandardCharsets.UTF_8);
+    Path file = folder.resolve("cut.csv");
+    for (int length = 0; length < whole.length; length++) {
+      Files.write(file, Arrays.copyOf(whole, length));
+      if (length > 0 && whole[length - 1] == '\n') {
+        assertThat(TrialsCsv.read(file, trial -> {})).isLessThan(2);
+      } else {
+        assertThatExceptionOfType(BadInput.class)
+            .isThrownBy(() -> TrialsCsv.read(file, trial -> {}));
+      }
+    }
+  }
+
+  @Test
+  void aMissingOrForeignFileIsRefused() throws IOException {
+    assertThatExceptionOfType(BadInput.class)
+        .isThrownBy(() -> TrialsCsv.read(folder.resolve("none.csv"), trial -> {}))
+        .withMessageEndingWith("none.csv does not exist");
+    Path latin = folder.resolve("latin.csv");
+    Files.write(
+        latin, Samples.TRIALS.replace("cat", "\u00e9").getBytes(StandardCharsets.ISO_8859_1));
+    assertThatExceptionOfType(BadInput.class)
+        .isThrownBy(() -> TrialsCsv.read(latin, trial -> {}))
+        .withMessageContaining("not UTF-8");
+  }
+}
