@@ -21,6 +21,7 @@ import linkworthy.noise.Site;
 
 /** Reads the impairments of a study and keeps watch over their labels. */
 final class ImpairmentReader {
+  private static final List<String> FIXED_KEYS = List.of("noise", "acts-on", "label");
   private static final int MAX_LABEL = 64;
 
   private final Path baseFolder;
@@ -38,7 +39,7 @@ final class ImpairmentReader {
   ImpairmentChoice read(YamlNode entry) {
     NoiseModel plain = model(entry.get("noise"));
     Set<String> parameters = plain.implementation().parameters().keySet();
-    Set<String> accepted = new LinkedHashSet<>(List.of("noise", "acts-on", "label"));
+    Set<String> accepted = new LinkedHashSet<>(FIXED_KEYS);
     accepted.addAll(parameters);
     accepted.addAll(plain.axes());
     entry.onlyKeys(accepted);
@@ -147,6 +148,7 @@ final class ImpairmentReader {
   private static BadInput refuse(YamlNode entry, YamlNode otherwise, BadInput cause) {
     String complaint = String.valueOf(cause.getMessage());
     return entry.keys().stream()
+        .filter(key -> !FIXED_KEYS.contains(key))
         .filter(key -> complaint.startsWith(key + " ") || complaint.contains(": " + key + " "))
         .filter(key -> !entry.get(key).isSequence())
         .findFirst()

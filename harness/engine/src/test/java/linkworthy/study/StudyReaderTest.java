@@ -287,4 +287,20 @@ class StudyReaderTest {
     assertThat(study.name()).isEqualTo(name);
     assertThat(study.purpose()).isNotEqualTo("Not stated");
   }
+
+  @Test
+  void theFirstLookComparesFourteenCodecs() {
+    Study study = StudyReader.read(Path.of("../studies/first-look.yaml"));
+    assertThat(study.codecs())
+        .hasSize(14)
+        .extracting(Codec::label)
+        .contains("pca rows K16 step8", "dct blocks8 K16 step8", "mean rows step16");
+    assertThat(study.impairments())
+        .extracting(ImpairmentChoice::severities)
+        .hasSize(3)
+        .containsOnly(List.of(30.0, 25.0, 20.0, 15.0, 10.0));
+    assertThat(study.impairments())
+        .extracting(ImpairmentChoice::site)
+        .containsExactly(Site.SAMPLES, Site.SAMPLES, Site.PACKETS);
+  }
 }

@@ -98,7 +98,9 @@ class StudyWriterTest {
                     "name: yard",
                     "name: yard\npurpose: \"a: 'b' #c\\nyes \\\\ \\u00e9\"\npictures: {manifest:"
                         + " \"no: 1/m.csv\", longest-side: 8}\nseed: 9007199254740991")
-                .replace("snr-db: 20", "snr-db: [1e-7, 12345678.5, -3]\n    label: \"007\""));
+                .replace(
+                    "snr-db: 20",
+                    "variance: [1e-7, 12345678.5, 0.30000000000000004]\n    label: \"007\""));
     assertThat(study.impairments().get(0).label()).isEqualTo("007");
     assertSame(study, Path.of("").toAbsolutePath());
   }
