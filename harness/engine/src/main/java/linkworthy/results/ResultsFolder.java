@@ -15,6 +15,7 @@ import linkworthy.statistics.Cell;
 import linkworthy.study.Study;
 import linkworthy.study.StudyReader;
 import linkworthy.study.StudyWriter;
+import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 
 /**

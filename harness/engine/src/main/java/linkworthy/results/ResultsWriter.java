@@ -10,6 +10,7 @@ import linkworthy.input.BadInput;
 import linkworthy.statistics.Cell;
 import linkworthy.study.Study;
 import linkworthy.study.StudyWriter;
+import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 import org.jspecify.annotations.Nullable;
 

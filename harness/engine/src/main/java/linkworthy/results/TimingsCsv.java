@@ -7,6 +7,7 @@ import static linkworthy.results.CsvTable.words;
 import java.nio.file.Path;
 import java.util.List;
 import java.util.function.Consumer;
+import linkworthy.trial.Timing;
 
 /**
  * {@code timings.csv}: measured encode and decode times, which no rerun repeats and which are kept

@@ -13,6 +13,7 @@ import java.util.List;
 import java.util.Locale;
 import java.util.SplittableRandom;
 import linkworthy.input.BadInput;
+import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;

@@ -18,6 +18,7 @@ import linkworthy.study.Study;
 import linkworthy.study.StudyReader;
 import linkworthy.study.StudyTemplate;
 import linkworthy.study.StudyWriter;
+import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 import org.junit.jupiter.api.BeforeEach;
 import org.junit.jupiter.api.Test;

@@ -12,6 +12,7 @@ import linkworthy.statistics.Standing;
 import linkworthy.study.Study;
 import linkworthy.study.StudyReader;
 import linkworthy.study.StudyTemplate;
+import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 
 /** Values for the tests of this package. */

@@ -1,0 +1,68 @@
+package linkworthy.trial;
+
+import linkworthy.codec.Codec;
+import linkworthy.corpus.ManifestEntry;
+import linkworthy.noise.Site;
+
+/**
+ * What a plan will roughly take, from closed formulas; nothing is run.
+ *
+ * @param seconds of wall-clock time on the threads that were asked for
+ * @param memoryBytes of working memory
+ * @param diskBytes of the results folder
+ */
+public record Estimate(double seconds, double memoryBytes, double diskBytes) {
+  /** Seconds for one sample of one trial: transform, code, decode, compare. */
+  private static final double SECONDS_PER_SAMPLE = 25e-9;
+
+  /** Seconds for one of the d^3 steps of an eigendecomposition of order d. */
+  private static final double SECONDS_PER_EIGEN_STEP = 1.4e-9;
+
+  private static final double BYTES_PER_TRIAL = 330;
+  private static final double BYTES_PER_SAMPLE = 200;
+  private static final double BYTES_OF_PROGRAM = 100e6;
+
+  /** The estimate for a plan on a number of threads. */
+  public static Estimate of(Plan plan, int threads) {
+    double work = 0;
+    double largest = 0;
+    for (ManifestEntry entry : plan.pictures()) {
+      double scale =
+          plan.study().pictures().longestSide().isPresent()
+              ? Math.min(
+                  1,
+                  plan.study().pictures().longestSide().getAsInt()
+                      / (double) Math.max(entry.width(), entry.height()))
+              : 1;
+      double samples = scale * entry.width() * scale * entry.height();
+      double order = scale * entry.height();
+      largest = Math.max(largest, samples);
+      work +=
+          SECONDS_PER_SAMPLE * samples * plan.trials() / plan.pictures().size()
+              + SECONDS_PER_EIGEN_STEP * order * order * order * eigendecompositions(plan);
+    }
+    return new Estimate(
+        work / threads,
+        BYTES_OF_PROGRAM + BYTES_PER_SAMPLE * largest * threads,
+        BYTES_PER_TRIAL * plan.trials() + 400_000);
+  }
+
+  /** How often the principal components of one picture's rows are found. */
+  private static long eigendecompositions(Plan plan) {
+    boolean rows =
+        plan.study().codecs().stream()
+            .map(Codec::description)
+            .anyMatch(d -> d.transform().equals("pca") && d.over().equals("rows"));
+    long noisy =
+        plan.study().impairments().stream()
+            .filter(i -> i.site() == Site.SAMPLES)
+            .mapToLong(i -> i.severities().size())
+            .sum();
+    return rows ? 1 + noisy * plan.study().replicates() : 0;
+  }
+
+  /** Bytes as whole mebibytes, at least 1. */
+  public static long mebibytes(double bytes) {
+    return Math.max(1, Math.round(bytes / (1 << 20)));
+  }
+}

@@ -1,0 +1,95 @@
+package linkworthy.trial;
+
+import java.util.ArrayDeque;
+import java.util.LinkedHashMap;
+import java.util.List;
+import java.util.Map;
+import java.util.Queue;
+import java.util.concurrent.CancellationException;
+import java.util.concurrent.ExecutionException;
+import java.util.concurrent.ExecutorService;
+import java.util.concurrent.Executors;
+import java.util.concurrent.Future;
+import linkworthy.input.Require;
+
+/**
+ * Runs a plan on threads of this machine and hands over finished units in the canonical order,
+ * whatever the order they finish in.
+ */
+public final class LocalRunner {
+  /** Units waiting or running for each thread; bounds the memory that finished rows take. */
+  private static final int WINDOW = 4;
+
+  private final Plan plan;
+  private final int threads;
+
+  /**
+   * @param threads 1 to 1024
+   */
+  public LocalRunner(Plan plan, int threads) {
+    this.plan = plan;
+    this.threads = Require.inRange(threads, 1, 1024, "threads");
+  }
+
+  /** Takes the rows of one unit after the other, in canonical order, on one thread. */
+  public interface Sink {
+    /**
+     * @param trials a row for each codec
+     * @param timings the same trials' times
+     */
+    void accept(WorkUnit unit, List<Trial> trials, List<Timing> timings);
+  }
+
+  /**
+   * Runs the units from {@code firstUnit} on. If the calling thread is interrupted, the units that
+   * have been handed over stay whole and the rest is dropped.
+   *
+   * @return the number of units handed over
+   */
+  public int run(int firstUnit, Sink sink) {
+    Subjects subjects = new Subjects();
+    ExecutorService executor = Executors.newFixedThreadPool(threads);
+    Queue<Future<UnitRunner.Rows>> window = new ArrayDeque<>();
+    int next = firstUnit;
+    int done = firstUnit;
+    try {
+      while (done < plan.units() && !Thread.currentThread().isInterrupted()) {
+        while (next < plan.units() && window.size() < WINDOW * threads) {
+          WorkUnit unit = plan.unit(next++);
+          window.add(
+              executor.submit(() -> new UnitRunner(plan.study(), subjects.get(unit), unit).run()));
+        }
+        UnitRunner.Rows rows = window.remove().get();
+        sink.accept(plan.unit(done++), rows.trials(), rows.timings());
+      }
+    } catch (InterruptedException | CancellationException e) {
+      Thread.currentThread().interrupt();
+    } catch (ExecutionException e) {
+      if (e.getCause() instanceof RuntimeException known) {
+        throw known;
+      }
+      throw new IllegalStateException(e.getCause());
+    } finally {
+      executor.shutdownNow();
+    }
+    return done - firstUnit;
+  }
+
+  /** Pictures in use: one for each thread and one to come, the oldest dropped first. */
+  private final class Subjects {
+    private final Map<Integer, Subject> inUse = new LinkedHashMap<>();
+
+    synchronized Subject get(WorkUnit unit) {
+      Subject known = inUse.get(unit.picture());
+      if (known != null) {
+        return known;
+      }
+      Subject subject = new Subject(plan.load(unit.entry()), plan.study());
+      inUse.put(unit.picture(), subject);
+      if (inUse.size() > threads + 1) {
+        inUse.remove(inUse.keySet().iterator().next());
+      }
+      return subject;
+    }
+  }
+}

@@ -1,0 +1,129 @@
+package linkworthy.trial;
+
+import java.util.ArrayList;
+import java.util.List;
+import java.util.OptionalInt;
+import linkworthy.codec.Codec;
+import linkworthy.codec.PictureShape;
+import linkworthy.corpus.AreaAverage;
+import linkworthy.corpus.Manifest;
+import linkworthy.corpus.ManifestEntry;
+import linkworthy.corpus.Picture;
+import linkworthy.input.BadInput;
+import linkworthy.noise.Severity;
+import linkworthy.noise.SignalStatistics;
+import linkworthy.quality.QualityMeasures;
+import linkworthy.study.ImpairmentChoice;
+import linkworthy.study.Study;
+
+/**
+ * Everything a study asks for, as numbered work units: picture by picture, the clean one first,
+ * then impairment, severity and replicate in the study's order.
+ */
+public final class Plan {
+  private final Study study;
+  private final Manifest manifest;
+  private final List<ManifestEntry> pictures;
+  private final List<WorkUnit.Condition> conditions;
+
+  private Plan(Study study, Manifest manifest, List<ManifestEntry> pictures) {
+    this.study = study;
+    this.manifest = manifest;
+    this.pictures = pictures;
+    this.conditions = new ArrayList<>();
+    for (ImpairmentChoice impairment : study.impairments()) {
+      for (Severity severity : impairment.levels()) {
+        conditions.add(new WorkUnit.Condition(impairment, severity));
+      }
+    }
+  }
+
+  /**
+   * Plans a study and checks every picture against every codec, measure and severity before
+   * anything runs.
+   *
+   * @throws BadInput if a picture is not what its manifest says, or something does not go together;
+   *     one line that says what
+   * @throws linkworthy.input.Unavailable if a picture cannot be read
+   */
+  public static Plan of(Study study) {
+    Manifest manifest = study.pictures().open();
+    Plan plan = new Plan(study, manifest, manifest.select(study.pictures().select()));
+    for (ManifestEntry entry : plan.pictures) {
+      plan.check(entry);
+    }
+    return plan;
+  }
+
+  private void check(ManifestEntry entry) {
+    Picture picture = load(entry);
+    PictureShape shape = PictureShape.of(picture);
+    try {
+      for (Codec codec : study.codecs()) {
+        codec.check(shape);
+      }
+      for (String measure : study.measures()) {
+        QualityMeasures.get(measure).check(shape);
+      }
+      SignalStatistics signal = study.pictures().signalPower().of(picture);
+      for (WorkUnit.Condition condition : conditions) {
+        condition.at(signal);
+      }
+    } catch (BadInput e) {
+      throw new BadInput("picture '" + entry.id() + "': " + e.getMessage(), e);
+    }
+  }
+
+  /** A picture as the study wants it. */
+  Picture load(ManifestEntry entry) {
+    Picture picture = manifest.load(entry);
+    OptionalInt longestSide = study.pictures().longestSide();
+    return longestSide.isPresent()
+        ? AreaAverage.toLongestSide(picture, longestSide.getAsInt())
+        : picture;
+  }
+
+  public Study study() {
+    return study;
+  }
+
+  public Manifest manifest() {
+    return manifest;
+  }
+
+  /** The pictures of the study, in the order of the manifest. */
+  public List<ManifestEntry> pictures() {
+    return pictures;
+  }
+
+  /** Units of one picture. */
+  private int unitsOfPicture() {
+    return Math.addExact(1, Math.multiplyExact(conditions.size(), study.replicates()));
+  }
+
+  /** Number of work units. */
+  public int units() {
+    return Math.multiplyExact(pictures.size(), unitsOfPicture());
+  }
+
+  /** Number of trials: units times codecs. */
+  public long trials() {
+    return (long) units() * study.codecs().size();
+  }
+
+  /** The unit at a place in the canonical order. */
+  public WorkUnit unit(int index) {
+    int picture = index / unitsOfPicture();
+    int rest = index % unitsOfPicture();
+    ManifestEntry entry = pictures.get(picture);
+    if (rest == 0) {
+      return new WorkUnit(index, picture, entry, null, 0);
+    }
+    return new WorkUnit(
+        index,
+        picture,
+        entry,
+        conditions.get((rest - 1) / study.replicates()),
+        (rest - 1) % study.replicates());
+  }
+}

@@ -1,0 +1,49 @@
+package linkworthy.trial;
+
+import java.nio.charset.StandardCharsets;
+import java.security.MessageDigest;
+import java.security.NoSuchAlgorithmException;
+import java.util.HexFormat;
+import java.util.LinkedHashMap;
+import java.util.Map;
+import java.util.OptionalInt;
+import linkworthy.codec.Codec;
+import linkworthy.link.Link;
+
+/** All that a trial depends on; its hash is the trial's id. */
+record TrialKey(long seed, WorkUnit unit, OptionalInt longestSide, Codec codec, Link link) {
+  private static final int ID_DIGITS = 16;
+
+  /** The first 16 hexadecimal digits of the SHA-256 of the key. */
+  String id() {
+    StringBuilder text = new StringBuilder();
+    text.append(seed).append('\n');
+    text.append(unit.entry().id()).append('\n');
+    text.append(unit.entry().sha256()).append('\n').append(longestSide).append('\n');
+    WorkUnit.Condition condition = unit.condition();
+    if (condition != null) {
+      text.append(condition.impairment().model().fingerprint()).append('\n');
+      text.append(condition.impairment().site().id()).append('\n');
+      text.append(condition.severity().axis()).append('\n');
+      text.append(condition.severity().value()).append('\n');
+    }
+    text.append(unit.replicate()).append('\n');
+    text.append(settings()).append('\n');
+    text.append(link).append('\n');
+    try {
+      byte[] hash =
+          MessageDigest.getInstance("SHA-256")
+              .digest(text.toString().getBytes(StandardCharsets.UTF_8));
+      return HexFormat.of().formatHex(hash).substring(0, ID_DIGITS);
+    } catch (NoSuchAlgorithmException e) {
+      throw new IllegalStateException(e);
+    }
+  }
+
+  /** Parameters of the codec without its name, which changes no result. */
+  private Map<String, Object> settings() {
+    Map<String, Object> settings = new LinkedHashMap<>(codec.settings());
+    settings.remove("label");
+    return settings;
+  }
+}

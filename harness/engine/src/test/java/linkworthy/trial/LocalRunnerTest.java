@@ -1,0 +1,183 @@
+package linkworthy.trial;
+
+import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.assertThatThrownBy;
+import static org.assertj.core.api.Assertions.within;
+
+import java.nio.file.Path;
+import java.util.ArrayList;
+import java.util.List;
+import linkworthy.input.BadInput;
+import linkworthy.input.YamlNode;
+import linkworthy.study.StudyReader;
+import org.junit.jupiter.api.Test;
+import org.junit.jupiter.params.ParameterizedTest;
+import org.junit.jupiter.params.provider.CsvSource;
+import org.junit.jupiter.params.provider.ValueSource;
+
+class LocalRunnerTest {
+  private static final String STUDY =
+      """
+      name: small
+      seed: 7
+      pictures:
+        select: [handwriting, cat]
+        longest-side: 96
+      impairments:
+        - {noise: gaussian, snr-db: [20, 10]}
+        - {noise: salt-and-pepper, density: 0.05}
+        - {noise: burst-loss, loss-rate: [0.1, 0.4], mean-burst: 2}
+        - {noise: burst-loss, acts-on: samples, snr-db: 10, label: raw-hop}
+      codecs:
+        - {transform: pca, over: rows, keep: [2, 8], step: 8}
+        - {transform: pca, over: blocks, keep: 6, step: 8}
+        - {transform: dct, keep: 6, step: 8}
+        - {transform: mean, step: 16}
+      replicates: 3
+      """;
+
+  private static Plan plan(String study) {
+    return Plan.of(StudyReader.read(YamlNode.parse("small.yaml", study), Path.of("")));
+  }
+
+  private static List<Trial> run(String study, int threads) {
+    List<Trial> all = new ArrayList<>();
+    Plan plan = plan(study);
+    int units =
+        new LocalRunner(plan, threads).run(0, (unit, trials, timings) -> all.addAll(trials));
+    assertThat(units).isEqualTo(plan.units());
+    assertThat(all).hasSize(Math.toIntExact(plan.trials()));
+    return all;
+  }
+
+  @ParameterizedTest
+  @ValueSource(ints = {2, 5})
+  void rowsDoNotDependOnThreads(int threads) {
+    assertThat(run(STUDY, threads)).isEqualTo(run(STUDY, 1));
+  }
+
+  @Test
+  void anySingleUnitCanBeRunAlone() {
+    List<Trial> whole = run(STUDY, 2);
+    Plan plan = plan(STUDY);
+    int codecs = plan.study().codecs().size();
+    for (int at : new int[] {0, 7, plan.units() - 1}) {
+      List<Trial> tail = new ArrayList<>();
+      new LocalRunner(plan(STUDY), 1).run(at, (unit, trials, timings) -> tail.addAll(trials));
+      assertThat(tail).isEqualTo(whole.subList(at * codecs, whole.size()));
+    }
+  }
+
+  /** The same noise meets every codec, whatever other codecs there are. */
+  @Test
+  void addingACodecChangesNoRowOfTheOthers() {
+    List<Trial> before = run(STUDY, 2);
+    List<Trial> after =
+        run(
+            STUDY.replace(
+                "  - {transform: mean",
+                "  - {transform: dct, over: rows, keep: 3}\n  - {transform: mean"),
+            2);
+    assertThat(after).hasSizeGreaterThan(before.size());
+    assertThat(after.stream().filter(t -> !t.codec().startsWith("dct rows")).toList())
+        .isEqualTo(before);
+  }
+
+  @Test
+  void everyTrialHasItsOwnId() {
+    assertThat(run(STUDY, 2)).extracting(Trial::trial).doesNotHaveDuplicates();
+  }
+
+  @Test
+  void rowsStandInTheOrderOfTheStudy() {
+    List<Trial> trials = run(STUDY, 2);
+    assertThat(trials.stream().map(Trial::picture).distinct())
+        .containsExactly("cat", "handwriting");
+    assertThat(trials.stream().map(Trial::impairment).distinct())
+        .containsExactly("none", "gaussian", "salt-and-pepper", "burst-loss", "raw-hop");
+    assertThat(trials.subList(0, 5))
+        .extracting(Trial::codec)
+        .containsExactly(
+            "pca rows K2 step8",
+            "pca rows K8 step8",
+            "pca blocks8 K6 step8",
+            "dct blocks8 K6 step8",
+            "mean rows step16");
+    assertThat(trials.get(0).replicate()).isZero();
+    assertThat(trials.stream().filter(t -> t.impairment().equals("none"))).hasSize(2 * 5);
+  }
+
+  /** Noise variances agree with the definitions: SNR = 10 log10(S / s2), and what was drawn. */
+  @Test
+  void severitiesMeanWhatTheySay() {
+    for (Trial trial : run(STUDY, 2)) {
+      if (trial.axis().equals("snr-db")) {
+        assertThat(trial.snrDb()).isCloseTo(trial.severity(), within(1e-9));
+      }
+      if (trial.actsOn().equals("packets")) {
+        assertThat(trial.realisedNoiseVariance() * trial.packetsSent())
+            .isCloseTo(
+                trial.packetsLost() * trial.equivalentNoiseVariance() / trial.severity(),
+                within(1e-6 * trial.packetsSent() * trial.equivalentNoiseVariance()));
+      } else {
+        assertThat(trial.packetsLost()).isZero();
+      }
+      assertThat(trial.sentBits()).isEqualTo(trial.payloadBits() + 8L * 23 * trial.packetsSent());
+    }
+  }
+
+  /**
+   * What could be done once for a work unit is done once: the encoders' work on one noisy picture
+   * is one analysis for each basis and arrangement, one set of symbols for each of their steps, and
+   * one encoding for each codec.
+   */
+  @Test
+  void workIsDoneOncePerUnit() {
+    Plan plan = plan(STUDY);
+    Subject subject = new Subject(plan.load(plan.pictures().get(0)), plan.study());
+    int analyses = 4;
+    int encodings = plan.study().codecs().size();
+    for (int index = 0; index < plan.units() / 2; index++) {
+      new UnitRunner(plan.study(), subject, plan.unit(index)).run();
+    }
+    assertThat(subject.memo().computed())
+        .as("every unit that loses packets of the clean picture shares the same work")
+        .isEqualTo(analyses + analyses + encodings);
+  }
+
+  @ParameterizedTest
+  @CsvSource(
+      delimiter = '|',
+      value = {
+        "keep: [2, 8] | keep: [2, 99] | keeps 99 components",
+        "longest-side: 96 | longest-side: 10 | picture 'cat'",
+        "[handwriting, cat] | [handwriting, cta] | did you mean 'cat'",
+        "density: 0.05 | snr-db: -30 | picture 'cat'"
+      })
+  void whatDoesNotGoTogetherIsRefusedBeforeAnythingRuns(String from, String to, String complaint) {
+    assertThat(STUDY).contains(from);
+    assertThatThrownBy(() -> plan(STUDY.replace(from, to)))
+        .isInstanceOf(BadInput.class)
+        .hasMessageContaining(complaint)
+        .hasMessageNotContaining("\n");
+  }
+
+  @Test
+  void anInterruptedRunHandsOverWholeUnits() throws InterruptedException {
+    Plan plan = plan(STUDY);
+    List<Trial> seen = new ArrayList<>();
+    int units =
+        new LocalRunner(plan, 2)
+            .run(
+                0,
+                (unit, trials, timings) -> {
+                  seen.addAll(trials);
+                  if (unit.index() == 4) {
+                    Thread.currentThread().interrupt();
+                  }
+                });
+    assertThat(Thread.interrupted()).isTrue();
+    assertThat(units).isEqualTo(5);
+    assertThat(seen).hasSize(5 * plan.study().codecs().size());
+  }
+}
