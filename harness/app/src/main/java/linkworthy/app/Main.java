@@ -1,10 +1,97 @@
 package linkworthy.app;
 
-/** The program. */
+import java.io.OutputStream;
+import java.io.OutputStreamWriter;
+import java.io.PrintWriter;
+import java.nio.charset.StandardCharsets;
+import java.nio.file.Path;
+import java.time.Clock;
+import linkworthy.input.BadInput;
+import linkworthy.input.Unavailable;
+import picocli.CommandLine;
+import picocli.CommandLine.ParameterException;
+
+/** The program: parses the command line, runs a command, turns its end into an exit code. */
 public final class Main {
+  /** Done. */
+  static final int DONE = 0;
+
+  /** Done, and the answer is 'no'. */
+  static final int NO = 1;
+
+  /** Bad usage or bad input. */
+  static final int BAD_INPUT = 2;
+
+  /** The machine refused. */
+  static final int ENVIRONMENT = 3;
+
   private Main() {}
 
   public static void main(String[] arguments) {
-    System.out.println("linkworthy");
+    Surroundings surroundings =
+        new Surroundings(
+            writer(System.out),
+            writer(System.err),
+            Boolean.getBoolean("linkworthy.terminal"),
+            Clock.systemUTC(),
+            Path.of(System.getProperty("linkworthy.home", "")));
+    System.exit(run(surroundings, arguments));
+  }
+
+  private static PrintWriter writer(OutputStream stream) {
+    return new PrintWriter(new OutputStreamWriter(stream, StandardCharsets.UTF_8), true);
+  }
+
+  /** Runs the program in given surroundings and returns its exit code. */
+  static int run(Surroundings surroundings, String... arguments) {
+    Linkworthy program = new Linkworthy();
+    CommandLine commandLine =
+        new CommandLine(program, new Commands(surroundings))
+            .setOut(surroundings.out())
+            .setErr(surroundings.err())
+            .setUsageHelpAutoWidth(false)
+            .setUsageHelpWidth(100)
+            .setParameterExceptionHandler((e, args) -> badUsage(surroundings, e))
+            .setExecutionExceptionHandler(
+                (e, command, result) -> explain(surroundings, e, program.trace()));
+    return commandLine.execute(arguments);
+  }
+
+  private static int badUsage(Surroundings surroundings, ParameterException e) {
+    String command = e.getCommandLine().getCommandSpec().qualifiedName();
+    StringBuilder line = new StringBuilder(oneLine(String.valueOf(e.getMessage())));
+    if (e instanceof CommandLine.UnmatchedArgumentException unmatched) {
+      var suggestions = unmatched.getSuggestions();
+      if (!suggestions.isEmpty()) {
+        line.append("; did you mean '").append(suggestions.get(0)).append("'?");
+      }
+    }
+    surroundings.err().println("linkworthy: " + line + " (see '" + command + " --help')");
+    return BAD_INPUT;
+  }
+
+  private static int explain(Surroundings surroundings, Exception e, boolean trace) {
+    if (trace) {
+      e.printStackTrace(surroundings.err());
+    }
+    if (e instanceof BadInput) {
+      surroundings.err().println("linkworthy: " + oneLine(String.valueOf(e.getMessage())));
+      return BAD_INPUT;
+    }
+    if (e instanceof Unavailable) {
+      surroundings.err().println("linkworthy: " + oneLine(String.valueOf(e.getMessage())));
+      return ENVIRONMENT;
+    }
+    surroundings
+        .err()
+        .println(
+            "linkworthy: internal error: "
+                + oneLine(String.valueOf(e))
+                + "; --trace prints where it happened");
+    return ENVIRONMENT;
+  }
+
+  private static String oneLine(String message) {
+    return message.replaceAll("\\s*\\R\\s*", " ").strip();
   }
 }

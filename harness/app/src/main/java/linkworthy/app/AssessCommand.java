@@ -1,0 +1,131 @@
+package linkworthy.app;
+
+import java.nio.file.Path;
+import java.util.List;
+import java.util.concurrent.Callable;
+import linkworthy.input.BadInput;
+import linkworthy.input.YamlNode;
+import linkworthy.results.ResultsFolder;
+import linkworthy.study.Study;
+import linkworthy.study.StudyReader;
+import linkworthy.trial.Estimate;
+import linkworthy.trial.Plan;
+import org.jspecify.annotations.Nullable;
+import picocli.CommandLine.Command;
+import picocli.CommandLine.Option;
+import picocli.CommandLine.Parameters;
+
+/** Runs a study. */
+@Command(
+    name = "assess",
+    description = {
+      "Run a study: take its pictures through its noise and its codecs, write a results folder",
+      "with a report, and print the summary."
+    },
+    mixinStandardHelpOptions = true,
+    footer = {
+      "",
+      "Examples:",
+      "  linkworthy assess",
+      "  linkworthy assess yard.yaml --set replicates=20 --set codecs.0.step=4",
+      "  linkworthy assess yard.yaml --dry-run"
+    })
+final class AssessCommand implements Callable<Integer> {
+  private static final String BUILT_IN = "first-look.yaml";
+  private static final int MAX_THREADS = 1024;
+
+  private final Surroundings surroundings;
+
+  @Parameters(
+      arity = "0..1",
+      paramLabel = "STUDY",
+      description = "Study file (default: the built-in study first-look, on the shipped pictures).")
+  private @Nullable Path file;
+
+  @Option(
+      names = "--out",
+      paramLabel = "DIR",
+      description = "Results folder, new or empty (default: results/<study>/<time>-<hash>).")
+  private @Nullable Path out;
+
+  @Option(
+      names = "--threads",
+      paramLabel = "N",
+      description = "Worker threads (default: one for each processor).")
+  private int threads = Runtime.getRuntime().availableProcessors();
+
+  @Option(
+      names = "--set",
+      paramLabel = "KEY.PATH=VALUE",
+      arity = "1",
+      description = "Set a value of the study; items of lists by number from 0. Repeatable.")
+  private List<String> settings = List.of();
+
+  @Option(
+      names = "--dry-run",
+      description = "Check everything, count trials, estimate time, memory and disk; run nothing.")
+  private boolean dryRun;
+
+  @Option(names = "--overwrite", description = "Replace the record in the results folder.")
+  private boolean overwrite;
+
+  @Option(names = "--quiet", description = "Show no progress and no summary.")
+  private boolean quiet;
+
+  AssessCommand(Surroundings surroundings) {
+    this.surroundings = surroundings;
+  }
+
+  @Override
+  public Integer call() {
+    if (threads < 1 || threads > MAX_THREADS) {
+      throw new BadInput("--threads is " + threads + "; accepted: 1 to " + MAX_THREADS);
+    }
+    Study study = study();
+    Plan plan = Plan.of(study);
+    if (dryRun) {
+      printEstimate(plan);
+      return Main.DONE;
+    }
+    Path folder =
+        out != null
+            ? out
+            : ResultsFolder.defaultPath(
+                surroundings.home().resolve("results"), study, surroundings.clock());
+    return new Assessment(surroundings, plan, folder, threads, overwrite, quiet).run();
+  }
+
+  private Study study() {
+    YamlNode root =
+        file == null
+            ? YamlNode.parse(BUILT_IN, Resources.text("studies/" + BUILT_IN))
+            : YamlNode.read(file);
+    for (String setting : settings) {
+      int equals = setting.indexOf('=');
+      if (equals < 1) {
+        throw new BadInput("--set is '" + setting + "'; accepted: key.path=value");
+      }
+      root = root.with(setting.substring(0, equals), setting.substring(equals + 1));
+    }
+    Path folder = file == null ? surroundings.home() : file.toAbsolutePath().getParent();
+    return StudyReader.read(root, folder == null ? Path.of("/") : folder);
+  }
+
+  private void printEstimate(Plan plan) {
+    Estimate estimate = Estimate.of(plan, threads);
+    var to = surroundings.out();
+    to.println("study:    " + plan.study().name());
+    to.println("pictures: " + plan.pictures().size());
+    to.println("codecs:   " + plan.study().codecs().size());
+    to.println("units:    " + plan.units() + " (picture, impairment, severity, replicate)");
+    to.println("trials:   " + plan.trials());
+    to.println(
+        "time:     about "
+            + Progress.duration(Math.round(estimate.seconds()))
+            + " on "
+            + threads
+            + " threads (a rough figure, for a processor of about 3 GHz)");
+    to.println("memory:   about " + Estimate.mebibytes(estimate.memoryBytes()) + " MiB");
+    to.println("disk:     about " + Estimate.mebibytes(estimate.diskBytes()) + " MiB");
+  }
+}

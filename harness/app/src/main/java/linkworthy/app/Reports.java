@@ -1,0 +1,136 @@
+package linkworthy.app;
+
+import java.util.ArrayList;
+import java.util.List;
+import linkworthy.report.Answer;
+import linkworthy.report.CodecColumn;
+import linkworthy.report.Condition;
+import linkworthy.report.Fact;
+import linkworthy.report.Figure;
+import linkworthy.report.PictureCredit;
+import linkworthy.report.Provenance;
+import linkworthy.report.ReportPage;
+import linkworthy.report.ReportRenderer;
+import linkworthy.report.Standing;
+import linkworthy.results.ResultsFolder;
+import linkworthy.results.RunRecord;
+import linkworthy.statistics.Cell;
+import linkworthy.statistics.StudentT;
+import linkworthy.study.Study;
+
+/** Makes the report of a results folder from its recorded cells alone. */
+final class Reports {
+  private Reports() {}
+
+  /** The whole page as HTML. */
+  static String html(ResultsFolder results) {
+    List<Figure> figures = figures(results);
+    RunRecord run = results.run();
+    return new ReportRenderer()
+        .render(
+            new ReportPage(
+                run.study(),
+                run.purpose(),
+                Answer.from(figures),
+                figures,
+                StudentT.CONFIDENCE,
+                run.pictures().stream().map(Reports::credit).toList(),
+                provenance(results)));
+  }
+
+  /** The answer in lines for the console. */
+  static List<String> answer(ResultsFolder results) {
+    Answer answer = Answer.from(figures(results));
+    List<String> lines = new ArrayList<>();
+    lines.add(answer.sentence());
+    lines.add(answer.confidence());
+    lines.addAll(answer.exceptions());
+    return lines;
+  }
+
+  private static List<Figure> figures(ResultsFolder results) {
+    return results.cells().stream().map(Reports::figure).toList();
+  }
+
+  private static Figure figure(Cell cell) {
+    return new Figure(
+        new Condition(
+            cell.impairment(),
+            cell.actsOn(),
+            cell.axis(),
+            cell.severity(),
+            cell.equivalentNoiseVariance(),
+            cell.realisedNoiseVarianceMean(),
+            cell.snrDb()),
+        new CodecColumn(
+            cell.codec(),
+            cell.transform(),
+            cell.over(),
+            cell.keep() < 0 ? "" : Integer.toString(cell.keep()),
+            cell.step()),
+        new Figure.Evidence(cell.pictures(), Math.toIntExact(cell.trials())),
+        new Figure.Quality(
+            cell.psnrMeanDb(),
+            cell.psnrNoiseHalfWidthDb(),
+            cell.psnrPictureHalfWidthDb(),
+            cell.psnrOfMeanMseDb(),
+            cell.psnrP05Db(),
+            cell.ssimMean()),
+        cell.bitsPerPixelMean(),
+        cell.outageRate(),
+        new Figure.Comparison(
+            cell.behindBestDb(),
+            cell.behindBestPAdjusted(),
+            Standing.of(cell.standing().toString())));
+  }
+
+  private static PictureCredit credit(RunRecord.PictureUsed picture) {
+    return new PictureCredit(
+        picture.id(),
+        picture.width(),
+        picture.height(),
+        picture.licence(),
+        picture.attribution(),
+        picture.source());
+  }
+
+  private static Provenance provenance(ResultsFolder results) {
+    RunRecord run = results.run();
+    return new Provenance(
+        new Provenance.Program(
+            run.programVersion(),
+            run.javaVersion() + " (" + run.javaVendor() + ")",
+            run.operatingSystem()),
+        new Provenance.Fingerprints(run.studyFingerprint(), run.corpusFingerprint()),
+        run.noiseModels().stream()
+            .map(
+                model ->
+                    new Provenance.NoiseModel(
+                        model.id(), Integer.toString(model.version()), model.fingerprint()))
+            .toList(),
+        run.seed(),
+        new Provenance.Run(
+            run.start().toString(),
+            run.end() == null ? "" : run.end().toString(),
+            run.trialsPlanned(),
+            run.trialsDone()),
+        settings(results.study()));
+  }
+
+  private static List<Fact> settings(Study study) {
+    return List.of(
+        new Fact("pictures", String.join(", ", study.pictures().select())),
+        new Fact(
+            "longest side",
+            study.pictures().longestSide().isPresent()
+                ? study.pictures().longestSide().getAsInt() + " samples"
+                : "as in the manifest"),
+        new Fact("planes", study.pictures().planes()),
+        new Fact("signal power", study.pictures().signalPower().id()),
+        new Fact("packet payload", study.link().payloadBytes() + " bytes at most"),
+        new Fact("packet overhead", study.link().headerBytes() + " bytes each"),
+        new Fact("packet order", study.link().order().id()),
+        new Fact("replicates", Integer.toString(study.replicates())),
+        new Fact("measures", String.join(", ", study.measures())));
+  }
+}
