@@ -174,11 +174,23 @@ class ResultsFolderTest {
   }
 
   @Test
-  void twoWritersDoNotShareAFolder() {
+  void aLockFileOfSomebodyElseIsLeftAlone() throws IOException {
+    Files.createDirectories(out);
+    Files.writeString(out.resolve("lock"), "mine");
+    assertThatExceptionOfType(BadInput.class)
+        .isThrownBy(() -> ResultsFolder.create(out, false))
+        .withMessageContaining("is not empty");
+    assertThat(Files.readString(out.resolve("lock"))).isEqualTo("mine");
+  }
+
+  @ParameterizedTest
+  @ValueSource(booleans = {false, true})
+  void twoWritersDoNotShareAFolder(boolean overwrite) {
     ResultsWriter first = ResultsFolder.create(out, false);
     try {
+      first.begin(study, Samples.run(study, 2));
       assertThatExceptionOfType(BadInput.class)
-          .isThrownBy(() -> ResultsFolder.create(out, true))
+          .isThrownBy(() -> ResultsFolder.create(out, overwrite))
           .withMessageContaining("being written by another run");
     } finally {
       first.close();
