@@ -257,6 +257,20 @@ class TransformCodecTest extends CodecContractTest {
     }
   }
 
+  /** Entropies of the pattern's samples and horizontal differences, recomputed in Python. */
+  @ParameterizedTest
+  @CsvSource({"64, 7.079411497, 5.330620671", "256, 7.054560487, 5.92443315"})
+  void entropyOfThePattern(int n, double samples, double differences) {
+    int[] values = TestPattern.cvp(n).samples();
+    int[] steps = new int[n * (n - 1)];
+    for (int i = 0; i < steps.length; i++) {
+      int at = i / (n - 1) * n + i % (n - 1) + 1;
+      steps[i] = values[at] - values[at - 1];
+    }
+    assertThat(entropyBits(values) / values.length).isCloseTo(samples, within(1e-9));
+    assertThat(entropyBits(steps) / steps.length).isCloseTo(differences, within(1e-8));
+  }
+
   /** Order-0 entropy times the number of symbols, in bits (Shannon 1948). */
   private static double entropyBits(int[] symbols) {
     Map<Integer, Integer> counts = new TreeMap<>();
