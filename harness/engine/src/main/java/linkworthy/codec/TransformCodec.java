@@ -134,7 +134,7 @@ final class TransformCodec implements Codec {
     for (int k = 0; k < kept && basis.isSent(); k++) {
       strips.add(Units.Run.ofDirection(k, symbols, quantizer));
       if (link.order() == Link.Order.BY_COMPONENT) {
-        strips.add(Units.Run.ofComponent(k, symbols, quantizer));
+        strips.add(Units.Run.ofComponent(k, kept, symbols, quantizer));
       }
     }
     if (link.order() == Link.Order.BY_REGION) {
@@ -143,7 +143,7 @@ final class TransformCodec implements Codec {
       strips.add(new Units.Region(components, quantizer.isNone()));
     } else if (!basis.isSent()) {
       for (int k = 0; k < kept; k++) {
-        strips.add(Units.Run.ofComponent(k, symbols, quantizer));
+        strips.add(Units.Run.ofComponent(k, kept, symbols, quantizer));
       }
     }
     return new Encoding(

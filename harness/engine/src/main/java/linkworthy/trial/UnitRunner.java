@@ -111,7 +111,7 @@ final class UnitRunner {
     List<byte[]> arrived = new ArrayList<>();
     for (int i = 0; i < encoding.packets().size(); i++) {
       if (!losses.lost(i)) {
-        arrived.add(encoding.packets().get(i));
+        arrived.add(encoding.packets().get(i).payload());
       }
     }
     return arrived;

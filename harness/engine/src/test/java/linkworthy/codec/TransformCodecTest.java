@@ -50,7 +50,7 @@ class TransformCodecTest extends CodecContractTest {
   }
 
   private static Decoding through(Codec codec, Picture picture) {
-    return codec.decode(PictureShape.of(picture), codec.encode(picture, new Memo()).packets());
+    return codec.decode(PictureShape.of(picture), codec.encode(picture, new Memo()).payloads());
   }
 
   private static double meanSquaredError(Picture a, Picture b) {
@@ -293,7 +293,7 @@ class TransformCodecTest extends CodecContractTest {
                   YamlNode.parse("test", "{transform: dct, keep: 16, step: 8}"),
                   new Link(96, 23, order))
               .get(0);
-      List<byte[]> packets = new ArrayList<>(codec.encode(picture, new Memo()).packets());
+      List<byte[]> packets = new ArrayList<>(codec.encode(picture, new Memo()).payloads());
       Picture whole = codec.decode(PictureShape.of(picture), packets).picture();
       packets.remove(packets.size() / 2);
       Decoding damaged = codec.decode(PictureShape.of(picture), packets);
@@ -331,7 +331,7 @@ class TransformCodecTest extends CodecContractTest {
                 YamlNode.parse("test", "{transform: mean, keep: 0}"),
                 new Link(32, 0, Link.Order.BY_COMPONENT))
             .get(0);
-    List<byte[]> packets = codec.encode(picture, new Memo()).packets();
+    List<byte[]> packets = codec.encode(picture, new Memo()).payloads();
     assertThat(packets).hasSize(2);
     Decoding first = codec.decode(PictureShape.of(picture), packets.subList(0, 1));
     int[] shown = first.picture().samples();
