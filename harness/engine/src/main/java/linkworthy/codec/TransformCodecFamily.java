@@ -21,8 +21,10 @@ public final class TransformCodecFamily implements CodecFamily {
 
   @Override
   public String help() {
-    return """
-        transform: mean | dct | pca
+    return "transform: "
+        + String.join(" | ", Basis.all().stream().map(Basis::id).toList())
+        + """
+
           over:  rows | blocks (rows for mean and pca, blocks for dct unless given)
           side:  side of a block in samples, 2 to 64 (8)
           keep:  components K; a list means one codec for each. mean takes 0 (means alone) or all

@@ -7,6 +7,7 @@ import java.util.List;
 import java.util.Map;
 import java.util.stream.Stream;
 import linkworthy.input.BadInput;
+import linkworthy.quality.QualityMeasure;
 import linkworthy.statistics.Cell;
 import linkworthy.study.Study;
 import linkworthy.study.StudyWriter;
@@ -124,7 +125,8 @@ public final class ResultsWriter implements AutoCloseable {
       models.forEach(this::write);
     }
     write(ResultsFolder.STUDY, StudyWriter.canonical(study));
-    trials = new AppendedTable<>(TrialsCsv.TABLE, folder.resolve(TrialsCsv.FILE));
+    List<String> further = study.furtherMeasures().stream().map(QualityMeasure::column).toList();
+    trials = new AppendedTable<>(TrialsCsv.TABLE.with(further), folder.resolve(TrialsCsv.FILE));
     timings = new AppendedTable<>(TimingsCsv.TABLE, folder.resolve(TimingsCsv.FILE));
   }
 

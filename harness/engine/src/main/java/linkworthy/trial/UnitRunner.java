@@ -1,7 +1,9 @@
 package linkworthy.trial;
 
 import java.util.ArrayList;
+import java.util.LinkedHashMap;
 import java.util.List;
+import java.util.Map;
 import linkworthy.codec.Codec;
 import linkworthy.codec.Decoding;
 import linkworthy.codec.Encoding;
@@ -166,12 +168,19 @@ final class UnitRunner {
         (double) sentBits / subject.picture().size(),
         sentPackets,
         lostPackets,
-        decoding.completeness() == Decoding.Completeness.NOTHING);
+        decoding.completeness() == Decoding.Completeness.NOTHING,
+        further(decoding.picture()));
   }
 
   private double measured(String measure, Picture decoded) {
     int at = study.measures().indexOf(measure);
     return at < 0 ? Double.NaN : subject.judges().get(at).of(decoded);
+  }
+
+  private Map<String, Double> further(Picture decoded) {
+    Map<String, Double> figures = new LinkedHashMap<>();
+    subject.furtherJudges().forEach((column, judge) -> figures.put(column, judge.of(decoded)));
+    return figures;
   }
 
   private record EncodingKey(String codec) {}

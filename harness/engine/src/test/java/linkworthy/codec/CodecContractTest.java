@@ -29,7 +29,10 @@ public abstract class CodecContractTest {
   /** Id of the family, as its service line and the study key have it. */
   protected abstract String family();
 
-  /** Entries of a study's codec list, as YAML, that work on pictures of 40 x 24 and more. */
+  /**
+   * Entries of a study's codec list, as YAML in block style (a key a line, no braces), that work on
+   * pictures of 40 x 24 and more.
+   */
   protected abstract List<String> entries();
 
   /** Codecs of every entry in both packet orders. */
