@@ -9,6 +9,7 @@ import java.util.Map;
 import java.util.zip.CRC32C;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
+import linkworthy.input.Decimal;
 import linkworthy.link.Link;
 import linkworthy.link.Packetizer;
 import org.jspecify.annotations.Nullable;
@@ -72,7 +73,7 @@ final class TransformCodec implements Codec {
     return new Description(
         basis.id(),
         arrangement.id(),
-        sendsMeansOnly() ? "" : quantizer.isNone() ? "none" : Double.toString(quantizer.step()));
+        sendsMeansOnly() ? "" : quantizer.isNone() ? "none" : Decimal.shortest(quantizer.step()));
   }
 
   @Override

@@ -12,6 +12,7 @@ public final class TransformCodecFamily implements CodecFamily {
       new java.util.LinkedHashSet<>(
           List.of("transform", "over", "side", "keep", "share", "step", "label"));
   private static final int DEFAULT_SIDE = 8;
+  private static final int MAX_LABEL = 64;
   private static final double DEFAULT_STEP = 8;
 
   @Override
@@ -44,7 +45,7 @@ public final class TransformCodecFamily implements CodecFamily {
     Arrangement arrangement = arrangement(entry, basis);
     List<Keep> keeps = keeps(entry, basis);
     List<Quantizer> quantizers = quantizers(entry);
-    String label = entry.find("label").map(YamlNode::text).orElse("");
+    String label = entry.find("label").map(node -> node.line(MAX_LABEL)).orElse("");
     if (!label.isEmpty() && keeps.size() * quantizers.size() > 1) {
       throw entry
           .get("label")

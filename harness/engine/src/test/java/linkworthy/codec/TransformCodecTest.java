@@ -72,7 +72,8 @@ class TransformCodecTest extends CodecContractTest {
         "{transform: pca, share: 0.85, step: 0.5} | pca rows share0.85 step0.5",
         "{transform: mean, keep: 0} | mean rows K0",
         "{transform: dct, side: 4, keep: 3, step: none} | dct blocks4 K3 stepnone",
-        "{transform: dct, keep: 3, label: ours} | ours"
+        "{transform: dct, keep: 3, label: ' ours '} | ours",
+        "{transform: dct, keep: 3, step: 2.0E-3} | dct blocks8 K3 step0.002"
       })
   void labelsFollowFromTheParameters(String entry, String label) {
     assertThat(codec(entry).label()).isEqualTo(label);
@@ -95,6 +96,11 @@ class TransformCodecTest extends CodecContractTest {
         "{transform: mean, keep: 4} | accepted: 0 (the means alone)",
         "{transform: pca, over: rows, side: 8, keep: 4} | belongs to 'over: blocks'",
         "{transform: pca, keep: [4, 8], label: x} | names several codecs",
+        "{transform: dct, keep: 4, label: \"a\\nb\"} | one line of up to 64 characters",
+        "{transform: dct, keep: 4, label: \"a\\u2028b\"} | one line of up to 64 characters",
+        "{transform: dct, keep: 4, label: "
+            + "aaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaa"
+            + "} | one line of up to 64 characters",
         "{keep: 4} | names no codec"
       })
   void wrongEntriesAreRefusedInOneLine(String entry, String complaint) {

@@ -180,4 +180,23 @@ class LocalRunnerTest {
     assertThat(units).isEqualTo(5);
     assertThat(seen).hasSize(5 * plan.study().codecs().size());
   }
+
+  @Test
+  void aStoppedRunKeepsWholeUnitsAndLeavesItsThreadUninterrupted() {
+    Plan plan = plan(STUDY);
+    LocalRunner runner = new LocalRunner(plan, 2);
+    List<Trial> seen = new ArrayList<>();
+    int units =
+        runner.run(
+            0,
+            (unit, trials, timings) -> {
+              seen.addAll(trials);
+              if (unit.index() == 4) {
+                runner.stop();
+              }
+            });
+    assertThat(Thread.interrupted()).isFalse();
+    assertThat(units).isEqualTo(5);
+    assertThat(seen).hasSize(5 * plan.study().codecs().size());
+  }
 }
