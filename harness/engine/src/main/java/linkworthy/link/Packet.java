@@ -7,14 +7,27 @@ package linkworthy.link;
 public final class Packet {
   private final byte[] payload;
   private final Importance importance;
+  private final int node;
 
   /**
+   * A packet sent by the camera node.
+   *
    * @param payload without the link's header
    * @param importance of the most important thing in it
    */
   public Packet(byte[] payload, Importance importance) {
+    this(payload, importance, 0);
+  }
+
+  /**
+   * @param payload without the link's header
+   * @param importance of the most important thing in it
+   * @param node the node that sends it: 0 the camera, from 1 its helpers
+   */
+  public Packet(byte[] payload, Importance importance, int node) {
     this.payload = payload;
     this.importance = importance;
+    this.node = node;
   }
 
   /** The payload itself; not to be changed. */
@@ -29,5 +42,10 @@ public final class Packet {
 
   public Importance importance() {
     return importance;
+  }
+
+  /** The node that sends it: 0 the camera, from 1 its helpers. */
+  public int node() {
+    return node;
   }
 }
