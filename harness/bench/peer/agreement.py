@@ -2,7 +2,7 @@
 
 Usage: agreement.py OURS/trials.csv PEER.csv
 Prints mean PSNR and mean SSIM of both; fails where they differ by more than 0.01 dB or 0.001.
-The two round ties differently (half away from zero; half to even), so they do not agree exactly.
+What is left is the order of summation at the edge between two steps.
 """
 
 import csv

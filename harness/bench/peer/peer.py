@@ -71,6 +71,11 @@ def from_blocks(values, shape):
     return blocks.reshape(down * SIDE, across * SIDE)[: shape[0], : shape[1]]
 
 
+def indices(values):
+    """Rounded half away from zero."""
+    return (values + np.copysign(0.5, values)).astype(np.int32)
+
+
 def entropy_bits(symbols):
     """Bits of all symbols at their own entropy: less than any real code of single symbols."""
     counts = np.bincount(symbols.ravel() - symbols.min())
@@ -109,12 +114,12 @@ class Coded:
             )
             basis = vectors.T[::-1]
             steps = STEP / np.sqrt(d * np.maximum(variances[::-1], 1e-300))
-            directions = np.rint(basis / steps[:, None]).astype(np.int32)
+            directions = indices(basis / steps[:, None])
             self.basis = directions * steps[:, None]
         else:
             self.basis = basis
         coefficients = basis @ (values - self.means[:, None])
-        symbols = np.rint(coefficients / STEP).astype(np.int32)
+        symbols = indices(coefficients / STEP)
         self.coefficients = symbols * STEP
         self.layout(strips_of(self.means, symbols, directions))
 
@@ -166,7 +171,7 @@ class CodedMean(Coded):
 
     def __init__(self, values, step):
         self.means = np.floor(values.mean(axis=1) + 0.5)
-        symbols = np.rint((values - self.means[:, None]) / step).astype(np.int32)
+        symbols = indices((values - self.means[:, None]) / step)
         self.coefficients = symbols * step
         self.layout(
             [
@@ -247,7 +252,10 @@ def gilbert(count, loss_rate, random):
 
 
 def to_samples(values):
-    return np.rint(np.clip(values, 0, PEAK)).astype(np.uint8)
+    """Rounded half up and clipped."""
+    samples = np.clip(values, 0, PEAK)
+    samples += 0.5
+    return samples.astype(np.uint8)
 
 
 def unit(task):
