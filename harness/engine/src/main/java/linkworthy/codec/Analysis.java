@@ -132,7 +132,10 @@ final class Analysis {
     return total / centred[0].length;
   }
 
-  /** The number of components that a rule keeps of this picture. */
+  /**
+   * The number of components that a rule keeps of this picture; all of them where the rule goes by
+   * more than the picture.
+   */
   int kept(Keep keep) {
     if (keep instanceof Keep.First first) {
       return Math.min(first.components(), components());
@@ -146,6 +149,32 @@ final class Analysis {
       }
       return k;
     }
+    if (keep instanceof Keep.NoiseFloor floor) {
+      double threshold = threshold(floor);
+      int k = 0;
+      while (k < components() && singularValue(k) > threshold) {
+        k++;
+      }
+      return k;
+    }
     return components();
+  }
+
+  /** Singular values below this are taken for noise; grey levels. */
+  private double threshold(Keep.NoiseFloor floor) {
+    int d = variables();
+    int n = centred[0].length;
+    double beta = SingularValueThreshold.shape(d, n);
+    if (!floor.isUnknown()) {
+      return SingularValueThreshold.lambda(beta) * Math.sqrt(Math.max(d, n)) * floor.deviation();
+    }
+    int all = Math.min(d, n);
+    double median = (singularValue((all - 1) / 2) + singularValue(all / 2)) / 2;
+    return SingularValueThreshold.omega(beta) * median;
+  }
+
+  /** Singular value k of the centred matrix, where components are principal ones; grey levels. */
+  private double singularValue(int k) {
+    return k < components() ? Math.sqrt(centred[0].length * variance(k)) : 0;
   }
 }
