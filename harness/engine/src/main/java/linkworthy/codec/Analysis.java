@@ -38,16 +38,9 @@ final class Analysis {
     int[] means = new int[values.length];
     double[] rests = new double[values.length];
     for (int i = 0; i < values.length; i++) {
-      double sum = 0;
-      for (double value : values[i]) {
-        sum += value;
-      }
-      double mean = sum / values[i].length;
+      double mean = Matrices.centre(values[i]);
       means[i] = (int) Math.floor(mean + 0.5);
       rests[i] = mean - means[i];
-      for (int j = 0; j < values[i].length; j++) {
-        values[i][j] -= mean;
-      }
     }
     return new Analysis(
         values,

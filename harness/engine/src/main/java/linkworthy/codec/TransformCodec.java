@@ -78,7 +78,12 @@ final class TransformCodec implements Codec {
   @Override
   public Map<String, Object> settings() {
     Map<String, Object> settings = new LinkedHashMap<>();
-    settings.put("transform", basis.id());
+    if (basis instanceof SharedPcaBasis) {
+      settings.put("transform", PcaBasis.ID);
+      settings.put("basis", "shared");
+    } else {
+      settings.put("transform", basis.id());
+    }
     if (arrangement instanceof Arrangement.Blocks blocks) {
       settings.put("over", "blocks");
       settings.put("side", blocks.side());
@@ -107,11 +112,7 @@ final class TransformCodec implements Codec {
   @Override
   public void check(PictureShape shape) {
     arrangement.check(shape);
-    try {
-      basis.check(arrangement, shape);
-    } catch (BadInput e) {
-      throw new BadInput("codec '" + label + "': " + e.getMessage(), e);
-    }
+    named(() -> basis.check(arrangement, shape));
     int d = arrangement.variables(shape);
     if (keep instanceof Keep.First first && first.components() > d) {
       throw new BadInput(
@@ -128,6 +129,35 @@ final class TransformCodec implements Codec {
               + "; accepted: 0 to "
               + d);
     }
+  }
+
+  /** Runs a check and puts the codec's name before its complaint. */
+  private void named(Runnable check) {
+    try {
+      check.run();
+    } catch (BadInput e) {
+      throw new BadInput("codec '" + label + "': " + e.getMessage(), e);
+    }
+  }
+
+  @Override
+  public boolean needsTraining() {
+    return basis instanceof SharedPcaBasis;
+  }
+
+  @Override
+  public Codec trainedOn(Training training) {
+    if (!needsTraining()) {
+      return this;
+    }
+    SharedPcaBasis trained = new SharedPcaBasis(training);
+    named(() -> trained.checkTraining(arrangement));
+    return new TransformCodec(label, arrangement, trained, keep, quantization, link);
+  }
+
+  @Override
+  public String training() {
+    return basis instanceof SharedPcaBasis shared ? shared.fingerprint() : "";
   }
 
   @Override

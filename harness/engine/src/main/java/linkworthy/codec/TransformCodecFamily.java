@@ -12,6 +12,7 @@ public final class TransformCodecFamily implements CodecFamily {
       new java.util.LinkedHashSet<>(
           List.of(
               "transform",
+              "basis",
               "over",
               "side",
               "keep",
@@ -34,6 +35,8 @@ public final class TransformCodecFamily implements CodecFamily {
   public String help() {
     return """
         transform: mean | dct | wht | pca
+          basis: own (sent with each picture) or shared (learnt from the study's pictures.train,
+                 installed at both ends, not sent; over rows all pictures need as many rows): pca
           over:  rows | blocks (rows for mean and pca, blocks for dct and wht unless given)
           side:  side of a block in samples, 2 to 64 (8); wht: a power of two, rows likewise
           keep:  components K; a list means one codec for each. mean takes 0 (means alone) or all
@@ -54,7 +57,7 @@ public final class TransformCodecFamily implements CodecFamily {
   @Override
   public List<Codec> read(YamlNode entry, Link link) {
     entry.onlyKeys(KEYS);
-    Basis basis = basis(entry.get("transform"));
+    Basis basis = basis(entry);
     Arrangement arrangement = arrangement(entry, basis);
     List<Keep> keeps = KeepReader.read(entry, basis);
     List<? extends Quantization> quantizations = quantizations(entry, basis, arrangement);
@@ -73,8 +76,17 @@ public final class TransformCodecFamily implements CodecFamily {
     return codecs;
   }
 
-  private static Basis basis(YamlNode node) {
-    String id = node.oneOf(Basis.all().stream().map(Basis::id).toList());
+  private static Basis basis(YamlNode entry) {
+    String id = entry.get("transform").oneOf(Basis.all().stream().map(Basis::id).toList());
+    var basis = entry.find("basis");
+    if (basis.isPresent()) {
+      if (!id.equals(PcaBasis.ID)) {
+        throw basis.get().refuse("does not go with 'transform: " + id + "'; accepted with pca");
+      }
+      if (basis.get().oneOf(List.of("own", "shared")).equals("shared")) {
+        return new SharedPcaBasis(null);
+      }
+    }
     return Basis.all().stream().filter(b -> b.id().equals(id)).findFirst().orElseThrow();
   }
 
@@ -83,7 +95,7 @@ public final class TransformCodecFamily implements CodecFamily {
         entry
             .find("over")
             .map(node -> node.oneOf(List.of("rows", "blocks")).equals("blocks"))
-            .orElse(!basis.isSent() && !basis.isIdentity());
+            .orElse(Set.of("dct", "wht").contains(basis.id()));
     if (blocks) {
       return new Arrangement.Blocks(
           entry.find("side").map(node -> side(node, basis)).orElse(DEFAULT_SIDE));
