@@ -118,19 +118,25 @@ final class Reports {
   }
 
   private static List<Fact> settings(Study study) {
-    return List.of(
-        new Fact("pictures", String.join(", ", study.pictures().select())),
-        new Fact(
-            "longest side",
-            study.pictures().longestSide().isPresent()
-                ? study.pictures().longestSide().getAsInt() + " samples"
-                : "as in the manifest"),
-        new Fact("planes", study.pictures().planes()),
-        new Fact("signal power", study.pictures().signalPower().id()),
-        new Fact("packet payload", study.link().payloadBytes() + " bytes at most"),
-        new Fact("packet overhead", study.link().headerBytes() + " bytes each"),
-        new Fact("packet order", study.link().order().id()),
-        new Fact("replicates", Integer.toString(study.replicates())),
-        new Fact("measures", String.join(", ", study.measures())));
+    List<Fact> facts = new ArrayList<>();
+    facts.add(new Fact("pictures", String.join(", ", study.pictures().select())));
+    if (!study.pictures().train().isEmpty()) {
+      facts.add(new Fact("training pictures", String.join(", ", study.pictures().train())));
+    }
+    facts.addAll(
+        List.of(
+            new Fact(
+                "longest side",
+                study.pictures().longestSide().isPresent()
+                    ? study.pictures().longestSide().getAsInt() + " samples"
+                    : "as in the manifest"),
+            new Fact("planes", study.pictures().planes()),
+            new Fact("signal power", study.pictures().signalPower().id()),
+            new Fact("packet payload", study.link().payloadBytes() + " bytes at most"),
+            new Fact("packet overhead", study.link().headerBytes() + " bytes each"),
+            new Fact("packet order", study.link().order().id()),
+            new Fact("replicates", Integer.toString(study.replicates())),
+            new Fact("measures", String.join(", ", study.measures()))));
+    return facts;
   }
 }

@@ -38,16 +38,9 @@ final class Analysis {
     int[] means = new int[values.length];
     double[] rests = new double[values.length];
     for (int i = 0; i < values.length; i++) {
-      double sum = 0;
-      for (double value : values[i]) {
-        sum += value;
-      }
-      double mean = sum / values[i].length;
+      double mean = Matrices.centre(values[i]);
       means[i] = (int) Math.floor(mean + 0.5);
       rests[i] = mean - means[i];
-      for (int j = 0; j < values[i].length; j++) {
-        values[i][j] -= mean;
-      }
     }
     return new Analysis(
         values,
@@ -132,7 +125,10 @@ final class Analysis {
     return total / centred[0].length;
   }
 
-  /** The number of components that a rule keeps of this picture. */
+  /**
+   * The number of components that a rule keeps of this picture; all of them where the rule goes by
+   * more than the picture.
+   */
   int kept(Keep keep) {
     if (keep instanceof Keep.First first) {
       return Math.min(first.components(), components());
@@ -146,6 +142,32 @@ final class Analysis {
       }
       return k;
     }
+    if (keep instanceof Keep.NoiseFloor floor) {
+      double threshold = threshold(floor);
+      int k = 0;
+      while (k < components() && singularValue(k) > threshold) {
+        k++;
+      }
+      return k;
+    }
     return components();
+  }
+
+  /** Singular values below this are taken for noise; grey levels. */
+  private double threshold(Keep.NoiseFloor floor) {
+    int d = variables();
+    int n = centred[0].length;
+    double beta = SingularValueThreshold.shape(d, n);
+    if (!floor.isUnknown()) {
+      return SingularValueThreshold.lambda(beta) * Math.sqrt(Math.max(d, n)) * floor.deviation();
+    }
+    int all = Math.min(d, n);
+    double median = (singularValue((all - 1) / 2) + singularValue(all / 2)) / 2;
+    return SingularValueThreshold.omega(beta) * median;
+  }
+
+  /** Singular value k of the centred matrix, where components are principal ones; grey levels. */
+  private double singularValue(int k) {
+    return k < components() ? Math.sqrt(centred[0].length * variance(k)) : 0;
   }
 }

@@ -20,6 +20,13 @@ public interface Basis {
   }
 
   /**
+   * Checks that there are directions for pictures of this shape.
+   *
+   * @throws linkworthy.input.BadInput if not
+   */
+  default void check(Arrangement arrangement, PictureShape shape) {}
+
+  /**
    * The directions for pictures of this shape, or for this very picture if the basis is sent.
    *
    * @param centred d variables by n observations, each variable with mean 0
@@ -28,7 +35,7 @@ public interface Basis {
 
   /** Every basis of the transform codec. */
   static List<Basis> all() {
-    return List.of(new MeanBasis(), new DctBasis(), new PcaBasis());
+    return List.of(new MeanBasis(), new DctBasis(), new WalshBasis(), new PcaBasis());
   }
 
   /** Directions, most important first. */

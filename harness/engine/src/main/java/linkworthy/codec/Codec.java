@@ -26,6 +26,25 @@ public interface Codec {
    */
   void check(PictureShape shape);
 
+  /** Whether the codec must be {@link #trainedOn trained} before anything else is asked of it. */
+  default boolean needsTraining() {
+    return false;
+  }
+
+  /**
+   * The same codec after its training; itself if it needs none.
+   *
+   * @throws BadInput if it cannot be trained on these pictures; one line that says why
+   */
+  default Codec trainedOn(Training training) {
+    return this;
+  }
+
+  /** Fingerprint of what a training installed at both ends, a part of the trial's key; or empty. */
+  default String training() {
+    return "";
+  }
+
   /**
    * Encodes a picture into packets.
    *

@@ -31,7 +31,7 @@ final class DctBasis implements Basis {
         key ->
             new Directions(
                 arrangement instanceof Arrangement.Blocks blocks
-                    ? twoDimensional(blocks.side())
+                    ? zigZagProducts(oneDimensional(blocks.side()))
                     : oneDimensional(d),
                 new double[0]));
   }
@@ -47,8 +47,9 @@ final class DctBasis implements Basis {
     return rows;
   }
 
-  private static double[][] twoDimensional(int side) {
-    double[][] one = oneDimensional(side);
+  /** Separable products of one-dimensional functions, in zig-zag order of their two numbers. */
+  static double[][] zigZagProducts(double[][] one) {
+    int side = one.length;
     int[] order = zigZag(side);
     double[][] rows = new double[side * side][side * side];
     for (int k = 0; k < rows.length; k++) {

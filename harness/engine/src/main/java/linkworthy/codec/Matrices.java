@@ -10,6 +10,19 @@ import org.ejml.data.DMatrixRMaj;
 final class Matrices {
   private Matrices() {}
 
+  /** Takes the mean off a variable and returns it. */
+  static double centre(double[] variable) {
+    double sum = 0;
+    for (double value : variable) {
+      sum += value;
+    }
+    double mean = sum / variable.length;
+    for (int j = 0; j < variable.length; j++) {
+      variable[j] -= mean;
+    }
+    return mean;
+  }
+
   /**
    * Population covariance {@code (1/n) Xc Xc'} of d centred variables by n observations; grey
    * levels squared.

@@ -13,11 +13,13 @@ import org.ejml.data.DMatrixRMaj;
  * but rounding.
  */
 final class PcaBasis implements Basis {
+  static final String ID = "pca";
+
   private static final double NEGLIGIBLE = 1e-10;
 
   @Override
   public String id() {
-    return "pca";
+    return ID;
   }
 
   @Override
@@ -30,16 +32,24 @@ final class PcaBasis implements Basis {
     return of(Matrices.covariance(centred));
   }
 
-  /** Principal directions of a symmetric matrix given row by row, {@code d * d} entries. */
+  /** Principal directions of a covariance, without the negligible ones. */
   static Directions of(DMatrixRMaj covariance) {
-    int d = covariance.getNumRows();
     double total = 0;
-    for (int i = 0; i < d; i++) {
+    for (int i = 0; i < covariance.getNumRows(); i++) {
       total += covariance.get(i, i);
     }
+    return above(NEGLIGIBLE * total, covariance);
+  }
+
+  /** All d principal directions of a covariance. */
+  static Directions allOf(DMatrixRMaj covariance) {
+    return above(Double.NEGATIVE_INFINITY, covariance);
+  }
+
+  private static Directions above(double floor, DMatrixRMaj covariance) {
+    int d = covariance.getNumRows();
     SymmetricEigen eigen = SymmetricEigen.of(covariance);
     double[] values = eigen.values();
-    double floor = NEGLIGIBLE * total;
     int[] order =
         IntStream.range(0, d)
             .boxed()

@@ -9,7 +9,7 @@ import linkworthy.input.Require;
  *
  * @param step in the unit of the values; infinity means 32-bit floats instead of indices
  */
-public record Quantizer(double step) {
+public record Quantizer(double step) implements Quantization {
   /** No quantisation: values travel as 32-bit floats. */
   public static final Quantizer NONE = new Quantizer(Double.POSITIVE_INFINITY);
 
@@ -21,7 +21,12 @@ public record Quantizer(double step) {
     }
   }
 
-  /** Whether values travel as 32-bit floats. */
+  @Override
+  public Quantizer component(int k) {
+    return this;
+  }
+
+  @Override
   public boolean isNone() {
     return step == Double.POSITIVE_INFINITY;
   }
@@ -51,9 +56,14 @@ public record Quantizer(double step) {
     return Float.isFinite(value) ? value : 0;
   }
 
-  /** As in labels: {@code step8}, {@code stepnone}. */
-  String label() {
+  @Override
+  public String label() {
     return "step" + (isNone() ? "none" : plain(step));
+  }
+
+  @Override
+  public String column() {
+    return isNone() ? "none" : Decimal.shortest(step);
   }
 
   /** A number without a trailing {@code .0}. */

@@ -13,7 +13,7 @@ final class Received {
   private final PictureShape shape;
   private final int observations;
   private final boolean sentBasis;
-  private final Quantizer quantizer;
+  private final Quantization quantization;
   private final int[] means;
   private final BitSet gotMeans = new BitSet();
   private final double[] @Nullable [] coefficients;
@@ -34,12 +34,12 @@ final class Received {
       int observations,
       int most,
       boolean sentBasis,
-      Quantizer quantizer) {
+      Quantization quantization) {
     this.tag = tag;
     this.shape = shape;
     this.observations = observations;
     this.sentBasis = sentBasis;
-    this.quantizer = quantizer;
+    this.quantization = quantization;
     this.means = new int[variables];
     this.coefficients = new double[most][];
     this.gotCoefficients = new BitSet[most];
@@ -114,14 +114,20 @@ final class Received {
   }
 
   private boolean readComponent(BitReader in, int k, int offset, int count) {
-    int parameter = quantizer.isNone() ? -1 : (int) in.read(4);
+    int parameter = quantization.isNone() ? -1 : (int) in.read(4);
     return readValues(
-        in, parameter, quantizer, component(k), gotCoefficients[k], offset, offset + count);
+        in,
+        parameter,
+        quantization.component(k),
+        component(k),
+        gotCoefficients[k],
+        offset,
+        offset + count);
   }
 
   private boolean readDirection(BitReader in, int k, int offset, int count) {
-    Quantizer step = quantizer;
-    if (!quantizer.isNone()) {
+    Quantizer step = Quantizer.NONE;
+    if (!quantization.isNone()) {
       float sent = Float.intBitsToFloat((int) in.read(32));
       if (!(sent > 0 && sent <= Float.MAX_VALUE)) {
         return false;
@@ -148,11 +154,17 @@ final class Received {
     boolean one = in.read(1) == 1;
     int parameter = -1;
     for (int k = first; k < first + components; k++) {
-      if (!quantizer.isNone() && (!one || k == first)) {
+      if (!quantization.isNone() && (!one || k == first)) {
         parameter = (int) in.read(4);
       }
       if (!readValues(
-          in, parameter, quantizer, component(k), gotCoefficients[k], offset, offset + count)) {
+          in,
+          parameter,
+          quantization.component(k),
+          component(k),
+          gotCoefficients[k],
+          offset,
+          offset + count)) {
         return false;
       }
     }

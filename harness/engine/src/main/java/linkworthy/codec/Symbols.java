@@ -9,13 +9,13 @@ import org.jspecify.annotations.Nullable;
  */
 final class Symbols {
   private final Analysis analysis;
-  private final Quantizer quantizer;
+  private final Quantization quantization;
   private final int[] @Nullable [] coefficients;
   private final int[] @Nullable [] directions;
 
-  Symbols(Analysis analysis, Quantizer quantizer) {
+  Symbols(Analysis analysis, Quantization quantization) {
     this.analysis = analysis;
-    this.quantizer = quantizer;
+    this.quantization = quantization;
     this.coefficients = new int[analysis.components()][];
     this.directions = new int[analysis.components()][];
   }
@@ -24,7 +24,7 @@ final class Symbols {
   synchronized int[] component(int k) {
     int[] known = coefficients[k];
     if (known == null) {
-      known = quantizer.symbols(analysis.component(k));
+      known = quantization.component(k).symbols(analysis.component(k));
       coefficients[k] = known;
     }
     return known;
@@ -46,6 +46,7 @@ final class Symbols {
    * sent.
    */
   Quantizer directionQuantizer(int k) {
+    Quantizer quantizer = quantization.component(k);
     return quantizer.isNone()
         ? quantizer
         : new Quantizer(

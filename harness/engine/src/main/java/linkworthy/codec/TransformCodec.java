@@ -6,11 +6,12 @@ import java.util.Arrays;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
+import java.util.function.IntPredicate;
 import java.util.zip.CRC32C;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
-import linkworthy.input.Decimal;
 import linkworthy.link.Link;
+import linkworthy.link.Packet;
 import linkworthy.link.Packetizer;
 import org.jspecify.annotations.Nullable;
 
@@ -27,7 +28,7 @@ final class TransformCodec implements Codec {
   private final Arrangement arrangement;
   private final Basis basis;
   private final Keep keep;
-  private final Quantizer quantizer;
+  private final Quantization quantization;
   private final Link link;
 
   /**
@@ -38,12 +39,12 @@ final class TransformCodec implements Codec {
       Arrangement arrangement,
       Basis basis,
       Keep keep,
-      Quantizer quantizer,
+      Quantization quantization,
       Link link) {
     this.arrangement = arrangement;
     this.basis = basis;
     this.keep = keep;
-    this.quantizer = quantizer;
+    this.quantization = quantization;
     this.link = link;
     this.label = label.isEmpty() ? derivedLabel() : label;
   }
@@ -54,7 +55,7 @@ final class TransformCodec implements Codec {
       words.add(keep.label());
     }
     if (!sendsMeansOnly()) {
-      words.add(quantizer.label());
+      words.add(quantization.label());
     }
     return String.join(" ", words);
   }
@@ -71,15 +72,18 @@ final class TransformCodec implements Codec {
   @Override
   public Description description() {
     return new Description(
-        basis.id(),
-        arrangement.id(),
-        sendsMeansOnly() ? "" : quantizer.isNone() ? "none" : Decimal.shortest(quantizer.step()));
+        basis.id(), arrangement.id(), sendsMeansOnly() ? "" : quantization.column());
   }
 
   @Override
   public Map<String, Object> settings() {
     Map<String, Object> settings = new LinkedHashMap<>();
-    settings.put("transform", basis.id());
+    if (basis instanceof SharedPcaBasis) {
+      settings.put("transform", PcaBasis.ID);
+      settings.put("basis", "shared");
+    } else {
+      settings.put("transform", basis.id());
+    }
     if (arrangement instanceof Arrangement.Blocks blocks) {
       settings.put("over", "blocks");
       settings.put("side", blocks.side());
@@ -90,8 +94,17 @@ final class TransformCodec implements Codec {
       settings.put("keep", first.components());
     } else if (keep instanceof Keep.Share share) {
       settings.put("share", share.share());
+    } else if (keep instanceof Keep.Rate rate) {
+      settings.put("bits-per-pixel", rate.bitsPerPixel());
+    } else if (keep instanceof Keep.NoiseFloor floor) {
+      settings.put("noise-floor", floor.isUnknown() ? true : (Object) floor.deviation());
     }
-    settings.put("step", quantizer.isNone() ? "none" : (Object) quantizer.step());
+    if (quantization instanceof Quantizer quantizer) {
+      settings.put("step", quantizer.isNone() ? "none" : (Object) quantizer.step());
+    } else if (quantization instanceof LuminanceSteps steps) {
+      settings.put("weights", LuminanceSteps.ID);
+      settings.put("quality", steps.quality());
+    }
     settings.put("label", label);
     return settings;
   }
@@ -99,6 +112,7 @@ final class TransformCodec implements Codec {
   @Override
   public void check(PictureShape shape) {
     arrangement.check(shape);
+    named(() -> basis.check(arrangement, shape));
     int d = arrangement.variables(shape);
     if (keep instanceof Keep.First first && first.components() > d) {
       throw new BadInput(
@@ -117,6 +131,35 @@ final class TransformCodec implements Codec {
     }
   }
 
+  /** Runs a check and puts the codec's name before its complaint. */
+  private void named(Runnable check) {
+    try {
+      check.run();
+    } catch (BadInput e) {
+      throw new BadInput("codec '" + label + "': " + e.getMessage(), e);
+    }
+  }
+
+  @Override
+  public boolean needsTraining() {
+    return basis instanceof SharedPcaBasis;
+  }
+
+  @Override
+  public Codec trainedOn(Training training) {
+    if (!needsTraining()) {
+      return this;
+    }
+    SharedPcaBasis trained = new SharedPcaBasis(training);
+    named(() -> trained.checkTraining(arrangement));
+    return new TransformCodec(label, arrangement, trained, keep, quantization, link);
+  }
+
+  @Override
+  public String training() {
+    return basis instanceof SharedPcaBasis shared ? shared.fingerprint() : "";
+  }
+
   @Override
   public Encoding encode(Picture picture, Memo memo) {
     Analysis analysis =
@@ -126,30 +169,76 @@ final class TransformCodec implements Codec {
             () -> Analysis.of(picture, arrangement, basis));
     Symbols symbols =
         memo.once(
-            new SymbolsKey(arrangement, basis.id(), quantizer),
+            new SymbolsKey(arrangement, basis.id(), quantization),
             Symbols.class,
-            () -> new Symbols(analysis, quantizer));
-    int kept = analysis.kept(keep);
+            () -> new Symbols(analysis, quantization));
+    PictureShape shape = PictureShape.of(picture);
+    int kept =
+        keep instanceof Keep.Rate rate
+            ? largestWithin(rate.bitsPerPixel() * picture.size(), shape, analysis, symbols, memo)
+            : analysis.kept(keep);
+    return new Encoding(pack(shape, analysis, symbols, kept), kept);
+  }
+
+  /** The largest K whose sent bits stay within a budget; 0 where none does. */
+  private int largestWithin(
+      double budget, PictureShape shape, Analysis analysis, Symbols symbols, Memo memo) {
+    return largest(
+        analysis.components(),
+        k ->
+            memo.once(
+                    new SentBitsKey(arrangement, basis.id(), quantization, link, k),
+                    Long.class,
+                    () -> sentBits(pack(shape, analysis, symbols, k)))
+                <= budget);
+  }
+
+  private long sentBits(List<Packet> packets) {
+    return link.sentBits(packets.size(), packets.stream().mapToLong(p -> 8L * p.length()).sum());
+  }
+
+  /**
+   * The largest number up to {@code most} that fits, where every smaller one does too; by doubling
+   * and halving, so that few numbers much larger than the result are tried.
+   */
+  private static int largest(int most, IntPredicate fits) {
+    int good = 0;
+    int next = 1;
+    while (next <= most && fits.test(next)) {
+      good = next;
+      next *= 2;
+    }
+    int bad = Math.min(next, most + 1);
+    while (bad - good > 1) {
+      int middle = (good + bad) >>> 1;
+      if (fits.test(middle)) {
+        good = middle;
+      } else {
+        bad = middle;
+      }
+    }
+    return good;
+  }
+
+  private List<Packet> pack(PictureShape shape, Analysis analysis, Symbols symbols, int kept) {
     List<Packetizer.Strip> strips = new ArrayList<>();
-    strips.add(Units.Run.ofMeans(analysis.means(), picture.bitDepth()));
+    strips.add(Units.Run.ofMeans(analysis.means(), shape.bitDepth()));
     for (int k = 0; k < kept && basis.isSent(); k++) {
-      strips.add(Units.Run.ofDirection(k, symbols, quantizer));
+      strips.add(Units.Run.ofDirection(k, symbols, quantization.component(k)));
       if (link.order() == Link.Order.BY_COMPONENT) {
-        strips.add(Units.Run.ofComponent(k, kept, symbols, quantizer));
+        strips.add(Units.Run.ofComponent(k, kept, symbols, quantization.component(k)));
       }
     }
     if (link.order() == Link.Order.BY_REGION) {
       int[][] components = new int[kept][];
       Arrays.setAll(components, symbols::component);
-      strips.add(new Units.Region(components, quantizer.isNone()));
+      strips.add(new Units.Region(components, quantization.isNone()));
     } else if (!basis.isSent()) {
       for (int k = 0; k < kept; k++) {
-        strips.add(Units.Run.ofComponent(k, kept, symbols, quantizer));
+        strips.add(Units.Run.ofComponent(k, kept, symbols, quantization.component(k)));
       }
     }
-    return new Encoding(
-        Packetizer.pack(preamble(PictureShape.of(picture), kept), strips, link.payloadBytes()),
-        kept);
+    return Packetizer.pack(preamble(shape, kept), strips, link.payloadBytes());
   }
 
   private byte[] preamble(PictureShape shape, int kept) {
@@ -171,7 +260,7 @@ final class TransformCodec implements Codec {
             + " "
             + keep.label()
             + " "
-            + quantizer.label()
+            + quantization.label()
             + " "
             + shape.bitDepth();
     crc.update(agreed.getBytes(StandardCharsets.UTF_8));
@@ -184,7 +273,13 @@ final class TransformCodec implements Codec {
     int most = keep instanceof Keep.First first ? Math.min(d, first.components()) : d;
     Received received =
         new Received(
-            tag(shape), shape, d, arrangement.observations(shape), most, basis.isSent(), quantizer);
+            tag(shape),
+            shape,
+            d,
+            arrangement.observations(shape),
+            most,
+            basis.isSent(),
+            quantization);
     arrived.forEach(received::add);
     Decoding.Completeness completeness =
         received.isNothing()
@@ -241,5 +336,8 @@ final class TransformCodec implements Codec {
 
   private record AnalysisKey(Arrangement arrangement, String basis) {}
 
-  private record SymbolsKey(Arrangement arrangement, String basis, Quantizer quantizer) {}
+  private record SymbolsKey(Arrangement arrangement, String basis, Quantization quantization) {}
+
+  private record SentBitsKey(
+      Arrangement arrangement, String basis, Quantization quantization, Link link, int kept) {}
 }

@@ -10,7 +10,19 @@ import linkworthy.link.Link;
 public final class TransformCodecFamily implements CodecFamily {
   private static final Set<String> KEYS =
       new java.util.LinkedHashSet<>(
-          List.of("transform", "over", "side", "keep", "share", "step", "label"));
+          List.of(
+              "transform",
+              "basis",
+              "over",
+              "side",
+              "keep",
+              "share",
+              "bits-per-pixel",
+              "noise-floor",
+              "step",
+              "weights",
+              "quality",
+              "label"));
   private static final int DEFAULT_SIDE = 8;
   private static final int MAX_LABEL = 64;
   private static final double DEFAULT_STEP = 8;
@@ -26,11 +38,18 @@ public final class TransformCodecFamily implements CodecFamily {
         + String.join(" | ", Basis.all().stream().map(Basis::id).toList())
         + """
 
-          over:  rows | blocks (rows for mean and pca, blocks for dct unless given)
-          side:  side of a block in samples, 2 to 64 (8)
+          basis: own (sent with each picture) or shared (learnt from the study's pictures.train,
+                 installed at both ends, not sent; over rows all pictures need as many rows): pca
+          over:  rows | blocks (rows for mean and pca, blocks for dct and wht unless given)
+          side:  side of a block in samples, 2 to 64 (8); wht: a power of two, rows likewise
           keep:  components K; a list means one codec for each. mean takes 0 (means alone) or all
           share: instead of keep, the share of the variance that the components must reach
+          bits-per-pixel: instead of keep, as many components as fit into these sent bits
+          noise-floor: instead of keep, the standard deviation of the noise in grey levels, or true
+                 if it is unknown: the components above it (pca)
           step:  quantiser step in grey levels, or none for 32-bit floats (8)
+          weights: instead of step, luminance: a step for each coefficient of dct blocks of side 8
+          quality: with weights, 1 (coarse) to 100
           label: name in tables (derived from the above)
         Sent, and counted: the mean of each variable in B bits; K components, Golomb-Rice coded;
         for pca also the K directions, as many bits again where the picture is small. At the node,
@@ -41,27 +60,36 @@ public final class TransformCodecFamily implements CodecFamily {
   @Override
   public List<Codec> read(YamlNode entry, Link link) {
     entry.onlyKeys(KEYS);
-    Basis basis = basis(entry.get("transform"));
+    Basis basis = basis(entry);
     Arrangement arrangement = arrangement(entry, basis);
-    List<Keep> keeps = keeps(entry, basis);
-    List<Quantizer> quantizers = quantizers(entry);
+    List<Keep> keeps = KeepReader.read(entry, basis);
+    List<? extends Quantization> quantizations = quantizations(entry, basis, arrangement);
     String label = entry.find("label").map(node -> node.line(MAX_LABEL)).orElse("");
-    if (!label.isEmpty() && keeps.size() * quantizers.size() > 1) {
+    if (!label.isEmpty() && keeps.size() * quantizations.size() > 1) {
       throw entry
           .get("label")
           .refuse("names several codecs; accepted: one keep and one step with a label");
     }
     List<Codec> codecs = new ArrayList<>();
     for (Keep keep : keeps) {
-      for (Quantizer quantizer : quantizers) {
-        codecs.add(new TransformCodec(label, arrangement, basis, keep, quantizer, link));
+      for (Quantization quantization : quantizations) {
+        codecs.add(new TransformCodec(label, arrangement, basis, keep, quantization, link));
       }
     }
     return codecs;
   }
 
-  private static Basis basis(YamlNode node) {
-    String id = node.oneOf(Basis.all().stream().map(Basis::id).toList());
+  private static Basis basis(YamlNode entry) {
+    String id = entry.get("transform").oneOf(Basis.all().stream().map(Basis::id).toList());
+    var basis = entry.find("basis");
+    if (basis.isPresent()) {
+      if (!id.equals(PcaBasis.ID)) {
+        throw basis.get().refuse("does not go with 'transform: " + id + "'; accepted with pca");
+      }
+      if (basis.get().oneOf(List.of("own", "shared")).equals("shared")) {
+        return new SharedPcaBasis(null);
+      }
+    }
     return Basis.all().stream().filter(b -> b.id().equals(id)).findFirst().orElseThrow();
   }
 
@@ -70,10 +98,10 @@ public final class TransformCodecFamily implements CodecFamily {
         entry
             .find("over")
             .map(node -> node.oneOf(List.of("rows", "blocks")).equals("blocks"))
-            .orElse(basis.id().equals("dct"));
+            .orElse(Set.of("dct", "wht").contains(basis.id()));
     if (blocks) {
       return new Arrangement.Blocks(
-          entry.find("side").map(node -> (int) node.integer(2, 64)).orElse(DEFAULT_SIDE));
+          entry.find("side").map(node -> side(node, basis)).orElse(DEFAULT_SIDE));
     }
     entry
         .find("side")
@@ -84,52 +112,45 @@ public final class TransformCodecFamily implements CodecFamily {
     return new Arrangement.Rows();
   }
 
-  private static List<Keep> keeps(YamlNode entry, Basis basis) {
-    var keep = entry.find("keep");
-    var share = entry.find("share");
-    if (keep.isPresent() && share.isPresent()) {
-      throw share.get().refuse("stands beside 'keep'; accepted: one of the two");
+  private static int side(YamlNode node, Basis basis) {
+    int side = (int) node.integer(2, 64);
+    if (basis instanceof WalshBasis && !WalshBasis.isPowerOfTwo(side)) {
+      throw node.bad("2, 4, 8, 16, 32 or 64 with 'transform: wht'");
     }
-    if (basis.isIdentity()) {
-      if (share.isPresent()) {
-        throw share
-            .get()
-            .refuse("does not go with 'transform: mean'; accepted: keep: 0, or nothing");
-      }
-      return keep.map(node -> meansOnly(node)).orElse(List.of(new Keep.All()));
-    }
-    if (share.isPresent()) {
-      return share.get().oneOrMore().stream().<Keep>map(TransformCodecFamily::share).toList();
-    }
-    if (keep.isEmpty()) {
-      throw entry.refuse("has neither 'keep' nor 'share'; accepted: one of the two");
-    }
-    return keep.get().oneOrMore().stream()
-        .<Keep>map(node -> new Keep.First((int) node.integer(0, 1 << 20)))
-        .toList();
+    return side;
   }
 
-  private static List<Keep> meansOnly(YamlNode node) {
-    if (node.oneOrMore().size() == 1 && node.oneOrMore().get(0).integer(0, 1 << 20) == 0) {
-      return List.of(new Keep.First(0));
+  private static List<? extends Quantization> quantizations(
+      YamlNode entry, Basis basis, Arrangement arrangement) {
+    if (entry.find("weights").isPresent()) {
+      return luminanceSteps(entry, basis, arrangement);
     }
-    throw node.bad("0 (the means alone), or no 'keep' for all, with 'transform: mean'");
-  }
-
-  private static Keep share(YamlNode node) {
-    String accepted = "a share above 0, up to 1";
-    double share = node.number(accepted);
-    if (!(share > 0 && share <= 1)) {
-      throw node.bad(accepted);
-    }
-    return new Keep.Share(share);
-  }
-
-  private static List<Quantizer> quantizers(YamlNode entry) {
+    entry
+        .find("quality")
+        .ifPresent(
+            node -> {
+              throw node.refuse("stands without 'weights'; accepted: both or neither");
+            });
     return entry
         .find("step")
         .map(node -> node.oneOrMore().stream().map(TransformCodecFamily::quantizer).toList())
         .orElse(List.of(new Quantizer(DEFAULT_STEP)));
+  }
+
+  private static List<LuminanceSteps> luminanceSteps(
+      YamlNode entry, Basis basis, Arrangement arrangement) {
+    YamlNode weights = entry.get("weights");
+    String unused = weights.oneOf(List.of(LuminanceSteps.ID));
+    if (!basis.id().equals("dct")
+        || !arrangement.equals(new Arrangement.Blocks(LuminanceSteps.SIDE))) {
+      throw weights.refuse("is for blocks of 8 x 8; accepted with 'transform: dct', side 8");
+    }
+    if (entry.find("step").isPresent()) {
+      throw entry.get("step").refuse("stands beside 'weights'; accepted: one of the two");
+    }
+    return entry.get("quality").oneOrMore().stream()
+        .map(node -> new LuminanceSteps((int) node.integer(1, 100)))
+        .toList();
   }
 
   private static Quantizer quantizer(YamlNode node) {

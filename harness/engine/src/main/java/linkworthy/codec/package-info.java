@@ -3,9 +3,9 @@
  * picture.
  *
  * <p>The transform codec is an {@link linkworthy.codec.Arrangement} (rows or blocks) times a {@link
- * linkworthy.codec.Basis} (mean, dct, pca) times a {@link linkworthy.codec.Keep} times a {@link
- * linkworthy.codec.Quantizer}, coded by {@link linkworthy.codec.RiceCoder} into units that decode
- * alone.
+ * linkworthy.codec.Basis} (mean, dct, wht, pca, pca-shared) times a {@link linkworthy.codec.Keep}
+ * times a {@link linkworthy.codec.Quantizer} or the like, coded by {@link
+ * linkworthy.codec.RiceCoder} into units that decode alone.
  *
  * <p>What must stay fixed: every bit is counted; a decoder returns a picture whatever it is fed;
  * work that several codecs share goes through {@link linkworthy.codec.Memo}.

@@ -3,7 +3,9 @@ package linkworthy.study;
 import java.nio.file.Path;
 import java.util.List;
 import java.util.OptionalInt;
+import linkworthy.corpus.AreaAverage;
 import linkworthy.corpus.Manifest;
+import linkworthy.corpus.ManifestEntry;
 import linkworthy.corpus.Picture;
 import linkworthy.input.Require;
 import org.jspecify.annotations.Nullable;
@@ -13,6 +15,8 @@ import org.jspecify.annotations.Nullable;
  *
  * @param manifest a manifest of the user's own, or null for the shipped pictures
  * @param select sets, categories or ids in the manifest
+ * @param train sets, categories or ids in the manifest of the pictures that codecs with a shared
+ *     basis learn from, none of them tested; empty for none
  * @param longestSide longest side after area-averaged reduction, in samples, or empty for none
  * @param planes {@code luma}
  * @param signalPower what is called the power of a picture
@@ -20,6 +24,7 @@ import org.jspecify.annotations.Nullable;
 public record PictureChoice(
     @Nullable ManifestFile manifest,
     List<String> select,
+    List<String> train,
     OptionalInt longestSide,
     String planes,
     SignalPower signalPower) {
@@ -43,6 +48,7 @@ public record PictureChoice(
    */
   public PictureChoice {
     select = List.copyOf(select);
+    train = List.copyOf(train);
     if (select.isEmpty()) {
       throw new IllegalArgumentException("select is empty; accepted: at least one word");
     }
@@ -60,10 +66,28 @@ public record PictureChoice(
     return manifest == null ? Manifest.shipped() : Manifest.read(manifest.file());
   }
 
+  /**
+   * A picture as the study wants it.
+   *
+   * @throws linkworthy.input.BadInput if it is not what the manifest says
+   * @throws linkworthy.input.Unavailable if it cannot be read
+   */
+  public Picture load(Manifest opened, ManifestEntry entry) {
+    Picture picture = opened.load(entry);
+    return longestSide.isPresent()
+        ? AreaAverage.toLongestSide(picture, longestSide.getAsInt())
+        : picture;
+  }
+
   PictureChoice withManifestAt(Path file) {
     return manifest == null
         ? this
         : new PictureChoice(
-            new ManifestFile(manifest.written(), file), select, longestSide, planes, signalPower);
+            new ManifestFile(manifest.written(), file),
+            select,
+            train,
+            longestSide,
+            planes,
+            signalPower);
   }
 }

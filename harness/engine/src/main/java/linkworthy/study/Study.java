@@ -71,6 +71,12 @@ public record Study(
         .toList();
   }
 
+  /** The same study with other codecs, as after their training. */
+  public Study withCodecs(List<Codec> others) {
+    return new Study(
+        name, purpose, seed, pictures, impairments, others, link, replicates, measures);
+  }
+
   /** The same study whose manifest, if it has one of its own, is looked for in another place. */
   public Study withManifestAt(Path file) {
     return new Study(

@@ -67,13 +67,15 @@ public final class StudyReader {
             "replicates",
             "measures"));
     Link link = link(root.find("link").orElse(DEFAULTS.get("link")));
+    PictureChoice pictures =
+        pictures(root.find("pictures").orElse(DEFAULTS.get("pictures")), baseFolder);
     return new Study(
         name(root.get("name")),
         purpose(given(root, DEFAULTS, "purpose")),
         given(root, DEFAULTS, "seed").integer(0, Study.MAX_SEED),
-        pictures(root.find("pictures").orElse(DEFAULTS.get("pictures")), baseFolder),
+        pictures,
         impairments(root.get("impairments"), baseFolder),
-        codecs(root.get("codecs"), link),
+        codecs(root.get("codecs"), link, pictures),
         link,
         replicates(given(root, DEFAULTS, "replicates")),
         measures(given(root, DEFAULTS, "measures")));
@@ -119,14 +121,17 @@ public final class StudyReader {
   }
 
   private static PictureChoice pictures(YamlNode group, Path baseFolder) {
-    group.onlyKeys(ordered("manifest", "select", "longest-side", "planes", "signal-power"));
+    group.onlyKeys(
+        ordered("manifest", "select", "train", "longest-side", "planes", "signal-power"));
     YamlNode defaults = DEFAULTS.get("pictures");
     String power =
         given(group, defaults, "signal-power")
             .oneOf(Arrays.stream(SignalPower.values()).map(SignalPower::id).toList());
+    List<String> select = distinct(given(group, defaults, "select"));
     return new PictureChoice(
         manifest(given(group, defaults, "manifest"), baseFolder),
-        distinct(given(group, defaults, "select")),
+        select,
+        train(given(group, defaults, "train"), select),
         longestSide(given(group, defaults, "longest-side")),
         given(group, defaults, "planes").oneOf(List.of(PictureChoice.LUMA)),
         Arrays.stream(SignalPower.values()).filter(p -> p.id().equals(power)).findFirst().get());
@@ -144,8 +149,25 @@ public final class StudyReader {
     }
   }
 
+  private static List<String> train(YamlNode node, List<String> select) {
+    if (isNone(node)) {
+      return List.of();
+    }
+    for (YamlNode item : node.oneOrMore()) {
+      if (select.contains(item.text())) {
+        throw item.refuse(
+            "is '" + item.text() + "', which select tests; accepted: pictures that are not tested");
+      }
+    }
+    return distinct(node);
+  }
+
+  private static boolean isNone(YamlNode node) {
+    return !node.isMapping() && !node.isSequence() && node.text().equals(StudyWriter.NONE);
+  }
+
   private static OptionalInt longestSide(YamlNode node) {
-    if (!node.isMapping() && !node.isSequence() && node.text().equals(StudyWriter.NONE)) {
+    if (isNone(node)) {
       return OptionalInt.empty();
     }
     try {
@@ -165,7 +187,7 @@ public final class StudyReader {
     return list.items().stream().map(reader::read).toList();
   }
 
-  private static List<Codec> codecs(YamlNode list, Link link) {
+  private static List<Codec> codecs(YamlNode list, Link link, PictureChoice pictures) {
     List<Codec> all = new ArrayList<>();
     Set<String> labels = new HashSet<>();
     for (YamlNode entry : list.items()) {
@@ -175,6 +197,11 @@ public final class StudyReader {
               "gives the codec '"
                   + codec.label()
                   + "' a second time; remove it, or add label: to tell the two apart");
+        }
+        if (codec.needsTraining() && pictures.train().isEmpty()) {
+          throw entry.refuse(
+              "learns from other pictures, and there are none; add pictures.train: with sets,"
+                  + " categories or ids");
         }
         all.add(codec);
       }

@@ -126,6 +126,9 @@ public final class StudyWriter {
       tree.put("manifest", manifest == null ? SHIPPED : manifest.written());
     }
     tree.put("select", pictures.select());
+    if (!pictures.train().isEmpty()) {
+      tree.put("train", pictures.train());
+    }
     Object side = pictures.longestSide().isPresent() ? pictures.longestSide().getAsInt() : NONE;
     tree.put("longest-side", side);
     tree.put("planes", pictures.planes());

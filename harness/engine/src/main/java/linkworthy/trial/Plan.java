@@ -2,10 +2,8 @@ package linkworthy.trial;
 
 import java.util.ArrayList;
 import java.util.List;
-import java.util.OptionalInt;
 import linkworthy.codec.Codec;
 import linkworthy.codec.PictureShape;
-import linkworthy.corpus.AreaAverage;
 import linkworthy.corpus.Manifest;
 import linkworthy.corpus.ManifestEntry;
 import linkworthy.corpus.Picture;
@@ -48,7 +46,9 @@ public final class Plan {
    */
   public static Plan of(Study study) {
     Manifest manifest = study.pictures().open();
-    Plan plan = new Plan(study, manifest, manifest.select(study.pictures().select()));
+    List<ManifestEntry> tested = manifest.select(study.pictures().select());
+    Study trained = TrainingSet.of(study, manifest, tested).train(study);
+    Plan plan = new Plan(trained, manifest, tested);
     for (ManifestEntry entry : plan.pictures) {
       plan.check(entry);
     }
@@ -76,11 +76,7 @@ public final class Plan {
 
   /** A picture as the study wants it. */
   Picture load(ManifestEntry entry) {
-    Picture picture = manifest.load(entry);
-    OptionalInt longestSide = study.pictures().longestSide();
-    return longestSide.isPresent()
-        ? AreaAverage.toLongestSide(picture, longestSide.getAsInt())
-        : picture;
+    return study.pictures().load(manifest, entry);
   }
 
   public Study study() {

@@ -30,6 +30,9 @@ record TrialKey(long seed, WorkUnit unit, OptionalInt longestSide, Codec codec, 
     text.append(unit.replicate()).append('\n');
     text.append(settings()).append('\n');
     text.append(link).append('\n');
+    if (!codec.training().isEmpty()) {
+      text.append(codec.training()).append('\n');
+    }
     try {
       byte[] hash =
           MessageDigest.getInstance("SHA-256")

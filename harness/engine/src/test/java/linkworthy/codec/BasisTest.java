@@ -14,6 +14,7 @@ import org.ejml.data.DMatrixRMaj;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
+import org.junit.jupiter.params.provider.ValueSource;
 
 class BasisTest {
   /** T.81 A.3.3 scaling (from memory); digits recomputed independently with SciPy. */
@@ -40,6 +41,50 @@ class BasisTest {
         new DctBasis()
             .directions(new Arrangement.Blocks(8), new PictureShape(64, 64, 8), new double[0][])
             .rows());
+  }
+
+  /**
+   * SciPy's hadamard(8) with its rows sorted by their number of sign changes; the ramp's transform
+   * recomputed independently with NumPy.
+   */
+  @Test
+  void walshFunctionsStandInTheOrderOfTheirSignChanges() {
+    String[] signs = {
+      "++++++++", "++++----", "++----++", "++--++--", "+--++--+", "+--+-++-", "+-+--+-+", "+-+-+-+-"
+    };
+    double[] ramp = {9.89949494, -5.65685425, 0, -2.82842712, 0, 0, 0, -1.41421356};
+    double[][] walsh = WalshBasis.oneDimensional(8);
+    for (int k = 0; k < 8; k++) {
+      double sum = 0;
+      for (int i = 0; i < 8; i++) {
+        assertThat(walsh[k][i])
+            .isEqualTo((signs[k].charAt(i) == '+' ? 1 : -1) * (1 / Math.sqrt(8)));
+        sum += walsh[k][i] * i;
+      }
+      assertThat(sum).isCloseTo(ramp[k], within(1e-8));
+    }
+  }
+
+  @ParameterizedTest
+  @ValueSource(ints = {1, 2, 4, 64, 256})
+  void walshFunctionKHasKSignChanges(int n) {
+    double[][] walsh = WalshBasis.oneDimensional(n);
+    assertOrthonormal(walsh);
+    for (int k = 0; k < n; k++) {
+      int changes = 0;
+      for (int i = 1; i < n; i++) {
+        changes += walsh[k][i] * walsh[k][i - 1] < 0 ? 1 : 0;
+      }
+      assertThat(changes).isEqualTo(k);
+    }
+  }
+
+  /** What the first K of the pattern's 8 x 8 Walsh-Hadamard coefficients leave, by NumPy. */
+  @ParameterizedTest
+  @CsvSource({"1, 617.6138643", "4, 300.8305613", "16, 60.3054681", "32, 18.79890845"})
+  void errorOfThePatternInWalshFunctions(int keep, double expected) {
+    Analysis walsh = analysis(new Arrangement.Blocks(8), new WalshBasis());
+    assertThat(discarded(walsh, keep)).isCloseTo(expected, within(1e-8 * expected));
   }
 
   /** Figure A.6 of ITU-T T.81 (from memory), the table as a public JPEG library prints it. */

@@ -26,6 +26,9 @@ public abstract class CodecContractTest {
 
   private static final Link LINK = new Link(96, 23, Link.Order.BY_COMPONENT);
 
+  private static final Training TRAINING =
+      new Training(2, i -> TestPattern.cvp(50 + 30 * i, 40), "two patterns");
+
   /** Id of the family, as its service line and the study key have it. */
   protected abstract String family();
 
@@ -40,7 +43,9 @@ public abstract class CodecContractTest {
     List<Codec> codecs = new ArrayList<>();
     for (Link.Order order : Link.Order.values()) {
       for (String entry : entries()) {
-        codecs.addAll(CodecFamilies.read(YamlNode.parse("test", entry), new Link(96, 23, order)));
+        CodecFamilies.read(YamlNode.parse("test", entry), new Link(96, 23, order)).stream()
+            .map(codec -> codec.trainedOn(TRAINING))
+            .forEach(codecs::add);
       }
     }
     return codecs;

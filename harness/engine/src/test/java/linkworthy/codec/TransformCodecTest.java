@@ -35,11 +35,18 @@ class TransformCodecTest extends CodecContractTest {
             "{transform: pca, over: rows, share: 0.85, step: 2}",
             "{transform: dct, over: blocks, keep: [1, 16], step: 8}",
             "{transform: dct, over: rows, keep: 7, step: 4}",
+            "{transform: wht, over: blocks, keep: [1, 16], step: 8}",
+            "{transform: wht, over: blocks, side: 4, bits-per-pixel: 2, step: none}",
+            "{transform: pca, over: rows, bits-per-pixel: [0.05, 1, 6], step: 8}",
+            "{transform: dct, over: blocks, bits-per-pixel: 1.5, step: 8}",
+            "{transform: pca, over: rows, noise-floor: [true, 5], step: 8}",
+            "{transform: pca, basis: shared, over: blocks, keep: [4, 64], step: 8}",
+            "{transform: dct, keep: 64, weights: luminance, quality: [10, 50, 90]}",
             "{transform: mean, over: rows, step: 16}",
             "{transform: mean, over: blocks, step: 16}",
             "{transform: mean, keep: 0}")
         .stream()
-        .map(flow -> flow.substring(1, flow.length() - 1).replaceAll(", (?=[a-z]+:)", "\n"))
+        .map(flow -> flow.substring(1, flow.length() - 1).replaceAll(", (?=[a-z-]+:)", "\n"))
         .toList();
   }
 
@@ -73,7 +80,14 @@ class TransformCodecTest extends CodecContractTest {
         "{transform: mean, keep: 0} | mean rows K0",
         "{transform: dct, side: 4, keep: 3, step: none} | dct blocks4 K3 stepnone",
         "{transform: dct, keep: 3, label: ' ours '} | ours",
-        "{transform: dct, keep: 3, step: 2.0E-3} | dct blocks8 K3 step0.002"
+        "{transform: dct, keep: 3, step: 2.0E-3} | dct blocks8 K3 step0.002",
+        "{transform: wht, keep: 16} | wht blocks8 K16 step8",
+        "{transform: wht, over: rows, share: 0.9} | wht rows share0.9 step8",
+        "{transform: pca, bits-per-pixel: 0.5} | pca rows bpp0.5 step8",
+        "{transform: dct, bits-per-pixel: 1} | dct blocks8 bpp1 step8",
+        "{transform: pca, noise-floor: true} | pca rows floor step8",
+        "{transform: pca, over: blocks, noise-floor: 5} | pca blocks8 floor5 step8",
+        "{transform: dct, keep: 64, weights: luminance, quality: 50} | dct blocks8 K64 q50"
       })
   void labelsFollowFromTheParameters(String entry, String label) {
     assertThat(codec(entry).label()).isEqualTo(label);
@@ -84,7 +98,7 @@ class TransformCodecTest extends CodecContractTest {
       delimiter = '|',
       value = {
         "{transform: pcs, keep: 4} | did you mean 'pca'",
-        "{transform: pca} | neither 'keep' nor 'share'",
+        "{transform: pca} | none of keep, share",
         "{transform: pca, keep: 4, share: 0.5} | one of the two",
         "{transform: pca, keep: []} | an empty list",
         "{transform: pca, keep: -1} | '-1'; accepted: a whole number from 0",
@@ -93,6 +107,23 @@ class TransformCodecTest extends CodecContractTest {
         "{transform: pca, keep: 4, step: 0} | '0'; accepted: a step",
         "{transform: pca, keep: 4, step: .nan} | accepted: a step",
         "{transform: pca, keep: 4, stepp: 1} | did you mean 'step'",
+        "{transform: wht, side: 6, keep: 4} | '6'; accepted: 2, 4, 8, 16, 32 or 64",
+        "{transform: pca, bits-per-pixel: 0} | '0'; accepted: sent bits per pixel above 0",
+        "{transform: pca, bits-per-pixel: 1, keep: 4} | stands beside 'keep'",
+        "{transform: mean, bits-per-pixel: 1} | does not go with 'transform: mean'",
+        "{transform: pca, noise-floor: false} | 'false'; accepted: true, or the noise",
+        "{transform: pca, noise-floor: -1} | '-1'; accepted: true, or the noise",
+        "{transform: dct, noise-floor: true} | accepted with 'transform: pca'",
+        "{transform: dct, keep: 4, weights: luminance} | missing key 'quality'",
+        "{transform: dct, keep: 4, quality: 50} | stands without 'weights'",
+        "{transform: dct, keep: 4, weights: luminance, quality: 0} | '0'; accepted: a whole number",
+        "{transform: dct, keep: 4, weights: chroma, quality: 50} | 'chroma'",
+        "{transform: dct, keep: 4, weights: luminance, quality: 9, step: 8} | beside 'weights'",
+        "{transform: dct, side: 4, keep: 4, weights: luminance, quality: 50} | 'transform: dct'",
+        "{transform: wht, keep: 4, weights: luminance, quality: 50} | with 'transform: dct', side 8",
+        "{transform: dct, basis: shared, keep: 4} | does not go with 'transform: dct'",
+        "{transform: pca, basis: shard, keep: 4} | did you mean 'shared'",
+        "{transform: pca, basis: shared, noise-floor: 4} | accepted with 'transform: pca'",
         "{transform: mean, keep: 4} | accepted: 0 (the means alone)",
         "{transform: pca, over: rows, side: 8, keep: 4} | belongs to 'over: blocks'",
         "{transform: pca, keep: [4, 8], label: x} | names several codecs",
@@ -120,6 +151,11 @@ class TransformCodecTest extends CodecContractTest {
     assertThatThrownBy(() -> codec("{transform: dct, keep: 4}").check(new PictureShape(61, 7, 8)))
         .isInstanceOf(BadInput.class)
         .hasMessageContaining("smaller than a block");
+    assertThatThrownBy(
+            () -> codec("{transform: wht, over: rows, keep: 4}").check(new PictureShape(64, 45, 8)))
+        .isInstanceOf(BadInput.class)
+        .hasMessageContaining("has 45 rows; accepted for wht over rows: a power of two");
+    codec("{transform: wht, over: rows, keep: 4}").check(new PictureShape(45, 64, 8));
   }
 
   /** Every basis is orthonormal, so keeping everything unquantised loses nothing. */
@@ -130,12 +166,53 @@ class TransformCodecTest extends CodecContractTest {
         "{transform: pca, over: blocks, keep: 64, step: none}",
         "{transform: dct, over: rows, keep: 45, step: none}",
         "{transform: dct, over: blocks, keep: 64, step: none}",
+        "{transform: wht, over: blocks, keep: 64, step: none}",
+        "{transform: wht, over: blocks, side: 16, keep: 256, step: none}",
         "{transform: mean, over: rows, step: none}",
         "{transform: mean, over: blocks, step: 1}"
       })
   void keepingEverythingIsLossless(String entry) {
     Picture picture = TestPattern.cvp(61, 45);
     assertThat(through(codec(entry), picture).picture().samples()).isEqualTo(picture.samples());
+  }
+
+  /** By trying every K: the largest that stays within the target, overhead included. */
+  @ParameterizedTest
+  @ValueSource(
+      strings = {
+        "transform: pca\nover: rows",
+        "transform: pca\nover: blocks",
+        "transform: dct\nover: blocks",
+        "transform: wht\nover: rows"
+      })
+  void aTargetRateIsUsedUp(String transform) {
+    Picture picture = TestPattern.cvp(72, 64);
+    for (Link.Order order : Link.Order.values()) {
+      Link link = new Link(96, 23, order);
+      double[] rates = new double[65];
+      Memo memo = new Memo();
+      for (int k = 0; k <= 64; k++) {
+        Encoding encoding =
+            CodecFamilies.read(YamlNode.parse("test", transform + "\nkeep: " + k), link)
+                .get(0)
+                .encode(picture, memo);
+        rates[k] =
+            (double) link.sentBits(encoding.packets().size(), encoding.payloadBits())
+                / picture.size();
+      }
+      for (double target : new double[] {0.01, 0.3, 0.5, 1, rates[3], rates[20], 4, 1000}) {
+        int best = 0;
+        for (int k = 0; k <= 64; k++) {
+          best = rates[k] <= target ? k : best;
+        }
+        Codec codec =
+            CodecFamilies.read(
+                    YamlNode.parse("test", transform + "\nbits-per-pixel: " + target), link)
+                .get(0);
+        int kept = codec.encode(picture, memo).keep();
+        assertThat(rates[kept]).as("%s %s at %s", transform, order, target).isEqualTo(rates[best]);
+      }
+    }
   }
 
   /** A constant row costs its mean; a row equal to another up to a constant adds no component. */

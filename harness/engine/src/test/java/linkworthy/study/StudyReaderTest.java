@@ -139,6 +139,18 @@ class StudyReaderTest {
             List.of("line 2", "'cat' a second time")),
         Arguments.of(
             "name: yard",
+            "name: yard\npictures:\n  select: [cat]\n  train: [canyon, cat]",
+            List.of("line 4", "'cat', which select tests")),
+        Arguments.of(
+            "name: yard",
+            "name: yard\npictures: {train: []}",
+            List.of("line 2", "'pictures.train'", "an empty list")),
+        Arguments.of(
+            "step: 16",
+            "step: 16\n  - transform: pca\n    basis: shared\n    keep: 4",
+            List.of("line 8", "learns from other pictures", "pictures.train:")),
+        Arguments.of(
+            "name: yard",
             "name: yard\npictures: {longest-side: 7}",
             List.of("line 2", "'7'", "8 to 16384, or none")),
         Arguments.of(

@@ -105,6 +105,20 @@ class StudyWriterTest {
     assertSame(study, Path.of("").toAbsolutePath());
   }
 
+  @Test
+  void trainingPicturesAreWrittenWhereThereAreSome() {
+    Study study =
+        StudyReaderTest.read(
+            StudyReaderTest.SHORT.replace(
+                    "name: yard",
+                    "name: yard\npictures: {select: cat, train: [canyon, colour], longest-side: 64}")
+                + "  - {transform: pca, basis: shared, over: blocks, keep: 4}\n");
+    assertThat(StudyWriter.canonical(study))
+        .contains("- \"cat\"\n  train:\n  - \"canyon\"\n  - \"colour\"\n  longest-side: 64\n")
+        .contains("- transform: \"pca\"\n  basis: \"shared\"\n  over: \"blocks\"\n");
+    assertSame(study, Path.of("").toAbsolutePath());
+  }
+
   private static void assertSame(Study study, Path base) {
     String text = StudyWriter.canonical(study);
     Study back = StudyReader.read(YamlNode.parse("study.yaml", text), base);
@@ -177,6 +191,7 @@ class StudyWriterTest {
         "name: yard | replicates: 6",
         "name: yard | measures: [psnr]",
         "name: yard | pictures: {select: [cat]}",
+        "name: yard | pictures: {train: [cat]}",
         "name: yard | pictures: {longest-side: 64}",
         "name: yard | pictures: {signal-power: mean-square}",
         "name: yard | link: {order: by-region}"

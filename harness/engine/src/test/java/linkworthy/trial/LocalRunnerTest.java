@@ -162,6 +162,58 @@ class LocalRunnerTest {
         .hasMessageNotContaining("\n");
   }
 
+  private static final String TRAINED =
+      """
+      name: trained
+      pictures: {select: [cat], train: [canyon, harbour], longest-side: 96}
+      impairments:
+        - {noise: gaussian, snr-db: 20}
+        - {noise: burst-loss, loss-rate: 0.2}
+      codecs:
+        - {transform: pca, basis: shared, over: blocks, keep: [4, 8]}
+        - {transform: dct, keep: 8}
+      replicates: 2
+      """;
+
+  /** Learning happens once, on whichever thread comes first, and gives the same rows. */
+  @ParameterizedTest
+  @ValueSource(ints = {2, 5})
+  void sharedBasesDoNotDependOnThreads(int threads) {
+    assertThat(run(TRAINED, threads)).isEqualTo(run(TRAINED, 1));
+  }
+
+  /** The training pictures are a part of the key of the trials that depend on them. */
+  @Test
+  void otherTrainingPicturesAreOtherTrials() {
+    List<Trial> some = run(TRAINED, 2);
+    List<Trial> others = run(TRAINED.replace("canyon, ", ""), 2);
+    for (int i = 0; i < some.size(); i++) {
+      if (some.get(i).transform().equals("pca-shared")) {
+        assertThat(others.get(i).trial()).isNotEqualTo(some.get(i).trial());
+        assertThat(others.get(i).mse()).isNotEqualTo(some.get(i).mse());
+      } else {
+        assertThat(others.get(i)).isEqualTo(some.get(i));
+      }
+    }
+  }
+
+  @ParameterizedTest
+  @CsvSource(
+      delimiter = '|',
+      value = {
+        "train: [canyon, harbour] | train: [field] | 'cat' is in pictures.train and tested",
+        "train: [canyon, harbour] | train: [canyn] | did you mean 'canyon'",
+        "train: [canyon, harbour] | train: [canyon, sunset] | bits per sample; accepted: one depth",
+        "over: blocks | over: rows | rows; accepted over rows: "
+      })
+  void whatCannotBeLearntFromIsRefused(String from, String to, String complaint) {
+    assertThat(TRAINED).contains(from);
+    assertThatThrownBy(() -> plan(TRAINED.replace(from, to)))
+        .isInstanceOf(BadInput.class)
+        .hasMessageContaining(complaint)
+        .hasMessageNotContaining("\n");
+  }
+
   @Test
   void anInterruptedRunHandsOverWholeUnits() throws InterruptedException {
     Plan plan = plan(STUDY);
