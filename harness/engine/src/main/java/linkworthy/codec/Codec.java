@@ -60,6 +60,16 @@ public interface Codec {
   Decoding decode(PictureShape shape, List<byte[]> arrived);
 
   /**
+   * What coding a picture asks of each node: the camera first, then its helpers, if any. Empty where
+   * nobody said.
+   *
+   * @param keep components in force, as in {@link Encoding#keep}
+   */
+  default List<Workload> workloads(PictureShape shape, int keep) {
+    return List.of();
+  }
+
+  /**
    * The columns that describe a codec; empty text where a column does not apply.
    *
    * @param transform for the transform codec the basis: {@code mean}, {@code dct}, {@code pca}

@@ -7,6 +7,7 @@ import java.util.List;
 import java.util.Map;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
+import linkworthy.link.Link;
 import linkworthy.link.Packet;
 
 /**
@@ -26,14 +27,17 @@ final class TiledCodec implements Codec {
 
   private final Grid grid;
   private final TransformCodec inner;
+  private final Link link;
   private final String label;
 
   /**
    * @param inner the codec of a tile, made for packets {@link #OVERHEAD_BYTES} shorter
+   * @param link the packets of the picture
    * @param label empty for the one derived from the parameters
    */
-  TiledCodec(Grid grid, TransformCodec inner, String label) {
+  TiledCodec(Grid grid, TransformCodec inner, Link link, String label) {
     this.grid = grid;
+    this.link = link;
     this.inner = inner;
     this.label = label.isEmpty() ? inner.label().replaceFirst("rows", grid.id()) : label;
   }
@@ -209,6 +213,32 @@ final class TiledCodec implements Codec {
                 : Decoding.Completeness.PARTIAL;
     return new Decoding(
         new Picture(shape.width(), shape.height(), shape.bitDepth(), samples), completeness);
+  }
+
+  /**
+   * The camera passes every tile's raw samples to its helper, in packets of the link; each helper
+   * codes its tile.
+   */
+  @Override
+  public List<Workload> workloads(PictureShape shape, int keep) {
+    List<Workload> nodes = new ArrayList<>();
+    long passed = 0;
+    for (int t = 0; t < grid.tiles(); t++) {
+      PictureShape tile = grid.tile(t, shape).shape();
+      long raw = rawBits(tile);
+      passed += raw;
+      for (Workload alone : inner.workloads(tile, keep)) {
+        nodes.add(new Workload(alone.macs(), alone.memoryBytes(), 0, raw));
+      }
+    }
+    nodes.add(0, new Workload(0, link.payloadBytes(), passed, 0));
+    return nodes;
+  }
+
+  private long rawBits(PictureShape tile) {
+    long bytes = ((long) tile.size() * tile.bitDepth() + 7) / 8;
+    int packets = (int) ((bytes + link.payloadBytes() - 1) / link.payloadBytes());
+    return link.sentBits(packets, 8 * bytes);
   }
 
   private record TileKey(Grid grid, int tile) {}

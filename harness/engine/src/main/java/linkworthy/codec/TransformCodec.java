@@ -334,6 +334,32 @@ final class TransformCodec implements Codec {
     }
   }
 
+  /**
+   * With d variables, n observations and K components. Multiply-accumulates: d n for the means; K d
+   * n to project (none for the identity) and K n to quantise; for a basis found in the picture also
+   * n d (d + 1) / 2 for the covariance, 9 d^3 / 2 for its eigenvectors (Golub and Van Loan: about 9
+   * d^3 floating-point operations for the symmetric QR algorithm with vectors, from memory) and K d
+   * to quantise the directions. Memory: the picture, the means, one component, one packet, and the
+   * directions in use, or for a basis found in the picture the covariance and its eigenvectors.
+   */
+  @Override
+  public List<Workload> workloads(PictureShape shape, int kept) {
+    long d = arrangement.variables(shape);
+    long n = arrangement.observations(shape);
+    long macs = d * n + kept * n + (basis.isIdentity() ? 0 : kept * d * n);
+    long numbers = d + n + (basis.isIdentity() ? 0 : kept * d);
+    if (basis.isSent()) {
+      macs += n * d * (d + 1) / 2 + 9 * d * d * d / 2 + kept * d;
+      numbers = d + n + 2 * d * d;
+    }
+    return List.of(
+        Workload.alone(
+            macs,
+            Workload.pictureBytes(shape)
+                + Workload.NUMBER_BYTES * numbers
+                + link.payloadBytes()));
+  }
+
   private record AnalysisKey(Arrangement arrangement, String basis) {}
 
   private record SymbolsKey(Arrangement arrangement, String basis, Quantization quantization) {}

@@ -1,0 +1,153 @@
+package linkworthy.link;
+
+import java.io.IOException;
+import java.io.InputStream;
+import java.io.UncheckedIOException;
+import java.nio.charset.StandardCharsets;
+import java.nio.file.Path;
+import java.util.LinkedHashSet;
+import java.util.List;
+import java.util.Objects;
+import java.util.Set;
+import linkworthy.input.BadInput;
+import linkworthy.input.Require;
+import linkworthy.input.Spelling;
+import linkworthy.input.YamlNode;
+
+/**
+ * What a node's work costs it: the energy of computing, sending and receiving, and what it has of
+ * memory, bit rate and battery.
+ *
+ * @param id lower-case letters, digits and hyphens
+ * @param sentNanojoules energy to send a bit, in nanojoules
+ * @param receivedNanojoules energy to receive a bit, in nanojoules
+ * @param macNanojoules energy of one multiply-accumulate, in nanojoules
+ * @param sleepMilliwatts power between pictures, in milliwatts
+ * @param ramKib working memory that a codec may use, in KiB
+ * @param kilobitsPerSecond bit rate on the air, in kbit/s
+ * @param batteryJoules usable energy of the battery, in joules
+ * @param source where the numbers come from
+ */
+public record NodeProfile(
+    String id,
+    double sentNanojoules,
+    double receivedNanojoules,
+    double macNanojoules,
+    double sleepMilliwatts,
+    double ramKib,
+    double kilobitsPerSecond,
+    double batteryJoules,
+    String source) {
+  private static final String ID = "[a-z][a-z0-9-]{0,63}";
+  private static final String FOLDER = "/linkworthy/noise/library/nodes/";
+  private static final Set<String> KEYS =
+      new LinkedHashSet<>(
+          List.of(
+              "id",
+              "sent-nj-per-bit",
+              "received-nj-per-bit",
+              "mac-nj",
+              "sleep-mw",
+              "ram-kib",
+              "kbit-per-second",
+              "battery-j",
+              "source",
+              "notes"));
+
+  /**
+   * @throws IllegalArgumentException if a figure is negative or not finite, or the memory, bit rate
+   *     or battery is 0
+   */
+  public NodeProfile {
+    Require.notNegative(sentNanojoules, "sent-nj-per-bit (nJ)");
+    Require.notNegative(receivedNanojoules, "received-nj-per-bit (nJ)");
+    Require.notNegative(macNanojoules, "mac-nj (nJ)");
+    Require.notNegative(sleepMilliwatts, "sleep-mw (mW)");
+    Require.positive(ramKib, "ram-kib (KiB)");
+    Require.positive(kilobitsPerSecond, "kbit-per-second (kbit/s)");
+    Require.positive(batteryJoules, "battery-j (J)");
+  }
+
+  /** Ids of the shipped profiles. */
+  public static List<String> shipped() {
+    return resource("index.txt").lines().filter(line -> !line.isBlank()).toList();
+  }
+
+  /**
+   * A shipped profile.
+   *
+   * @throws BadInput if there is none with this id; the nearest is named
+   */
+  public static NodeProfile find(String id) {
+    if (!shipped().contains(id)) {
+      throw new BadInput("no node profile '" + id + "'; " + Spelling.hint(id, shipped()));
+    }
+    return parse(YamlNode.parse(id + ".yaml", resource(id + ".yaml")));
+  }
+
+  /**
+   * Reads a profile file.
+   *
+   * @throws BadInput if it cannot be used; one line with file, line and key
+   */
+  public static NodeProfile read(Path file) {
+    return parse(YamlNode.read(file));
+  }
+
+  private static NodeProfile parse(YamlNode root) {
+    root.onlyKeys(KEYS);
+    String id = root.get("id").text();
+    if (!id.matches(ID)) {
+      throw root.get("id").bad("lower-case letters, digits and hyphens, a letter first");
+    }
+    return new NodeProfile(
+        id,
+        number(root, "sent-nj-per-bit", false),
+        number(root, "received-nj-per-bit", false),
+        number(root, "mac-nj", false),
+        number(root, "sleep-mw", false),
+        number(root, "ram-kib", true),
+        number(root, "kbit-per-second", true),
+        number(root, "battery-j", true),
+        root.get("source").text());
+  }
+
+  private static double number(YamlNode root, String key, boolean positive) {
+    String accepted = "a finite number " + (positive ? "above 0" : "of at least 0");
+    YamlNode node = root.get(key);
+    double value = node.number(accepted);
+    if (value < 0 || (positive && value == 0)) {
+      throw node.bad(accepted);
+    }
+    return value;
+  }
+
+  private static String resource(String name) {
+    try (InputStream in = NodeProfile.class.getResourceAsStream(FOLDER + name)) {
+      return new String(Objects.requireNonNull(in, name).readAllBytes(), StandardCharsets.UTF_8);
+    } catch (IOException e) {
+      throw new UncheckedIOException(e);
+    }
+  }
+
+  /** Energy of a node's work on one picture, in millijoules. */
+  public double millijoules(long macs, long sentBits, long receivedBits) {
+    return (macs * macNanojoules + sentBits * sentNanojoules + receivedBits * receivedNanojoules)
+        / 1e6;
+  }
+
+  /** Time that bits take on the air, in milliseconds. */
+  public double airTimeMs(long bits) {
+    return bits / kilobitsPerSecond;
+  }
+
+  /**
+   * Pictures that a full battery lasts for.
+   *
+   * @param millijoules energy of one picture
+   * @param intervalSeconds time from one picture to the next, spent asleep
+   */
+  public double picturesPerBattery(double millijoules, double intervalSeconds) {
+    return batteryJoules * 1e3 / (millijoules + sleepMilliwatts * intervalSeconds);
+  }
+}
