@@ -7,9 +7,15 @@ import java.nio.charset.StandardCharsets;
 import java.nio.file.InvalidPathException;
 import java.nio.file.Path;
 import java.time.Clock;
+import java.util.ArrayList;
+import java.util.List;
+import java.util.Optional;
+import java.util.TreeSet;
 import linkworthy.input.BadInput;
+import linkworthy.input.Spelling;
 import linkworthy.input.Unavailable;
 import picocli.CommandLine;
+import picocli.CommandLine.Model.CommandSpec;
 import picocli.CommandLine.ParameterException;
 import picocli.CommandLine.TypeConversionException;
 
@@ -26,6 +32,9 @@ public final class Main {
 
   /** The machine refused. */
   static final int ENVIRONMENT = 3;
+
+  /** What picocli says of a command that needs another word. */
+  private static final String NO_SUBCOMMAND = "Missing required subcommand";
 
   private Main() {}
 
@@ -88,20 +97,24 @@ public final class Main {
   private static int badUsage(Surroundings surroundings, ParameterException e) {
     String command = e.getCommandLine().getCommandSpec().qualifiedName();
     StringBuilder line = new StringBuilder(oneLine(String.valueOf(e.getMessage())));
-    if (e instanceof CommandLine.MissingParameterException
-        && e.getCommandLine().getSubcommands().size() > 0
-        && !line.toString().contains("accepted:")) {
+    if (line.toString().equals(NO_SUBCOMMAND)) {
       line.append("; accepted: ")
-          .append(String.join(", ", e.getCommandLine().getSubcommands().keySet()));
+          .append(String.join(", ", new TreeSet<>(e.getCommandLine().getSubcommands().keySet())));
     }
     if (e instanceof CommandLine.UnmatchedArgumentException unmatched) {
-      var suggestions = unmatched.getSuggestions();
-      if (!suggestions.isEmpty()) {
-        line.append("; did you mean '").append(suggestions.get(0)).append("'?");
-      }
+      nearest(unmatched).ifPresent(w -> line.append("; did you mean '").append(w).append("'?"));
     }
     surroundings.err().println("linkworthy: " + line + " (see '" + command + " --help')");
     return BAD_INPUT;
+  }
+
+  /** The option or command that the first argument without a place was perhaps meant to be. */
+  private static Optional<String> nearest(CommandLine.UnmatchedArgumentException e) {
+    CommandSpec command = e.getCommandLine().getCommandSpec();
+    List<String> words = new ArrayList<>(command.optionsMap().keySet());
+    words.addAll(command.subcommands().keySet());
+    return Spelling.nearest(e.getUnmatched().get(0), words)
+        .or(() -> e.getSuggestions().stream().findFirst());
   }
 
   private static int explain(Surroundings surroundings, Exception e, boolean trace) {
