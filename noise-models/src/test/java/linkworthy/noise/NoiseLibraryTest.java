@@ -26,11 +26,22 @@ class NoiseLibraryTest {
   void everyProcessHasAModelOfItsOwnNameThatOffersAllItsAxesAndSites() {
     for (NoiseProcess process : NoiseProcesses.all().values()) {
       NoiseModel model = NoiseLibrary.find(process.id());
-      assertThat(model.implementation()).isSameAs(process);
+      assertThat(model.implementation()).hasSameClassAs(process);
       assertThat(model.parameters()).isEqualTo(process.parameters());
       assertThat(model.actsOn()).isEqualTo(process.sites());
       assertThat(model.axes()).containsExactlyElementsOf(process.axes());
       assertThat(model.source()).isNotBlank();
+    }
+  }
+
+  @Test
+  void everyCurveHasAModelThatOffersItsRatio() {
+    for (ErrorCurve curve : ErrorCurve.values()) {
+      NoiseModel model = NoiseLibrary.find("radio-" + curve.id());
+      assertThat(model.implementation()).isEqualTo(new BitErrors(curve));
+      assertThat(model.axes()).containsExactlyInAnyOrderElementsOf(model.implementation().axes());
+      assertThat(model.parameters()).containsEntry(BitErrors.FRAME_CHECK, 1.0);
+      assertThat(model.canonical()).contains("\nsetting.curve: " + curve.id() + "\n");
     }
   }
 
@@ -40,14 +51,18 @@ class NoiseLibraryTest {
         .isInstanceOf(BadInput.class)
         .hasMessage(
             "no noise model 'gausian'; did you mean 'gaussian'?"
-                + " accepted: gaussian, salt-and-pepper, burst-loss");
+                + " accepted: gaussian, salt-and-pepper, burst-loss, shot-noise, stripes,"
+                + " stuck-pixels, bit-errors, radio-bpsk, radio-dbpsk, radio-ncfsk,"
+                + " radio-bpsk-rayleigh, radio-oqpsk-2450, trace");
   }
 
   @Test
   void unknownProcessIsRefusedWithWhatExists() {
     assertThatThrownBy(() -> NoiseProcesses.find("snow"))
         .isInstanceOf(BadInput.class)
-        .hasMessage("no noise process 'snow'; accepted: burst-loss, gaussian, salt-and-pepper");
+        .hasMessage(
+            "no noise process 'snow'; accepted: bit-errors, burst-loss, gaussian, salt-and-pepper,"
+                + " shot-noise, stripes, stuck-pixels, trace");
   }
 
   @Test

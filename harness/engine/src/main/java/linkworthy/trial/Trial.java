@@ -22,10 +22,10 @@ package linkworthy.trial;
  * @param psnrDb in dB; positive infinity for identical pictures
  * @param ssim structural similarity, or NaN where the study does not ask for it
  * @param payloadBits bits in all packet payloads
- * @param sentBits payload bits and the link's overhead
+ * @param sentBits payload bits, the link's overhead and frame checks
  * @param bitsPerPixel sent bits per sample of the picture
  * @param packetsSent packets sent
- * @param packetsLost packets that did not arrive
+ * @param packetsLost packets that did not arrive, or were dropped by a frame check
  * @param outage whether nothing usable arrived
  */
 public record Trial(
