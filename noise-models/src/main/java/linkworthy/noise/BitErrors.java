@@ -29,7 +29,8 @@ import org.jspecify.annotations.Nullable;
  * and errors within it are independent: another mean burst than 1 is refused.
  *
  * <p>Parameters: {@code mean-burst}, in bits (default 1, at least 1); {@code errors-bad} (default
- * 1/2, at least 1e-6); {@code frame-check}, on or off (default off).
+ * 1/2, at least 1e-6); {@code frame-check}, on or off (default off). With it the link's header and
+ * the check are exposed as well; without it only the payload is, its header being taken as sound.
  *
  * @param curve the curve in force, if any
  */
