@@ -70,8 +70,7 @@ public final class GaussianNoise implements NoiseProcess {
       int[] samples = clean.samples();
       int[] noisy = new int[samples.length];
       for (int i = 0; i < noisy.length; i++) {
-        double value = Math.floor(samples[i] + deviation * GaussianDraws.next(random) + 0.5);
-        noisy[i] = (int) Math.max(0, Math.min(clean.peak(), value));
+        noisy[i] = Levels.of(samples[i] + deviation * GaussianDraws.next(random), clean.peak());
       }
       return new Picture(clean.width(), clean.height(), clean.bitDepth(), noisy);
     }

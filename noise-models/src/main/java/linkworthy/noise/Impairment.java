@@ -1,5 +1,6 @@
 package linkworthy.noise;
 
+import java.util.BitSet;
 import linkworthy.corpus.Picture;
 import org.apache.commons.rng.UniformRandomProvider;
 
@@ -27,6 +28,32 @@ public sealed interface Impairment {
   non-sealed interface OnNodes extends Impairment {
     /** Opens one realisation; index i is node i: 0 the camera, from 1 its helpers. */
     Losses failures(UniformRandomProvider random);
+  }
+
+  /** An impairment that flips bits of packets. */
+  non-sealed interface OnBits extends Impairment {
+    /**
+     * Whether a receiver checks each frame and drops what fails; if not, damaged packets reach the
+     * decoder.
+     */
+    boolean frameCheck();
+
+    /** Opens one realisation. */
+    Errors errors(UniformRandomProvider random);
+  }
+
+  /**
+   * One realisation of bit errors. Reading is by index and in any order; the errors of packet i
+   * depend on the random stream and on i alone, not on the number or the lengths of other packets,
+   * and those of a shorter packet are the first ones of a longer packet. Not safe for use by
+   * several threads.
+   */
+  interface Errors {
+    /**
+     * The flipped bits among the first {@code bits} of packet {@code index} (from 0), counted in
+     * sending order.
+     */
+    BitSet flipped(int index, int bits);
   }
 
   /**

@@ -22,7 +22,11 @@ public final class NoiseLibrary {
   public static List<NoiseModel> shipped() {
     return text("index.txt")
         .lines()
-        .map(id -> NoiseModel.parse(YamlNode.parse("library/" + id + ".yaml", text(id + ".yaml"))))
+        .map(
+            id ->
+                NoiseModel.parse(
+                    YamlNode.parse("library/" + id + ".yaml", text(id + ".yaml")),
+                    NoiseLibrary::text))
         .toList();
   }
 

@@ -7,10 +7,12 @@ import java.util.Collection;
 import java.util.Collections;
 import java.util.Comparator;
 import java.util.HexFormat;
+import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Map;
 import java.util.Set;
 import java.util.TreeMap;
+import java.util.function.UnaryOperator;
 import java.util.regex.Pattern;
 import java.util.stream.Collectors;
 import linkworthy.input.BadInput;
@@ -24,7 +26,7 @@ import linkworthy.input.YamlNode;
  *
  * @param id lower-case letters, digits and hyphens, starting with a letter, at most 64
  * @param version from 1; counts up when the model is changed
- * @param process id of the noise process
+ * @param implementation the process that draws this model's noise, set up as the model says
  * @param actsOn where the model may act, the usual place first
  * @param parameters every parameter of the process, in the order of the names; those not given take
  *     the process's default
@@ -35,7 +37,7 @@ import linkworthy.input.YamlNode;
 public record NoiseModel(
     String id,
     int version,
-    String process,
+    NoiseProcess implementation,
     List<Site> actsOn,
     Map<String, Double> parameters,
     List<String> axes,
@@ -45,13 +47,12 @@ public record NoiseModel(
   private static final String ID_ACCEPTED =
       "lower-case letters, digits and hyphens, starting with a letter, at most 64";
   private static final int MAX_VERSION = 1_000_000;
-  private static final Set<String> KEYS =
-      SeverityChecks.inOrder(
-          "id", "version", "process", "acts-on", "parameters", "severity", "source", "notes");
+  private static final List<String> KEYS =
+      List.of("id", "version", "process", "acts-on", "parameters", "severity", "source", "notes");
 
   /**
-   * @throws BadInput if the process is unknown, does not allow a site, an axis or a parameter, or a
-   *     parameter lies outside its range
+   * @throws BadInput if the process does not allow a site, an axis or a parameter, or a parameter
+   *     lies outside its range
    * @throws IllegalArgumentException if the id, the version or the source is not as described, or a
    *     list is empty
    */
@@ -61,7 +62,6 @@ public record NoiseModel(
     }
     Require.inRange(version, 1, MAX_VERSION, "model version");
     Require.notBlank(source, "model source");
-    NoiseProcess implementation = NoiseProcesses.find(process);
     actsOn = List.copyOf(actsOn);
     axes = List.copyOf(axes);
     Require.inRange(actsOn.size(), 1, Site.values().length, "number of sites");
@@ -74,8 +74,26 @@ public record NoiseModel(
       SeverityChecks.axis(implementation, axis);
     }
     for (Site site : actsOn) {
-      implementation.check(new Severity(Severity.VARIANCE, 0), parameters, site);
+      implementation.checkParameters(parameters, site);
     }
+  }
+
+  /**
+   * A model of a process that needs no settings.
+   *
+   * @param process id of the noise process
+   * @throws BadInput as the other constructor, or if there is no such process
+   */
+  public NoiseModel(
+      String id,
+      int version,
+      String process,
+      List<Site> actsOn,
+      Map<String, Double> parameters,
+      List<String> axes,
+      String source,
+      String notes) {
+    this(id, version, NoiseProcesses.find(process), actsOn, parameters, axes, source, notes);
   }
 
   /**
@@ -84,23 +102,46 @@ public record NoiseModel(
    * @throws BadInput if it is no valid model; the line, what was found and what is accepted
    */
   public static NoiseModel read(Path file) {
-    return parse(YamlNode.read(file));
+    return parse(YamlNode.read(file), name -> SettingFiles.read(file, name));
+  }
+
+  /**
+   * Reads a model from YAML that stands alone.
+   *
+   * @throws BadInput if it is no valid model or names another file; the line, what was found and
+   *     what is accepted
+   */
+  public static NoiseModel parse(YamlNode node) {
+    return parse(
+        node,
+        name -> {
+          throw new BadInput("it names a file, and this model is in no folder");
+        });
   }
 
   /**
    * Reads a model from YAML.
    *
-   * @throws BadInput if it is no valid model; the line, what was found and what is accepted
+   * @param files content of a file by its name relative to the model
    */
-  public static NoiseModel parse(YamlNode node) {
-    node.onlyKeys(KEYS);
+  static NoiseModel parse(YamlNode node, UnaryOperator<String> files) {
+    Set<String> keys = new LinkedHashSet<>(KEYS);
+    node.find("process")
+        .filter(process -> !process.isMapping() && !process.isSequence())
+        .map(process -> NoiseProcesses.all().get(process.text()))
+        .ifPresent(process -> keys.addAll(process.settingKeys()));
+    node.onlyKeys(keys);
     YamlNode id = node.get("id");
     if (!ID.matcher(id.text()).matches()) {
       throw id.bad(ID_ACCEPTED);
     }
     int version = (int) node.get("version").integer(1, MAX_VERSION);
     NoiseProcess process =
-        NoiseProcesses.find(node.get("process").oneOf(List.copyOf(NoiseProcesses.all().keySet())));
+        setUp(
+            node,
+            NoiseProcesses.find(
+                node.get("process").oneOf(List.copyOf(NoiseProcesses.all().keySet()))),
+            files);
     List<Site> actsOn = sites(node.get("acts-on"), process);
     List<String> axes = distinct(node.get("severity"), process.axes());
     Map<String, Double> parameters =
@@ -108,11 +149,30 @@ public record NoiseModel(
     String source = node.get("source").text();
     String notes = node.find("notes").map(YamlNode::text).orElse("");
     try {
-      return new NoiseModel(
-          id.text(), version, process.id(), actsOn, parameters, axes, source, notes);
+      return new NoiseModel(id.text(), version, process, actsOn, parameters, axes, source, notes);
     } catch (BadInput e) {
       throw node.find("parameters").orElse(node).refuse("cannot be used: " + e.getMessage());
     }
+  }
+
+  private static NoiseProcess setUp(
+      YamlNode node, NoiseProcess plain, UnaryOperator<String> files) {
+    Map<String, String> settings = new TreeMap<>();
+    for (String key : plain.settingKeys()) {
+      node.find(key)
+          .ifPresent(
+              value -> {
+                try {
+                  String text = value.text();
+                  boolean isFile = plain.fileKeys().contains(key);
+                  settings.put(key, isFile ? files.apply(text) : text);
+                  plain.with(Map.copyOf(settings));
+                } catch (BadInput e) {
+                  throw value.refuse("cannot be used: " + e.getMessage());
+                }
+              });
+    }
+    return plain.with(settings);
   }
 
   private static List<Site> sites(YamlNode node, NoiseProcess process) {
@@ -143,14 +203,16 @@ public record NoiseModel(
     node.onlyKeys(process.parameters().keySet());
     Map<String, Double> values = new TreeMap<>();
     for (String name : node.keys()) {
-      values.put(name, node.get(name).number("a number"));
+      YamlNode value = node.get(name);
+      boolean isFlag = process.flags().contains(name);
+      values.put(name, isFlag ? (value.flag() ? 1.0 : 0.0) : value.number("a number"));
     }
     return values;
   }
 
-  /** The process that draws this model's noise. */
-  public NoiseProcess implementation() {
-    return NoiseProcesses.find(process);
+  /** Id of the noise process. */
+  public String process() {
+    return implementation.id();
   }
 
   /**
@@ -165,7 +227,7 @@ public record NoiseModel(
     Map<String, Double> merged = new TreeMap<>(parameters);
     merged.putAll(overrides);
     try {
-      return new NoiseModel(id, version, process, actsOn, merged, axes, source, notes);
+      return new NoiseModel(id, version, implementation, actsOn, merged, axes, source, notes);
     } catch (BadInput e) {
       throw new BadInput("noise model '" + id + "': " + e.getMessage(), e);
     }
@@ -180,7 +242,7 @@ public record NoiseModel(
   public void check(Severity severity, Site site) {
     requireKnown(site.id(), actsOn.stream().map(Site::id).toList(), "site");
     requireKnown(severity.axis(), axes, "severity axis");
-    implementation().check(severity, parameters, site);
+    implementation.check(severity, parameters, site);
   }
 
   /**
@@ -190,31 +252,41 @@ public record NoiseModel(
    */
   public Impairment at(Severity severity, Site site, SignalStatistics signal) {
     check(severity, site);
-    return implementation().at(severity, parameters, site, signal);
+    return implementation.at(severity, parameters, site, signal);
   }
 
   /**
    * All that decides the numbers and the model's identity, one {@code key: value} a line: not the
-   * source and the notes, but the process's revision. Numbers are in hexadecimal, which no Java
-   * version writes differently.
+   * source and the notes, but the process's revision and the SHA-256 of files it uses. Numbers are
+   * in hexadecimal, which no Java version writes differently.
    */
   public String canonical() {
     StringBuilder text = new StringBuilder();
     line(text, "id", id);
     line(text, "version", Integer.toString(version));
-    line(text, "process", process);
-    line(text, "revision", Integer.toString(implementation().revision()));
+    line(text, "process", process());
+    line(text, "revision", Integer.toString(implementation.revision()));
     line(text, "acts-on", actsOn.stream().map(Site::id).collect(Collectors.joining(", ")));
     parameters.forEach(
         (name, value) -> line(text, "parameters." + name, Double.toHexString(value)));
+    new TreeMap<>(implementation.settings())
+        .forEach(
+            (key, value) ->
+                line(
+                    text,
+                    "setting." + key,
+                    implementation.fileKeys().contains(key) ? "sha256 " + digest(value) : value));
     line(text, "severity", String.join(", ", axes));
     return text.toString();
   }
 
   /** SHA-256 of {@link #canonical()} in UTF-8, as 64 lower-case hexadecimal digits. */
   public String fingerprint() {
-    return HexFormat.of()
-        .formatHex(NoiseStreams.sha256(canonical().getBytes(StandardCharsets.UTF_8)));
+    return digest(canonical());
+  }
+
+  private static String digest(String text) {
+    return HexFormat.of().formatHex(NoiseStreams.sha256(text.getBytes(StandardCharsets.UTF_8)));
   }
 
   private static void line(StringBuilder text, String key, String value) {

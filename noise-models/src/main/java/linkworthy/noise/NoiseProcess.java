@@ -7,7 +7,8 @@ import linkworthy.input.BadInput;
 
 /**
  * A kind of noise, found by its id through {@link java.util.ServiceLoader}. A process has no state;
- * parameters come from a model file or a study.
+ * parameters come from a model file or a study, settings from a model file alone. Processes of the
+ * same class with the same settings are equal.
  */
 public interface NoiseProcess {
   /** Stable id, as written in model files. */
@@ -27,8 +28,53 @@ public interface NoiseProcess {
    */
   Map<String, Double> parameters();
 
-  /** Severity axes, {@code snr-db} and {@code variance} among them. */
+  /** Parameters that are on or off: {@code true} or {@code false} in files, 1 or 0 here. */
+  default Set<String> flags() {
+    return Set.of();
+  }
+
+  /** Keys, besides the common ones, that a model file may have and a study may not set. */
+  default Set<String> settingKeys() {
+    return Set.of();
+  }
+
+  /** Those of the {@link #settingKeys} that name a file beside the model; its content counts. */
+  default Set<String> fileKeys() {
+    return Set.of();
+  }
+
+  /** Settings in force, by key: a word, or the content of a file. */
+  default Map<String, String> settings() {
+    return Map.of();
+  }
+
+  /**
+   * This process as a model file sets it up.
+   *
+   * @param settings words and contents of files, by key
+   * @throws BadInput if one cannot be used
+   */
+  default NoiseProcess with(Map<String, String> settings) {
+    for (String key : settings.keySet()) {
+      throw new BadInput(id() + " has no setting '" + key + "'");
+    }
+    return this;
+  }
+
+  /**
+   * Severity axes: {@code snr-db} and {@code variance} among them, unless the process has but one
+   * severity.
+   */
   Set<String> axes();
+
+  /**
+   * Checks the parameters alone.
+   *
+   * @throws BadInput if one lies outside its range
+   */
+  default void checkParameters(Map<String, Double> parameters, Site site) {
+    check(new Severity(Severity.VARIANCE, 0), parameters, site);
+  }
 
   /**
    * Checks what can be checked without a picture.

@@ -8,6 +8,7 @@ import java.nio.ByteBuffer;
 import java.nio.charset.StandardCharsets;
 import java.security.MessageDigest;
 import java.security.NoSuchAlgorithmException;
+import java.util.function.IntFunction;
 import org.apache.commons.rng.UniformRandomProvider;
 import org.apache.commons.rng.core.source32.Philox4x32;
 
@@ -71,6 +72,18 @@ public final class NoiseStreams {
     int counter2 = digest.getInt();
     int counter3 = digest.getInt();
     return new Philox4x32(new int[] {key0, key1, 0, 0, counter2, counter3});
+  }
+
+  /**
+   * A family of streams by number. It takes 96 bits from a stream: a key of 64, and 32 that stand
+   * with the number in the upper half of the counter. So stream i depends on the stream it came
+   * from and on i alone.
+   */
+  static IntFunction<UniformRandomProvider> numbered(UniformRandomProvider random) {
+    int key0 = random.nextInt();
+    int key1 = random.nextInt();
+    int counter2 = random.nextInt();
+    return number -> new Philox4x32(new int[] {key0, key1, 0, 0, counter2, number});
   }
 
   /** SHA-256, which every Java platform has. */

@@ -35,11 +35,34 @@ final class SeverityChecks {
     }
     axis(process, severity.axis());
     if (severity.axis().equals(Severity.SNR_DB)) {
-      inRange(severity.value(), -MAX_SNR_DB, MAX_SNR_DB, Severity.SNR_DB);
+      decibels(severity);
     }
     if (severity.axis().equals(Severity.VARIANCE)) {
       notNegative(severity.value(), Severity.VARIANCE);
     }
+  }
+
+  /**
+   * The ratio that a severity in dB stands for.
+   *
+   * @throws BadInput if it is farther than 300 dB from 0
+   */
+  static double decibels(Severity severity) {
+    inRange(severity.value(), -MAX_SNR_DB, MAX_SNR_DB, severity.axis());
+    return StrictMath.pow(10, severity.value() / 10);
+  }
+
+  /**
+   * Whether a parameter of two states is on.
+   *
+   * @throws BadInput if it is neither 0 nor 1
+   */
+  static boolean flag(NoiseProcess process, Map<String, Double> parameters, String name) {
+    double value = parameter(process, parameters, name);
+    if (value != 0 && value != 1) {
+      throw new BadInput("%s is %s; accepted: 0.0 (off) or 1.0 (on)".formatted(name, value));
+    }
+    return value == 1;
   }
 
   /**

@@ -26,11 +26,22 @@ class NoiseLibraryTest {
   void everyProcessHasAModelOfItsOwnNameThatOffersAllItsAxesAndSites() {
     for (NoiseProcess process : NoiseProcesses.all().values()) {
       NoiseModel model = NoiseLibrary.find(process.id());
-      assertThat(model.implementation()).isSameAs(process);
+      assertThat(model.implementation()).hasSameClassAs(process);
       assertThat(model.parameters()).isEqualTo(process.parameters());
       assertThat(model.actsOn()).isEqualTo(process.sites());
       assertThat(model.axes()).containsExactlyElementsOf(process.axes());
       assertThat(model.source()).isNotBlank();
+    }
+  }
+
+  @Test
+  void everyCurveHasAModelThatOffersItsRatio() {
+    for (ErrorCurve curve : ErrorCurve.values()) {
+      NoiseModel model = NoiseLibrary.find("radio-" + curve.id());
+      assertThat(model.implementation()).isEqualTo(new BitErrors(curve));
+      assertThat(model.axes()).containsExactlyInAnyOrderElementsOf(model.implementation().axes());
+      assertThat(model.parameters()).containsEntry(BitErrors.FRAME_CHECK, 1.0);
+      assertThat(model.canonical()).contains("\nsetting.curve: " + curve.id() + "\n");
     }
   }
 

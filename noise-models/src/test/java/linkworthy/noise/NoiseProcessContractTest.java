@@ -6,9 +6,11 @@ import static org.assertj.core.api.Assertions.within;
 
 import java.util.ArrayList;
 import java.util.Arrays;
+import java.util.BitSet;
 import java.util.HashMap;
 import java.util.List;
 import java.util.Map;
+import java.util.Optional;
 import java.util.stream.IntStream;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
@@ -38,8 +40,30 @@ public abstract class NoiseProcessContractTest {
     return equivalentNoiseVariance;
   }
 
-  private NoiseProcess process() {
+  /** The process under test; one that needs settings is set up here. */
+  protected NoiseProcess process() {
     return NoiseProcesses.find(id());
+  }
+
+  /** The one severity of a process that cannot be set by SNR and variance. */
+  protected Optional<Severity> onlySeverity() {
+    return Optional.empty();
+  }
+
+  /** An SNR, or the one severity there is. */
+  private Severity severity(double snrDb) {
+    return onlySeverity().orElse(new Severity(Severity.SNR_DB, snrDb));
+  }
+
+  /** Whether the process has but one severity; then it refuses others. */
+  private boolean hasOneSeverity() {
+    if (onlySeverity().isPresent()) {
+      Site site = process().sites().get(0);
+      for (String axis : List.of(Severity.SNR_DB, Severity.VARIANCE)) {
+        assertRefused(() -> process().check(new Severity(axis, 1), Map.of(), site), axis);
+      }
+    }
+    return onlySeverity().isPresent();
   }
 
   private Impairment at(Severity severity, Site site, Picture picture) {
@@ -65,6 +89,9 @@ public abstract class NoiseProcessContractTest {
     if (impairment instanceof Impairment.OnSamples onSamples) {
       return onSamples.apply(clean, random);
     }
+    if (impairment instanceof Impairment.OnBits onBits) {
+      return flipped(onBits.errors(random), clean);
+    }
     Impairment.Losses losses = ((Impairment.OnPackets) impairment).losses(random);
     int mean = (int) Math.floor(clean.mean() + 0.5);
     int[] samples = clean.samples().clone();
@@ -72,6 +99,18 @@ public abstract class NoiseProcessContractTest {
       samples[i] = losses.lost(i / PACKET) ? mean : samples[i];
     }
     return new Picture(clean.width(), clean.height(), clean.bitDepth(), samples);
+  }
+
+  /** Samples in natural binary, the most significant bit first, so many to a packet. */
+  private static Picture flipped(Impairment.Errors errors, Picture clean) {
+    int depth = clean.bitDepth();
+    int[] samples = clean.samples().clone();
+    for (int packet = 0; packet * PACKET < samples.length; packet++) {
+      int first = packet * PACKET;
+      errors.flipped(packet, PACKET * depth).stream()
+          .forEach(bit -> samples[first + bit / depth] ^= 1 << (depth - 1 - bit % depth));
+    }
+    return new Picture(clean.width(), clean.height(), depth, samples);
   }
 
   private static void assertRefused(ThrowingCallable call, String named) {
@@ -82,15 +121,24 @@ public abstract class NoiseProcessContractTest {
 
   @Test
   void registryKnowsTheProcessByItsId() {
+    assertThat(NoiseProcesses.find(id())).hasSameClassAs(process());
     assertThat(process().id()).isEqualTo(id()).matches("[a-z][a-z0-9-]*");
     assertThat(process().revision()).isPositive();
     assertThat(process().summary()).isNotBlank().doesNotContain("\n");
     assertThat(process().sites()).isNotEmpty().doesNotHaveDuplicates();
-    assertThat(process().axes()).contains(Severity.SNR_DB, Severity.VARIANCE);
+    assertThat(process().parameters().keySet()).containsAll(process().flags());
+    assertThat(process().settingKeys()).containsAll(process().fileKeys());
+    assertThat(process().with(process().settings())).isEqualTo(process());
+    if (!hasOneSeverity()) {
+      assertThat(process().axes()).contains(Severity.SNR_DB, Severity.VARIANCE);
+    }
   }
 
   @Test
   void snrAndVarianceMeanTheSame() {
+    if (hasOneSeverity()) {
+      return;
+    }
     Picture picture = midRange();
     for (Site site : process().sites()) {
       for (double snr : new double[] {30, 12.5, 3}) {
@@ -105,6 +153,9 @@ public abstract class NoiseProcessContractTest {
 
   @Test
   void signalPowerSetsTheSnr() {
+    if (hasOneSeverity()) {
+      return;
+    }
     Picture picture = midRange();
     SignalStatistics signal = SignalStatistics.of(picture);
     SignalStatistics doubled =
@@ -123,7 +174,7 @@ public abstract class NoiseProcessContractTest {
     Picture picture = ramp(8);
     int[] before = picture.samples().clone();
     for (Site site : process().sites()) {
-      Impairment impairment = at(new Severity(Severity.SNR_DB, 8), site, picture);
+      Impairment impairment = at(severity(8), site, picture);
       Picture one = shown(impairment, picture, Measured.stream(1));
       Picture same = shown(impairment, picture, Measured.stream(1));
       Picture other = shown(impairment, picture, Measured.stream(2));
@@ -138,7 +189,7 @@ public abstract class NoiseProcessContractTest {
     for (int bitDepth : new int[] {8, 16}) {
       Picture picture = ramp(bitDepth);
       for (Site site : process().sites()) {
-        Impairment impairment = at(new Severity(Severity.SNR_DB, 3), site, picture);
+        Impairment impairment = at(severity(3), site, picture);
         Picture noisy = shown(impairment, picture, Measured.stream(3));
         assertThat(noisy.width()).isEqualTo(64);
         assertThat(noisy.height()).isEqualTo(64);
@@ -151,6 +202,9 @@ public abstract class NoiseProcessContractTest {
 
   @Test
   void varianceZeroLeavesThePictureAlone() {
+    if (hasOneSeverity()) {
+      return;
+    }
     for (Picture picture : new Picture[] {ramp(8), Measured.flat(9, 5, 8, 77)}) {
       for (Site site : process().sites()) {
         Impairment impairment = at(new Severity(Severity.VARIANCE, 0), site, picture);
@@ -171,7 +225,7 @@ public abstract class NoiseProcessContractTest {
     Picture picture = midRange();
     for (Site site : process().sites()) {
       for (double snr : new double[] {15, 8}) {
-        Impairment impairment = at(new Severity(Severity.SNR_DB, snr), site, picture);
+        Impairment impairment = at(severity(snr), site, picture);
         double[] errors = new double[REPEATS];
         for (int i = 0; i < REPEATS; i++) {
           Picture noisy = shown(impairment, picture, Measured.stream(1000 + i));
@@ -189,7 +243,7 @@ public abstract class NoiseProcessContractTest {
   @Test
   void packetFatesDoNotDependOnWhoAsks() {
     for (Site site : process().sites()) {
-      Impairment impairment = at(new Severity(Severity.SNR_DB, 5), site, midRange());
+      Impairment impairment = at(severity(5), site, midRange());
       if (impairment instanceof Impairment.OnPackets onPackets) {
         Impairment.Losses all = onPackets.losses(Measured.stream(6));
         List<Boolean> fates = new ArrayList<>();
@@ -205,11 +259,32 @@ public abstract class NoiseProcessContractTest {
   }
 
   @Test
+  void bitErrorsOfAPacketDependOnNoOtherPacketAndOnNoLength() {
+    for (Site site : process().sites()) {
+      Impairment impairment = at(severity(5), site, midRange());
+      if (impairment instanceof Impairment.OnBits onBits) {
+        Impairment.Errors all = onBits.errors(Measured.stream(6));
+        List<BitSet> flips = IntStream.range(0, 300).mapToObj(i -> all.flipped(i, 2000)).toList();
+        assertThat(flips).doesNotHaveDuplicates();
+        Impairment.Errors others = onBits.errors(Measured.stream(6));
+        for (int i = 299; i >= 0; i -= 7) {
+          int bits = 6 * i;
+          assertThat(others.flipped(i, bits)).isEqualTo(flips.get(i).get(0, bits));
+        }
+      }
+    }
+  }
+
+  @Test
   void sitesGiveTheirKindOfImpairment() {
     for (Site site : process().sites()) {
       Class<?> kind =
-          site == Site.SAMPLES ? Impairment.OnSamples.class : Impairment.OnPackets.class;
-      assertThat(at(new Severity(Severity.SNR_DB, 10), site, midRange())).isInstanceOf(kind);
+          switch (site) {
+            case SAMPLES -> Impairment.OnSamples.class;
+            case PACKETS -> Impairment.OnPackets.class;
+            case BITS -> Impairment.OnBits.class;
+          };
+      assertThat(at(severity(10), site, midRange())).isInstanceOf(kind);
     }
   }
 
@@ -230,6 +305,9 @@ public abstract class NoiseProcessContractTest {
 
   @Test
   void snrOfAPictureWithoutPowerIsRefused() {
+    if (hasOneSeverity()) {
+      return;
+    }
     SignalStatistics flat = SignalStatistics.of(Measured.flat(8, 8, 8, 128));
     for (Site site : process().sites()) {
       Severity severity = new Severity(Severity.SNR_DB, 20);
@@ -239,7 +317,7 @@ public abstract class NoiseProcessContractTest {
 
   @Test
   void parametersAndSitesItDoesNotHaveAreRefused() {
-    Severity severity = new Severity(Severity.VARIANCE, 1);
+    Severity severity = onlySeverity().orElse(new Severity(Severity.VARIANCE, 1));
     Site first = process().sites().get(0);
     assertRefused(
         () -> process().check(severity, Map.of("no-such-parameter", 1.0), first),

@@ -60,8 +60,8 @@ public interface Codec {
   Decoding decode(PictureShape shape, List<byte[]> arrived);
 
   /**
-   * What coding a picture asks of each node: the camera first, then its helpers, if any. Empty where
-   * nobody said.
+   * What coding a picture asks of each node: the camera first, then its helpers, if any. Empty
+   * where nobody said.
    *
    * @param keep components in force, as in {@link Encoding#keep}
    */

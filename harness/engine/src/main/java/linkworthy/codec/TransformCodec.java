@@ -355,9 +355,7 @@ final class TransformCodec implements Codec {
     return List.of(
         Workload.alone(
             macs,
-            Workload.pictureBytes(shape)
-                + Workload.NUMBER_BYTES * numbers
-                + link.payloadBytes()));
+            Workload.pictureBytes(shape) + Workload.NUMBER_BYTES * numbers + link.payloadBytes()));
   }
 
   private record AnalysisKey(Arrangement arrangement, String basis) {}

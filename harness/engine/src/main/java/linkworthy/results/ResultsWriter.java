@@ -31,7 +31,7 @@ public final class ResultsWriter implements AutoCloseable {
           ResultsFolder.STUDY,
           RunRecord.FILE);
 
-  private static final String MODEL_NAME = "[a-z][a-z0-9-]*-[0-9a-f]{8}\\.yaml";
+  private static final String MODEL_NAME = "[a-z][a-z0-9-]*-[0-9a-f]{8}(\\.yaml|-[a-z]+\\.csv)";
 
   private final Path folder;
   private final FolderLock lock;

@@ -84,7 +84,13 @@ final class ImpairmentReader {
     Map<String, Double> all = new TreeMap<>(model.implementation().parameters());
     all.putAll(model.parameters());
     for (String name : List.copyOf(all.keySet())) {
-      entry.find(name).ifPresent(node -> all.put(name, node.number("a finite number")));
+      boolean isFlag = model.implementation().flags().contains(name);
+      entry
+          .find(name)
+          .ifPresent(
+              node ->
+                  all.put(
+                      name, isFlag ? (node.flag() ? 1.0 : 0.0) : node.number("a finite number")));
     }
     try {
       return model.with(all);

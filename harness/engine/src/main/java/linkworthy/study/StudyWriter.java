@@ -8,6 +8,7 @@ import java.util.HexFormat;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
+import java.util.Set;
 import java.util.SortedMap;
 import java.util.TreeMap;
 import linkworthy.codec.Codec;
@@ -73,13 +74,17 @@ public final class StudyWriter {
     }
   }
 
-  /** The models that are not shipped: path beside the study, then the file's text. */
+  /**
+   * The models that are not shipped, and the files they name: path beside the study, then the
+   * file's text.
+   */
   public static SortedMap<String, String> modelFiles(Study study) {
     SortedMap<String, String> files = new TreeMap<>();
     for (ImpairmentChoice impairment : study.impairments()) {
       String reference = reference(impairment.model());
       if (isModelPath(reference)) {
         files.put(reference, YAML.writeValueAsString(tree(impairment.model())));
+        files.putAll(settingFiles(impairment.model()));
       }
     }
     return files;
@@ -88,6 +93,19 @@ public final class StudyWriter {
   /** Whether the value of {@code noise} is a path, not the id of a shipped model. */
   static boolean isModelPath(String noise) {
     return noise.contains("/") || noise.endsWith(".yaml") || noise.endsWith(".yml");
+  }
+
+  /** The files that a model of the user's own names, by their paths beside the study. */
+  private static Map<String, String> settingFiles(NoiseModel model) {
+    Map<String, String> files = new TreeMap<>(model.implementation().settings());
+    files.keySet().retainAll(model.implementation().fileKeys());
+    Map<String, String> byPath = new TreeMap<>();
+    files.forEach((key, text) -> byPath.put(MODEL_FOLDER + "/" + settingFile(model, key), text));
+    return byPath;
+  }
+
+  private static String settingFile(NoiseModel model, String key) {
+    return model.id() + "-" + model.fingerprint().substring(0, SHORT_HASH) + "-" + key + ".csv";
   }
 
   private static String reference(NoiseModel model) {
@@ -141,7 +159,7 @@ public final class StudyWriter {
     tree.put("noise", reference(impairment.model()));
     tree.put("label", impairment.label());
     tree.put("acts-on", impairment.site().id());
-    tree.putAll(numbers(impairment.model().parameters()));
+    tree.putAll(parameters(impairment.model()));
     tree.put(
         impairment.axis(), impairment.severities().stream().map(StudyWriter::plainValue).toList());
     return tree;
@@ -169,8 +187,12 @@ public final class StudyWriter {
     tree.put("process", model.process());
     tree.put("acts-on", model.actsOn().stream().map(Site::id).toList());
     if (!model.parameters().isEmpty()) {
-      tree.put("parameters", numbers(model.parameters()));
+      tree.put("parameters", parameters(model));
     }
+    Set<String> files = model.implementation().fileKeys();
+    new TreeMap<>(model.implementation().settings())
+        .forEach(
+            (key, text) -> tree.put(key, files.contains(key) ? settingFile(model, key) : text));
     tree.put("severity", model.axes());
     tree.put("source", model.source());
     if (!model.notes().isBlank()) {
@@ -179,9 +201,14 @@ public final class StudyWriter {
     return tree;
   }
 
-  private static Map<String, Object> numbers(Map<String, Double> named) {
+  /** Numbers, and true or false for parameters of two states. */
+  private static Map<String, Object> parameters(NoiseModel model) {
+    Set<String> flags = model.implementation().flags();
     Map<String, Object> tree = new LinkedHashMap<>();
-    new TreeMap<>(named).forEach((name, number) -> tree.put(name, plainValue(number)));
+    new TreeMap<>(model.parameters())
+        .forEach(
+            (name, number) ->
+                tree.put(name, flags.contains(name) ? (Object) (number == 1) : plainValue(number)));
     return tree;
   }
 

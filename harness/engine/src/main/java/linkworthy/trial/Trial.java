@@ -26,10 +26,10 @@ import java.util.Map;
  * @param psnrDb in dB; positive infinity for identical pictures
  * @param ssim structural similarity, or NaN where the study does not ask for it
  * @param payloadBits bits in all packet payloads
- * @param sentBits payload bits and the link's overhead
+ * @param sentBits payload bits, the link's overhead and frame checks
  * @param bitsPerPixel sent bits per sample of the picture
  * @param packetsSent packets sent
- * @param packetsLost packets that did not arrive
+ * @param packetsLost packets that did not arrive, or were dropped by a frame check
  * @param outage whether nothing usable arrived
  * @param further figures of the study's measures besides psnr and ssim, by column, in study order
  */

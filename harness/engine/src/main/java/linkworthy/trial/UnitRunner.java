@@ -53,11 +53,18 @@ final class UnitRunner {
     if (impairment instanceof Impairment.OnSamples onSamples) {
       Picture noisy = onSamples.apply(subject.picture(), random);
       double realised = Psnr.meanSquaredError(subject.picture(), noisy);
-      return evaluate(new Circumstances(noisy, new Memo(), index -> false, expected, realised));
+      return evaluate(new Circumstances(noisy, new Memo(), Passage.clear(realised), expected));
     }
-    Impairment.Losses losses = ((Impairment.OnPackets) impairment).losses(random);
-    return evaluate(
-        new Circumstances(subject.picture(), subject.memo(), losses, expected, Double.NaN));
+    Passage passage =
+        impairment instanceof Impairment.OnBits onBits
+            ? Passage.flipping(
+                onBits.errors(random),
+                onBits.frameCheck(),
+                study.link().headerBytes(),
+                subject.picture().peak())
+            : Passage.losing(
+                ((Impairment.OnPackets) impairment).losses(random), subject.signal().variance());
+    return evaluate(new Circumstances(subject.picture(), subject.memo(), passage, expected));
   }
 
   /**
@@ -65,13 +72,12 @@ final class UnitRunner {
    *
    * @param seen the picture that the encoder sees
    * @param memo encoders' work on that picture
-   * @param realised noise variance of this realisation on the samples, or NaN where it follows from
-   *     the packets lost
+   * @param passage the way of its packets
+   * @param expected equivalent noise variance, grey levels squared
    */
-  private record Circumstances(
-      Picture seen, Memo memo, Impairment.Losses losses, double expected, double realised) {
+  private record Circumstances(Picture seen, Memo memo, Passage passage, double expected) {
     static Circumstances clean(Subject subject) {
-      return new Circumstances(subject.picture(), subject.memo(), index -> false, 0, 0);
+      return new Circumstances(subject.picture(), subject.memo(), Passage.clear(0), 0);
     }
   }
 
@@ -82,10 +88,10 @@ final class UnitRunner {
       long start = System.nanoTime();
       Encoding encoding = encode(codec, circumstances);
       long encoded = System.nanoTime();
-      List<byte[]> arrived = arrived(encoding, circumstances.losses());
-      Decoding decoding = codec.decode(subject.shape(), arrived);
+      Passage.Delivery delivery = circumstances.passage().deliver(encoding.payloads());
+      Decoding decoding = codec.decode(subject.shape(), delivery.arrived());
       long decoded = System.nanoTime();
-      trials.add(trial(codec, circumstances, encoding, arrived.size(), decoding));
+      trials.add(trial(codec, circumstances, encoding, delivery, decoding));
       timings.add(
           new Timing(
               unit.entry().id(),
@@ -99,7 +105,7 @@ final class UnitRunner {
     return new Rows(trials, timings);
   }
 
-  /** Encodes; an encoding of the clean picture serves all units that lose its packets. */
+  /** Encodes; an encoding of the clean picture serves all units that hurt its packets. */
   private Encoding encode(Codec codec, Circumstances circumstances) {
     return circumstances
         .memo()
@@ -107,16 +113,6 @@ final class UnitRunner {
             new EncodingKey(codec.label()),
             Encoding.class,
             () -> codec.encode(circumstances.seen(), circumstances.memo()));
-  }
-
-  private static List<byte[]> arrived(Encoding encoding, Impairment.Losses losses) {
-    List<byte[]> arrived = new ArrayList<>();
-    for (int i = 0; i < encoding.packets().size(); i++) {
-      if (!losses.lost(i)) {
-        arrived.add(encoding.packets().get(i).payload());
-      }
-    }
-    return arrived;
   }
 
   private String impairmentLabel() {
@@ -129,18 +125,13 @@ final class UnitRunner {
       Codec codec,
       Circumstances circumstances,
       Encoding encoding,
-      int arrivedPackets,
+      Passage.Delivery delivery,
       Decoding decoding) {
     WorkUnit.Condition condition = unit.condition();
     int sentPackets = encoding.packets().size();
-    int lostPackets = sentPackets - arrivedPackets;
-    double realised =
-        Double.isNaN(circumstances.realised())
-            ? subject.signal().variance() * lostPackets / sentPackets
-            : circumstances.realised();
     double mse = Psnr.meanSquaredError(subject.picture(), decoding.picture());
     Link link = study.link();
-    long sentBits = link.sentBits(sentPackets, encoding.payloadBits());
+    long sentBits = link.sentBits(sentPackets, encoding.payloadBits()) + delivery.checkBits();
     Codec.Description description = codec.description();
     return new Trial(
         new TrialKey(study.seed(), unit, study.pictures().longestSide(), codec, link).id(),
@@ -150,7 +141,7 @@ final class UnitRunner {
         condition == null ? "" : condition.severity().axis(),
         condition == null ? Double.NaN : condition.severity().value(),
         circumstances.expected(),
-        realised,
+        delivery.realisedNoiseVariance(),
         condition == null
             ? Double.NaN
             : 10 * StrictMath.log10(subject.signal().power() / circumstances.expected()),
@@ -167,7 +158,7 @@ final class UnitRunner {
         sentBits,
         (double) sentBits / subject.picture().size(),
         sentPackets,
-        lostPackets,
+        sentPackets - delivery.arrived().size(),
         decoding.completeness() == Decoding.Completeness.NOTHING,
         further(decoding.picture()));
   }

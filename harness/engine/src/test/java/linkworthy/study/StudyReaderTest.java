@@ -217,6 +217,22 @@ class StudyReaderTest {
                 + "    snr-db: 10",
             List.of("line 5", "'burst-loss'", "second model", "label:")),
         Arguments.of(
+            "noise: gaussian\n    snr-db: 20",
+            "noise: bit-errors\n    frame-check: 1\n    snr-db: 20",
+            List.of("line 4", "'impairments[0].frame-check' is '1'", "true or false")),
+        Arguments.of(
+            "noise: gaussian\n    snr-db: 20",
+            "noise: bit-errors\n    curve: bpsk\n    snr-db: 20",
+            List.of("line 4", "unknown key 'curve'")),
+        Arguments.of(
+            "noise: gaussian\n    snr-db: 20",
+            "noise: radio-bpsk-rayleigh\n    mean-burst: 3\n    eb-n0-db: 20",
+            List.of("line 4", "'impairments[0].mean-burst'", "bpsk-rayleigh: 1.0")),
+        Arguments.of(
+            "noise: gaussian\n    snr-db: 20",
+            "noise: trace\n    as-recorded: 0.5",
+            List.of("line 4", "as-recorded is 0.5", "1.0 to 1.0")),
+        Arguments.of(
             "noise: gaussian", "noise: my/own.yaml", List.of("line 3", "own.yaml does not exist")),
         Arguments.of("step: 16", "stpe: 16", List.of("line 7", "'step'")),
         Arguments.of("transform: mean", "transform: maen", List.of("line 6", "'mean'")),

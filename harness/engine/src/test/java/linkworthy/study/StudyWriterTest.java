@@ -161,6 +161,72 @@ class StudyWriterTest {
     assertThat(StudyWriter.fingerprint(back)).isEqualTo(StudyWriter.fingerprint(study));
   }
 
+  /** A trace and a curve of the user's own model go with the record; a flag is written as one. */
+  @Test
+  void settingsOfOwnModelsAreWrittenBesideTheStudy() throws IOException {
+    Path home = Files.createDirectories(folder.resolve("home"));
+    Files.writeString(home.resolve("day.csv"), "0\n1\n0\n");
+    Files.writeString(
+        home.resolve("day.yaml"),
+        """
+        id: day
+        version: 1
+        process: trace
+        acts-on: packets
+        trace: day.csv
+        severity: as-recorded
+        source: invented
+        """);
+    Files.writeString(
+        home.resolve("radio.yaml"),
+        """
+        id: own-radio
+        version: 1
+        process: bit-errors
+        acts-on: bits
+        curve: dbpsk
+        severity: [eb-n0-db]
+        source: invented
+        """);
+    Path file =
+        Files.writeString(
+            home.resolve("study.yaml"),
+            StudyReaderTest.SHORT.replace(
+                "noise: gaussian\n    snr-db: 20",
+                """
+                noise: ./day.yaml
+                    as-recorded: 1
+                  - noise: ./radio.yaml
+                    eb-n0-db: 6
+                    frame-check: true
+                  - noise: stripes
+                    columns: true
+                    snr-db: 20
+                  - noise: trace
+                    as-recorded: 1"""));
+    Study study = StudyReader.read(file);
+    String text = StudyWriter.canonical(study);
+    assertThat(text)
+        .contains("frame-check: true\n  mean-burst: 1.0\n  eb-n0-db:\n  - 6.0\n")
+        .contains("  columns: true\n")
+        .contains("- noise: \"trace\"\n");
+
+    Map<String, String> files = StudyWriter.modelFiles(study);
+    assertThat(files).hasSize(3).containsValue("0\n1\n0\n");
+    Path away = Files.createDirectories(folder.resolve("away/models"));
+    for (Map.Entry<String, String> entry : files.entrySet()) {
+      assertThat(entry.getKey())
+          .matches("models/(day|own-radio)-[0-9a-f]{8}(-trace\\.csv|\\.yaml)");
+      Files.writeString(away.resolveSibling(entry.getKey()), entry.getValue());
+    }
+    Files.writeString(away.resolveSibling("study.yaml"), text);
+    Study back = StudyReader.read(away.resolveSibling("study.yaml"));
+    assertThat(back.impairments()).isEqualTo(study.impairments());
+    assertThat(StudyWriter.canonical(back)).isEqualTo(text);
+    assertThat(StudyWriter.fingerprint(back)).isEqualTo(StudyWriter.fingerprint(study));
+    assertThat(StudyWriter.modelFiles(back)).isEqualTo(files);
+  }
+
   @Test
   void shippedModelsNeedNoFile() {
     assertThat(StudyWriter.modelFiles(StudyReaderTest.read(StudyTemplate.text()))).isEmpty();

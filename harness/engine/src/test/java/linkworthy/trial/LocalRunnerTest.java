@@ -28,12 +28,33 @@ class LocalRunnerTest {
         - {noise: salt-and-pepper, density: 0.05}
         - {noise: burst-loss, loss-rate: [0.1, 0.4], mean-burst: 2}
         - {noise: burst-loss, acts-on: samples, snr-db: 10, label: raw-hop}
+        - {noise: bit-errors, bit-error-rate: [0.0001, 0.002]}
+        - {noise: bit-errors, bit-error-rate: 0.001, mean-burst: 20, frame-check: true, label: bursts}
+        - {noise: radio-oqpsk-2450, sinr-db: 0}
+        - {noise: radio-bpsk-rayleigh, eb-n0-db: 15}
+        - {noise: shot-noise, snr-db: 15}
+        - {noise: stripes, columns: true, snr-db: 15}
+        - {noise: stuck-pixels, density: 0.01}
+        - {noise: trace, as-recorded: 1}
       codecs:
         - {transform: pca, over: rows, keep: [2, 8], step: 8}
         - {transform: pca, over: blocks, keep: 6, step: 8}
         - {transform: dct, keep: 6, step: 8}
         - {transform: mean, step: 16}
       replicates: 3
+      """;
+
+  private static final String RADIO =
+      """
+      name: radio
+      seed: 7
+      pictures: {select: [handwriting], longest-side: 96}
+      impairments:
+        - {noise: bit-errors, bit-error-rate: [0.0001, 0.002]}
+        - {noise: radio-oqpsk-2450, sinr-db: 0}
+      codecs:
+        - {transform: mean, step: 16}
+      replicates: 100
       """;
 
   private static Plan plan(String study) {
@@ -94,7 +115,20 @@ class LocalRunnerTest {
     assertThat(trials.stream().map(Trial::picture).distinct())
         .containsExactly("cat", "handwriting");
     assertThat(trials.stream().map(Trial::impairment).distinct())
-        .containsExactly("none", "gaussian", "salt-and-pepper", "burst-loss", "raw-hop");
+        .containsExactly(
+            "none",
+            "gaussian",
+            "salt-and-pepper",
+            "burst-loss",
+            "raw-hop",
+            "bit-errors",
+            "bursts",
+            "radio-oqpsk-2450",
+            "radio-bpsk-rayleigh",
+            "shot-noise",
+            "stripes",
+            "stuck-pixels",
+            "trace");
     assertThat(trials.subList(0, 5))
         .extracting(Trial::codec)
         .containsExactly(
@@ -114,16 +148,61 @@ class LocalRunnerTest {
       if (trial.axis().equals("snr-db")) {
         assertThat(trial.snrDb()).isCloseTo(trial.severity(), within(1e-9));
       }
-      if (trial.actsOn().equals("packets")) {
+      boolean checked =
+          List.of("bursts", "radio-oqpsk-2450", "radio-bpsk-rayleigh").contains(trial.impairment());
+      if (trial.impairment().equals("burst-loss")) {
         assertThat(trial.realisedNoiseVariance() * trial.packetsSent())
             .isCloseTo(
                 trial.packetsLost() * trial.equivalentNoiseVariance() / trial.severity(),
                 within(1e-6 * trial.packetsSent() * trial.equivalentNoiseVariance()));
-      } else {
+      } else if (!checked && !trial.impairment().equals("trace")) {
         assertThat(trial.packetsLost()).isZero();
       }
-      assertThat(trial.sentBits()).isEqualTo(trial.payloadBits() + 8L * 23 * trial.packetsSent());
+      assertThat(trial.sentBits())
+          .isEqualTo(trial.payloadBits() + 8L * (23 + (checked ? 2 : 0)) * trial.packetsSent());
     }
+  }
+
+  /**
+   * Realised bit errors lie about the rate: within 6 standard errors of all payload bits of a
+   * severity, false-alarm rate 2e-9 each; (4^8 - 1)/3 = 21845.
+   */
+  @ParameterizedTest
+  @ValueSource(doubles = {0.0001, 0.002})
+  void realisedBitErrorsAreThoseAskedFor(double rate) {
+    double flips = 0;
+    double bits = 0;
+    for (Trial trial : run(RADIO, 2)) {
+      if (trial.axis().equals("bit-error-rate") && trial.severity() == rate) {
+        assertThat(trial.equivalentNoiseVariance()).isEqualTo(rate * 21845);
+        flips += trial.realisedNoiseVariance() / 21845 * trial.payloadBits();
+        bits += trial.payloadBits();
+      }
+    }
+    assertThat(bits).isGreaterThan(50_000);
+    assertThat(flips).isCloseTo(bits * rate, within(6 * Math.sqrt(bits * rate) + 1));
+  }
+
+  /** Frames of (23 + payload + 2) bytes are lost with probability 1 - (1 - b)^(8 bytes). */
+  @Test
+  void framesAreDroppedAsOftenAsTheirLengthSays() {
+    double lost = 0;
+    double expected = 0;
+    double variance = 0;
+    for (Trial trial : run(RADIO, 2)) {
+      if (trial.impairment().equals("radio-oqpsk-2450")) {
+        double rate = trial.equivalentNoiseVariance() / 21845;
+        double bits = (double) trial.sentBits() / trial.packetsSent();
+        double p = -StrictMath.expm1(bits * StrictMath.log1p(-rate));
+        lost += trial.packetsLost();
+        expected += p * trial.packetsSent();
+        variance += p * (1 - p) * trial.packetsSent();
+      }
+    }
+    assertThat(lost)
+        .as("within 6 standard errors, false-alarm rate 2e-9; unequal lengths cost below 1 %%")
+        .isCloseTo(expected, within(6 * Math.sqrt(variance) + 0.01 * expected));
+    assertThat(expected).isGreaterThan(200);
   }
 
   /**
