@@ -3,7 +3,6 @@ package linkworthy.study;
 import java.nio.file.Path;
 import java.util.List;
 import java.util.regex.Pattern;
-import linkworthy.codec.Codec;
 import linkworthy.input.Require;
 import linkworthy.link.Link;
 
@@ -17,7 +16,7 @@ import linkworthy.link.Link;
  * @param pictures which pictures
  * @param impairments what hurts them, in study order; the clean severity is always added by the
  *     plan
- * @param codecs the options compared, in study order, labels distinct
+ * @param codecs the options compared, codecs with their protection, in study order, labels distinct
  * @param link the packets they are sent in
  * @param replicates noise realisations of each picture and severity, 1 to {@link #MAX_REPLICATES}
  * @param measures ids of quality measures, {@code psnr} among them
@@ -28,7 +27,7 @@ public record Study(
     long seed,
     PictureChoice pictures,
     List<ImpairmentChoice> impairments,
-    List<Codec> codecs,
+    List<CodecChoice> codecs,
     Link link,
     int replicates,
     List<String> measures) {

@@ -21,11 +21,14 @@ package linkworthy.trial;
  * @param mse against the clean picture, grey levels squared
  * @param psnrDb in dB; positive infinity for identical pictures
  * @param ssim structural similarity, or NaN where the study does not ask for it
- * @param payloadBits bits in all packet payloads
- * @param sentBits payload bits and the link's overhead
+ * @param payloadBits bits in the payloads of all transmissions: data, parity, copies and further
+ *     tries, with the headers that protection needs
+ * @param sentBits payload bits, the link's overhead for each transmission, and the acknowledgements
+ *     that the receiver sends
  * @param bitsPerPixel sent bits per sample of the picture
- * @param packetsSent packets sent
- * @param packetsLost packets that did not arrive
+ * @param packetsSent transmissions of packets: data, parity, copies and further tries, but not
+ *     acknowledgements, which are never lost
+ * @param packetsLost those of them that did not arrive, whether or not protection made up for it
  * @param outage whether nothing usable arrived
  */
 public record Trial(

@@ -1,16 +1,19 @@
 package linkworthy.trial;
 
 import java.util.ArrayList;
+import java.util.HashMap;
 import java.util.List;
+import java.util.Map;
 import linkworthy.codec.Codec;
 import linkworthy.codec.Decoding;
 import linkworthy.codec.Encoding;
 import linkworthy.codec.Memo;
 import linkworthy.corpus.Picture;
-import linkworthy.link.Link;
+import linkworthy.link.Channel;
 import linkworthy.noise.Impairment;
 import linkworthy.noise.NoiseStreams;
 import linkworthy.quality.Psnr;
+import linkworthy.study.CodecChoice;
 import linkworthy.study.ImpairmentChoice;
 import linkworthy.study.Study;
 
@@ -76,45 +79,42 @@ final class UnitRunner {
   private Rows evaluate(Circumstances circumstances) {
     List<Trial> trials = new ArrayList<>();
     List<Timing> timings = new ArrayList<>();
-    for (Codec codec : study.codecs()) {
+    for (CodecChoice choice : study.codecs()) {
       long start = System.nanoTime();
-      Encoding encoding = encode(codec, circumstances);
+      Encoding encoding = encode(choice, circumstances);
       long encoded = System.nanoTime();
-      List<byte[]> arrived = arrived(encoding, circumstances.losses());
-      Decoding decoding = codec.decode(subject.shape(), arrived);
+      Channel.Outcome outcome =
+          new Channel(study.link(), choice.protection())
+              .send(encoding.packets(), Channel.Air.losing(circumstances.losses()));
+      Decoding decoding = choice.codec().decode(subject.shape(), outcome.payloads());
       long decoded = System.nanoTime();
-      trials.add(trial(codec, circumstances, encoding, arrived.size(), decoding));
+      trials.add(trial(choice, circumstances, encoding.keep(), outcome, decoding));
       timings.add(
           new Timing(
               unit.entry().id(),
               impairmentLabel(),
               unit.condition() == null ? Double.NaN : unit.condition().severity().value(),
               unit.replicate(),
-              codec.label(),
+              choice.label(),
               (encoded - start) / 1e6,
               (decoded - encoded) / 1e6));
     }
     return new Rows(trials, timings);
   }
 
-  /** Encodes; an encoding of the clean picture serves all units that lose its packets. */
-  private Encoding encode(Codec codec, Circumstances circumstances) {
+  /**
+   * Encodes; an encoding of the clean picture serves all units that lose its packets, and all
+   * protections that leave packets of the same size.
+   */
+  private Encoding encode(CodecChoice choice, Circumstances circumstances) {
+    Map<String, Object> settings = new HashMap<>(choice.codec().settings());
+    settings.remove("label");
     return circumstances
         .memo()
         .once(
-            new EncodingKey(codec.label()),
+            new EncodingKey(settings, choice.protection().overheadBytes()),
             Encoding.class,
-            () -> codec.encode(circumstances.seen(), circumstances.memo()));
-  }
-
-  private static List<byte[]> arrived(Encoding encoding, Impairment.Losses losses) {
-    List<byte[]> arrived = new ArrayList<>();
-    for (int i = 0; i < encoding.packets().size(); i++) {
-      if (!losses.lost(i)) {
-        arrived.add(encoding.packets().get(i).payload());
-      }
-    }
-    return arrived;
+            () -> choice.codec().encode(circumstances.seen(), circumstances.memo()));
   }
 
   private String impairmentLabel() {
@@ -124,24 +124,20 @@ final class UnitRunner {
   }
 
   private Trial trial(
-      Codec codec,
+      CodecChoice choice,
       Circumstances circumstances,
-      Encoding encoding,
-      int arrivedPackets,
+      int keep,
+      Channel.Outcome outcome,
       Decoding decoding) {
     WorkUnit.Condition condition = unit.condition();
-    int sentPackets = encoding.packets().size();
-    int lostPackets = sentPackets - arrivedPackets;
     double realised =
         Double.isNaN(circumstances.realised())
-            ? subject.signal().variance() * lostPackets / sentPackets
+            ? subject.signal().variance() * outcome.packetsLost() / outcome.packetsSent()
             : circumstances.realised();
     double mse = Psnr.meanSquaredError(subject.picture(), decoding.picture());
-    Link link = study.link();
-    long sentBits = link.sentBits(sentPackets, encoding.payloadBits());
-    Codec.Description description = codec.description();
+    Codec.Description description = choice.codec().description();
     return new Trial(
-        new TrialKey(study.seed(), unit, study.pictures().longestSide(), codec, link).id(),
+        new TrialKey(study.seed(), unit, study.pictures().longestSide(), choice, study.link()).id(),
         unit.entry().id(),
         impairmentLabel(),
         condition == null ? "" : condition.impairment().site().id(),
@@ -152,20 +148,20 @@ final class UnitRunner {
         condition == null
             ? Double.NaN
             : 10 * StrictMath.log10(subject.signal().power() / circumstances.expected()),
-        codec.label(),
+        choice.label(),
         description.transform(),
         description.over(),
-        encoding.keep(),
+        keep,
         description.step(),
         unit.replicate(),
         mse,
         Psnr.psnrDb(mse, subject.picture().peak()),
         measured("ssim", decoding.picture()),
-        encoding.payloadBits(),
-        sentBits,
-        (double) sentBits / subject.picture().size(),
-        sentPackets,
-        lostPackets,
+        outcome.payloadBits(),
+        outcome.sentBits(),
+        (double) outcome.sentBits() / subject.picture().size(),
+        outcome.packetsSent(),
+        outcome.packetsLost(),
         decoding.completeness() == Decoding.Completeness.NOTHING);
   }
 
@@ -174,5 +170,5 @@ final class UnitRunner {
     return at < 0 ? Double.NaN : subject.judges().get(at).of(decoded);
   }
 
-  private record EncodingKey(String codec) {}
+  private record EncodingKey(Map<String, Object> settings, int overheadBytes) {}
 }
