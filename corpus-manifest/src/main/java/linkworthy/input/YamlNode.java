@@ -11,6 +11,7 @@ import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.Iterator;
 import java.util.LinkedHashMap;
+import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Map;
 import java.util.Optional;
@@ -183,10 +184,28 @@ public final class YamlNode {
                 + "'"
                 + (path.isEmpty() ? "" : " in " + shortened(path))
                 + "; "
-                + Spelling.hint(entry.getKey(), accepted));
+                + Spelling.hint(entry.getKey(), withThoseElsewhere(accepted)));
       }
     }
     return this;
+  }
+
+  private Set<String> withThoseElsewhere(Set<String> accepted) {
+    Set<String> all = new LinkedHashSet<>(accepted);
+    all.addAll(mapping().elsewhere);
+    return all;
+  }
+
+  /**
+   * The same group without a key that another reader takes care of; {@link #onlyKeys} still names
+   * it among the accepted ones.
+   */
+  public YamlNode without(String key) {
+    Map<String, YamlNode> entries = new LinkedHashMap<>(mapping().entries);
+    entries.remove(key);
+    Set<String> elsewhere = new LinkedHashSet<>(mapping().elsewhere);
+    elsewhere.add(key);
+    return new YamlNode(source, line, path, new Mapping(entries, elsewhere));
   }
 
   /** The value of a key, if the key is there. */
@@ -353,7 +372,14 @@ public final class YamlNode {
     throw bad("keys with values");
   }
 
-  private record Mapping(Map<String, YamlNode> entries) {}
+  /**
+   * @param elsewhere keys that are accepted but read by others
+   */
+  private record Mapping(Map<String, YamlNode> entries, Set<String> elsewhere) {
+    Mapping(Map<String, YamlNode> entries) {
+      this(entries, Set.of());
+    }
+  }
 
   private record Sequence(List<YamlNode> items) {}
 

@@ -34,6 +34,15 @@ public record Link(int payloadBytes, int headerBytes, Order order) {
     Require.inRange(headerBytes, 0, MAX_PAYLOAD, "header-bytes (bytes)");
   }
 
+  /**
+   * The same link with smaller payloads.
+   *
+   * @throws IllegalArgumentException if less than {@link #MIN_PAYLOAD} is left
+   */
+  public Link less(int bytes) {
+    return new Link(payloadBytes - bytes, headerBytes, order);
+  }
+
   /** Bits on the air for packets with these many payload bits. */
   public long sentBits(int packets, long payloadBits) {
     return payloadBits + 8L * headerBytes * packets;

@@ -4,7 +4,6 @@ import java.nio.file.Path;
 import java.util.List;
 import java.util.Set;
 import java.util.regex.Pattern;
-import linkworthy.codec.Codec;
 import linkworthy.input.Require;
 import linkworthy.link.Link;
 import linkworthy.quality.QualityMeasure;
@@ -20,7 +19,7 @@ import linkworthy.quality.QualityMeasures;
  * @param pictures which pictures
  * @param impairments what hurts them, in study order; the clean severity is always added by the
  *     plan
- * @param codecs the options compared, in study order, labels distinct
+ * @param codecs the options compared, codecs with their protection, in study order, labels distinct
  * @param link the packets they are sent in
  * @param replicates noise realisations of each picture and severity, 1 to {@link #MAX_REPLICATES}
  * @param measures ids of quality measures, {@code psnr} among them
@@ -31,7 +30,7 @@ public record Study(
     long seed,
     PictureChoice pictures,
     List<ImpairmentChoice> impairments,
-    List<Codec> codecs,
+    List<CodecChoice> codecs,
     Link link,
     int replicates,
     List<String> measures) {
@@ -72,7 +71,7 @@ public record Study(
   }
 
   /** The same study with other codecs, as after their training. */
-  public Study withCodecs(List<Codec> others) {
+  public Study withCodecs(List<CodecChoice> others) {
     return new Study(
         name, purpose, seed, pictures, impairments, others, link, replicates, measures);
   }

@@ -20,6 +20,7 @@ import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
+import linkworthy.link.Protection;
 import linkworthy.quality.QualityMeasure;
 import linkworthy.quality.QualityMeasures;
 import linkworthy.study.PictureChoice.ManifestFile;
@@ -38,6 +39,7 @@ public final class StudyReader {
       YamlNode.parse("defaults.yaml", resource("defaults.yaml"));
   private static final int MAX_PURPOSE = 2000;
   private static final String PSNR = "psnr";
+  private static final String PROTECT = "protect";
 
   private StudyReader() {}
 
@@ -63,6 +65,7 @@ public final class StudyReader {
             "pictures",
             "impairments",
             "codecs",
+            "protect",
             "link",
             "replicates",
             "measures"));
@@ -75,7 +78,7 @@ public final class StudyReader {
         given(root, DEFAULTS, "seed").integer(0, Study.MAX_SEED),
         pictures,
         impairments(root.get("impairments"), baseFolder),
-        codecs(root.get("codecs"), link, pictures),
+        codecs(root, link, pictures),
         link,
         replicates(given(root, DEFAULTS, "replicates")),
         measures(given(root, DEFAULTS, "measures")));
@@ -187,15 +190,24 @@ public final class StudyReader {
     return list.items().stream().map(reader::read).toList();
   }
 
-  private static List<Codec> codecs(YamlNode list, Link link, PictureChoice pictures) {
-    List<Codec> all = new ArrayList<>();
+  private static List<CodecChoice> codecs(YamlNode root, Link link, PictureChoice pictures) {
+    ProtectionReader protections = new ProtectionReader(DEFAULTS.get("protection"), link);
+    Protection usual = protections.read(given(root, DEFAULTS, PROTECT));
+    List<CodecChoice> all = new ArrayList<>();
     Set<String> labels = new HashSet<>();
-    for (YamlNode entry : list.items()) {
-      for (Codec codec : CodecFamilies.read(entry, link)) {
-        if (!labels.add(codec.label())) {
+    for (YamlNode entry : root.get("codecs").items()) {
+      Protection protection = entry.find(PROTECT).map(protections::read).orElse(usual);
+      boolean named = entry.find("label").isPresent();
+      for (Codec codec :
+          CodecFamilies.read(entry.without(PROTECT), link.less(protection.overheadBytes()))) {
+        CodecChoice choice =
+            named
+                ? new CodecChoice(codec.label(), codec, protection)
+                : CodecChoice.of(codec, protection);
+        if (!labels.add(choice.label())) {
           throw entry.refuse(
               "gives the codec '"
-                  + codec.label()
+                  + choice.label()
                   + "' a second time; remove it, or add label: to tell the two apart");
         }
         if (codec.needsTraining() && pictures.train().isEmpty()) {
@@ -203,7 +215,7 @@ public final class StudyReader {
               "learns from other pictures, and there are none; add pictures.train: with sets,"
                   + " categories or ids");
         }
-        all.add(codec);
+        all.add(choice);
       }
     }
     return all;

@@ -11,7 +11,6 @@ import java.util.Map;
 import java.util.Set;
 import java.util.SortedMap;
 import java.util.TreeMap;
-import linkworthy.codec.Codec;
 import linkworthy.input.Decimal;
 import linkworthy.link.Link;
 import linkworthy.noise.NoiseLibrary;
@@ -54,14 +53,16 @@ public final class StudyWriter {
 
   /**
    * SHA-256, in hex, of what determines the rows of the record: the canonical text without {@code
-   * name}, {@code purpose} and the manifest's path, then the fingerprint of every noise model.
-   * Equal numbers need equal pictures as well; those have the fingerprint of their manifest.
+   * name}, {@code purpose}, the manifest's path and every {@code protect: none}, then the
+   * fingerprint of every noise model. Equal numbers need equal pictures as well; those have the
+   * fingerprint of their manifest.
    */
   public static String fingerprint(Study study) {
     Map<String, Object> tree = tree(study);
     tree.remove("name");
     tree.remove("purpose");
     tree.put("pictures", pictures(study.pictures(), false));
+    tree.put("codecs", study.codecs().stream().map(StudyWriter::decisive).toList());
     StringBuilder text = new StringBuilder(YAML.writeValueAsString(tree));
     for (ImpairmentChoice impairment : study.impairments()) {
       text.append(impairment.model().fingerprint()).append('\n');
@@ -165,10 +166,17 @@ public final class StudyWriter {
     return tree;
   }
 
-  private static Map<String, Object> codec(Codec codec) {
+  private static Map<String, Object> codec(CodecChoice choice) {
     Map<String, Object> tree = new LinkedHashMap<>();
-    codec.settings().forEach((key, value) -> tree.put(key, plainValue(value)));
-    tree.put("label", codec.label());
+    choice.settings().forEach((key, value) -> tree.put(key, plainValue(value)));
+    return tree;
+  }
+
+  /** What decides the rows of an option. */
+  private static Map<String, Object> decisive(CodecChoice choice) {
+    Map<String, Object> tree = new LinkedHashMap<>();
+    choice.identity().forEach((key, value) -> tree.put(key, plainValue(value)));
+    tree.put("label", choice.label());
     return tree;
   }
 

@@ -1,6 +1,5 @@
 package linkworthy.trial;
 
-import linkworthy.codec.Codec;
 import linkworthy.corpus.ManifestEntry;
 import linkworthy.noise.Site;
 
@@ -51,7 +50,7 @@ public record Estimate(double seconds, double memoryBytes, double diskBytes) {
   private static long eigendecompositions(Plan plan) {
     boolean rows =
         plan.study().codecs().stream()
-            .map(Codec::description)
+            .map(choice -> choice.codec().description())
             .anyMatch(d -> d.transform().equals("pca") && d.over().equals("rows"));
     long noisy =
         plan.study().impairments().stream()

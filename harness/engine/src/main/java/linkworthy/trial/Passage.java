@@ -1,44 +1,48 @@
 package linkworthy.trial;
 
-import java.util.ArrayList;
 import java.util.BitSet;
-import java.util.List;
+import linkworthy.link.Channel;
 import linkworthy.link.FrameCheck;
 import linkworthy.noise.Impairment;
+import org.jspecify.annotations.Nullable;
 
 /** The way of packets through one realisation of noise; the same for every codec of a unit. */
 interface Passage {
-  /** Sends the payloads of a codec's packets. */
-  Delivery deliver(List<byte[]> packets);
+  /** Opens the way for the packets of one codec. */
+  Crossing open();
 
-  /**
-   * What came of it.
-   *
-   * @param arrived payloads that reach the decoder, damaged or not, in sending order
-   * @param realisedNoiseVariance of this very realisation, grey levels squared
-   * @param checkBits bits sent for frame checks
-   */
-  record Delivery(List<byte[]> arrived, double realisedNoiseVariance, long checkBits) {}
+  /** The way of one codec's packets, and what came of it so far. */
+  interface Crossing extends Channel.Air {
+    /** Noise variance of this very realisation, grey levels squared. */
+    double realisedNoiseVariance();
+  }
 
   /** All arrives as it was sent. */
   static Passage clear(double realisedNoiseVariance) {
-    return packets -> new Delivery(packets, realisedNoiseVariance, 0);
+    return () ->
+        new Crossing() {
+          @Override
+          public byte[] carry(int index, int node, byte[] payload) {
+            return payload;
+          }
+
+          @Override
+          public double realisedNoiseVariance() {
+            return realisedNoiseVariance;
+          }
+        };
   }
 
   /**
    * Packets are lost; the realised noise variance is the picture's variance times the share lost.
    */
   static Passage losing(Impairment.Losses losses, double pictureVariance) {
-    return packets -> {
-      List<byte[]> arrived = new ArrayList<>();
-      for (int i = 0; i < packets.size(); i++) {
-        if (!losses.lost(i)) {
-          arrived.add(packets.get(i));
-        }
-      }
-      int lost = packets.size() - arrived.size();
-      return new Delivery(arrived, pictureVariance * lost / packets.size(), 0);
-    };
+    return () -> new Losing((index, node) -> losses.lost(index), pictureVariance);
+  }
+
+  /** All packets of a failed node are lost; the realised noise variance is as for single losses. */
+  static Passage failing(Impairment.Losses failures, double pictureVariance) {
+    return () -> new Losing((index, node) -> failures.lost(node), pictureVariance);
   }
 
   /**
@@ -48,37 +52,87 @@ interface Passage {
    * the share of payload bits flipped, times P(P+2)/3 for samples up to P.
    */
   static Passage flipping(Impairment.Errors errors, boolean frameCheck, int headerBytes, int peak) {
-    return packets -> {
-      List<byte[]> arrived = new ArrayList<>();
-      long flippedBits = 0;
-      long payloadBits = 0;
-      for (int i = 0; i < packets.size(); i++) {
-        byte[] payload = packets.get(i);
-        int first = frameCheck ? 8 * headerBytes : 0;
-        int end = first + 8 * payload.length;
-        int sentBits = frameCheck ? end + 8 * FrameCheck.BYTES : end;
-        BitSet flipped = errors.flipped(i, sentBits);
-        payloadBits += 8L * payload.length;
-        flippedBits += flipped.get(first, end).cardinality();
-        if (flipped.isEmpty()) {
-          arrived.add(payload);
-        } else if (!frameCheck) {
-          arrived.add(flip(payload.clone(), flipped));
-        } else {
-          byte[] frame = flip(FrameCheck.frame(headerBytes, payload), flipped);
-          if (FrameCheck.passes(frame)) {
-            arrived.add(FrameCheck.payload(headerBytes, frame));
-          }
-        }
-      }
-      double share = (double) flippedBits / payloadBits;
-      long checkBits = frameCheck ? 8L * FrameCheck.BYTES * packets.size() : 0;
-      return new Delivery(arrived, share * peak * (peak + 2.0) / 3, checkBits);
-    };
+    return () -> new Flipping(errors, frameCheck, headerBytes, peak);
   }
 
-  private static byte[] flip(byte[] bytes, BitSet flipped) {
-    flipped.stream().forEach(bit -> bytes[bit / 8] ^= (byte) (1 << bit % 8));
-    return bytes;
+  /** Which transmissions are lost. */
+  interface Fate {
+    boolean isLost(int index, int node);
+  }
+
+  /** Loses whole packets. */
+  final class Losing implements Crossing {
+    private final Fate fate;
+    private final double pictureVariance;
+    private int sent;
+    private int lost;
+
+    Losing(Fate fate, double pictureVariance) {
+      this.fate = fate;
+      this.pictureVariance = pictureVariance;
+    }
+
+    @Override
+    public byte @Nullable [] carry(int index, int node, byte[] payload) {
+      boolean isLost = fate.isLost(index, node);
+      sent++;
+      lost += isLost ? 1 : 0;
+      return isLost ? null : payload;
+    }
+
+    @Override
+    public double realisedNoiseVariance() {
+      return pictureVariance * lost / sent;
+    }
+  }
+
+  /** Flips bits. */
+  final class Flipping implements Crossing {
+    private final Impairment.Errors errors;
+    private final boolean frameCheck;
+    private final int headerBytes;
+    private final int peak;
+    private long payloadBits;
+    private long flippedBits;
+
+    Flipping(Impairment.Errors errors, boolean frameCheck, int headerBytes, int peak) {
+      this.errors = errors;
+      this.frameCheck = frameCheck;
+      this.headerBytes = headerBytes;
+      this.peak = peak;
+    }
+
+    @Override
+    public int checkBits() {
+      return frameCheck ? 8 * FrameCheck.BYTES : 0;
+    }
+
+    @Override
+    public byte @Nullable [] carry(int index, int node, byte[] payload) {
+      int first = frameCheck ? 8 * headerBytes : 0;
+      int end = first + 8 * payload.length;
+      BitSet flipped = errors.flipped(index, end + checkBits());
+      payloadBits += 8L * payload.length;
+      flippedBits += flipped.get(first, end).cardinality();
+      if (flipped.isEmpty()) {
+        return payload;
+      }
+      if (!frameCheck) {
+        return flip(payload.clone(), flipped);
+      }
+      byte[] frame = flip(FrameCheck.frame(headerBytes, payload), flipped);
+      return FrameCheck.passes(frame) ? FrameCheck.payload(headerBytes, frame) : null;
+    }
+
+    private static byte[] flip(byte[] bytes, BitSet flipped) {
+      flipped.stream().forEach(bit -> bytes[bit / 8] ^= (byte) (1 << bit % 8));
+      return bytes;
+    }
+
+    @Override
+    public double realisedNoiseVariance() {
+      double share = (double) flippedBits / payloadBits;
+      return share * peak * (peak + 2.0) / 3;
+    }
   }
 }

@@ -2,7 +2,6 @@ package linkworthy.trial;
 
 import java.util.ArrayList;
 import java.util.List;
-import linkworthy.codec.Codec;
 import linkworthy.codec.PictureShape;
 import linkworthy.corpus.Manifest;
 import linkworthy.corpus.ManifestEntry;
@@ -11,6 +10,7 @@ import linkworthy.input.BadInput;
 import linkworthy.noise.Severity;
 import linkworthy.noise.SignalStatistics;
 import linkworthy.quality.QualityMeasures;
+import linkworthy.study.CodecChoice;
 import linkworthy.study.ImpairmentChoice;
 import linkworthy.study.Study;
 
@@ -59,8 +59,8 @@ public final class Plan {
     Picture picture = load(entry);
     PictureShape shape = PictureShape.of(picture);
     try {
-      for (Codec codec : study.codecs()) {
-        codec.check(shape);
+      for (CodecChoice choice : study.codecs()) {
+        choice.codec().check(shape);
       }
       for (String measure : study.measures()) {
         QualityMeasures.get(measure).check(shape);

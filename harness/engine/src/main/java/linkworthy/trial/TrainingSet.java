@@ -1,11 +1,9 @@
 package linkworthy.trial;
 
 import java.nio.charset.StandardCharsets;
-import java.util.ArrayList;
 import java.util.HashSet;
 import java.util.List;
 import java.util.Set;
-import linkworthy.codec.Codec;
 import linkworthy.codec.Training;
 import linkworthy.corpus.Manifest;
 import linkworthy.corpus.ManifestEntry;
@@ -49,7 +47,8 @@ final class TrainingSet {
    * @throws BadInput if a codec cannot be trained on these pictures
    */
   Study train(Study study) {
-    if (entries.isEmpty() || study.codecs().stream().noneMatch(Codec::needsTraining)) {
+    if (entries.isEmpty()
+        || study.codecs().stream().noneMatch(choice -> choice.codec().needsTraining())) {
       return study;
     }
     Training training =
@@ -57,11 +56,8 @@ final class TrainingSet {
             entries.size(),
             index -> study.pictures().load(manifest, entries.get(index)),
             fingerprint());
-    List<Codec> trained = new ArrayList<>();
-    for (Codec codec : study.codecs()) {
-      trained.add(codec.trainedOn(training));
-    }
-    return study.withCodecs(trained);
+    return study.withCodecs(
+        study.codecs().stream().map(choice -> choice.trainedOn(training)).toList());
   }
 
   /** SHA-256 over the files' own; their longest side is a part of the trial's key by itself. */

@@ -25,11 +25,15 @@ import java.util.Map;
  * @param mse against the clean picture, grey levels squared
  * @param psnrDb in dB; positive infinity for identical pictures
  * @param ssim structural similarity, or NaN where the study does not ask for it
- * @param payloadBits bits in all packet payloads
- * @param sentBits payload bits, the link's overhead and frame checks
+ * @param payloadBits bits in the payloads of all transmissions: data, parity, copies and further
+ *     tries, with the headers that protection needs
+ * @param sentBits payload bits, the link's overhead for each transmission, and the acknowledgements
+ *     that the receiver sends, and frame checks
  * @param bitsPerPixel sent bits per sample of the picture
- * @param packetsSent packets sent
- * @param packetsLost packets that did not arrive, or were dropped by a frame check
+ * @param packetsSent transmissions of packets: data, parity, copies and further tries, but not
+ *     acknowledgements, which are never lost
+ * @param packetsLost those of them that did not arrive or were dropped by a frame check, whether or
+ *     not protection made up for it
  * @param outage whether nothing usable arrived
  * @param further figures of the study's measures besides psnr and ssim, by column, in study order
  */

@@ -4,14 +4,12 @@ import java.nio.charset.StandardCharsets;
 import java.security.MessageDigest;
 import java.security.NoSuchAlgorithmException;
 import java.util.HexFormat;
-import java.util.LinkedHashMap;
-import java.util.Map;
 import java.util.OptionalInt;
-import linkworthy.codec.Codec;
 import linkworthy.link.Link;
+import linkworthy.study.CodecChoice;
 
 /** All that a trial depends on; its hash is the trial's id. */
-record TrialKey(long seed, WorkUnit unit, OptionalInt longestSide, Codec codec, Link link) {
+record TrialKey(long seed, WorkUnit unit, OptionalInt longestSide, CodecChoice codec, Link link) {
   private static final int ID_DIGITS = 16;
 
   /** The first 16 hexadecimal digits of the SHA-256 of the key. */
@@ -28,10 +26,10 @@ record TrialKey(long seed, WorkUnit unit, OptionalInt longestSide, Codec codec, 
       text.append(condition.severity().value()).append('\n');
     }
     text.append(unit.replicate()).append('\n');
-    text.append(settings()).append('\n');
+    text.append(codec.identity()).append('\n');
     text.append(link).append('\n');
-    if (!codec.training().isEmpty()) {
-      text.append(codec.training()).append('\n');
+    if (!codec.codec().training().isEmpty()) {
+      text.append(codec.codec().training()).append('\n');
     }
     try {
       byte[] hash =
@@ -41,12 +39,5 @@ record TrialKey(long seed, WorkUnit unit, OptionalInt longestSide, Codec codec, 
     } catch (NoSuchAlgorithmException e) {
       throw new IllegalStateException(e);
     }
-  }
-
-  /** Parameters of the codec without its name, which changes no result. */
-  private Map<String, Object> settings() {
-    Map<String, Object> settings = new LinkedHashMap<>(codec.settings());
-    settings.remove("label");
-    return settings;
   }
 }

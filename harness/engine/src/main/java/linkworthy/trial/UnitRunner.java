@@ -1,6 +1,7 @@
 package linkworthy.trial;
 
 import java.util.ArrayList;
+import java.util.HashMap;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
@@ -9,12 +10,14 @@ import linkworthy.codec.Decoding;
 import linkworthy.codec.Encoding;
 import linkworthy.codec.Memo;
 import linkworthy.corpus.Picture;
-import linkworthy.link.Link;
+import linkworthy.link.Channel;
 import linkworthy.noise.Impairment;
 import linkworthy.noise.NoiseStreams;
 import linkworthy.quality.Psnr;
+import linkworthy.study.CodecChoice;
 import linkworthy.study.ImpairmentChoice;
 import linkworthy.study.Study;
+import org.apache.commons.rng.UniformRandomProvider;
 
 /** Runs one work unit: draws its noise once and takes every codec through it. */
 final class UnitRunner {
@@ -55,16 +58,24 @@ final class UnitRunner {
       double realised = Psnr.meanSquaredError(subject.picture(), noisy);
       return evaluate(new Circumstances(noisy, new Memo(), Passage.clear(realised), expected));
     }
-    Passage passage =
-        impairment instanceof Impairment.OnBits onBits
-            ? Passage.flipping(
-                onBits.errors(random),
-                onBits.frameCheck(),
-                study.link().headerBytes(),
-                subject.picture().peak())
-            : Passage.losing(
-                ((Impairment.OnPackets) impairment).losses(random), subject.signal().variance());
-    return evaluate(new Circumstances(subject.picture(), subject.memo(), passage, expected));
+    return evaluate(
+        new Circumstances(
+            subject.picture(), subject.memo(), passage(impairment, random), expected));
+  }
+
+  private Passage passage(Impairment impairment, UniformRandomProvider random) {
+    double variance = subject.signal().variance();
+    if (impairment instanceof Impairment.OnBits onBits) {
+      return Passage.flipping(
+          onBits.errors(random),
+          onBits.frameCheck(),
+          study.link().headerBytes(),
+          subject.picture().peak());
+    }
+    if (impairment instanceof Impairment.OnNodes onNodes) {
+      return Passage.failing(onNodes.failures(random), variance);
+    }
+    return Passage.losing(((Impairment.OnPackets) impairment).losses(random), variance);
   }
 
   /**
@@ -84,35 +95,49 @@ final class UnitRunner {
   private Rows evaluate(Circumstances circumstances) {
     List<Trial> trials = new ArrayList<>();
     List<Timing> timings = new ArrayList<>();
-    for (Codec codec : study.codecs()) {
+    for (CodecChoice choice : study.codecs()) {
       long start = System.nanoTime();
-      Encoding encoding = encode(codec, circumstances);
+      Encoding encoding = encode(choice, circumstances);
       long encoded = System.nanoTime();
-      Passage.Delivery delivery = circumstances.passage().deliver(encoding.payloads());
-      Decoding decoding = codec.decode(subject.shape(), delivery.arrived());
+      Passage.Crossing crossing = circumstances.passage().open();
+      Channel.Outcome outcome =
+          new Channel(study.link(), choice.protection()).send(encoding.packets(), crossing);
+      Decoding decoding = choice.codec().decode(subject.shape(), outcome.payloads());
       long decoded = System.nanoTime();
-      trials.add(trial(codec, circumstances, encoding, delivery, decoding));
+      trials.add(
+          trial(
+              choice,
+              circumstances.expected(),
+              crossing.realisedNoiseVariance(),
+              encoding.keep(),
+              outcome,
+              decoding));
       timings.add(
           new Timing(
               unit.entry().id(),
               impairmentLabel(),
               unit.condition() == null ? Double.NaN : unit.condition().severity().value(),
               unit.replicate(),
-              codec.label(),
+              choice.label(),
               (encoded - start) / 1e6,
               (decoded - encoded) / 1e6));
     }
     return new Rows(trials, timings);
   }
 
-  /** Encodes; an encoding of the clean picture serves all units that hurt its packets. */
-  private Encoding encode(Codec codec, Circumstances circumstances) {
+  /**
+   * Encodes; an encoding of the clean picture serves all units that hurt its packets, and all
+   * protections that leave packets of the same size.
+   */
+  private Encoding encode(CodecChoice choice, Circumstances circumstances) {
+    Map<String, Object> settings = new HashMap<>(choice.codec().settings());
+    settings.remove("label");
     return circumstances
         .memo()
         .once(
-            new EncodingKey(codec.label()),
+            new EncodingKey(settings, choice.protection().overheadBytes()),
             Encoding.class,
-            () -> codec.encode(circumstances.seen(), circumstances.memo()));
+            () -> choice.codec().encode(circumstances.seen(), circumstances.memo()));
   }
 
   private String impairmentLabel() {
@@ -122,43 +147,41 @@ final class UnitRunner {
   }
 
   private Trial trial(
-      Codec codec,
-      Circumstances circumstances,
-      Encoding encoding,
-      Passage.Delivery delivery,
+      CodecChoice choice,
+      double expectedVariance,
+      double realisedVariance,
+      int keep,
+      Channel.Outcome outcome,
       Decoding decoding) {
     WorkUnit.Condition condition = unit.condition();
-    int sentPackets = encoding.packets().size();
     double mse = Psnr.meanSquaredError(subject.picture(), decoding.picture());
-    Link link = study.link();
-    long sentBits = link.sentBits(sentPackets, encoding.payloadBits()) + delivery.checkBits();
-    Codec.Description description = codec.description();
+    Codec.Description description = choice.codec().description();
     return new Trial(
-        new TrialKey(study.seed(), unit, study.pictures().longestSide(), codec, link).id(),
+        new TrialKey(study.seed(), unit, study.pictures().longestSide(), choice, study.link()).id(),
         unit.entry().id(),
         impairmentLabel(),
         condition == null ? "" : condition.impairment().site().id(),
         condition == null ? "" : condition.severity().axis(),
         condition == null ? Double.NaN : condition.severity().value(),
-        circumstances.expected(),
-        delivery.realisedNoiseVariance(),
+        expectedVariance,
+        realisedVariance,
         condition == null
             ? Double.NaN
-            : 10 * StrictMath.log10(subject.signal().power() / circumstances.expected()),
-        codec.label(),
+            : 10 * StrictMath.log10(subject.signal().power() / expectedVariance),
+        choice.label(),
         description.transform(),
         description.over(),
-        encoding.keep(),
+        keep,
         description.step(),
         unit.replicate(),
         mse,
         Psnr.psnrDb(mse, subject.picture().peak()),
         measured("ssim", decoding.picture()),
-        encoding.payloadBits(),
-        sentBits,
-        (double) sentBits / subject.picture().size(),
-        sentPackets,
-        sentPackets - delivery.arrived().size(),
+        outcome.payloadBits(),
+        outcome.sentBits(),
+        (double) outcome.sentBits() / subject.picture().size(),
+        outcome.packetsSent(),
+        outcome.packetsLost(),
         decoding.completeness() == Decoding.Completeness.NOTHING,
         further(decoding.picture()));
   }
@@ -174,5 +197,5 @@ final class UnitRunner {
     return figures;
   }
 
-  private record EncodingKey(String codec) {}
+  private record EncodingKey(Map<String, Object> settings, int overheadBytes) {}
 }

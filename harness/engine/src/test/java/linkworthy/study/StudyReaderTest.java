@@ -8,7 +8,6 @@ import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.List;
 import java.util.stream.Stream;
-import linkworthy.codec.Codec;
 import linkworthy.input.BadInput;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
@@ -111,7 +110,7 @@ class StudyReaderTest {
     assertThat(only.site()).isEqualTo(Site.PACKETS);
     assertThat(only.model().parameters()).containsEntry("mean-burst", 2.5);
     assertThat(only.severities()).containsExactly(0.01, 0.05);
-    assertThat(study.codecs()).extracting(Codec::label).hasSize(2).doesNotHaveDuplicates();
+    assertThat(study.codecs()).extracting(CodecChoice::label).hasSize(2).doesNotHaveDuplicates();
     assertThat(study.link()).isEqualTo(new Link(64, 9, Link.Order.BY_REGION));
     assertThat(study.replicates()).isEqualTo(10);
     assertThat(study.measures()).containsExactly("psnr");
@@ -323,7 +322,7 @@ class StudyReaderTest {
     Study study = StudyReader.read(Path.of("../studies/first-look.yaml"));
     assertThat(study.codecs())
         .hasSize(14)
-        .extracting(Codec::label)
+        .extracting(CodecChoice::label)
         .contains("pca rows K16 step8", "dct blocks8 K16 step8", "mean rows step16");
     assertThat(study.impairments())
         .extracting(ImpairmentChoice::severities)

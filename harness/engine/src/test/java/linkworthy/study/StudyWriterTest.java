@@ -7,7 +7,6 @@ import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.Locale;
 import java.util.Map;
-import linkworthy.codec.Codec;
 import linkworthy.input.YamlNode;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
@@ -125,11 +124,11 @@ class StudyWriterTest {
     assertThat(StudyWriter.canonical(back)).isEqualTo(text);
     assertThat(StudyWriter.fingerprint(back)).isEqualTo(StudyWriter.fingerprint(study));
     assertThat(back.codecs())
-        .extracting(Codec::label)
-        .isEqualTo(study.codecs().stream().map(Codec::label).toList());
+        .extracting(CodecChoice::label)
+        .isEqualTo(study.codecs().stream().map(CodecChoice::label).toList());
     assertThat(back.codecs())
-        .extracting(Codec::settings)
-        .isEqualTo(study.codecs().stream().map(Codec::settings).toList());
+        .extracting(CodecChoice::settings)
+        .isEqualTo(study.codecs().stream().map(CodecChoice::settings).toList());
     assertThat(back).usingRecursiveComparison().ignoringFields("codecs").isEqualTo(study);
   }
 

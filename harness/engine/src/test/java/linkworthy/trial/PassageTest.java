@@ -3,6 +3,7 @@ package linkworthy.trial;
 import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.within;
 
+import java.util.ArrayList;
 import java.util.BitSet;
 import java.util.List;
 import linkworthy.noise.Impairment;
@@ -24,10 +25,43 @@ class PassageTest {
     };
   }
 
+  private record Delivery(List<byte[]> arrived, double realisedNoiseVariance, long checkBits) {}
+
+  private static Delivery deliver(Passage passage) {
+    return deliver(passage, 0, 1, 2);
+  }
+
+  /** Takes the packets across, each sent by its node. */
+  private static Delivery deliver(Passage passage, int... nodes) {
+    Passage.Crossing crossing = passage.open();
+    List<byte[]> arrived = new ArrayList<>();
+    for (int i = 0; i < PACKETS.size(); i++) {
+      byte[] got = crossing.carry(i, nodes[i], PACKETS.get(i));
+      if (got != null) {
+        arrived.add(got);
+      }
+    }
+    return new Delivery(
+        arrived, crossing.realisedNoiseVariance(), (long) crossing.checkBits() * PACKETS.size());
+  }
+
+  /** Losses go by transmission, failures by node; a share s lost of variance V is s V. */
+  @Test
+  void lossesAndFailures() {
+    Delivery lossy = deliver(Passage.losing(index -> index != 1, 90), 5, 5, 5);
+    assertThat(lossy.arrived()).containsExactly(PACKETS.get(1));
+    assertThat(lossy.realisedNoiseVariance()).isEqualTo(60);
+    Delivery failing = deliver(Passage.failing(node -> node == 2, 90), 2, 1, 2);
+    assertThat(failing.arrived()).containsExactly(PACKETS.get(1));
+    assertThat(failing.realisedNoiseVariance()).isEqualTo(60);
+    Delivery clear = deliver(Passage.clear(7));
+    assertThat(clear.arrived()).isEqualTo(PACKETS);
+    assertThat(clear.realisedNoiseVariance()).isEqualTo(7);
+  }
+
   @Test
   void withoutACheckDamagedPacketsArrive() {
-    Passage.Delivery delivery =
-        Passage.flipping(errors(0, 15, 24), false, 23, 255).deliver(PACKETS);
+    Delivery delivery = deliver(Passage.flipping(errors(0, 15, 24), false, 23, 255));
     assertThat(delivery.arrived())
         .containsExactly(
             new byte[] {0, 0}, new byte[] {0, (byte) (2 ^ 0x80), 3}, new byte[] {4, 5, 6});
@@ -40,21 +74,19 @@ class PassageTest {
   @Test
   void withACheckAnyHitDropsTheFrame() {
     for (int hit : new int[] {0, 183, 184, 207, 208, 223}) {
-      Passage.Delivery delivery = Passage.flipping(errors(hit), true, 23, 255).deliver(PACKETS);
+      Delivery delivery = deliver(Passage.flipping(errors(hit), true, 23, 255));
       assertThat(delivery.arrived()).containsExactly(PACKETS.get(0), PACKETS.get(2));
       double flips = hit >= 184 && hit <= 207 ? 1 : 0;
       assertThat(delivery.realisedNoiseVariance()).isCloseTo(flips / 64 * 21845, within(1e-9));
       assertThat(delivery.checkBits()).isEqualTo(3 * 16);
     }
-    assertThat(Passage.flipping(errors(224), true, 23, 255).deliver(PACKETS).arrived())
-        .isEqualTo(PACKETS);
+    assertThat(deliver(Passage.flipping(errors(224), true, 23, 255)).arrived()).isEqualTo(PACKETS);
   }
 
   /** x^16 + x^12 + x^5 + 1 divides the pattern 0, 4, 11, 16 of sending order. */
   @Test
   void whatTheCheckDoesNotFindReachesTheDecoder() {
-    Passage.Delivery delivery =
-        Passage.flipping(errors(0, 4, 11, 16), true, 0, 255).deliver(PACKETS);
+    Delivery delivery = deliver(Passage.flipping(errors(0, 4, 11, 16), true, 0, 255));
     assertThat(delivery.arrived())
         .containsExactly(new byte[] {0, 0}, new byte[] {0x10, 0x0A, 2}, new byte[] {4, 5, 6});
   }

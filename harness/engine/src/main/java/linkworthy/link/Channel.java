@@ -1,0 +1,115 @@
+package linkworthy.link;
+
+import java.util.ArrayList;
+import java.util.List;
+import linkworthy.noise.Impairment;
+import org.jspecify.annotations.Nullable;
+
+/**
+ * Sends a codec's packets, protected, and hands over the payloads that the far end recovers.
+ *
+ * <p>One transmission follows the other and transmission t, counted from 0, meets fate t of the
+ * air, whatever it carries: a data packet, parity, a copy or a further try. So a burst of losses
+ * runs over transmissions in time. Copies of a packet follow each other at once. Retransmission is
+ * stop-and-wait: the receiver acknowledges every copy that arrives, an acknowledgement is never
+ * lost and takes no place among the transmissions, and while no copy of a packet has arrived all
+ * copies are sent again at once, before any other packet.
+ */
+public final class Channel {
+  private final Link link;
+  private final Framing framing;
+
+  /**
+   * @param link largest payload and overhead of a packet
+   */
+  public Channel(Link link, Protection protection) {
+    this.link = link;
+    this.framing = new Framing(protection);
+  }
+
+  /** What becomes of transmissions. */
+  @FunctionalInterface
+  public interface Air {
+    /**
+     * The payload of transmission {@code index} as it arrives; null if it does not. The payload
+     * given is shared and must not be changed.
+     *
+     * @param node the node that sends it
+     */
+    byte @Nullable [] carry(int index, int node, byte[] payload);
+
+    /** Bits of a frame check that are sent with every transmission. */
+    default int checkBits() {
+      return 0;
+    }
+
+    /** Air in which packets arrive whole or not at all. */
+    static Air losing(Impairment.Losses losses) {
+      return (index, node, payload) -> losses.lost(index) ? null : payload;
+    }
+  }
+
+  /**
+   * What was sent and what came of it.
+   *
+   * @param payloads the codec's payloads that were recovered: those that arrived, in order, then
+   *     those restored from parity
+   * @param packetsSent transmissions of data packets, parity packets, copies and further tries
+   * @param packetsLost those of them that did not arrive
+   * @param payloadBits bits in the payloads of all transmissions, protection headers included
+   * @param sentBits payload bits, the link's overhead and frame check for each transmission, and
+   *     the receiver's acknowledgements
+   */
+  public record Outcome(
+      List<byte[]> payloads, int packetsSent, int packetsLost, long payloadBits, long sentBits) {}
+
+  /** Sends packets in order. */
+  public Outcome send(List<Packet> packets, Air air) {
+    Traffic traffic = new Traffic(air);
+    framing.send(packets, traffic::send);
+    return new Outcome(
+        framing.payloads(traffic.arrived),
+        traffic.sent,
+        traffic.sent - traffic.arrived.size(),
+        traffic.payloadBits,
+        link.sentBits(traffic.sent, traffic.payloadBits)
+            + (long) air.checkBits() * traffic.sent
+            + traffic.acknowledgementBits);
+  }
+
+  /** Counts as it sends. */
+  private static final class Traffic {
+    private final Air air;
+    private final List<byte[]> arrived = new ArrayList<>();
+    private int sent;
+    private long payloadBits;
+    private long acknowledgementBits;
+
+    Traffic(Air air) {
+      this.air = air;
+    }
+
+    void send(byte[] payload, int node, Protection.@Nullable Rule rule) {
+      int tries = rule == null ? 1 : 1 + rule.retransmit();
+      int copies = rule == null ? 1 : rule.repeat();
+      int before = arrived.size();
+      for (int i = 0; i < tries && arrived.size() == before; i++) {
+        for (int copy = 0; copy < copies; copy++) {
+          transmit(payload, node);
+        }
+      }
+      if (rule != null && rule.retransmit() > 0) {
+        acknowledgementBits += 8L * rule.ackBytes() * (arrived.size() - before);
+      }
+    }
+
+    private void transmit(byte[] payload, int node) {
+      byte[] got = air.carry(sent, node, payload);
+      sent = Math.incrementExact(sent);
+      payloadBits += 8L * payload.length;
+      if (got != null) {
+        arrived.add(got);
+      }
+    }
+  }
+}
