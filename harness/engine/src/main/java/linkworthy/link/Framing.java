@@ -3,6 +3,7 @@ package linkworthy.link;
 import java.nio.ByteBuffer;
 import java.util.ArrayList;
 import java.util.Arrays;
+import java.util.EnumMap;
 import java.util.HashSet;
 import java.util.LinkedHashMap;
 import java.util.List;
@@ -45,13 +46,16 @@ final class Framing {
   private static final int WORD_BITS = 21;
 
   private final Protection protection;
+  private final Map<Importance, Protection.Rule> rules = new EnumMap<>(Importance.class);
   private final @Nullable ReedSolomon[] codes;
 
   Framing(Protection protection) {
     this.protection = protection;
     this.codes = new ReedSolomon[protection.rules().size()];
     for (int i = 0; i < codes.length; i++) {
-      Protection.ErasureCode code = protection.rules().get(i).code();
+      Protection.Rule rule = protection.rules().get(i);
+      rule.only().forEach(importance -> rules.put(importance, rule));
+      Protection.ErasureCode code = rule.code();
       codes[i] = code == null ? null : new ReedSolomon(code.n() - code.k());
     }
   }
@@ -81,7 +85,7 @@ final class Framing {
       }
     }
     for (Packet packet : packets) {
-      Protection.Rule rule = protection.ruleFor(packet.importance());
+      Protection.Rule rule = rules.get(packet.importance());
       Group group = rule == null ? null : groups.get(rule);
       if (group != null) {
         group.add(packet.payload(), packet.node());

@@ -141,11 +141,6 @@ public record Protection(List<Rule> rules) {
     return rules.isEmpty();
   }
 
-  /** The rule for packets of a class, or null. */
-  @Nullable Rule ruleFor(Importance importance) {
-    return rules.stream().filter(r -> r.only().contains(importance)).findFirst().orElse(null);
-  }
-
   /** Whether packets carry a protection header, which they do if any rule has a code. */
   boolean isFramed() {
     return rules.stream().anyMatch(rule -> rule.code() != null);

@@ -1,0 +1,150 @@
+package linkworthy.trial;
+
+import static org.assertj.core.api.Assertions.assertThat;
+
+import java.nio.file.Path;
+import java.util.ArrayList;
+import java.util.List;
+import linkworthy.input.YamlNode;
+import linkworthy.study.StudyReader;
+import org.junit.jupiter.api.Test;
+import org.junit.jupiter.params.ParameterizedTest;
+import org.junit.jupiter.params.provider.ValueSource;
+
+class ProtectedTrialsTest {
+  private static final String PLAIN =
+      """
+      name: small
+      seed: 7
+      pictures:
+        select: [cat]
+        longest-side: 160
+      impairments:
+        - {noise: gaussian, snr-db: 20}
+        - {noise: burst-loss, loss-rate: [0.1, 0.4], mean-burst: 1.1111111111111112, label: iid}
+        - {noise: burst-loss, loss-rate: 0.1, mean-burst: 4}
+      codecs:
+        - {transform: pca, over: rows, keep: 8, step: 8}
+        - {transform: dct, keep: 20, step: 4}
+      replicates: 3
+      """;
+
+  private static final String PROTECTED =
+      PLAIN.replace(
+          "replicates",
+          """
+            - {transform: dct, keep: 20, step: 4, protect: {repeat: 2}}
+            - {transform: dct, keep: 20, step: 4, protect: {retransmit: 3}}
+            - {transform: dct, keep: 20, step: 4, protect: {reed-solomon: {n: 12, k: 8, depth: 1}}}
+            - {transform: dct, keep: 20, step: 4, protect: {reed-solomon: {n: 12, k: 8, depth: 4}}}
+            - {transform: dct, keep: 20, step: 4, protect: {reed-solomon: {n: 12, k: 8}, retransmit: 1}}
+            - transform: pca
+              over: rows
+              keep: 8
+              step: 8
+              protect:
+                - {repeat: 3, only: header}
+                - {reed-solomon: {n: 12, k: 8, depth: 2}, only: [basis, first]}
+          replicates""");
+
+  private static List<Trial> run(String study, int threads) {
+    Plan plan = Plan.of(StudyReader.read(YamlNode.parse("small.yaml", study), Path.of("")));
+    List<Trial> all = new ArrayList<>();
+    new LocalRunner(plan, threads).run(0, (unit, trials, timings) -> all.addAll(trials));
+    assertThat(all).hasSize(Math.toIntExact(plan.trials()));
+    return all;
+  }
+
+  private static List<Trial> of(List<Trial> trials, String codec, String impairment) {
+    List<Trial> some =
+        trials.stream()
+            .filter(t -> t.codec().equals(codec) && t.impairment().equals(impairment))
+            .toList();
+    assertThat(some).isNotEmpty();
+    return some;
+  }
+
+  @Test
+  void protectedOptionsChangeNoOtherRow() {
+    List<Trial> all = run(PROTECTED, 2);
+    assertThat(
+            all.stream()
+                .filter(t -> t.codec().matches("(pca rows K8 step8|dct blocks8 K20 step4)"))
+                .toList())
+        .isEqualTo(run(PLAIN, 2));
+    assertThat(all).extracting(Trial::trial).doesNotHaveDuplicates();
+  }
+
+  @ParameterizedTest
+  @ValueSource(ints = {2, 3})
+  void rowsDoNotDependOnThreads(int threads) {
+    assertThat(run(PROTECTED, threads)).isEqualTo(run(PROTECTED, 1));
+  }
+
+  /**
+   * Ids of options without protection, as they were before there was any: taken from this program
+   * at the commit before protection, with the study above.
+   */
+  @Test
+  void idsWithoutProtectionAreThoseOfBefore() {
+    assertThat(run(PLAIN, 2).subList(0, 2))
+        .extracting(Trial::trial)
+        .containsExactly("c7792639072ac2bf", "853264c9145f06b1");
+  }
+
+  /** The same bits are decoded where nothing is lost; more of them were sent. */
+  @Test
+  void protectionCostsBitsAndNoQuality() {
+    List<Trial> all = run(PROTECTED, 2);
+    Trial plain = of(all, "dct blocks8 K20 step4", "none").get(0);
+    Trial repeated = of(all, "dct blocks8 K20 step4 repeat2", "none").get(0);
+    Trial coded = of(all, "dct blocks8 K20 step4 rs12-8x1", "none").get(0);
+    Trial retried = of(all, "dct blocks8 K20 step4 retry3", "none").get(0);
+    assertThat(List.of(repeated, coded, retried))
+        .allSatisfy(t -> assertThat(t.mse()).isEqualTo(plain.mse()));
+    assertThat(repeated.sentBits()).isEqualTo(2 * plain.sentBits());
+    assertThat(repeated.packetsSent()).isEqualTo(2 * plain.packetsSent());
+    assertThat(retried.payloadBits()).isEqualTo(plain.payloadBits());
+    assertThat(retried.sentBits())
+        .as("an acknowledgement of 5 bytes for each packet")
+        .isEqualTo(plain.sentBits() + 8L * 5 * plain.packetsSent());
+    assertThat((double) coded.packetsSent() / plain.packetsSent())
+        .as("n/k, more for headers and the last group")
+        .isBetween(1.5, 2.0);
+  }
+
+  /**
+   * With 10 % independent loss a word of (12, 8) fails once in 231 and a packet with 3 further
+   * tries once in 10 000, so nearly all pictures come through whole; seeds are fixed.
+   */
+  @Test
+  void protectionHelpsWherePacketsAreLost() {
+    List<Trial> all = run(PROTECTED, 2);
+    double clean = of(all, "dct blocks8 K20 step4", "none").get(0).psnrDb();
+    List<Trial> plain = tenPercent(of(all, "dct blocks8 K20 step4", "iid"));
+    assertThat(plain.stream().mapToDouble(Trial::psnrDb).average().orElseThrow())
+        .isLessThan(clean - 3);
+    for (String protection : List.of("rs12-8x1", "rs12-8x4", "retry3", "rs12-8x1+retry1")) {
+      List<Trial> better = tenPercent(of(all, "dct blocks8 K20 step4 " + protection, "iid"));
+      assertThat(better)
+          .as(protection)
+          .allSatisfy(t -> assertThat(t.psnrDb()).isGreaterThan(clean - 0.5))
+          .allSatisfy(t -> assertThat(t.packetsLost()).isPositive());
+    }
+  }
+
+  private static List<Trial> tenPercent(List<Trial> trials) {
+    return trials.stream().filter(t -> t.severity() == 0.1).toList();
+  }
+
+  /** Protections that leave packets of the same size share one encoding of a picture. */
+  @Test
+  void encodingsAreShared() {
+    Plan plan = Plan.of(StudyReader.read(YamlNode.parse("small.yaml", PROTECTED), Path.of("")));
+    Subject subject = new Subject(plan.load(plan.pictures().get(0)), plan.study());
+    new UnitRunner(plan.study(), subject, plan.unit(0)).run();
+    int analysesAndSymbols = 2 + 2;
+    int encodings = 2 + 2;
+    assertThat(subject.memo().computed()).isEqualTo(analysesAndSymbols + encodings);
+  }
+}
