@@ -1,5 +1,6 @@
 package linkworthy.codec;
 
+import java.util.Arrays;
 import java.util.BitSet;
 import org.jspecify.annotations.Nullable;
 
@@ -9,9 +10,8 @@ import org.jspecify.annotations.Nullable;
  * known picture needs.
  */
 final class Received {
-  private final int tag;
-  private final PictureShape shape;
-  private final int observations;
+  private final int bitDepth;
+  private final int[] lengths;
   private final boolean sentBasis;
   private final Quantizer quantizer;
   private final int[] means;
@@ -24,20 +24,14 @@ final class Received {
   private boolean anything;
 
   /**
-   * @param tag stream tag that a packet must carry
-   * @param most components there can be
+   * @param variables means there are, and entries of a direction
+   * @param lengths coefficients of each component that there can be
+   * @param sentBasis whether there is a direction for each component
    */
-  Received(
-      int tag,
-      PictureShape shape,
-      int variables,
-      int observations,
-      int most,
-      boolean sentBasis,
-      Quantizer quantizer) {
-    this.tag = tag;
-    this.shape = shape;
-    this.observations = observations;
+  Received(int bitDepth, int variables, int[] lengths, boolean sentBasis, Quantizer quantizer) {
+    int most = lengths.length;
+    this.bitDepth = bitDepth;
+    this.lengths = lengths;
     this.sentBasis = sentBasis;
     this.quantizer = quantizer;
     this.means = new int[variables];
@@ -53,21 +47,12 @@ final class Received {
     }
   }
 
-  /** Takes what a packet holds, up to the first thing in it that cannot be. */
-  void add(byte[] packet) {
-    BitReader in = new BitReader(packet);
-    int packetTag = (int) in.read(16);
-    int width = in.readVarint();
-    int height = in.readVarint();
-    int announced = in.readVarint();
-    if (in.isExhausted()
-        || packetTag != tag
-        || width != shape.width()
-        || height != shape.height()
-        || announced < 0
-        || announced > gotCoefficients.length) {
-      return;
-    }
+  /**
+   * Takes what a packet holds after its preamble, up to the first thing in it that cannot be.
+   *
+   * @param announced components in force, at most as many as there can be
+   */
+  void addUnits(BitReader in, int announced) {
     keep = Math.max(keep, announced);
     boolean good = true;
     while (good && in.hasByte()) {
@@ -92,7 +77,7 @@ final class Received {
       return false;
     }
     return component
-        ? fits(offset, count, observations) && readComponent(in, k, offset, count)
+        ? fits(offset, count, lengths[k]) && readComponent(in, k, offset, count)
         : fits(offset, count, means.length) && readDirection(in, k, offset, count);
   }
 
@@ -102,7 +87,7 @@ final class Received {
 
   private boolean readMeans(BitReader in, int offset, int count) {
     for (int i = offset; i < offset + count; i++) {
-      int mean = (int) in.read(shape.bitDepth());
+      int mean = (int) in.read(bitDepth);
       if (in.isExhausted()) {
         return false;
       }
@@ -142,12 +127,15 @@ final class Received {
     int components = in.readVarint();
     int offset = in.readVarint();
     int count = in.readVarint();
-    if (!fits(first, components, gotCoefficients.length) || !fits(offset, count, observations)) {
+    if (!fits(first, components, lengths.length)) {
       return false;
     }
     boolean one = in.read(1) == 1;
     int parameter = -1;
     for (int k = first; k < first + components; k++) {
+      if (!fits(offset, count, lengths[k])) {
+        return false;
+      }
       if (!quantizer.isNone() && (!one || k == first)) {
         parameter = (int) in.read(4);
       }
@@ -178,22 +166,23 @@ final class Received {
   private double[] component(int k) {
     double[] row = coefficients[k];
     if (row == null) {
-      row = new double[observations];
+      row = new double[lengths[k]];
       coefficients[k] = row;
     }
     return row;
   }
 
-  /** Whether no value at all arrived. */
-  boolean isNothing() {
-    return !anything;
+  /** Complete if every mean, coefficient and direction arrived. */
+  Decoding.Completeness completeness() {
+    return !anything
+        ? Decoding.Completeness.NOTHING
+        : isComplete() ? Decoding.Completeness.COMPLETE : Decoding.Completeness.PARTIAL;
   }
 
-  /** Whether every mean, coefficient and direction arrived. */
-  boolean isComplete() {
-    boolean complete = anything && gotMeans.cardinality() == means.length;
+  private boolean isComplete() {
+    boolean complete = gotMeans.cardinality() == means.length;
     for (int k = 0; complete && k < keep; k++) {
-      complete = gotCoefficients[k].cardinality() == observations && hasDirection(k);
+      complete = gotCoefficients[k].cardinality() == lengths[k] && hasDirection(k);
     }
     return complete;
   }
@@ -208,18 +197,8 @@ final class Received {
    */
   double[] means() {
     double[] filled = new double[means.length];
-    for (int i = 0; i < filled.length; i++) {
-      int before = gotMeans.previousSetBit(i);
-      int after = gotMeans.nextSetBit(i);
-      if (before < 0 && after < 0) {
-        filled[i] = 1 << (shape.bitDepth() - 1);
-      } else if (before < 0 || after < 0 || before == after) {
-        filled[i] = means[Math.max(before, after)];
-      } else {
-        double share = (double) (i - before) / (after - before);
-        filled[i] = means[before] + share * (means[after] - means[before]);
-      }
-    }
+    Arrays.setAll(filled, i -> means[i]);
+    Gaps.fill(filled, gotMeans, 1, 1 << (bitDepth - 1));
     return filled;
   }
 

@@ -156,7 +156,7 @@ final class UnitRunner {
         description.transform(),
         description.over(),
         encoding.keep(),
-        description.step(),
+        encoding.step().isEmpty() ? description.step() : encoding.step(),
         unit.replicate(),
         mse,
         Psnr.psnrDb(mse, subject.picture().peak()),
