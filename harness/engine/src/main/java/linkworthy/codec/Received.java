@@ -13,6 +13,7 @@ final class Received {
   private final int bitDepth;
   private final int[] lengths;
   private final boolean sentBasis;
+  private final boolean sparse;
   private final Quantizer quantizer;
   private final int[] means;
   private final BitSet gotMeans = new BitSet();
@@ -22,6 +23,7 @@ final class Received {
   private final BitSet[] gotDirections;
   private int keep;
   private boolean anything;
+  private long left;
 
   /**
    * @param variables means there are, and entries of a direction
@@ -29,6 +31,22 @@ final class Received {
    * @param sentBasis whether there is a direction for each component
    */
   Received(int bitDepth, int variables, int[] lengths, boolean sentBasis, Quantizer quantizer) {
+    this(bitDepth, variables, lengths, sentBasis, false, quantizer);
+  }
+
+  /** For streams of components of mostly zeros, without means and directions. */
+  static Received ofSparse(int bitDepth, int[] lengths, Quantizer quantizer) {
+    return new Received(bitDepth, 0, lengths, false, true, quantizer);
+  }
+
+  private Received(
+      int bitDepth,
+      int variables,
+      int[] lengths,
+      boolean sentBasis,
+      boolean sparse,
+      Quantizer quantizer) {
+    this.sparse = sparse;
     int most = lengths.length;
     this.bitDepth = bitDepth;
     this.lengths = lengths;
@@ -54,6 +72,7 @@ final class Received {
    */
   void addUnits(BitReader in, int announced) {
     keep = Math.max(keep, announced);
+    left = Arrays.stream(lengths).asLongStream().sum();
     boolean good = true;
     while (good && in.hasByte()) {
       good = readUnit(in);
@@ -99,9 +118,29 @@ final class Received {
   }
 
   private boolean readComponent(BitReader in, int k, int offset, int count) {
+    if (sparse && !quantizer.isNone()) {
+      return readSparse(in, k, offset, count);
+    }
     int parameter = quantizer.isNone() ? -1 : (int) in.read(4);
     return readValues(
         in, parameter, quantizer, component(k), gotCoefficients[k], offset, offset + count);
+  }
+
+  /** Few bits can stand for many zeros, so a packet may not hold more values than there are. */
+  private boolean readSparse(BitReader in, int k, int offset, int count) {
+    left -= count;
+    if (left < 0) {
+      return false;
+    }
+    int[] symbols = new int[count];
+    int there = SparseCoder.read(in, symbols, 0, count);
+    double[] values = component(k);
+    for (int i = 0; i < there; i++) {
+      values[offset + i] = quantizer.value(symbols[i]);
+    }
+    gotCoefficients[k].set(offset, offset + there);
+    anything |= there > 0;
+    return there == count;
   }
 
   private boolean readDirection(BitReader in, int k, int offset, int count) {
@@ -205,6 +244,11 @@ final class Received {
   /** Coefficients of component k with 0 where missing; null if none is usable. */
   double @Nullable [] coefficients(int k) {
     return hasDirection(k) ? coefficients[k] : null;
+  }
+
+  /** Which coefficients of component k arrived. */
+  BitSet got(int k) {
+    return gotCoefficients[k];
   }
 
   /** Direction k, if the basis is sent and all of it arrived. */
