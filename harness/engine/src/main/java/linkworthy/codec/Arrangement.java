@@ -30,15 +30,10 @@ public sealed interface Arrangement {
   double[][] gather(Picture picture);
 
   /**
-   * Puts variable i of all observations back into its place, rounded half up and clipped to 0..P.
-   * Values within 5e-10 below a half count as halves, so that the order of summation does not show.
+   * Puts variable i of all observations back into its place, rounded and clipped as {@link
+   * PictureShape#toSample} does.
    */
   void scatter(double[] values, int variable, PictureShape shape, int[] samples);
-
-  /** Rounds a reconstructed value half up and clips it to {@code 0..peak}. */
-  private static int toSample(double value, double peak) {
-    return (int) (Math.max(0, Math.min(peak, value)) + (0.5 + 5e-10));
-  }
 
   /** Each picture row is a variable, each picture column an observation. */
   record Rows() implements Arrangement {
@@ -76,10 +71,9 @@ public sealed interface Arrangement {
 
     @Override
     public void scatter(double[] values, int variable, PictureShape shape, int[] samples) {
-      double peak = (1 << shape.bitDepth()) - 1;
       int start = variable * shape.width();
       for (int x = 0; x < shape.width(); x++) {
-        samples[start + x] = toSample(values[x], peak);
+        samples[start + x] = shape.toSample(values[x]);
       }
     }
   }
@@ -160,13 +154,12 @@ public sealed interface Arrangement {
 
     @Override
     public void scatter(double[] values, int variable, PictureShape shape, int[] samples) {
-      double peak = (1 << shape.bitDepth()) - 1;
       int across = across(shape);
       int left = variable % side;
       for (int y = variable / side, block = 0; y < shape.height(); y += side, block += across) {
         int row = y * shape.width();
         for (int x = left, b = block; x < shape.width(); x += side, b++) {
-          samples[row + x] = toSample(values[b], peak);
+          samples[row + x] = shape.toSample(values[b]);
         }
       }
     }

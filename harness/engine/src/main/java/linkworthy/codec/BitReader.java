@@ -69,6 +69,11 @@ final class BitReader {
     return -1;
   }
 
+  /** Number of the byte that the next bit is in. */
+  int byteAt() {
+    return (int) (position >>> 3);
+  }
+
   /** Moves to the next whole byte. */
   void align() {
     position = (position + 7) & ~7L;

@@ -12,4 +12,13 @@ public record PictureShape(int width, int height, int bitDepth) {
   public int size() {
     return width * height;
   }
+
+  /**
+   * Rounds a reconstructed value half up and clips it to {@code 0..P}. Values within 5e-10 below a
+   * half count as halves, so that the order of summation does not show.
+   */
+  int toSample(double value) {
+    double peak = (1 << bitDepth) - 1;
+    return (int) (Math.max(0, Math.min(peak, value)) + (0.5 + 5e-10));
+  }
 }

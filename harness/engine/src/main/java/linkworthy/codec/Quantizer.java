@@ -2,6 +2,7 @@ package linkworthy.codec;
 
 import linkworthy.input.Decimal;
 import linkworthy.input.Require;
+import linkworthy.input.YamlNode;
 
 /**
  * Uniform mid-tread quantiser: index = value / step, rounded half away from zero after snapping to
@@ -71,5 +72,18 @@ public record Quantizer(double step) implements Quantization {
     return number == Math.rint(number) && Math.abs(number) < 1e15
         ? Long.toString((long) number)
         : Decimal.shortest(number);
+  }
+
+  /** Reads a step, or the word for no quantisation. */
+  static Quantizer read(YamlNode node) {
+    String accepted = "a step in grey levels from 0.001 to 65536, or none";
+    if (!node.isMapping() && !node.isSequence() && node.text().equals("none")) {
+      return NONE;
+    }
+    double step = node.number(accepted);
+    if (!(step >= 0.001 && step <= 65_536)) {
+      throw node.bad(accepted);
+    }
+    return new Quantizer(step);
   }
 }

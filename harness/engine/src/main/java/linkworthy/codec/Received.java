@@ -1,5 +1,6 @@
 package linkworthy.codec;
 
+import java.util.Arrays;
 import java.util.BitSet;
 import org.jspecify.annotations.Nullable;
 
@@ -9,10 +10,10 @@ import org.jspecify.annotations.Nullable;
  * known picture needs.
  */
 final class Received {
-  private final int tag;
-  private final PictureShape shape;
-  private final int observations;
+  private final int bitDepth;
+  private final int[] lengths;
   private final boolean sentBasis;
+  private final boolean sparse;
   private final Quantization quantization;
   private final int[] means;
   private final BitSet gotMeans = new BitSet();
@@ -22,22 +23,34 @@ final class Received {
   private final BitSet[] gotDirections;
   private int keep;
   private boolean anything;
+  private long left;
 
   /**
-   * @param tag stream tag that a packet must carry
-   * @param most components there can be
+   * @param variables means there are, and entries of a direction
+   * @param lengths coefficients of each component that there can be
+   * @param sentBasis whether there is a direction for each component
    */
   Received(
-      int tag,
-      PictureShape shape,
+      int bitDepth, int variables, int[] lengths, boolean sentBasis, Quantization quantization) {
+    this(bitDepth, variables, lengths, sentBasis, false, quantization);
+  }
+
+  /** For streams of components of mostly zeros, without means and directions. */
+  static Received ofSparse(int bitDepth, int[] lengths, Quantization quantization) {
+    return new Received(bitDepth, 0, lengths, false, true, quantization);
+  }
+
+  private Received(
+      int bitDepth,
       int variables,
-      int observations,
-      int most,
+      int[] lengths,
       boolean sentBasis,
+      boolean sparse,
       Quantization quantization) {
-    this.tag = tag;
-    this.shape = shape;
-    this.observations = observations;
+    this.sparse = sparse;
+    int most = lengths.length;
+    this.bitDepth = bitDepth;
+    this.lengths = lengths;
     this.sentBasis = sentBasis;
     this.quantization = quantization;
     this.means = new int[variables];
@@ -53,22 +66,14 @@ final class Received {
     }
   }
 
-  /** Takes what a packet holds, up to the first thing in it that cannot be. */
-  void add(byte[] packet) {
-    BitReader in = new BitReader(packet);
-    int packetTag = (int) in.read(16);
-    int width = in.readVarint();
-    int height = in.readVarint();
-    int announced = in.readVarint();
-    if (in.isExhausted()
-        || packetTag != tag
-        || width != shape.width()
-        || height != shape.height()
-        || announced < 0
-        || announced > gotCoefficients.length) {
-      return;
-    }
+  /**
+   * Takes what a packet holds after its preamble, up to the first thing in it that cannot be.
+   *
+   * @param announced components in force, at most as many as there can be
+   */
+  void addUnits(BitReader in, int announced) {
     keep = Math.max(keep, announced);
+    left = Arrays.stream(lengths).asLongStream().sum();
     boolean good = true;
     while (good && in.hasByte()) {
       good = readUnit(in);
@@ -92,7 +97,7 @@ final class Received {
       return false;
     }
     return component
-        ? fits(offset, count, observations) && readComponent(in, k, offset, count)
+        ? fits(offset, count, lengths[k]) && readComponent(in, k, offset, count)
         : fits(offset, count, means.length) && readDirection(in, k, offset, count);
   }
 
@@ -102,7 +107,7 @@ final class Received {
 
   private boolean readMeans(BitReader in, int offset, int count) {
     for (int i = offset; i < offset + count; i++) {
-      int mean = (int) in.read(shape.bitDepth());
+      int mean = (int) in.read(bitDepth);
       if (in.isExhausted()) {
         return false;
       }
@@ -114,6 +119,9 @@ final class Received {
   }
 
   private boolean readComponent(BitReader in, int k, int offset, int count) {
+    if (sparse && !quantization.isNone()) {
+      return readSparse(in, k, offset, count);
+    }
     int parameter = quantization.isNone() ? -1 : (int) in.read(4);
     return readValues(
         in,
@@ -123,6 +131,24 @@ final class Received {
         gotCoefficients[k],
         offset,
         offset + count);
+  }
+
+  /** Few bits can stand for many zeros, so a packet may not hold more values than there are. */
+  private boolean readSparse(BitReader in, int k, int offset, int count) {
+    left -= count;
+    if (left < 0) {
+      return false;
+    }
+    int[] symbols = new int[count];
+    int there = SparseCoder.read(in, symbols, 0, count);
+    double[] values = component(k);
+    Quantizer step = quantization.component(k);
+    for (int i = 0; i < there; i++) {
+      values[offset + i] = step.value(symbols[i]);
+    }
+    gotCoefficients[k].set(offset, offset + there);
+    anything |= there > 0;
+    return there == count;
   }
 
   private boolean readDirection(BitReader in, int k, int offset, int count) {
@@ -148,12 +174,15 @@ final class Received {
     int components = in.readVarint();
     int offset = in.readVarint();
     int count = in.readVarint();
-    if (!fits(first, components, gotCoefficients.length) || !fits(offset, count, observations)) {
+    if (!fits(first, components, lengths.length)) {
       return false;
     }
     boolean one = in.read(1) == 1;
     int parameter = -1;
     for (int k = first; k < first + components; k++) {
+      if (!fits(offset, count, lengths[k])) {
+        return false;
+      }
       if (!quantization.isNone() && (!one || k == first)) {
         parameter = (int) in.read(4);
       }
@@ -190,22 +219,23 @@ final class Received {
   private double[] component(int k) {
     double[] row = coefficients[k];
     if (row == null) {
-      row = new double[observations];
+      row = new double[lengths[k]];
       coefficients[k] = row;
     }
     return row;
   }
 
-  /** Whether no value at all arrived. */
-  boolean isNothing() {
-    return !anything;
+  /** Complete if every mean, coefficient and direction arrived. */
+  Decoding.Completeness completeness() {
+    return !anything
+        ? Decoding.Completeness.NOTHING
+        : isComplete() ? Decoding.Completeness.COMPLETE : Decoding.Completeness.PARTIAL;
   }
 
-  /** Whether every mean, coefficient and direction arrived. */
-  boolean isComplete() {
-    boolean complete = anything && gotMeans.cardinality() == means.length;
+  private boolean isComplete() {
+    boolean complete = gotMeans.cardinality() == means.length;
     for (int k = 0; complete && k < keep; k++) {
-      complete = gotCoefficients[k].cardinality() == observations && hasDirection(k);
+      complete = gotCoefficients[k].cardinality() == lengths[k] && hasDirection(k);
     }
     return complete;
   }
@@ -220,24 +250,19 @@ final class Received {
    */
   double[] means() {
     double[] filled = new double[means.length];
-    for (int i = 0; i < filled.length; i++) {
-      int before = gotMeans.previousSetBit(i);
-      int after = gotMeans.nextSetBit(i);
-      if (before < 0 && after < 0) {
-        filled[i] = 1 << (shape.bitDepth() - 1);
-      } else if (before < 0 || after < 0 || before == after) {
-        filled[i] = means[Math.max(before, after)];
-      } else {
-        double share = (double) (i - before) / (after - before);
-        filled[i] = means[before] + share * (means[after] - means[before]);
-      }
-    }
+    Arrays.setAll(filled, i -> means[i]);
+    Gaps.fill(filled, gotMeans, 1, 1 << (bitDepth - 1));
     return filled;
   }
 
   /** Coefficients of component k with 0 where missing; null if none is usable. */
   double @Nullable [] coefficients(int k) {
     return hasDirection(k) ? coefficients[k] : null;
+  }
+
+  /** Which coefficients of component k arrived. */
+  BitSet got(int k) {
+    return gotCoefficients[k];
   }
 
   /** Direction k, if the basis is sent and all of it arrived. */

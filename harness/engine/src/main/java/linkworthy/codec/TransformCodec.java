@@ -1,13 +1,11 @@
 package linkworthy.codec;
 
-import java.nio.charset.StandardCharsets;
 import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
 import java.util.function.IntPredicate;
-import java.util.zip.CRC32C;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
 import linkworthy.link.Link;
@@ -238,22 +236,11 @@ final class TransformCodec implements Codec {
         strips.add(Units.Run.ofComponent(k, kept, symbols, quantization.component(k)));
       }
     }
-    return Packetizer.pack(preamble(shape, kept), strips, link.payloadBytes());
+    return Packetizer.pack(preamble(shape).bytes(kept), strips, link.payloadBytes());
   }
 
-  private byte[] preamble(PictureShape shape, int kept) {
-    BitWriter out = new BitWriter();
-    out.write(tag(shape), 16);
-    out.writeVarint(shape.width());
-    out.writeVarint(shape.height());
-    out.writeVarint(kept);
-    return out.toByteArray();
-  }
-
-  /** What the two ends agree on besides the picture's size, in 16 bits. */
-  private int tag(PictureShape shape) {
-    CRC32C crc = new CRC32C();
-    String agreed =
+  private Preamble preamble(PictureShape shape) {
+    return Preamble.of(
         basis.id()
             + " "
             + arrangement.id()
@@ -262,32 +249,26 @@ final class TransformCodec implements Codec {
             + " "
             + quantization.label()
             + " "
-            + shape.bitDepth();
-    crc.update(agreed.getBytes(StandardCharsets.UTF_8));
-    return (int) crc.getValue() & 0xFFFF;
+            + shape.bitDepth(),
+        shape);
   }
 
   @Override
   public Decoding decode(PictureShape shape, List<byte[]> arrived) {
     int d = arrangement.variables(shape);
     int most = keep instanceof Keep.First first ? Math.min(d, first.components()) : d;
-    Received received =
-        new Received(
-            tag(shape),
-            shape,
-            d,
-            arrangement.observations(shape),
-            most,
-            basis.isSent(),
-            quantization);
-    arrived.forEach(received::add);
-    Decoding.Completeness completeness =
-        received.isNothing()
-            ? Decoding.Completeness.NOTHING
-            : received.isComplete()
-                ? Decoding.Completeness.COMPLETE
-                : Decoding.Completeness.PARTIAL;
-    return new Decoding(reconstruct(shape, received), completeness);
+    int[] lengths = new int[most];
+    Arrays.fill(lengths, arrangement.observations(shape));
+    Received received = new Received(shape.bitDepth(), d, lengths, basis.isSent(), quantization);
+    Preamble preamble = preamble(shape);
+    for (byte[] packet : arrived) {
+      BitReader in = new BitReader(packet);
+      int announced = preamble.read(in);
+      if (announced >= 0 && announced <= most) {
+        received.addUnits(in, announced);
+      }
+    }
+    return new Decoding(reconstruct(shape, received), received.completeness());
   }
 
   private Picture reconstruct(PictureShape shape, Received received) {

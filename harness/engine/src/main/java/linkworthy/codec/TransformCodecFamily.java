@@ -133,7 +133,7 @@ public final class TransformCodecFamily implements CodecFamily {
             });
     return entry
         .find("step")
-        .map(node -> node.oneOrMore().stream().map(TransformCodecFamily::quantizer).toList())
+        .map(node -> node.oneOrMore().stream().map(Quantizer::read).toList())
         .orElse(List.of(new Quantizer(DEFAULT_STEP)));
   }
 
@@ -151,17 +151,5 @@ public final class TransformCodecFamily implements CodecFamily {
     return entry.get("quality").oneOrMore().stream()
         .map(node -> new LuminanceSteps((int) node.integer(1, 100)))
         .toList();
-  }
-
-  private static Quantizer quantizer(YamlNode node) {
-    String accepted = "a step in grey levels from 0.001 to 65536, or none";
-    if (!node.isMapping() && !node.isSequence() && node.text().equals("none")) {
-      return Quantizer.NONE;
-    }
-    double step = node.number(accepted);
-    if (!(step >= 0.001 && step <= 65_536)) {
-      throw node.bad(accepted);
-    }
-    return new Quantizer(step);
   }
 }

@@ -20,7 +20,8 @@ import org.jspecify.annotations.Nullable;
  *   <li>{@code 3 + 2k}, component k: offset, count (varints), a Rice parameter (4 bits), values
  * </ul>
  *
- * Without a quantiser there are neither steps nor parameters, and each value is a 32-bit float.
+ * Without a quantiser there are neither steps nor parameters, and each value is a 32-bit float. In
+ * streams of mostly zeros, values of a component are as {@link SparseCoder} has them.
  */
 final class Units {
   static final int MEANS = 0;
@@ -97,6 +98,10 @@ final class Units {
           k < Math.max(1, kept / 4) ? Importance.FIRST : Importance.REST);
     }
 
+    static Run ofFloats(int k, int[] bits, Importance importance) {
+      return new Run(codeOfComponent(k), bits, 32, null, importance);
+    }
+
     @Override
     public boolean isDone() {
       return done == symbols.length;
@@ -162,6 +167,68 @@ final class Units {
           RiceCoder.write(out, RiceCoder.fold(symbols[i]), k);
         }
       }
+    }
+  }
+
+  /** A component most of whose values may be zero. */
+  static final class Sparse implements Packetizer.Strip {
+    private final int code;
+    private final int[] symbols;
+    private final Importance importance;
+    private final SparseCoder.Cost cost;
+    private int done;
+
+    Sparse(int k, int[] symbols, Importance importance) {
+      this.code = codeOfComponent(k);
+      this.symbols = symbols;
+      this.importance = importance;
+      this.cost = new SparseCoder.Cost(largestFolded(symbols));
+    }
+
+    @Override
+    public boolean isDone() {
+      return done == symbols.length;
+    }
+
+    @Override
+    public Importance importance() {
+      return importance;
+    }
+
+    @Override
+    public byte @Nullable [] take(int room, boolean whole) {
+      int left = symbols.length - done;
+      int header =
+          BitWriter.varintBytes(code) + BitWriter.varintBytes(done) + BitWriter.varintBytes(left);
+      int count = fitting(8L * (room - header));
+      if (!isSensible(count, left, whole)) {
+        return null;
+      }
+      BitWriter out = new BitWriter();
+      out.writeVarint(code);
+      out.writeVarint(done);
+      out.writeVarint(count);
+      SparseCoder.write(out, symbols, done, done + count, cost);
+      done += count;
+      return out.toByteArray();
+    }
+
+    /** How many values fit; their cost is what {@link #cost} then holds. */
+    private int fitting(long bits) {
+      cost.clear();
+      int count = 0;
+      while (done + count < symbols.length) {
+        cost.add(RiceCoder.fold(symbols[done + count]));
+        if (cost.least() > bits) {
+          cost.clear();
+          for (int i = done; i < done + count; i++) {
+            cost.add(RiceCoder.fold(symbols[i]));
+          }
+          break;
+        }
+        count++;
+      }
+      return count;
     }
   }
 

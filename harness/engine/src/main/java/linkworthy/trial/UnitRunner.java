@@ -109,7 +109,7 @@ final class UnitRunner {
               choice,
               circumstances.expected(),
               crossing.realisedNoiseVariance(),
-              encoding.keep(),
+              encoding,
               outcome,
               decoding));
       timings.add(
@@ -150,7 +150,7 @@ final class UnitRunner {
       CodecChoice choice,
       double expectedVariance,
       double realisedVariance,
-      int keep,
+      Encoding encoding,
       Channel.Outcome outcome,
       Decoding decoding) {
     WorkUnit.Condition condition = unit.condition();
@@ -171,8 +171,8 @@ final class UnitRunner {
         choice.label(),
         description.transform(),
         description.over(),
-        keep,
-        description.step(),
+        encoding.keep(),
+        encoding.step().isEmpty() ? description.step() : encoding.step(),
         unit.replicate(),
         mse,
         Psnr.psnrDb(mse, subject.picture().peak()),

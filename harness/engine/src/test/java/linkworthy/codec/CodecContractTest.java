@@ -51,6 +51,22 @@ public abstract class CodecContractTest {
     return codecs;
   }
 
+  /** Pictures that a codec accepts; only deep ones may be refused. */
+  private static List<Picture> picturesFor(Codec codec) {
+    return pictures().stream().filter(p -> accepts(codec, PictureShape.of(p))).toList();
+  }
+
+  private static boolean accepts(Codec codec, PictureShape shape) {
+    try {
+      codec.check(shape);
+      return true;
+    } catch (BadInput refusal) {
+      assertThat(shape.bitDepth()).as(refusal.getMessage()).isGreaterThan(8);
+      assertThat(refusal).hasMessageNotContaining("\n").hasMessageContaining("accepted: ");
+      return false;
+    }
+  }
+
   private static List<Picture> pictures() {
     Picture pattern = TestPattern.cvp(61, 45);
     int[] deep = Arrays.stream(pattern.samples()).map(s -> s * 257).toArray();
@@ -100,7 +116,7 @@ public abstract class CodecContractTest {
   @Test
   void packetsKeepToTheLinkAndTheSameEncodingComesTwice() {
     for (Codec codec : codecs()) {
-      for (Picture picture : pictures()) {
+      for (Picture picture : picturesFor(codec)) {
         Encoding encoding = codec.encode(picture, new Memo());
         assertThat(encoding.payloads()).isNotEmpty().allMatch(p -> p.length > 0 && p.length <= 96);
         assertThat(encoding.payloadBits())
@@ -117,6 +133,9 @@ public abstract class CodecContractTest {
     for (Picture picture : pictures()) {
       Memo shared = new Memo();
       for (Codec codec : codecs()) {
+        if (!accepts(codec, PictureShape.of(picture))) {
+          continue;
+        }
         assertThat(codec.encode(picture, shared).payloads())
             .usingElementComparator(Arrays::compare)
             .containsExactlyElementsOf(codec.encode(picture, new Memo()).payloads());
@@ -127,7 +146,7 @@ public abstract class CodecContractTest {
   @Test
   void allPacketsInAnyOrderAndTwiceDecodeAlike() {
     for (Codec codec : codecs()) {
-      for (Picture picture : pictures()) {
+      for (Picture picture : picturesFor(codec)) {
         PictureShape shape = PictureShape.of(picture);
         List<byte[]> packets = codec.encode(picture, new Memo()).payloads();
         Decoding plain = codec.decode(shape, packets);

@@ -1,0 +1,55 @@
+package linkworthy.codec;
+
+import java.util.LinkedHashSet;
+import java.util.List;
+import java.util.Set;
+import linkworthy.input.YamlNode;
+import linkworthy.link.Link;
+
+/** Reads JPEG codecs from a study: {@code jpeg: baseline} and so on. */
+public final class JpegCodecFamily implements CodecFamily {
+  private static final Set<String> KEYS =
+      new LinkedHashSet<>(List.of("jpeg", "quality", "bits-per-pixel", "restart-every", "label"));
+  private static final int LARGEST_RESTART = 2048;
+
+  @Override
+  public String id() {
+    return "jpeg";
+  }
+
+  @Override
+  public String help() {
+    return """
+        jpeg: baseline (8-bit pictures)
+          quality:        1 to 100, by the rule of the library of the Independent JPEG Group; a
+                          list means one codec for each
+          bits-per-pixel: instead of quality, the sent bits that the highest quality may reach
+          restart-every:  rows of 8 x 8 blocks in a restart interval (1)
+          label:          name in tables (derived from the above)
+        Sent, and counted: the Huffman codes of the restart intervals, cut into packets that decode
+        alone. The header and its tables are known to both ends. The order of packets is that of
+        the picture, whatever the link's order. At the node, for pictures of W x H samples padded
+        to whole blocks, 17 W H multiply-accumulates (16 for the transform, 1 to quantise) and
+        8 W bytes of samples, with 1 KiB for tables and a block; bits-per-pixel quantises up to 7
+        times and so keeps the coefficients, 2 W H bytes.""";
+  }
+
+  @Override
+  public List<Codec> read(YamlNode entry, Link link) {
+    entry.onlyKeys(KEYS);
+    entry.get("jpeg").oneOf(List.of("baseline"));
+    int restart =
+        entry.find("restart-every").map(node -> (int) node.integer(1, LARGEST_RESTART)).orElse(1);
+    String label = entry.find("label").map(YamlNode::text).orElse("");
+    List<Codec> codecs =
+        RateTarget.readEither(
+            entry,
+            "quality",
+            node -> JpegCodec.of(label, (int) node.integer(1, 100), restart, link),
+            rate -> JpegCodec.of(label, rate, restart, link));
+    if (codecs.isEmpty()) {
+      throw entry.refuse("has neither 'quality' nor 'bits-per-pixel'; accepted: one of the two");
+    }
+    return codecs;
+  }
+}
