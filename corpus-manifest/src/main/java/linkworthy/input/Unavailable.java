@@ -2,7 +2,9 @@ package linkworthy.input;
 
 import java.io.IOException;
 import java.nio.file.AccessDeniedException;
+import java.nio.file.FileAlreadyExistsException;
 import java.nio.file.FileSystemException;
+import java.nio.file.NoSuchFileException;
 
 /**
  * The machine refused: a full disk, a folder that cannot be written, a picture that cannot be read.
@@ -33,9 +35,16 @@ public final class Unavailable extends RuntimeException {
     if (problem instanceof AccessDeniedException) {
       return "permission denied";
     }
+    if (problem instanceof FileAlreadyExistsException) {
+      return "there is a file of that name in the way";
+    }
+    if (problem instanceof NoSuchFileException) {
+      return "no such file or folder";
+    }
     String reason =
         problem instanceof FileSystemException file ? file.getReason() : problem.getMessage();
-    return reason == null ? problem.getClass().getSimpleName() : reason;
+    String words = reason == null ? problem.getClass().getSimpleName() : reason;
+    return words.lines().findFirst().orElse(words);
   }
 
   @Override

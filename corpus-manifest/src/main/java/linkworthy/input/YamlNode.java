@@ -239,6 +239,21 @@ public final class YamlNode {
   }
 
   /**
+   * Text for a heading or a name in a table, without blanks at its ends.
+   *
+   * @throws BadInput if this is no text, longer than {@code longest} characters, or has a line
+   *     break or another control character
+   */
+  public String line(int longest) {
+    String line = text().strip();
+    if (line.length() > longest
+        || line.chars().anyMatch(c -> Character.isISOControl(c) || c == 0x2028 || c == 0x2029)) {
+      throw bad("one line of up to " + longest + " characters");
+    }
+    return line;
+  }
+
+  /**
    * @throws BadInput if this is no finite number; {@code accepted} says which numbers are
    */
   public double number(String accepted) {

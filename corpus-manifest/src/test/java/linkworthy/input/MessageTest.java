@@ -4,7 +4,9 @@ import static org.assertj.core.api.Assertions.assertThat;
 
 import java.io.IOException;
 import java.nio.file.AccessDeniedException;
+import java.nio.file.FileAlreadyExistsException;
 import java.nio.file.FileSystemException;
+import java.nio.file.NoSuchFileException;
 import org.junit.jupiter.api.Test;
 
 class MessageTest {
@@ -33,5 +35,9 @@ class MessageTest {
         .hasMessage("cannot write r.csv: No space left on device");
     assertThat(Unavailable.cannot("write r.csv", new IOException()))
         .hasMessage("cannot write r.csv: IOException");
+    assertThat(Unavailable.cannot("write a/r.csv", new NoSuchFileException("a/r.csv.part")))
+        .hasMessage("cannot write a/r.csv: no such file or folder");
+    assertThat(Unavailable.cannot("write a/r.csv", new FileAlreadyExistsException("a")))
+        .hasMessage("cannot write a/r.csv: there is a file of that name in the way");
   }
 }

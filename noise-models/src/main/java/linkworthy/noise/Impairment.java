@@ -50,6 +50,12 @@ public sealed interface Impairment {
     BitSet flipped(int index, int bits);
   }
 
+  /** An impairment that takes whole nodes, and with each all packets it sends. */
+  non-sealed interface OnNodes extends Impairment {
+    /** Opens one realisation; index i is node i: 0 the camera, from 1 its helpers. */
+    Losses failures(UniformRandomProvider random);
+  }
+
   /**
    * One realisation of packet losses. Reading is by index and in any order; the fate of packet i
    * depends on the random stream alone, not on who asks. Not safe for use by several threads.

@@ -1,6 +1,8 @@
 package linkworthy.app;
 
 import java.nio.file.Path;
+import java.util.concurrent.CountDownLatch;
+import java.util.concurrent.TimeUnit;
 import linkworthy.results.ResultsFolder;
 import linkworthy.results.ResultsWriter;
 import linkworthy.results.RunRecord;
@@ -10,7 +12,7 @@ import linkworthy.trial.Plan;
 
 /** One run of a plan into a results folder. */
 final class Assessment {
-  /** How long an interrupted run may take to finish the unit at hand and close its files. */
+  /** How long a run that is told to stop may take to close its files. */
   private static final long PATIENCE_MS = 10_000;
 
   private final Surroundings surroundings;
@@ -41,6 +43,19 @@ final class Assessment {
    * @return the exit code
    */
   int run() {
+    LocalRunner runner = new LocalRunner(plan, threads);
+    CountDownLatch closed = new CountDownLatch(1);
+    Thread onSignal = new Thread(() -> stop(runner, closed), "stop");
+    Runtime.getRuntime().addShutdownHook(onSignal);
+    try {
+      return run(runner);
+    } finally {
+      closed.countDown();
+      release(onSignal);
+    }
+  }
+
+  private int run(LocalRunner runner) {
     try (ResultsWriter writer = ResultsFolder.create(folder, overwrite)) {
       RunRecord begun =
           RunRecord.begin(
@@ -52,7 +67,7 @@ final class Assessment {
               surroundings.clock());
       writer.begin(plan.study(), begun);
       Cells cells = new Cells();
-      int units = runUnits(writer, cells);
+      int units = runUnits(runner, writer, cells);
       RunRecord ended =
           begun.end((long) units * plan.study().codecs().size(), surroundings.clock());
       if (units < plan.units()) {
@@ -78,29 +93,23 @@ final class Assessment {
     }
   }
 
-  private int runUnits(ResultsWriter writer, Cells cells) {
-    Thread worker = Thread.currentThread();
-    Thread onSignal = new Thread(() -> stop(worker), "stop");
-    Runtime.getRuntime().addShutdownHook(onSignal);
+  private int runUnits(LocalRunner runner, ResultsWriter writer, Cells cells) {
     try (Progress progress = new Progress(surroundings, "assess", plan.trials(), quiet)) {
-      return new LocalRunner(plan, threads)
-          .run(
-              0,
-              (unit, trials, timings) -> {
-                writer.append(trials, timings);
-                trials.forEach(cells::add);
-                progress.step(trials.size());
-              });
-    } finally {
-      release(onSignal);
+      return runner.run(
+          0,
+          (unit, trials, timings) -> {
+            writer.append(trials, timings);
+            trials.forEach(cells::add);
+            progress.step(trials.size());
+          });
     }
   }
 
-  /** On Ctrl-C: the unit at hand is dropped, the files are closed, then the process may end. */
-  private static void stop(Thread worker) {
-    worker.interrupt();
+  /** On Ctrl-C: the units at hand are dropped, the files are closed, then the process may end. */
+  private static void stop(LocalRunner runner, CountDownLatch closed) {
+    runner.stop();
     try {
-      worker.join(PATIENCE_MS);
+      boolean unused = closed.await(PATIENCE_MS, TimeUnit.MILLISECONDS);
     } catch (InterruptedException e) {
       Thread.currentThread().interrupt();
     }
@@ -110,7 +119,7 @@ final class Assessment {
     try {
       Runtime.getRuntime().removeShutdownHook(onSignal);
     } catch (IllegalStateException alreadyStopping) {
-      // The hook is running: it waits for this thread, which closes the files next.
+      // The hook is running; it does not wait any longer.
     }
   }
 

@@ -38,7 +38,7 @@ final class BeginCommand implements Runnable {
     } catch (FileAlreadyExistsException e) {
       throw new BadInput(file + " exists already; accepted: a name that is free", e);
     } catch (IOException e) {
-      throw new Unavailable("cannot write " + file + ": " + e.getMessage(), e);
+      throw Unavailable.cannot("write " + file, e);
     }
     surroundings.out().println("wrote " + file + "; run it with: linkworthy assess " + file);
   }

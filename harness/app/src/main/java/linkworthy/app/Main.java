@@ -4,12 +4,14 @@ import java.io.OutputStream;
 import java.io.OutputStreamWriter;
 import java.io.PrintWriter;
 import java.nio.charset.StandardCharsets;
+import java.nio.file.InvalidPathException;
 import java.nio.file.Path;
 import java.time.Clock;
 import linkworthy.input.BadInput;
 import linkworthy.input.Unavailable;
 import picocli.CommandLine;
 import picocli.CommandLine.ParameterException;
+import picocli.CommandLine.TypeConversionException;
 
 /** The program: parses the command line, runs a command, turns its end into an exit code. */
 public final class Main {
@@ -49,17 +51,49 @@ public final class Main {
         new CommandLine(program, new Commands(surroundings))
             .setOut(surroundings.out())
             .setErr(surroundings.err())
+            .registerConverter(Path.class, Main::path)
+            .setExpandAtFiles(false)
             .setUsageHelpAutoWidth(false)
             .setUsageHelpWidth(100)
             .setParameterExceptionHandler((e, args) -> badUsage(surroundings, e))
             .setExecutionExceptionHandler(
                 (e, command, result) -> explain(surroundings, e, program.trace()));
-    return commandLine.execute(arguments);
+    try {
+      return commandLine.execute(arguments);
+    } catch (OutOfMemoryError e) {
+      return explain(surroundings, outOfMemory(e), program.trace());
+    }
+  }
+
+  private static Unavailable outOfMemory(OutOfMemoryError e) {
+    return new Unavailable(
+        "not enough memory: Java may use "
+            + (Runtime.getRuntime().maxMemory() >> 20)
+            + " MiB (more with JAVA_TOOL_OPTIONS=-Xmx4g, less needed with fewer --threads)",
+        e);
+  }
+
+  private static Path path(String text) {
+    if (text.isBlank()) {
+      throw new TypeConversionException("it is empty; accepted: a path");
+    }
+    try {
+      return Path.of(text);
+    } catch (InvalidPathException e) {
+      throw new TypeConversionException(
+          "'" + text + "' is no path on this system (is the locale UTF-8?)");
+    }
   }
 
   private static int badUsage(Surroundings surroundings, ParameterException e) {
     String command = e.getCommandLine().getCommandSpec().qualifiedName();
     StringBuilder line = new StringBuilder(oneLine(String.valueOf(e.getMessage())));
+    if (e instanceof CommandLine.MissingParameterException
+        && e.getCommandLine().getSubcommands().size() > 0
+        && !line.toString().contains("accepted:")) {
+      line.append("; accepted: ")
+          .append(String.join(", ", e.getCommandLine().getSubcommands().keySet()));
+    }
     if (e instanceof CommandLine.UnmatchedArgumentException unmatched) {
       var suggestions = unmatched.getSuggestions();
       if (!suggestions.isEmpty()) {

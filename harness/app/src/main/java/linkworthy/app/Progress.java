@@ -5,6 +5,7 @@ import java.time.Clock;
 import java.time.Duration;
 import java.time.Instant;
 import java.util.Locale;
+import me.tongfei.progressbar.DelegatingProgressBarConsumer;
 import me.tongfei.progressbar.ProgressBar;
 import me.tongfei.progressbar.ProgressBarBuilder;
 import me.tongfei.progressbar.ProgressBarStyle;
@@ -48,6 +49,7 @@ final class Progress implements AutoCloseable {
                 .setStyle(ProgressBarStyle.ASCII)
                 .setUnit(" trials", 1)
                 .showSpeed()
+                .setConsumer(new DelegatingProgressBarConsumer(this::draw))
                 .build();
   }
 
@@ -60,6 +62,11 @@ final class Progress implements AutoCloseable {
       lastLine = clock.instant();
       out.println(line());
     }
+  }
+
+  private void draw(String line) {
+    out.print("\r" + line);
+    out.flush();
   }
 
   /** As in {@code assess: 1200 of 9600 trials, 12 %, 130.2 a second, 1 min 05 s left}. */
@@ -93,6 +100,7 @@ final class Progress implements AutoCloseable {
   public void close() {
     if (bar != null) {
       bar.close();
+      out.println();
     }
   }
 }

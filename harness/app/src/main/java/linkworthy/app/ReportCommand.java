@@ -1,9 +1,9 @@
 package linkworthy.app;
 
-import java.io.IOException;
 import java.nio.file.Files;
 import java.nio.file.Path;
-import linkworthy.input.Unavailable;
+import linkworthy.input.BadInput;
+import linkworthy.results.FolderFiles;
 import linkworthy.results.ResultsFolder;
 import org.jspecify.annotations.Nullable;
 import picocli.CommandLine.Command;
@@ -35,15 +35,11 @@ final class ReportCommand implements Runnable {
 
   @Override
   public void run() {
-    String html = Reports.html(ResultsFolder.open(folder));
     Path file = out == null ? folder.resolve(ResultsFolder.REPORT) : out;
-    try {
-      Path unfinished = file.resolveSibling(file.getFileName() + ".part");
-      Files.writeString(unfinished, html);
-      Files.move(unfinished, file, java.nio.file.StandardCopyOption.REPLACE_EXISTING);
-    } catch (IOException e) {
-      throw new Unavailable("cannot write " + file + ": " + e.getMessage(), e);
+    if (Files.isDirectory(file)) {
+      throw new BadInput("--out is the folder " + file + "; accepted: a file");
     }
+    FolderFiles.replace(file, Reports.html(ResultsFolder.open(folder)));
     surroundings.out().println("report: " + file);
   }
 }

@@ -5,6 +5,7 @@ import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Locale;
 import java.util.Map;
+import linkworthy.input.Decimal;
 import linkworthy.statistics.Cell;
 import linkworthy.statistics.Standing;
 
@@ -78,6 +79,6 @@ final class SummaryTable {
   private static String shortly(double severity) {
     return severity == Math.rint(severity) && Math.abs(severity) < 1e9
         ? Long.toString((long) severity)
-        : Double.toString(severity);
+        : Decimal.shortest(severity);
   }
 }

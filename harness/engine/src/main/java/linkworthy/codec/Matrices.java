@@ -59,7 +59,8 @@ final class Matrices {
     }
   }
 
-  private static void add(double[] sums, int from, double factor, double[] terms) {
+  /** {@code sums[k] += factor terms[k]} for k from {@code from}. */
+  static void add(double[] sums, int from, double factor, double[] terms) {
     for (int k = from; k < sums.length; k++) {
       sums[k] += factor * terms[k];
     }
@@ -67,7 +68,13 @@ final class Matrices {
 
   /** {@code sum + factors[0] rows[0] + factors[1] rows[1] + ...}, added to {@code sum} in order. */
   static void addCombination(double[] sum, double[] factors, double[][] rows) {
-    int k = 0;
+    addCombination(sum, 0, factors, rows, 0);
+  }
+
+  /** The same from one column and one row on. */
+  static void addCombination(
+      double[] sum, int fromColumn, double[] factors, double[][] rows, int fromRow) {
+    int k = fromRow;
     for (; k + 4 <= factors.length; k += 4) {
       double[] r0 = rows[k];
       double[] r1 = rows[k + 1];
@@ -77,12 +84,12 @@ final class Matrices {
       double f1 = factors[k + 1];
       double f2 = factors[k + 2];
       double f3 = factors[k + 3];
-      for (int j = 0; j < sum.length; j++) {
+      for (int j = fromColumn; j < sum.length; j++) {
         sum[j] = (((sum[j] + f0 * r0[j]) + f1 * r1[j]) + f2 * r2[j]) + f3 * r3[j];
       }
     }
     for (; k < factors.length; k++) {
-      add(sum, 0, factors[k], rows[k]);
+      add(sum, fromColumn, factors[k], rows[k]);
     }
   }
 }

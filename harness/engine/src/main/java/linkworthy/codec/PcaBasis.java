@@ -3,8 +3,6 @@ package linkworthy.codec;
 import java.util.Comparator;
 import java.util.stream.IntStream;
 import org.ejml.data.DMatrixRMaj;
-import org.ejml.dense.row.factory.DecompositionFactory_DDRM;
-import org.ejml.interfaces.decomposition.EigenDecomposition_F64;
 
 /**
  * Principal components: eigenvectors of the covariance {@code C = (1/n) Xc Xc'}, largest eigenvalue
@@ -39,23 +37,21 @@ final class PcaBasis implements Basis {
     for (int i = 0; i < d; i++) {
       total += covariance.get(i, i);
     }
-    EigenDecomposition_F64<DMatrixRMaj> eigen = DecompositionFactory_DDRM.eig(d, true, true);
-    if (!eigen.decompose(eigen.inputModified() ? covariance.copy() : covariance)) {
-      throw new IllegalStateException("no eigenvalues found of a " + d + " x " + d + " covariance");
-    }
+    SymmetricEigen eigen = SymmetricEigen.of(covariance);
+    double[] values = eigen.values();
     double floor = NEGLIGIBLE * total;
     int[] order =
         IntStream.range(0, d)
             .boxed()
-            .filter(i -> eigen.getEigenvalue(i).getReal() > floor)
-            .sorted(Comparator.comparingDouble(i -> -eigen.getEigenvalue(i).getReal()))
+            .filter(i -> values[i] > floor)
+            .sorted(Comparator.comparingDouble(i -> -values[i]))
             .mapToInt(Integer::intValue)
             .toArray();
     double[][] rows = new double[order.length][];
     double[] variances = new double[order.length];
     for (int k = 0; k < order.length; k++) {
-      rows[k] = withPositivePeak(eigen.getEigenVector(order[k]).getData().clone());
-      variances[k] = eigen.getEigenvalue(order[k]).getReal();
+      rows[k] = withPositivePeak(eigen.vectors()[order[k]]);
+      variances[k] = values[order[k]];
     }
     return new Directions(rows, variances);
   }

@@ -1,5 +1,6 @@
 package linkworthy.codec;
 
+import linkworthy.input.Decimal;
 import linkworthy.input.Require;
 
 /**
@@ -59,6 +60,6 @@ public record Quantizer(double step) {
   static String plain(double number) {
     return number == Math.rint(number) && Math.abs(number) < 1e15
         ? Long.toString((long) number)
-        : Double.toString(number);
+        : Decimal.shortest(number);
   }
 }

@@ -9,6 +9,7 @@ import java.util.Map;
 import java.util.zip.CRC32C;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
+import linkworthy.input.Decimal;
 import linkworthy.link.Link;
 import linkworthy.link.Packetizer;
 import org.jspecify.annotations.Nullable;
@@ -72,7 +73,7 @@ final class TransformCodec implements Codec {
     return new Description(
         basis.id(),
         arrangement.id(),
-        sendsMeansOnly() ? "" : quantizer.isNone() ? "none" : Double.toString(quantizer.step()));
+        sendsMeansOnly() ? "" : quantizer.isNone() ? "none" : Decimal.shortest(quantizer.step()));
   }
 
   @Override
@@ -134,7 +135,7 @@ final class TransformCodec implements Codec {
     for (int k = 0; k < kept && basis.isSent(); k++) {
       strips.add(Units.Run.ofDirection(k, symbols, quantizer));
       if (link.order() == Link.Order.BY_COMPONENT) {
-        strips.add(Units.Run.ofComponent(k, symbols, quantizer));
+        strips.add(Units.Run.ofComponent(k, kept, symbols, quantizer));
       }
     }
     if (link.order() == Link.Order.BY_REGION) {
@@ -143,7 +144,7 @@ final class TransformCodec implements Codec {
       strips.add(new Units.Region(components, quantizer.isNone()));
     } else if (!basis.isSent()) {
       for (int k = 0; k < kept; k++) {
-        strips.add(Units.Run.ofComponent(k, symbols, quantizer));
+        strips.add(Units.Run.ofComponent(k, kept, symbols, quantizer));
       }
     }
     return new Encoding(

@@ -12,6 +12,7 @@ public final class TransformCodecFamily implements CodecFamily {
       new java.util.LinkedHashSet<>(
           List.of("transform", "over", "side", "keep", "share", "step", "label"));
   private static final int DEFAULT_SIDE = 8;
+  private static final int MAX_LABEL = 64;
   private static final double DEFAULT_STEP = 8;
 
   @Override
@@ -21,8 +22,10 @@ public final class TransformCodecFamily implements CodecFamily {
 
   @Override
   public String help() {
-    return """
-        transform: mean | dct | pca
+    return "transform: "
+        + String.join(" | ", Basis.all().stream().map(Basis::id).toList())
+        + """
+
           over:  rows | blocks (rows for mean and pca, blocks for dct unless given)
           side:  side of a block in samples, 2 to 64 (8)
           keep:  components K; a list means one codec for each. mean takes 0 (means alone) or all
@@ -42,7 +45,7 @@ public final class TransformCodecFamily implements CodecFamily {
     Arrangement arrangement = arrangement(entry, basis);
     List<Keep> keeps = keeps(entry, basis);
     List<Quantizer> quantizers = quantizers(entry);
-    String label = entry.find("label").map(YamlNode::text).orElse("");
+    String label = entry.find("label").map(node -> node.line(MAX_LABEL)).orElse("");
     if (!label.isEmpty() && keeps.size() * quantizers.size() > 1) {
       throw entry
           .get("label")

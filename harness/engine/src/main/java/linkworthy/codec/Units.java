@@ -1,5 +1,6 @@
 package linkworthy.codec;
 
+import linkworthy.link.Importance;
 import linkworthy.link.Packetizer;
 import org.jspecify.annotations.Nullable;
 
@@ -58,10 +59,13 @@ final class Units {
     private final int[] symbols;
     private final int fixedBits;
     private final @Nullable Quantizer step;
+    private final Importance importance;
     private final RiceCoder.Cost cost;
     private int done;
 
-    private Run(int code, int[] symbols, int fixedBits, @Nullable Quantizer step) {
+    private Run(
+        int code, int[] symbols, int fixedBits, @Nullable Quantizer step, Importance importance) {
+      this.importance = importance;
       this.code = code;
       this.symbols = symbols;
       this.fixedBits = fixedBits;
@@ -70,22 +74,37 @@ final class Units {
     }
 
     static Run ofMeans(int[] means, int bitDepth) {
-      return new Run(MEANS, means, bitDepth, null);
+      return new Run(MEANS, means, bitDepth, null, Importance.HEADER);
     }
 
     static Run ofDirection(int k, Symbols symbols, Quantizer quantizer) {
       return quantizer.isNone()
-          ? new Run(codeOfDirection(k), symbols.direction(k), 32, null)
-          : new Run(codeOfDirection(k), symbols.direction(k), 0, symbols.directionQuantizer(k));
+          ? new Run(codeOfDirection(k), symbols.direction(k), 32, null, Importance.BASIS)
+          : new Run(
+              codeOfDirection(k),
+              symbols.direction(k),
+              0,
+              symbols.directionQuantizer(k),
+              Importance.BASIS);
     }
 
-    static Run ofComponent(int k, Symbols symbols, Quantizer quantizer) {
-      return new Run(codeOfComponent(k), symbols.component(k), quantizer.isNone() ? 32 : 0, null);
+    static Run ofComponent(int k, int kept, Symbols symbols, Quantizer quantizer) {
+      return new Run(
+          codeOfComponent(k),
+          symbols.component(k),
+          quantizer.isNone() ? 32 : 0,
+          null,
+          k < Math.max(1, kept / 4) ? Importance.FIRST : Importance.REST);
     }
 
     @Override
     public boolean isDone() {
       return done == symbols.length;
+    }
+
+    @Override
+    public Importance importance() {
+      return importance;
     }
 
     @Override
@@ -171,6 +190,11 @@ final class Units {
     @Override
     public boolean isDone() {
       return symbols.length == 0 || observation == symbols[0].length;
+    }
+
+    @Override
+    public Importance importance() {
+      return Importance.FIRST;
     }
 
     @Override

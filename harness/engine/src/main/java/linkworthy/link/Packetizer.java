@@ -1,6 +1,7 @@
 package linkworthy.link;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.List;
 import org.jspecify.annotations.Nullable;
 
@@ -16,6 +17,9 @@ public final class Packetizer {
     /** Whether all has been taken. */
     boolean isDone();
 
+    /** How much hangs on the units of this strip. */
+    Importance importance();
+
     /**
      * The next unit, at most {@code room} bytes long; null if not even the smallest sensible unit
      * fits. Never null when {@code whole} says that the room is a whole packet's.
@@ -26,28 +30,60 @@ public final class Packetizer {
   /**
    * Cuts strips into packets of at most {@code payloadBytes} each.
    *
-   * @return the payloads, in sending order
+   * @return the packets, in sending order
    */
-  public static List<byte[]> pack(byte[] preamble, List<? extends Strip> strips, int payloadBytes) {
-    List<byte[]> packets = new ArrayList<>();
-    byte[] packet = new byte[payloadBytes];
-    System.arraycopy(preamble, 0, packet, 0, preamble.length);
-    int used = preamble.length;
+  public static List<Packet> pack(byte[] preamble, List<? extends Strip> strips, int payloadBytes) {
+    Filling filling = new Filling(preamble, payloadBytes);
     for (Strip strip : strips) {
       while (!strip.isDone()) {
-        byte[] unit = strip.take(payloadBytes - used, used == preamble.length);
+        byte[] unit = strip.take(filling.room(), filling.isFresh());
         if (unit == null) {
-          packets.add(java.util.Arrays.copyOf(packet, used));
-          used = preamble.length;
+          filling.send();
         } else {
-          System.arraycopy(unit, 0, packet, used, unit.length);
-          used += unit.length;
+          filling.add(unit, strip.importance());
         }
       }
     }
-    if (used > preamble.length) {
-      packets.add(java.util.Arrays.copyOf(packet, used));
+    if (!filling.isFresh()) {
+      filling.send();
     }
-    return packets;
+    return filling.packets;
+  }
+
+  /** The packet at hand and those before it. */
+  private static final class Filling {
+    private final List<Packet> packets = new ArrayList<>();
+    private final byte[] preamble;
+    private final byte[] bytes;
+    private Importance importance = Importance.REST;
+    private int used;
+
+    Filling(byte[] preamble, int payloadBytes) {
+      this.preamble = preamble;
+      this.bytes = Arrays.copyOf(preamble, payloadBytes);
+      this.used = preamble.length;
+    }
+
+    int room() {
+      return bytes.length - used;
+    }
+
+    boolean isFresh() {
+      return used == preamble.length;
+    }
+
+    void add(byte[] unit, Importance unitImportance) {
+      System.arraycopy(unit, 0, bytes, used, unit.length);
+      used += unit.length;
+      if (unitImportance.compareTo(importance) < 0) {
+        importance = unitImportance;
+      }
+    }
+
+    void send() {
+      packets.add(new Packet(Arrays.copyOf(bytes, used), importance));
+      used = preamble.length;
+      importance = Importance.REST;
+    }
   }
 }

@@ -9,7 +9,10 @@ public interface QualityMeasure {
   /** Stable id, as written in studies. */
   String id();
 
-  /** Column in the results, unit included. */
+  /**
+   * Column in the results, unit included, such as {@code psnr_db}: lower-case letters, digits and
+   * underscores; not one that {@code trials.csv} has already.
+   */
   String column();
 
   /**

@@ -6,6 +6,7 @@ import java.util.SortedMap;
 import java.util.TreeMap;
 import linkworthy.input.BadInput;
 import linkworthy.input.Spelling;
+import org.jspecify.annotations.Nullable;
 
 /** The measures there are, by id. */
 public final class QualityMeasures {
@@ -14,7 +15,7 @@ public final class QualityMeasures {
   /**
    * All measures, in the order of their ids.
    *
-   * @throws IllegalStateException if two measures share an id
+   * @throws IllegalStateException if two measures share an id or a column
    */
   public static List<QualityMeasure> all() {
     return List.copyOf(registered().values());
@@ -24,7 +25,7 @@ public final class QualityMeasures {
    * The measure with this id.
    *
    * @throws BadInput if there is none; the message lists what exists
-   * @throws IllegalStateException if two measures share an id
+   * @throws IllegalStateException if two measures share an id or a column
    */
   public static QualityMeasure get(String id) {
     SortedMap<String, QualityMeasure> byId = registered();
@@ -41,18 +42,25 @@ public final class QualityMeasures {
 
   static SortedMap<String, QualityMeasure> byId(Iterable<QualityMeasure> measures) {
     SortedMap<String, QualityMeasure> byId = new TreeMap<>();
+    SortedMap<String, QualityMeasure> byColumn = new TreeMap<>();
     for (QualityMeasure measure : measures) {
-      QualityMeasure other = byId.putIfAbsent(measure.id(), measure);
-      if (other != null) {
-        throw new IllegalStateException(
-            "two quality measures have the id '"
-                + measure.id()
-                + "': "
-                + other.getClass().getName()
-                + " and "
-                + measure.getClass().getName());
-      }
+      requireAlone(byId.putIfAbsent(measure.id(), measure), measure, "id '" + measure.id());
+      requireAlone(
+          byColumn.putIfAbsent(measure.column(), measure), measure, "column '" + measure.column());
     }
     return byId;
+  }
+
+  private static void requireAlone(
+      @Nullable QualityMeasure other, QualityMeasure measure, String what) {
+    if (other != null) {
+      throw new IllegalStateException(
+          "two quality measures have the "
+              + what
+              + "': "
+              + other.getClass().getName()
+              + " and "
+              + measure.getClass().getName());
+    }
   }
 }

@@ -12,13 +12,16 @@ import linkworthy.statistics.Cell;
 import linkworthy.statistics.Standing;
 
 /**
- * {@code cells.csv}: a row a cell. Half-widths and p values are {@code n/a} where the evidence is
- * too thin for one; other fields that do not apply are empty. Lines end in LF alone; otherwise RFC
- * 4180.
+ * {@code cells.csv}: a row a cell. Behind the fixed columns, each measure of the study besides psnr
+ * and ssim has the column of its mean. Half-widths and p values are {@code n/a} where the evidence
+ * is too thin for one; other fields that do not apply are empty. Lines end in LF alone; otherwise
+ * RFC 4180.
  */
 public final class CellsCsv {
   /** Name of the file in a results folder. */
   public static final String FILE = "cells.csv";
+
+  private static final String MEAN = "_mean";
 
   static final CsvTable<Cell> TABLE =
       new CsvTable<>(
@@ -48,18 +51,19 @@ public final class CellsCsv {
               number("behind_best_db", Cell::behindBestDb),
               evidence("behind_best_p_adjusted", Cell::behindBestPAdjusted),
               words("standing", cell -> cell.standing().toString())),
+          new CsvTable.Further<>(Cell::furtherMeans, MEAN),
           CellsCsv::cell);
 
   private CellsCsv() {}
 
-  /** The columns, in order. */
+  /** The fixed columns, in order. */
   public static List<String> columns() {
     return TABLE.names();
   }
 
   /** The header line, then a line for each cell. */
   public static String text(List<Cell> cells) {
-    return TABLE.header() + TABLE.lines(cells);
+    return TABLE.text(cells);
   }
 
   /**
@@ -100,6 +104,7 @@ public final class CellsCsv {
         row.number("realised_noise_variance_mean"),
         row.number("behind_best_db"),
         row.number("behind_best_p_adjusted"),
-        row.oneOf("standing", List.of(Standing.values())));
+        row.oneOf("standing", List.of(Standing.values())),
+        row.further(TABLE.names().size(), MEAN));
   }
 }

@@ -1,10 +1,14 @@
 package linkworthy.results;
 
 import java.nio.file.Path;
+import java.util.HashSet;
+import java.util.LinkedHashMap;
 import java.util.List;
+import java.util.Map;
 import java.util.regex.Pattern;
 import linkworthy.input.BadInput;
 import org.apache.commons.csv.CSVRecord;
+import org.jspecify.annotations.Nullable;
 
 /** A row of a table as it is read; every complaint has file, line and column. */
 final class CsvRow {
@@ -14,6 +18,7 @@ final class CsvRow {
   static final long MAX_WHOLE = 999_999_999_999_999_999L;
 
   private static final Pattern NUMBER = Pattern.compile("-?\\d+\\.\\d+(E-?\\d+)?");
+  private static final Pattern NAME = Pattern.compile("[a-z][a-z0-9_]*");
   private static final Pattern WHOLE = Pattern.compile("-?\\d{1,18}");
 
   private final Path file;
@@ -28,15 +33,38 @@ final class CsvRow {
     this.record = record;
   }
 
-  void requireHeader() {
-    if (!record.toList().equals(names)) {
+  /**
+   * The names of the columns, if this row is the header: the fixed ones, then any further ones.
+   *
+   * @param suffix with which the names of further columns end; null if none are accepted
+   */
+  List<String> header(@Nullable String suffix) {
+    List<String> found = record.toList();
+    boolean fixed = found.size() >= names.size() && found.subList(0, names.size()).equals(names);
+    boolean further =
+        found.stream()
+            .skip(names.size())
+            .allMatch(
+                name -> suffix != null && NAME.matcher(name).matches() && name.endsWith(suffix));
+    if (!fixed || !further || new HashSet<>(found).size() < found.size()) {
       throw new BadInput(
           file
               + ", line 1: the columns are '"
-              + String.join(",", record.toList())
+              + String.join(",", found)
               + "'; accepted: "
-              + String.join(",", names));
+              + String.join(",", names)
+              + (suffix == null ? "" : ", then one for each further measure, each once"));
     }
+    return found;
+  }
+
+  /** The numbers behind the fixed columns, by the column's name without its suffix. */
+  Map<String, Double> further(int fixed, String suffix) {
+    Map<String, Double> numbers = new LinkedHashMap<>();
+    for (String column : names.subList(fixed, names.size())) {
+      numbers.put(column.substring(0, column.length() - suffix.length()), number(column));
+    }
+    return numbers;
   }
 
   void requireComplete() {

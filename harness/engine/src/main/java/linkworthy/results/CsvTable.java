@@ -10,7 +10,11 @@ import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.NoSuchFileException;
 import java.nio.file.Path;
+import java.util.ArrayList;
+import java.util.Collection;
 import java.util.List;
+import java.util.Map;
+import java.util.Objects;
 import java.util.function.Consumer;
 import java.util.function.Function;
 import linkworthy.input.BadInput;
@@ -19,12 +23,13 @@ import org.apache.commons.csv.CSVException;
 import org.apache.commons.csv.CSVFormat;
 import org.apache.commons.csv.CSVParser;
 import org.apache.commons.csv.CSVRecord;
+import org.jspecify.annotations.Nullable;
 
 /**
- * A CSV file with fixed columns, one row for each value: RFC 4180 in UTF-8, except that lines end
- * in LF alone, as all text files of the project do. Numbers are in the form of {@link
- * Decimal#shortest}; infinity is {@code inf} and NaN an empty field, or {@code n/a} in a column
- * that says so.
+ * A CSV file with fixed columns, and in an open table further ones behind them, one row for each
+ * value: RFC 4180 in UTF-8, except that lines end in LF alone, as all text files of the project do.
+ * Numbers are in the form of {@link Decimal#shortest}; infinity is {@code inf} and NaN an empty
+ * field, or {@code n/a} in a column that says so.
  */
 final class CsvTable<T> {
   private static final String INFINITE = "inf";
@@ -33,16 +38,54 @@ final class CsvTable<T> {
 
   private final List<Column<T>> columns;
   private final List<String> names;
+  private final @Nullable Further<T> further;
   private final Function<CsvRow, T> maker;
 
   /** A column: its name and what a row has there. */
   record Column<T>(String name, Function<T, String> text) {}
 
+  /**
+   * Numbers behind the fixed columns; which there are differs from file to file.
+   *
+   * @param values a row's numbers by name
+   * @param suffix what the column has behind the name
+   */
+  record Further<T>(Function<T, Map<String, Double>> values, String suffix) {}
+
   /** A table whose rows are made of the fields by {@code maker}. */
   CsvTable(List<Column<T>> columns, Function<CsvRow, T> maker) {
+    this(columns, null, maker);
+  }
+
+  /** An open table. */
+  CsvTable(List<Column<T>> columns, @Nullable Further<T> further, Function<CsvRow, T> maker) {
     this.columns = List.copyOf(columns);
     this.names = columns.stream().map(Column::name).toList();
+    this.further = further;
     this.maker = maker;
+  }
+
+  /** This open table for writing, with columns for the further numbers of these names. */
+  CsvTable<T> with(Collection<String> furtherNames) {
+    Further<T> numbers = Objects.requireNonNull(further);
+    List<Column<T>> all = new ArrayList<>(columns);
+    for (String name : furtherNames) {
+      all.add(
+          number(
+              name + numbers.suffix(),
+              row -> numbers.values().apply(row).getOrDefault(name, Double.NaN)));
+    }
+    return new CsvTable<>(all, maker);
+  }
+
+  /** The text of a file of these rows, of which the first says what further columns there are. */
+  String text(List<T> rows) {
+    Collection<String> furtherNames =
+        rows.isEmpty()
+            ? List.of()
+            : Objects.requireNonNull(further).values().apply(rows.get(0)).keySet();
+    CsvTable<T> table = with(furtherNames);
+    return table.header() + table.lines(rows);
   }
 
   static <T> Column<T> words(String name, Function<T, String> value) {
@@ -107,10 +150,11 @@ final class CsvTable<T> {
     try (BufferedReader reader = Files.newBufferedReader(file, StandardCharsets.UTF_8);
         CSVParser parser = FORMAT.parse(reader)) {
       long rows = -1;
+      List<String> found = names;
       for (CSVRecord record : parser) {
-        CsvRow row = new CsvRow(file, parser.getCurrentLineNumber(), names, record);
+        CsvRow row = new CsvRow(file, parser.getCurrentLineNumber(), found, record);
         if (rows < 0) {
-          row.requireHeader();
+          found = row.header(further == null ? null : further.suffix());
         } else {
           row.requireComplete();
           each.accept(make(row));

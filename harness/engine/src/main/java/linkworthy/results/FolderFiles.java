@@ -5,9 +5,6 @@ import java.nio.ByteBuffer;
 import java.nio.channels.FileChannel;
 import java.nio.channels.WritableByteChannel;
 import java.nio.charset.StandardCharsets;
-import java.nio.file.AccessDeniedException;
-import java.nio.file.FileAlreadyExistsException;
-import java.nio.file.FileSystemException;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.nio.file.StandardCopyOption;
@@ -15,7 +12,7 @@ import java.nio.file.StandardOpenOption;
 import linkworthy.input.Unavailable;
 
 /** Writing that leaves whole files only, and one-line words for what the machine refuses. */
-final class FolderFiles {
+public final class FolderFiles {
   /** Ends the name of a file that is still being written. */
   static final String UNFINISHED = ".part";
 
@@ -26,7 +23,7 @@ final class FolderFiles {
    *
    * @throws Unavailable if that fails; what stood there before is unchanged
    */
-  static void replace(Path file, String text) {
+  public static void replace(Path file, String text) {
     Path unfinished = file.resolveSibling(file.getFileName() + UNFINISHED);
     try {
       try (FileChannel channel =
@@ -60,19 +57,6 @@ final class FolderFiles {
 
   /** The machine's refusal in one line. */
   static Unavailable unavailable(String verb, Path file, IOException cause) {
-    return new Unavailable("cannot " + verb + " " + file + ": " + reason(cause), cause);
-  }
-
-  private static String reason(IOException cause) {
-    if (cause instanceof AccessDeniedException) {
-      return "permission denied";
-    }
-    if (cause instanceof FileAlreadyExistsException) {
-      return "there is a file of that name in the way";
-    }
-    String reason =
-        cause instanceof FileSystemException system ? system.getReason() : cause.getMessage();
-    String words = reason == null ? cause.getClass().getSimpleName() : reason;
-    return words.lines().findFirst().orElse(words);
+    return Unavailable.cannot(verb + " " + file, cause);
   }
 }

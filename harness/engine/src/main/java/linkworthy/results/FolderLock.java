@@ -36,13 +36,39 @@ final class FolderLock implements AutoCloseable {
           FileChannel.open(file, StandardOpenOption.CREATE, StandardOpenOption.WRITE);
       if (tryLock(channel) == null) {
         channel.close();
-        throw new BadInput(
-            folder + " is being written by another run; accepted: another folder, or wait");
+        throw held(folder);
       }
       return new FolderLock(file, channel);
     } catch (IOException e) {
       throw FolderFiles.unavailable("write", file, e);
     }
+  }
+
+  /** Whether the lock file is one of ours: an empty file. */
+  static boolean isBare(Path folder) throws IOException {
+    Path file = folder.resolve(FILE);
+    return Files.isRegularFile(file) && Files.size(file) == 0;
+  }
+
+  /**
+   * Looks without taking, creating or removing anything.
+   *
+   * @throws BadInput if another run holds the folder
+   */
+  static void requireNotHeld(Path folder) throws IOException {
+    if (!isBare(folder)) {
+      return;
+    }
+    try (FileChannel channel = FileChannel.open(folder.resolve(FILE), StandardOpenOption.WRITE)) {
+      if (tryLock(channel) == null) {
+        throw held(folder);
+      }
+    }
+  }
+
+  private static BadInput held(Path folder) {
+    return new BadInput(
+        folder + " is being written by another run; accepted: another folder, or wait");
   }
 
   private static @Nullable FileLock tryLock(FileChannel channel) throws IOException {

@@ -7,6 +7,7 @@ import java.util.List;
 import java.util.Map;
 import java.util.stream.Stream;
 import linkworthy.input.BadInput;
+import linkworthy.quality.QualityMeasure;
 import linkworthy.statistics.Cell;
 import linkworthy.study.Study;
 import linkworthy.study.StudyWriter;
@@ -20,9 +21,6 @@ import org.jspecify.annotations.Nullable;
  * the two growing tables have whole units. Not safe for use by several threads.
  */
 public final class ResultsWriter implements AutoCloseable {
-  /** Files of a folder that make no results folder of it: the lock alone. */
-  private static final List<String> IGNORED = List.of(FolderLock.FILE);
-
   /** What the program writes, the file that marks a results folder last. */
   private static final List<String> WRITTEN =
       List.of(
@@ -51,6 +49,7 @@ public final class ResultsWriter implements AutoCloseable {
     }
     try {
       Files.createDirectories(out);
+      FolderLock.requireNotHeld(out);
       requireFree(out, overwrite);
       FolderLock lock = FolderLock.take(out);
       try {
@@ -67,7 +66,8 @@ public final class ResultsWriter implements AutoCloseable {
   }
 
   private static void requireFree(Path out, boolean overwrite) throws IOException {
-    if (names(out).stream().allMatch(IGNORED::contains)) {
+    List<String> names = names(out);
+    if (names.isEmpty() || (names.equals(List.of(FolderLock.FILE)) && FolderLock.isBare(out))) {
       return;
     }
     if (!overwrite) {
@@ -125,7 +125,8 @@ public final class ResultsWriter implements AutoCloseable {
       models.forEach(this::write);
     }
     write(ResultsFolder.STUDY, StudyWriter.canonical(study));
-    trials = new AppendedTable<>(TrialsCsv.TABLE, folder.resolve(TrialsCsv.FILE));
+    List<String> further = study.furtherMeasures().stream().map(QualityMeasure::column).toList();
+    trials = new AppendedTable<>(TrialsCsv.TABLE.with(further), folder.resolve(TrialsCsv.FILE));
     timings = new AppendedTable<>(TimingsCsv.TABLE, folder.resolve(TimingsCsv.FILE));
   }
 

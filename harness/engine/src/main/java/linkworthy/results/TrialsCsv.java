@@ -10,7 +10,8 @@ import java.util.function.Consumer;
 import linkworthy.trial.Trial;
 
 /**
- * {@code trials.csv}: a row a trial, in the order of the plan. Byte-identical for the same study,
+ * {@code trials.csv}: a row a trial, in the order of the plan. Behind the fixed columns, each
+ * measure of the study besides psnr and ssim has its column. Byte-identical for the same study,
  * corpus and program on any machine. Lines end in LF alone; otherwise RFC 4180.
  */
 public final class TrialsCsv {
@@ -44,18 +45,19 @@ public final class TrialsCsv {
               whole("packets_sent", Trial::packetsSent),
               whole("packets_lost", Trial::packetsLost),
               words("outage", trial -> Boolean.toString(trial.outage()))),
+          new CsvTable.Further<>(Trial::further, ""),
           TrialsCsv::trial);
 
   private TrialsCsv() {}
 
-  /** The columns, in order. */
+  /** The fixed columns, in order. */
   public static List<String> columns() {
     return TABLE.names();
   }
 
   /** The header line, then a line for each trial. */
   public static String text(List<Trial> trials) {
-    return TABLE.header() + TABLE.lines(trials);
+    return TABLE.text(trials);
   }
 
   /**
@@ -99,6 +101,7 @@ public final class TrialsCsv {
         row.number("bits_per_pixel"),
         row.count("packets_sent"),
         row.count("packets_lost"),
-        row.flag("outage"));
+        row.flag("outage"),
+        row.further(TABLE.names().size(), ""));
   }
 }

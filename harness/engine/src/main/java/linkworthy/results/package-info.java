@@ -8,7 +8,8 @@
  *
  * <p>Text files end their lines in LF, CSV included, where RFC 4180 has CRLF.
  *
- * <p>To add a column: one line in the table of its file and one where its row is read.
+ * <p>To add a column: one line in the table of its file and one where its row is read. The column
+ * of a further quality measure comes by itself, behind the fixed ones.
  */
 @NullMarked
 package linkworthy.results;

@@ -1,5 +1,8 @@
 package linkworthy.statistics;
 
+import java.util.Collections;
+import java.util.LinkedHashMap;
+import java.util.Map;
 import linkworthy.input.Require;
 
 /**
@@ -31,6 +34,8 @@ import linkworthy.input.Require;
  * @param behindBestDb how far the mean PSNR lies below the row's best, in dB; 0 for the best
  * @param behindBestPAdjusted adjusted p value of that difference, or NaN
  * @param standing what may be said of that difference
+ * @param furtherMeans means of the study's measures besides psnr and ssim, by column of the trial,
+ *     in study order
  * @throws IllegalArgumentException if a name is empty, there is no picture, a picture without
  *     trial, or the outage rate is not 0 to 1
  */
@@ -59,7 +64,8 @@ public record Cell(
     double realisedNoiseVarianceMean,
     double behindBestDb,
     double behindBestPAdjusted,
-    Standing standing) {
+    Standing standing,
+    Map<String, Double> furtherMeans) {
   public Cell {
     Require.notBlank(impairment, "impairment");
     Require.notBlank(codec, "codec");
@@ -69,5 +75,6 @@ public record Cell(
           "number of trials is " + trials + "; accepted: at least one for each picture");
     }
     Require.inRange(outageRate, 0, 1, "outage rate");
+    furtherMeans = Collections.unmodifiableMap(new LinkedHashMap<>(furtherMeans));
   }
 }

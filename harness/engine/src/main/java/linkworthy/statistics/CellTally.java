@@ -84,7 +84,16 @@ final class CellTally {
         mean(PictureTally::realisedNoiseVariance),
         behindBestDb,
         behindBestPAdjusted,
-        standing);
+        standing,
+        furtherMeans());
+  }
+
+  private Map<String, Double> furtherMeans() {
+    Map<String, Double> means = new LinkedHashMap<>();
+    for (String column : first.further().keySet()) {
+      means.put(column, mean(picture -> picture.further(column)));
+    }
+    return means;
   }
 
   private double mean(ToDoubleFunction<PictureTally> figure) {

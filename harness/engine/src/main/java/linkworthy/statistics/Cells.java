@@ -26,6 +26,7 @@ import linkworthy.trial.Trial;
  *   <li>PSNR of the mean error: {@code 10 log10} of one over the mean of {@code 10^(-PSNR/10)},
  *       which is the squared error over the squared peak; an identical picture counts as error 0.
  *   <li>5th percentile: {@link Percentile} over all trials alike.
+ *   <li>SSIM and every further measure: the mean, without an interval.
  * </ul>
  *
  * <p>The codec of a row with the highest mean PSNR is its best. Each other codec is compared with

@@ -1,6 +1,8 @@
 package linkworthy.statistics;
 
 import java.util.Arrays;
+import java.util.LinkedHashMap;
+import java.util.Map;
 import linkworthy.trial.Trial;
 
 /** What one cell knows of one picture: running means, and the PSNR of every replicate. */
@@ -15,6 +17,7 @@ final class PictureTally {
   private double ssim;
   private double bitsPerPixel;
   private double outageRate;
+  private final Map<String, Moments> further = new LinkedHashMap<>();
 
   void add(Trial trial) {
     if (count > 0 && trial.replicate() <= replicates[count - 1]) {
@@ -41,6 +44,10 @@ final class PictureTally {
     ssim = moved(ssim, trial.ssim());
     bitsPerPixel = moved(bitsPerPixel, trial.bitsPerPixel());
     outageRate = moved(outageRate, trial.outage() ? 1 : 0);
+    trial
+        .further()
+        .forEach(
+            (column, figure) -> further.computeIfAbsent(column, c -> new Moments()).add(figure));
   }
 
   /** The running mean after the newest value; exact while all values are equal. */
@@ -79,6 +86,12 @@ final class PictureTally {
 
   double outageRate() {
     return outageRate;
+  }
+
+  /** Mean of a further measure; NaN if it was not measured. */
+  double further(String column) {
+    Moments moments = further.get(column);
+    return moments == null ? Double.NaN : moments.mean();
   }
 
   Moments psnr() {

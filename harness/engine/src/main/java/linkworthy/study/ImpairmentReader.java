@@ -100,12 +100,9 @@ final class ImpairmentReader {
   }
 
   private static String label(YamlNode node) {
-    String label = node.text().strip();
+    String label = node.line(MAX_LABEL);
     if (label.equals(ImpairmentChoice.CLEAN)) {
       throw node.refuse("is 'none', which is kept for clean pictures; accepted: another name");
-    }
-    if (label.length() > MAX_LABEL || label.codePoints().anyMatch(Character::isISOControl)) {
-      throw node.bad("one line of up to " + MAX_LABEL + " characters");
     }
     return label;
   }

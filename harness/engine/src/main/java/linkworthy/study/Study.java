@@ -2,10 +2,13 @@ package linkworthy.study;
 
 import java.nio.file.Path;
 import java.util.List;
+import java.util.Set;
 import java.util.regex.Pattern;
 import linkworthy.codec.Codec;
 import linkworthy.input.Require;
 import linkworthy.link.Link;
+import linkworthy.quality.QualityMeasure;
+import linkworthy.quality.QualityMeasures;
 
 /**
  * A question put to the harness: which codecs, on which pictures, under which impairments. Made by
@@ -40,6 +43,9 @@ public record Study(
 
   public static final int MAX_REPLICATES = 1_000_000;
 
+  /** Measures that have a column in every record, asked for or not. */
+  private static final Set<String> ALWAYS_RECORDED = Set.of("psnr", "ssim");
+
   /**
    * @throws IllegalArgumentException if the name, seed or replicates are outside their range
    */
@@ -55,6 +61,14 @@ public record Study(
     impairments = List.copyOf(impairments);
     codecs = List.copyOf(codecs);
     measures = List.copyOf(measures);
+  }
+
+  /** The measures besides psnr and ssim, in study order; each adds a column to the record. */
+  public List<QualityMeasure> furtherMeasures() {
+    return measures.stream()
+        .filter(id -> !ALWAYS_RECORDED.contains(id))
+        .map(QualityMeasures::get)
+        .toList();
   }
 
   /** The same study whose manifest, if it has one of its own, is looked for in another place. */

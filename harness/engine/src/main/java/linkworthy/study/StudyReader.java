@@ -110,8 +110,10 @@ public final class StudyReader {
 
   private static String purpose(YamlNode node) {
     String purpose = node.text().strip();
-    if (purpose.length() > MAX_PURPOSE) {
-      throw node.bad("text of up to " + MAX_PURPOSE + " characters");
+    boolean control = purpose.chars().anyMatch(c -> Character.isISOControl(c) && c != '\n');
+    if (purpose.length() > MAX_PURPOSE || control) {
+      throw node.bad(
+          "text of up to " + MAX_PURPOSE + " characters, none of them a control character");
     }
     return purpose;
   }

@@ -10,6 +10,8 @@ import java.util.concurrent.ExecutionException;
 import java.util.concurrent.ExecutorService;
 import java.util.concurrent.Executors;
 import java.util.concurrent.Future;
+import java.util.concurrent.TimeUnit;
+import java.util.concurrent.TimeoutException;
 import linkworthy.input.Require;
 
 /**
@@ -20,8 +22,12 @@ public final class LocalRunner {
   /** Units waiting or running for each thread; bounds the memory that finished rows take. */
   private static final int WINDOW = 4;
 
+  /** How often a wait for a unit looks whether to stop, in milliseconds. */
+  private static final long GLANCE_MS = 50;
+
   private final Plan plan;
   private final int threads;
+  private volatile boolean stopped;
 
   /**
    * @param threads 1 to 1024
@@ -41,8 +47,8 @@ public final class LocalRunner {
   }
 
   /**
-   * Runs the units from {@code firstUnit} on. If the calling thread is interrupted, the units that
-   * have been handed over stay whole and the rest is dropped.
+   * Runs the units from {@code firstUnit} on. If the calling thread is interrupted, or {@link
+   * #stop} is called, the units that have been handed over stay whole and the rest is dropped.
    *
    * @return the number of units handed over
    */
@@ -53,14 +59,16 @@ public final class LocalRunner {
     int next = firstUnit;
     int done = firstUnit;
     try {
-      while (done < plan.units() && !Thread.currentThread().isInterrupted()) {
+      while (done < plan.units() && !stopped && !Thread.currentThread().isInterrupted()) {
         while (next < plan.units() && window.size() < WINDOW * threads) {
           WorkUnit unit = plan.unit(next++);
           window.add(
               executor.submit(() -> new UnitRunner(plan.study(), subjects.get(unit), unit).run()));
         }
-        UnitRunner.Rows rows = window.remove().get();
-        sink.accept(plan.unit(done++), rows.trials(), rows.timings());
+        if (isReady(window.element())) {
+          UnitRunner.Rows rows = window.remove().get();
+          sink.accept(plan.unit(done++), rows.trials(), rows.timings());
+        }
       }
     } catch (InterruptedException | CancellationException e) {
       Thread.currentThread().interrupt();
@@ -68,11 +76,31 @@ public final class LocalRunner {
       if (e.getCause() instanceof RuntimeException known) {
         throw known;
       }
+      if (e.getCause() instanceof Error serious) {
+        throw serious;
+      }
       throw new IllegalStateException(e.getCause());
     } finally {
       executor.shutdownNow();
     }
     return done - firstUnit;
+  }
+
+  /**
+   * Makes {@link #run} return soon; for another thread. An interrupt would do so too, but would
+   * also close the files that the sink is writing.
+   */
+  public void stop() {
+    stopped = true;
+  }
+
+  private static boolean isReady(Future<?> unit) throws InterruptedException, ExecutionException {
+    try {
+      Object unused = unit.get(GLANCE_MS, TimeUnit.MILLISECONDS);
+      return true;
+    } catch (TimeoutException notYet) {
+      return false;
+    }
   }
 
   /** Pictures in use: one for each thread and one to come, the oldest dropped first. */

@@ -3,13 +3,15 @@ package linkworthy.trial;
 import java.util.ArrayList;
 import java.util.BitSet;
 import java.util.List;
+import java.util.function.IntPredicate;
 import linkworthy.link.FrameCheck;
+import linkworthy.link.Packet;
 import linkworthy.noise.Impairment;
 
 /** The way of packets through one realisation of noise; the same for every codec of a unit. */
 interface Passage {
-  /** Sends the payloads of a codec's packets. */
-  Delivery deliver(List<byte[]> packets);
+  /** Sends a codec's packets. */
+  Delivery deliver(List<Packet> packets);
 
   /**
    * What came of it.
@@ -22,23 +24,31 @@ interface Passage {
 
   /** All arrives as it was sent. */
   static Passage clear(double realisedNoiseVariance) {
-    return packets -> new Delivery(packets, realisedNoiseVariance, 0);
+    return packets ->
+        new Delivery(packets.stream().map(Packet::payload).toList(), realisedNoiseVariance, 0);
   }
 
   /**
    * Packets are lost; the realised noise variance is the picture's variance times the share lost.
    */
   static Passage losing(Impairment.Losses losses, double pictureVariance) {
-    return packets -> {
-      List<byte[]> arrived = new ArrayList<>();
-      for (int i = 0; i < packets.size(); i++) {
-        if (!losses.lost(i)) {
-          arrived.add(packets.get(i));
-        }
+    return packets -> without(packets, losses::lost, pictureVariance);
+  }
+
+  /** All packets of failed nodes are lost; the realised noise variance is as for lost packets. */
+  static Passage losingNodes(Impairment.Losses failures, double pictureVariance) {
+    return packets -> without(packets, i -> failures.lost(packets.get(i).node()), pictureVariance);
+  }
+
+  private static Delivery without(List<Packet> packets, IntPredicate lost, double pictureVariance) {
+    List<byte[]> arrived = new ArrayList<>();
+    for (int i = 0; i < packets.size(); i++) {
+      if (!lost.test(i)) {
+        arrived.add(packets.get(i).payload());
       }
-      int lost = packets.size() - arrived.size();
-      return new Delivery(arrived, pictureVariance * lost / packets.size(), 0);
-    };
+    }
+    int missing = packets.size() - arrived.size();
+    return new Delivery(arrived, pictureVariance * missing / packets.size(), 0);
   }
 
   /**
@@ -53,7 +63,7 @@ interface Passage {
       long flippedBits = 0;
       long payloadBits = 0;
       for (int i = 0; i < packets.size(); i++) {
-        byte[] payload = packets.get(i);
+        byte[] payload = packets.get(i).payload();
         int first = frameCheck ? 8 * headerBytes : 0;
         int end = first + 8 * payload.length;
         int sentBits = frameCheck ? end + 8 * FrameCheck.BYTES : end;

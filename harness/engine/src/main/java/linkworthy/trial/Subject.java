@@ -1,6 +1,8 @@
 package linkworthy.trial;
 
+import java.util.LinkedHashMap;
 import java.util.List;
+import java.util.Map;
 import linkworthy.codec.Memo;
 import linkworthy.codec.PictureShape;
 import linkworthy.corpus.Picture;
@@ -17,6 +19,7 @@ final class Subject {
   private final Picture picture;
   private final SignalStatistics signal;
   private final List<QualityMeasure.Judge> judges;
+  private final Map<String, QualityMeasure.Judge> furtherJudges = new LinkedHashMap<>();
   private final Memo memo = new Memo();
 
   Subject(Picture picture, Study study) {
@@ -24,6 +27,9 @@ final class Subject {
     this.signal = study.pictures().signalPower().of(picture);
     this.judges =
         study.measures().stream().map(m -> QualityMeasures.get(m).against(picture)).toList();
+    for (QualityMeasure measure : study.furtherMeasures()) {
+      furtherJudges.put(measure.column(), judges.get(study.measures().indexOf(measure.id())));
+    }
   }
 
   Picture picture() {
@@ -41,6 +47,11 @@ final class Subject {
   /** One judge for each measure of the study, in its order. */
   List<QualityMeasure.Judge> judges() {
     return judges;
+  }
+
+  /** The judges of the measures besides psnr and ssim, by column, in study order. */
+  Map<String, QualityMeasure.Judge> furtherJudges() {
+    return furtherJudges;
   }
 
   /** Encoders' work on the clean picture. */

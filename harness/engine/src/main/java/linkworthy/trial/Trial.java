@@ -1,5 +1,9 @@
 package linkworthy.trial;
 
+import java.util.Collections;
+import java.util.LinkedHashMap;
+import java.util.Map;
+
 /**
  * One row of the record: a picture through one realisation of noise, one codec and back.
  *
@@ -27,6 +31,7 @@ package linkworthy.trial;
  * @param packetsSent packets sent
  * @param packetsLost packets that did not arrive, or were dropped by a frame check
  * @param outage whether nothing usable arrived
+ * @param further figures of the study's measures besides psnr and ssim, by column, in study order
  */
 public record Trial(
     String trial,
@@ -52,4 +57,9 @@ public record Trial(
     double bitsPerPixel,
     int packetsSent,
     int packetsLost,
-    boolean outage) {}
+    boolean outage,
+    Map<String, Double> further) {
+  public Trial {
+    further = Collections.unmodifiableMap(new LinkedHashMap<>(further));
+  }
+}

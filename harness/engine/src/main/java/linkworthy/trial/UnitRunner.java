@@ -1,7 +1,9 @@
 package linkworthy.trial;
 
 import java.util.ArrayList;
+import java.util.LinkedHashMap;
 import java.util.List;
+import java.util.Map;
 import linkworthy.codec.Codec;
 import linkworthy.codec.Decoding;
 import linkworthy.codec.Encoding;
@@ -13,6 +15,7 @@ import linkworthy.noise.NoiseStreams;
 import linkworthy.quality.Psnr;
 import linkworthy.study.ImpairmentChoice;
 import linkworthy.study.Study;
+import org.apache.commons.rng.UniformRandomProvider;
 
 /** Runs one work unit: draws its noise once and takes every codec through it. */
 final class UnitRunner {
@@ -53,16 +56,24 @@ final class UnitRunner {
       double realised = Psnr.meanSquaredError(subject.picture(), noisy);
       return evaluate(new Circumstances(noisy, new Memo(), Passage.clear(realised), expected));
     }
-    Passage passage =
-        impairment instanceof Impairment.OnBits onBits
-            ? Passage.flipping(
-                onBits.errors(random),
-                onBits.frameCheck(),
-                study.link().headerBytes(),
-                subject.picture().peak())
-            : Passage.losing(
-                ((Impairment.OnPackets) impairment).losses(random), subject.signal().variance());
+    Passage passage = passage(impairment, random);
     return evaluate(new Circumstances(subject.picture(), subject.memo(), passage, expected));
+  }
+
+  /** The way of packets through an impairment of the coded stream. */
+  private Passage passage(Impairment impairment, UniformRandomProvider random) {
+    if (impairment instanceof Impairment.OnBits onBits) {
+      return Passage.flipping(
+          onBits.errors(random),
+          onBits.frameCheck(),
+          study.link().headerBytes(),
+          subject.picture().peak());
+    }
+    double variance = subject.signal().variance();
+    if (impairment instanceof Impairment.OnNodes onNodes) {
+      return Passage.losingNodes(onNodes.failures(random), variance);
+    }
+    return Passage.losing(((Impairment.OnPackets) impairment).losses(random), variance);
   }
 
   /**
@@ -157,12 +168,19 @@ final class UnitRunner {
         (double) sentBits / subject.picture().size(),
         sentPackets,
         sentPackets - delivery.arrived().size(),
-        decoding.completeness() == Decoding.Completeness.NOTHING);
+        decoding.completeness() == Decoding.Completeness.NOTHING,
+        further(decoding.picture()));
   }
 
   private double measured(String measure, Picture decoded) {
     int at = study.measures().indexOf(measure);
     return at < 0 ? Double.NaN : subject.judges().get(at).of(decoded);
+  }
+
+  private Map<String, Double> further(Picture decoded) {
+    Map<String, Double> figures = new LinkedHashMap<>();
+    subject.furtherJudges().forEach((column, judge) -> figures.put(column, judge.of(decoded)));
+    return figures;
   }
 
   private record EncodingKey(String codec) {}

@@ -3,6 +3,9 @@ package linkworthy.codec;
 import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.within;
 
+import java.io.IOException;
+import java.io.InputStream;
+import java.nio.charset.StandardCharsets;
 import linkworthy.corpus.Picture;
 import linkworthy.corpus.TestPattern;
 import org.apache.commons.math3.linear.Array2DRowRealMatrix;
@@ -227,6 +230,38 @@ class BasisTest {
         }
         assertThat(dot).isCloseTo(a == b ? 1 : 0, within(1e-12));
       }
+    }
+  }
+
+  /**
+   * Fisher's iris measurements (1936; the values of R and scikit-learn, whose data file this is).
+   * Published eigenvalues are of the 1/(n-1) covariance; digits recomputed independently with
+   * NumPy.
+   */
+  @Test
+  void eigenvaluesOfTheIrisMeasurements() throws IOException {
+    double[][] variables = new double[4][150];
+    try (InputStream in = BasisTest.class.getResourceAsStream("iris.csv")) {
+      String[] lines =
+          new String(in.readAllBytes(), StandardCharsets.UTF_8).strip().split("\\R", -1);
+      assertThat(lines).hasSize(150);
+      for (int j = 0; j < lines.length; j++) {
+        String[] values = lines[j].split(",", -1);
+        for (int i = 0; i < 4; i++) {
+          variables[i][j] = Double.parseDouble(values[i]);
+        }
+      }
+    }
+    for (double[] variable : variables) {
+      double mean = java.util.Arrays.stream(variable).sum() / variable.length;
+      for (int j = 0; j < variable.length; j++) {
+        variable[j] -= mean;
+      }
+    }
+    double[] expected = {4.228241706, 0.2426707479, 0.07820950004, 0.02383509297};
+    double[] found = PcaBasis.of(Matrices.covariance(variables)).variances();
+    for (int k = 0; k < 4; k++) {
+      assertThat(found[k] * 150 / 149).isCloseTo(expected[k], within(1e-9 * expected[0]));
     }
   }
 

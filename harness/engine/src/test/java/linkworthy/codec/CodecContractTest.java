@@ -29,7 +29,10 @@ public abstract class CodecContractTest {
   /** Id of the family, as its service line and the study key have it. */
   protected abstract String family();
 
-  /** Entries of a study's codec list, as YAML, that work on pictures of 40 x 24 and more. */
+  /**
+   * Entries of a study's codec list, as YAML in block style (a key a line, no braces), that work on
+   * pictures of 40 x 24 and more.
+   */
   protected abstract List<String> entries();
 
   /** Codecs of every entry in both packet orders. */
@@ -94,12 +97,12 @@ public abstract class CodecContractTest {
     for (Codec codec : codecs()) {
       for (Picture picture : pictures()) {
         Encoding encoding = codec.encode(picture, new Memo());
-        assertThat(encoding.packets()).isNotEmpty().allMatch(p -> p.length > 0 && p.length <= 96);
+        assertThat(encoding.payloads()).isNotEmpty().allMatch(p -> p.length > 0 && p.length <= 96);
         assertThat(encoding.payloadBits())
-            .isEqualTo(8L * encoding.packets().stream().mapToInt(p -> p.length).sum());
-        assertThat(codec.encode(picture, new Memo()).packets())
+            .isEqualTo(8L * encoding.payloads().stream().mapToInt(p -> p.length).sum());
+        assertThat(codec.encode(picture, new Memo()).payloads())
             .usingElementComparator(Arrays::compare)
-            .containsExactlyElementsOf(encoding.packets());
+            .containsExactlyElementsOf(encoding.payloads());
       }
     }
   }
@@ -109,9 +112,9 @@ public abstract class CodecContractTest {
     for (Picture picture : pictures()) {
       Memo shared = new Memo();
       for (Codec codec : codecs()) {
-        assertThat(codec.encode(picture, shared).packets())
+        assertThat(codec.encode(picture, shared).payloads())
             .usingElementComparator(Arrays::compare)
-            .containsExactlyElementsOf(codec.encode(picture, new Memo()).packets());
+            .containsExactlyElementsOf(codec.encode(picture, new Memo()).payloads());
       }
     }
   }
@@ -121,7 +124,7 @@ public abstract class CodecContractTest {
     for (Codec codec : codecs()) {
       for (Picture picture : pictures()) {
         PictureShape shape = PictureShape.of(picture);
-        List<byte[]> packets = codec.encode(picture, new Memo()).packets();
+        List<byte[]> packets = codec.encode(picture, new Memo()).payloads();
         Decoding plain = codec.decode(shape, packets);
         List<byte[]> twice = new ArrayList<>(packets);
         twice.addAll(packets);
@@ -148,7 +151,7 @@ public abstract class CodecContractTest {
   void everySinglePacketDecodesAlone() {
     for (Codec codec : codecs()) {
       Picture picture = TestPattern.cvp(61, 45);
-      List<byte[]> packets = codec.encode(picture, new Memo()).packets();
+      List<byte[]> packets = codec.encode(picture, new Memo()).payloads();
       for (byte[] packet : packets) {
         Decoding alone = codec.decode(PictureShape.of(picture), List.of(packet));
         assertThat(alone.completeness())
@@ -167,7 +170,7 @@ public abstract class CodecContractTest {
     Picture picture = TestPattern.cvp(61, 45);
     PictureShape shape = PictureShape.of(picture);
     List<List<byte[]>> streams =
-        codecs.stream().map(c -> c.encode(picture, new Memo()).packets()).toList();
+        codecs.stream().map(c -> c.encode(picture, new Memo()).payloads()).toList();
     for (int trial = 0; trial < DAMAGES; trial++) {
       int which = random.nextInt(codecs.size());
       List<byte[]> other = streams.get(random.nextInt(streams.size()));

@@ -50,7 +50,7 @@ class TransformCodecTest extends CodecContractTest {
   }
 
   private static Decoding through(Codec codec, Picture picture) {
-    return codec.decode(PictureShape.of(picture), codec.encode(picture, new Memo()).packets());
+    return codec.decode(PictureShape.of(picture), codec.encode(picture, new Memo()).payloads());
   }
 
   private static double meanSquaredError(Picture a, Picture b) {
@@ -72,7 +72,8 @@ class TransformCodecTest extends CodecContractTest {
         "{transform: pca, share: 0.85, step: 0.5} | pca rows share0.85 step0.5",
         "{transform: mean, keep: 0} | mean rows K0",
         "{transform: dct, side: 4, keep: 3, step: none} | dct blocks4 K3 stepnone",
-        "{transform: dct, keep: 3, label: ours} | ours"
+        "{transform: dct, keep: 3, label: ' ours '} | ours",
+        "{transform: dct, keep: 3, step: 2.0E-3} | dct blocks8 K3 step0.002"
       })
   void labelsFollowFromTheParameters(String entry, String label) {
     assertThat(codec(entry).label()).isEqualTo(label);
@@ -95,6 +96,11 @@ class TransformCodecTest extends CodecContractTest {
         "{transform: mean, keep: 4} | accepted: 0 (the means alone)",
         "{transform: pca, over: rows, side: 8, keep: 4} | belongs to 'over: blocks'",
         "{transform: pca, keep: [4, 8], label: x} | names several codecs",
+        "{transform: dct, keep: 4, label: \"a\\nb\"} | one line of up to 64 characters",
+        "{transform: dct, keep: 4, label: \"a\\u2028b\"} | one line of up to 64 characters",
+        "{transform: dct, keep: 4, label: "
+            + "aaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaaa"
+            + "} | one line of up to 64 characters",
         "{keep: 4} | names no codec"
       })
   void wrongEntriesAreRefusedInOneLine(String entry, String complaint) {
@@ -257,6 +263,20 @@ class TransformCodecTest extends CodecContractTest {
     }
   }
 
+  /** Entropies of the pattern's samples and horizontal differences, recomputed in Python. */
+  @ParameterizedTest
+  @CsvSource({"64, 7.079411497, 5.330620671", "256, 7.054560487, 5.92443315"})
+  void entropyOfThePattern(int n, double samples, double differences) {
+    int[] values = TestPattern.cvp(n).samples();
+    int[] steps = new int[n * (n - 1)];
+    for (int i = 0; i < steps.length; i++) {
+      int at = i / (n - 1) * n + i % (n - 1) + 1;
+      steps[i] = values[at] - values[at - 1];
+    }
+    assertThat(entropyBits(values) / values.length).isCloseTo(samples, within(1e-9));
+    assertThat(entropyBits(steps) / steps.length).isCloseTo(differences, within(1e-8));
+  }
+
   /** Order-0 entropy times the number of symbols, in bits (Shannon 1948). */
   private static double entropyBits(int[] symbols) {
     Map<Integer, Integer> counts = new TreeMap<>();
@@ -279,7 +299,7 @@ class TransformCodecTest extends CodecContractTest {
                   YamlNode.parse("test", "{transform: dct, keep: 16, step: 8}"),
                   new Link(96, 23, order))
               .get(0);
-      List<byte[]> packets = new ArrayList<>(codec.encode(picture, new Memo()).packets());
+      List<byte[]> packets = new ArrayList<>(codec.encode(picture, new Memo()).payloads());
       Picture whole = codec.decode(PictureShape.of(picture), packets).picture();
       packets.remove(packets.size() / 2);
       Decoding damaged = codec.decode(PictureShape.of(picture), packets);
@@ -317,7 +337,7 @@ class TransformCodecTest extends CodecContractTest {
                 YamlNode.parse("test", "{transform: mean, keep: 0}"),
                 new Link(32, 0, Link.Order.BY_COMPONENT))
             .get(0);
-    List<byte[]> packets = codec.encode(picture, new Memo()).packets();
+    List<byte[]> packets = codec.encode(picture, new Memo()).payloads();
     assertThat(packets).hasSize(2);
     Decoding first = codec.decode(PictureShape.of(picture), packets.subList(0, 1));
     int[] shown = first.picture().samples();

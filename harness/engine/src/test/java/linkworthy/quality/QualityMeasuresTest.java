@@ -5,6 +5,8 @@ import static org.assertj.core.api.Assertions.assertThatIllegalStateException;
 import static org.assertj.core.api.Assertions.assertThatThrownBy;
 
 import java.util.List;
+import linkworthy.codec.PictureShape;
+import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
 import org.junit.jupiter.api.Test;
 
@@ -24,6 +26,33 @@ class QualityMeasuresTest {
     assertThatThrownBy(() -> QualityMeasures.get(""))
         .isInstanceOf(BadInput.class)
         .hasMessageStartingWith("unknown measure ''; accepted: ");
+  }
+
+  @Test
+  void aSharedColumnStopsTheProgram() {
+    QualityMeasure other =
+        new QualityMeasure() {
+          @Override
+          public String id() {
+            return "other";
+          }
+
+          @Override
+          public String column() {
+            return "psnr_db";
+          }
+
+          @Override
+          public void check(PictureShape shape) {}
+
+          @Override
+          public Judge against(Picture clean) {
+            return decoded -> 0;
+          }
+        };
+    assertThatIllegalStateException()
+        .isThrownBy(() -> QualityMeasures.byId(List.of(new Psnr(), other)))
+        .withMessageStartingWith("two quality measures have the column 'psnr_db': ");
   }
 
   @Test

@@ -2,6 +2,7 @@ package linkworthy.results;
 
 import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.assertThatExceptionOfType;
+import static org.assertj.core.api.Assertions.entry;
 
 import java.io.IOException;
 import java.nio.charset.StandardCharsets;
@@ -9,10 +10,14 @@ import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.Arrays;
+import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Locale;
+import java.util.Map;
 import java.util.SplittableRandom;
 import linkworthy.input.BadInput;
+import linkworthy.quality.QualityMeasure;
+import linkworthy.quality.QualityMeasures;
 import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 import org.junit.jupiter.api.Test;
@@ -99,9 +104,17 @@ class CsvFilesTest {
               number(random),
               random.nextInt(1 << 30),
               random.nextInt(1 << 30),
-              random.nextBoolean()));
+              random.nextBoolean(),
+              further(random)));
     }
     assertThat(read(TrialsCsv.text(trials))).isEqualTo(trials);
+  }
+
+  private static Map<String, Double> further(SplittableRandom random) {
+    Map<String, Double> further = new LinkedHashMap<>();
+    further.put("spread_db", number(random));
+    further.put("blur", random.nextBoolean() ? Double.NaN : number(random));
+    return further;
   }
 
   private static String text(SplittableRandom random) {
@@ -117,6 +130,54 @@ class CsvFilesTest {
   private static double number(SplittableRandom random) {
     double number = Double.longBitsToDouble(random.nextLong());
     return Double.isNaN(number) ? Double.POSITIVE_INFINITY : number;
+  }
+
+  @Test
+  void furtherMeasuresStandBehindTheFixedColumns() throws IOException {
+    String trials =
+        Samples.TRIALS
+            .replace(",outage\n", ",outage,spread_db,blur\n")
+            .replace(",false\n", ",false,inf,0.25\n")
+            .replace(",true\n", ",true,-3.0,\n");
+    List<Trial> read = read(trials);
+    assertThat(read.get(0).further())
+        .containsExactly(entry("spread_db", Double.POSITIVE_INFINITY), entry("blur", 0.25));
+    assertThat(read.get(1).further())
+        .containsExactly(entry("spread_db", -3.0), entry("blur", Double.NaN));
+    assertThat(TrialsCsv.text(read)).isEqualTo(trials);
+
+    String cells =
+        Samples.CELLS_TEXT
+            .replace(",standing\n", ",standing,spread_db_mean,blur_mean\n")
+            .replace(",untested\n", ",untested,inf,0.25\n")
+            .replace(",below\n", ",below,-3.0,\n");
+    Path file = folder.resolve("cells.csv");
+    Files.writeString(file, cells);
+    assertThat(CellsCsv.read(file).get(1).furtherMeans())
+        .containsExactly(entry("spread_db", -3.0), entry("blur", Double.NaN));
+    assertThat(CellsCsv.text(CellsCsv.read(file))).isEqualTo(cells);
+  }
+
+  @Test
+  void furtherMeasuresHaveColumnsOfTheirOwn() {
+    assertThat(QualityMeasures.all())
+        .filteredOn(measure -> !List.of("psnr", "ssim").contains(measure.id()))
+        .extracting(QualityMeasure::column)
+        .isNotEmpty()
+        .noneMatch(column -> TrialsCsv.columns().contains(column))
+        .noneMatch(column -> CellsCsv.columns().contains(column + "_mean"));
+  }
+
+  @ParameterizedTest
+  @ValueSource(strings = {"outage,outage", "outage,Blur", "outage,", "outage,blur,blur", "blur"})
+  void aHeaderThatIsNoneIsRefused(String end) {
+    assertThatExceptionOfType(BadInput.class)
+        .isThrownBy(
+            () ->
+                read(
+                    Samples.TRIALS.lines().findFirst().orElseThrow().replace("outage", end) + "\n"))
+        .withMessageContaining("line 1: the columns are")
+        .withMessageEndingWith("outage, then one for each further measure, each once");
   }
 
   @ParameterizedTest

@@ -14,10 +14,14 @@ import java.util.List;
 import java.util.stream.Stream;
 import linkworthy.input.BadInput;
 import linkworthy.input.Unavailable;
+import linkworthy.input.YamlNode;
+import linkworthy.statistics.Cells;
 import linkworthy.study.Study;
 import linkworthy.study.StudyReader;
 import linkworthy.study.StudyTemplate;
 import linkworthy.study.StudyWriter;
+import linkworthy.trial.LocalRunner;
+import linkworthy.trial.Plan;
 import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 import org.junit.jupiter.api.BeforeEach;
@@ -62,6 +66,52 @@ class ResultsFolderTest {
                 "results",
                 "my-study",
                 "20260203T040506Z-" + StudyWriter.fingerprint(study).substring(0, 8)));
+  }
+
+  @Test
+  void everyMeasureOfTheStudyIsInTheRecord() throws IOException {
+    String measures = "measures: [mean-absolute-error, psnr]";
+    Study measured =
+        StudyReader.read(
+            YamlNode.parse(
+                "study.yaml",
+                """
+                name: measured
+                pictures: {select: [cat], longest-side: 32}
+                impairments: [{noise: gaussian, snr-db: 10}]
+                codecs: [{transform: dct, keep: 3}]
+                replicates: 2
+                """
+                    + measures),
+            temporary);
+    Plan plan = Plan.of(measured);
+    RunRecord run = Samples.run(measured, plan.trials());
+    Cells cells = new Cells();
+    try (ResultsWriter writer = ResultsFolder.create(out, false)) {
+      writer.begin(measured, run);
+      new LocalRunner(plan, 1)
+          .run(
+              0,
+              (unit, trials, timings) -> {
+                writer.append(trials, timings);
+                trials.forEach(cells::add);
+              });
+      writer.finish(cells.toList(), run.end(plan.trials(), Samples.CLOCK));
+    }
+    assertThat(Files.readString(out.resolve("trials.csv")))
+        .contains(",outage,mean_absolute_error\n");
+    assertThat(Files.readString(out.resolve("cells.csv")))
+        .contains(",standing,mean_absolute_error_mean\n");
+    ResultsFolder folder = ResultsFolder.open(out);
+    List<Trial> trials = new ArrayList<>();
+    assertThat(folder.trials(trials::add)).isEqualTo(3);
+    assertThat(trials)
+        .allSatisfy(
+            trial ->
+                assertThat(trial.further().get("mean_absolute_error"))
+                    .isGreaterThan(0)
+                    .isLessThanOrEqualTo(Math.sqrt(trial.mse())));
+    assertThat(folder.cells()).isEqualTo(cells.toList());
   }
 
   @Test
@@ -174,11 +224,23 @@ class ResultsFolderTest {
   }
 
   @Test
-  void twoWritersDoNotShareAFolder() {
+  void aLockFileOfSomebodyElseIsLeftAlone() throws IOException {
+    Files.createDirectories(out);
+    Files.writeString(out.resolve("lock"), "mine");
+    assertThatExceptionOfType(BadInput.class)
+        .isThrownBy(() -> ResultsFolder.create(out, false))
+        .withMessageContaining("is not empty");
+    assertThat(Files.readString(out.resolve("lock"))).isEqualTo("mine");
+  }
+
+  @ParameterizedTest
+  @ValueSource(booleans = {false, true})
+  void twoWritersDoNotShareAFolder(boolean overwrite) {
     ResultsWriter first = ResultsFolder.create(out, false);
     try {
+      first.begin(study, Samples.run(study, 2));
       assertThatExceptionOfType(BadInput.class)
-          .isThrownBy(() -> ResultsFolder.create(out, true))
+          .isThrownBy(() -> ResultsFolder.create(out, overwrite))
           .withMessageContaining("being written by another run");
     } finally {
       first.close();

@@ -5,6 +5,7 @@ import java.time.Clock;
 import java.time.Instant;
 import java.time.ZoneOffset;
 import java.util.List;
+import java.util.Map;
 import linkworthy.corpus.ManifestEntry;
 import linkworthy.input.YamlNode;
 import linkworthy.statistics.Cell;
@@ -45,7 +46,8 @@ final class Samples {
           2.5,
           12,
           0,
-          false);
+          false,
+          Map.of());
 
   static final Trial NOISY =
       new Trial(
@@ -72,7 +74,8 @@ final class Samples {
           1.0E7,
           12,
           12,
-          true);
+          true,
+          Map.of());
 
   static final String TRIALS =
       """
@@ -111,7 +114,8 @@ final class Samples {
               0,
               Double.NaN,
               Double.NaN,
-              Standing.UNTESTED),
+              Standing.UNTESTED,
+              Map.of()),
           new Cell(
               "gaussian",
               "samples",
@@ -137,7 +141,8 @@ final class Samples {
               30,
               0.5,
               0.03125,
-              Standing.BELOW));
+              Standing.BELOW,
+              Map.of()));
 
   static final String CELLS_TEXT =
       """

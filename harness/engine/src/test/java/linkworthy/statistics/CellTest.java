@@ -3,6 +3,7 @@ package linkworthy.statistics;
 import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.assertThatIllegalArgumentException;
 
+import java.util.Map;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.ValueSource;
@@ -70,6 +71,7 @@ class CellTest {
         0,
         0,
         none,
-        Standing.BEST);
+        Standing.BEST,
+        Map.of());
   }
 }

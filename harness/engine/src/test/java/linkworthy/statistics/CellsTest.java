@@ -2,12 +2,14 @@ package linkworthy.statistics;
 
 import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.assertThatIllegalArgumentException;
+import static org.assertj.core.api.Assertions.entry;
 import static org.assertj.core.api.Assertions.tuple;
 import static org.assertj.core.api.Assertions.within;
 
 import java.util.ArrayList;
 import java.util.Comparator;
 import java.util.List;
+import java.util.Map;
 import linkworthy.trial.Trial;
 import org.junit.jupiter.api.Test;
 
@@ -223,6 +225,17 @@ class CellsTest {
   void ssimThatWasNotMeasuredStaysSo() {
     trials.add(TrialBuilder.of("A").measured(Double.NaN, 1, 40, 40, false).trial("p1", 0, 30));
     assertThat(cell("A").ssimMean()).isNaN();
+  }
+
+  /** By hand: as for the figures above; one infinite value makes the mean infinite. */
+  @Test
+  void furtherMeasuresAreMeansOverPicturesToo() {
+    TrialBuilder a = TrialBuilder.of("A");
+    trials.add(a.further(Map.of("blur", 1.0, "ratio_db", 3.0)).trial("p1", 0, 30));
+    trials.add(a.further(Map.of("blur", 2.0, "ratio_db", 5.0)).trial("p1", 1, 30));
+    trials.add(a.further(Map.of("blur", 4.5, "ratio_db", INFINITY)).trial("p2", 0, 30));
+    assertThat(cell("A").furtherMeans())
+        .containsOnly(entry("blur", 3.0), entry("ratio_db", INFINITY));
   }
 
   @Test

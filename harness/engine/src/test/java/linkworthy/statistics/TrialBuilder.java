@@ -1,5 +1,6 @@
 package linkworthy.statistics;
 
+import java.util.Map;
 import linkworthy.trial.Trial;
 
 /** A trial of an 8-bit picture under gaussian noise; what matters to a test is set by it. */
@@ -15,9 +16,11 @@ record TrialBuilder(
     double bitsPerPixel,
     double noiseVariance,
     double realised,
-    boolean outage) {
+    boolean outage,
+    Map<String, Double> further) {
   static TrialBuilder of(String codec) {
-    return new TrialBuilder(codec, "pca", "rows", 8, "8", "gaussian", 20, 0.9, 1.5, 40, 39, false);
+    return new TrialBuilder(
+        codec, "pca", "rows", 8, "8", "gaussian", 20, 0.9, 1.5, 40, 39, false, Map.of());
   }
 
   TrialBuilder described(String newTransform, String newOver, int newKeep, String newStep) {
@@ -33,7 +36,8 @@ record TrialBuilder(
         bitsPerPixel,
         noiseVariance,
         realised,
-        outage);
+        outage,
+        further);
   }
 
   TrialBuilder severity(double newSeverity) {
@@ -49,12 +53,25 @@ record TrialBuilder(
         bitsPerPixel,
         noiseVariance,
         realised,
-        outage);
+        outage,
+        further);
   }
 
   TrialBuilder clean() {
     return new TrialBuilder(
-        codec, transform, over, keep, step, "none", Double.NaN, ssim, bitsPerPixel, 0, 0, outage);
+        codec,
+        transform,
+        over,
+        keep,
+        step,
+        "none",
+        Double.NaN,
+        ssim,
+        bitsPerPixel,
+        0,
+        0,
+        outage,
+        further);
   }
 
   TrialBuilder measured(
@@ -71,7 +88,25 @@ record TrialBuilder(
         newBits,
         newVariance,
         newRealised,
-        newOutage);
+        newOutage,
+        further);
+  }
+
+  TrialBuilder further(Map<String, Double> newFurther) {
+    return new TrialBuilder(
+        codec,
+        transform,
+        over,
+        keep,
+        step,
+        impairment,
+        severity,
+        ssim,
+        bitsPerPixel,
+        noiseVariance,
+        realised,
+        outage,
+        newFurther);
   }
 
   Trial trial(String picture, int replicate, double psnrDb) {
@@ -100,6 +135,7 @@ record TrialBuilder(
         bitsPerPixel,
         4,
         0,
-        outage);
+        outage,
+        further);
   }
 }

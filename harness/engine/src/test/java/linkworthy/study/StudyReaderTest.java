@@ -128,6 +128,8 @@ class StudyReaderTest {
         Arguments.of("name: yard", "name: yard\nseed: 9007199254740992", List.of("line 2")),
         Arguments.of("name: yard", "name: yard\npurpose: [a]", List.of("line 2", "a list")),
         Arguments.of(
+            "name: yard", "name: yard\npurpose: \"a\\0b\"", List.of("line 2", "control character")),
+        Arguments.of(
             "name: yard", "name: yard\npictures: {selct: [field]}", List.of("line 2", "'select'")),
         Arguments.of(
             "name: yard", "name: yard\npictures: {select: []}", List.of("line 2", "an empty list")),

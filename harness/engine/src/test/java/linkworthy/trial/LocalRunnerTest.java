@@ -54,7 +54,7 @@ class LocalRunnerTest {
         - {noise: radio-oqpsk-2450, sinr-db: 0}
       codecs:
         - {transform: mean, step: 16}
-      replicates: 100
+      replicates: 150
       """;
 
   private static Plan plan(String study) {
@@ -256,6 +256,25 @@ class LocalRunnerTest {
                   }
                 });
     assertThat(Thread.interrupted()).isTrue();
+    assertThat(units).isEqualTo(5);
+    assertThat(seen).hasSize(5 * plan.study().codecs().size());
+  }
+
+  @Test
+  void aStoppedRunKeepsWholeUnitsAndLeavesItsThreadUninterrupted() {
+    Plan plan = plan(STUDY);
+    LocalRunner runner = new LocalRunner(plan, 2);
+    List<Trial> seen = new ArrayList<>();
+    int units =
+        runner.run(
+            0,
+            (unit, trials, timings) -> {
+              seen.addAll(trials);
+              if (unit.index() == 4) {
+                runner.stop();
+              }
+            });
+    assertThat(Thread.interrupted()).isFalse();
     assertThat(units).isEqualTo(5);
     assertThat(seen).hasSize(5 * plan.study().codecs().size());
   }
