@@ -54,7 +54,7 @@ class LocalRunnerTest {
         - {noise: radio-oqpsk-2450, sinr-db: 0}
       codecs:
         - {transform: mean, step: 16}
-      replicates: 100
+      replicates: 150
       """;
 
   private static Plan plan(String study) {
