@@ -6,12 +6,12 @@ import java.security.NoSuchAlgorithmException;
 import java.util.HexFormat;
 import java.util.LinkedHashMap;
 import java.util.Map;
-import java.util.OptionalInt;
 import linkworthy.codec.Codec;
 import linkworthy.link.Link;
+import linkworthy.study.PictureChoice;
 
 /** All that a trial depends on; its hash is the trial's id. */
-record TrialKey(long seed, WorkUnit unit, OptionalInt longestSide, Codec codec, Link link) {
+record TrialKey(long seed, WorkUnit unit, PictureChoice pictures, Codec codec, Link link) {
   private static final int ID_DIGITS = 16;
 
   /** The first 16 hexadecimal digits of the SHA-256 of the key. */
@@ -19,7 +19,7 @@ record TrialKey(long seed, WorkUnit unit, OptionalInt longestSide, Codec codec, 
     StringBuilder text = new StringBuilder();
     text.append(seed).append('\n');
     text.append(unit.entry().id()).append('\n');
-    text.append(unit.entry().sha256()).append('\n').append(longestSide).append('\n');
+    text.append(unit.entry().sha256()).append('\n').append(pictures.longestSide()).append('\n');
     WorkUnit.Condition condition = unit.condition();
     if (condition != null) {
       text.append(condition.impairment().model().fingerprint()).append('\n');
@@ -30,6 +30,9 @@ record TrialKey(long seed, WorkUnit unit, OptionalInt longestSide, Codec codec, 
     text.append(unit.replicate()).append('\n');
     text.append(settings()).append('\n');
     text.append(link).append('\n');
+    if (pictures.hasAllPlanes()) {
+      text.append("planes all ").append(pictures.chroma()).append('\n');
+    }
     if (!codec.training().isEmpty()) {
       text.append(codec.training()).append('\n');
     }

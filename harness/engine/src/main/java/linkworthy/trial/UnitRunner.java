@@ -13,6 +13,7 @@ import linkworthy.noise.NoiseStreams;
 import linkworthy.quality.Psnr;
 import linkworthy.study.ImpairmentChoice;
 import linkworthy.study.Study;
+import org.apache.commons.rng.UniformRandomProvider;
 
 /** Runs one work unit: draws its noise once and takes every codec through it. */
 final class UnitRunner {
@@ -36,40 +37,55 @@ final class UnitRunner {
     if (condition == null) {
       return evaluate(Circumstances.clean(subject));
     }
-    ImpairmentChoice choice = condition.impairment();
     Impairment impairment = condition.at(subject.signal());
-    var random =
-        NoiseStreams.open(
-            study.seed(),
-            unit.entry().id(),
-            choice.model().fingerprint(),
-            choice.site(),
-            condition.severity(),
-            unit.replicate(),
-            PURPOSE);
     double expected = impairment.equivalentNoiseVariance();
     if (impairment instanceof Impairment.OnSamples onSamples) {
-      Picture noisy = onSamples.apply(subject.picture(), random);
-      double realised = Psnr.meanSquaredError(subject.picture(), noisy);
-      return evaluate(new Circumstances(noisy, new Memo(), index -> false, expected, realised));
+      List<Picture> noisy = new ArrayList<>();
+      for (Picture plane : subject.planes()) {
+        noisy.add(onSamples.apply(plane, random(condition, noisy.size())));
+      }
+      return evaluate(
+          new Circumstances(
+              subject.coding().coded(noisy),
+              Subject.memos(noisy),
+              index -> false,
+              expected,
+              subject.meanSquaredError(noisy)));
     }
-    Impairment.Losses losses = ((Impairment.OnPackets) impairment).losses(random);
+    Impairment.Losses losses = ((Impairment.OnPackets) impairment).losses(random(condition, 0));
     return evaluate(
-        new Circumstances(subject.picture(), subject.memo(), losses, expected, Double.NaN));
+        new Circumstances(subject.coded(), subject.memos(), losses, expected, Double.NaN));
+  }
+
+  /** Each plane has a stream of its own; that of luma does not depend on the other planes. */
+  private UniformRandomProvider random(WorkUnit.Condition condition, int plane) {
+    ImpairmentChoice choice = condition.impairment();
+    return NoiseStreams.open(
+        study.seed(),
+        unit.entry().id(),
+        choice.model().fingerprint(),
+        choice.site(),
+        condition.severity(),
+        unit.replicate(),
+        plane == 0 ? PURPOSE : PURPOSE + " on plane " + plane);
   }
 
   /**
    * What every codec of the unit meets.
    *
-   * @param seen the picture that the encoder sees
-   * @param memo encoders' work on that picture
+   * @param seen the planes that the encoder codes
+   * @param memos encoders' work on each of them
    * @param realised noise variance of this realisation on the samples, or NaN where it follows from
    *     the packets lost
    */
   private record Circumstances(
-      Picture seen, Memo memo, Impairment.Losses losses, double expected, double realised) {
+      List<Picture> seen,
+      List<Memo> memos,
+      Impairment.Losses losses,
+      double expected,
+      double realised) {
     static Circumstances clean(Subject subject) {
-      return new Circumstances(subject.picture(), subject.memo(), index -> false, 0, 0);
+      return new Circumstances(subject.coded(), subject.memos(), index -> false, 0, 0);
     }
   }
 
@@ -81,7 +97,7 @@ final class UnitRunner {
       Encoding encoding = encode(codec, circumstances);
       long encoded = System.nanoTime();
       List<byte[]> arrived = arrived(encoding, circumstances.losses());
-      Decoding decoding = codec.decode(subject.shape(), arrived);
+      PlaneCoding.Decoded decoding = subject.coding().decode(codec, subject.shapes(), arrived);
       long decoded = System.nanoTime();
       trials.add(trial(codec, circumstances, encoding, arrived.size(), decoding));
       timings.add(
@@ -100,11 +116,12 @@ final class UnitRunner {
   /** Encodes; an encoding of the clean picture serves all units that lose its packets. */
   private Encoding encode(Codec codec, Circumstances circumstances) {
     return circumstances
-        .memo()
+        .memos()
+        .get(0)
         .once(
             new EncodingKey(codec.label()),
             Encoding.class,
-            () -> codec.encode(circumstances.seen(), circumstances.memo()));
+            () -> subject.coding().encode(codec, circumstances.seen(), circumstances.memos()));
   }
 
   private static List<byte[]> arrived(Encoding encoding, Impairment.Losses losses) {
@@ -128,7 +145,7 @@ final class UnitRunner {
       Circumstances circumstances,
       Encoding encoding,
       int arrivedPackets,
-      Decoding decoding) {
+      PlaneCoding.Decoded decoding) {
     WorkUnit.Condition condition = unit.condition();
     int sentPackets = encoding.packets().size();
     int lostPackets = sentPackets - arrivedPackets;
@@ -136,12 +153,12 @@ final class UnitRunner {
         Double.isNaN(circumstances.realised())
             ? subject.signal().variance() * lostPackets / sentPackets
             : circumstances.realised();
-    double mse = Psnr.meanSquaredError(subject.picture(), decoding.picture());
+    double mse = subject.meanSquaredError(decoding.planes());
     Link link = study.link();
     long sentBits = link.sentBits(sentPackets, encoding.payloadBits());
     Codec.Description description = codec.description();
     return new Trial(
-        new TrialKey(study.seed(), unit, study.pictures().longestSide(), codec, link).id(),
+        new TrialKey(study.seed(), unit, study.pictures(), codec, link).id(),
         unit.entry().id(),
         impairmentLabel(),
         condition == null ? "" : condition.impairment().site().id(),
@@ -160,7 +177,7 @@ final class UnitRunner {
         unit.replicate(),
         mse,
         Psnr.psnrDb(mse, subject.picture().peak()),
-        measured("ssim", decoding.picture()),
+        measured("ssim", decoding.luma()),
         encoding.payloadBits(),
         sentBits,
         (double) sentBits / subject.picture().size(),
