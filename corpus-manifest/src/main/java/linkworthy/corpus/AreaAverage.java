@@ -24,7 +24,7 @@ public final class AreaAverage {
     if (longest <= longestSide) {
       return picture;
     }
-    return reduce(
+    return toSize(
         picture,
         scaled(picture.width(), longestSide, longest),
         scaled(picture.height(), longestSide, longest));
@@ -35,12 +35,17 @@ public final class AreaAverage {
   }
 
   /**
-   * Measured in units of 1/newSide of an original sample, original sample i covers i newSide to (i
-   * + 1) newSide and new sample x covers x oldSide to (x + 1) oldSide: all overlaps are integers.
+   * Reduces a picture to a size, each side by a factor of its own.
+   *
+   * @throws IllegalArgumentException if a new side is not 1 to the picture's own
    */
-  private static Picture reduce(Picture picture, int newWidth, int newHeight) {
+  public static Picture toSize(Picture picture, int newWidth, int newHeight) {
+    // In units of 1/newSide of an original sample, original sample i covers i newSide to (i + 1)
+    // newSide and new sample x covers x oldSide to (x + 1) oldSide: all overlaps are integers.
     int width = picture.width();
     int height = picture.height();
+    Require.inRange(newWidth, 1, width, "new width (samples)");
+    Require.inRange(newHeight, 1, height, "new height (samples)");
     long area = (long) width * height;
     int[] samples = new int[newWidth * newHeight];
     long[] sums = new long[newWidth];

@@ -29,6 +29,21 @@ class AreaAverageTest {
         .containsExactly(30, 190);
   }
 
+  @Test
+  void eachSideHasItsOwnFactor() {
+    Picture picture = new Picture(4, 2, 8, new int[] {1, 2, 10, 20, 3, 4, 30, 42});
+    assertThat(AreaAverage.toSize(picture, 2, 2).samples())
+        .as("1.5, 15, 3.5 and 36, halves up: by hand")
+        .containsExactly(2, 15, 4, 36);
+    assertThat(AreaAverage.toSize(picture, 4, 2).samples()).isEqualTo(picture.samples());
+    assertThatThrownBy(() -> AreaAverage.toSize(picture, 5, 2))
+        .isInstanceOf(IllegalArgumentException.class)
+        .hasMessageContaining("new width (samples)");
+    assertThatThrownBy(() -> AreaAverage.toSize(picture, 4, 0))
+        .isInstanceOf(IllegalArgumentException.class)
+        .hasMessageContaining("new height (samples)");
+  }
+
   /** Repeats every sample so often that all boxes are whole, then averages those. */
   @ParameterizedTest
   @CsvSource({

@@ -130,7 +130,11 @@ final class Reports {
                 study.pictures().longestSide().isPresent()
                     ? study.pictures().longestSide().getAsInt() + " samples"
                     : "as in the manifest"),
-            new Fact("planes", study.pictures().planes()),
+            new Fact(
+                "planes",
+                study.pictures().hasAllPlanes()
+                    ? "all, chroma " + study.pictures().chroma()
+                    : study.pictures().planes()),
             new Fact("signal power", study.pictures().signalPower().id()),
             new Fact("packet payload", study.link().payloadBytes() + " bytes at most"),
             new Fact("packet overhead", study.link().headerBytes() + " bytes each"),

@@ -40,7 +40,7 @@ public record Link(int payloadBytes, int headerBytes, Order order) {
    * @throws IllegalArgumentException if less than {@link #MIN_PAYLOAD} is left
    */
   public Link less(int bytes) {
-    return new Link(payloadBytes - bytes, headerBytes, order);
+    return new Link(payloadBytes - bytes, headerBytes + bytes, order);
   }
 
   /** Bits on the air for packets with these many payload bits. */

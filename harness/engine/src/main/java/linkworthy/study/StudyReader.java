@@ -69,9 +69,9 @@ public final class StudyReader {
             "link",
             "replicates",
             "measures"));
-    Link link = link(root.find("link").orElse(DEFAULTS.get("link")));
     PictureChoice pictures =
         pictures(root.find("pictures").orElse(DEFAULTS.get("pictures")), baseFolder);
+    Link link = link(root.find("link").orElse(DEFAULTS.get("link")), pictures.hasAllPlanes());
     return new Study(
         name(root.get("name")),
         purpose(given(root, DEFAULTS, "purpose")),
@@ -125,18 +125,21 @@ public final class StudyReader {
 
   private static PictureChoice pictures(YamlNode group, Path baseFolder) {
     group.onlyKeys(
-        ordered("manifest", "select", "train", "longest-side", "planes", "signal-power"));
+        ordered("manifest", "select", "train", "longest-side", "planes", "chroma", "signal-power"));
     YamlNode defaults = DEFAULTS.get("pictures");
     String power =
         given(group, defaults, "signal-power")
             .oneOf(Arrays.stream(SignalPower.values()).map(SignalPower::id).toList());
     List<String> select = distinct(given(group, defaults, "select"));
+    String planes =
+        given(group, defaults, "planes").oneOf(List.of(PictureChoice.LUMA, PictureChoice.ALL));
     return new PictureChoice(
         manifest(given(group, defaults, "manifest"), baseFolder),
         select,
         train(given(group, defaults, "train"), select),
         longestSide(given(group, defaults, "longest-side")),
-        given(group, defaults, "planes").oneOf(List.of(PictureChoice.LUMA)),
+        planes,
+        chroma(group, planes),
         Arrays.stream(SignalPower.values()).filter(p -> p.id().equals(power)).findFirst().get());
   }
 
@@ -150,6 +153,22 @@ public final class StudyReader {
     } catch (InvalidPathException e) {
       throw node.bad("the path of a manifest file, or " + StudyWriter.SHIPPED);
     }
+  }
+
+  private static String chroma(YamlNode group, String planes) {
+    if (planes.equals(PictureChoice.ALL)) {
+      return given(group, DEFAULTS.get("pictures"), "chroma")
+          .oneOf(List.of(PictureChoice.HALVED, PictureChoice.FULL));
+    }
+    boolean own = group != DEFAULTS.get("pictures");
+    group
+        .find("chroma")
+        .filter(node -> own)
+        .ifPresent(
+            node -> {
+              throw node.refuse("belongs to 'planes: all'; accepted: no chroma with luma alone");
+            });
+    return "";
   }
 
   private static List<String> train(YamlNode node, List<String> select) {
@@ -195,11 +214,12 @@ public final class StudyReader {
     Protection usual = protections.read(given(root, DEFAULTS, PROTECT));
     List<CodecChoice> all = new ArrayList<>();
     Set<String> labels = new HashSet<>();
+    Link free = pictures.hasAllPlanes() ? link.less(1) : link;
     for (YamlNode entry : root.get("codecs").items()) {
       Protection protection = entry.find(PROTECT).map(protections::read).orElse(usual);
       boolean named = entry.find("label").isPresent();
       for (Codec codec :
-          CodecFamilies.read(entry.without(PROTECT), link.less(protection.overheadBytes()))) {
+          CodecFamilies.read(entry.without(PROTECT), free.less(protection.overheadBytes()))) {
         CodecChoice choice =
             named
                 ? new CodecChoice(codec.label(), codec, protection)
@@ -209,6 +229,10 @@ public final class StudyReader {
               "gives the codec '"
                   + choice.label()
                   + "' a second time; remove it, or add label: to tell the two apart");
+        }
+        if (pictures.hasAllPlanes() && codec.settings().containsKey("bits-per-pixel")) {
+          throw entry.refuse(
+              "aims at bits-per-pixel, which several planes share; accepted with 'planes: luma'");
         }
         if (codec.needsTraining() && pictures.train().isEmpty()) {
           throw entry.refuse(
@@ -221,14 +245,17 @@ public final class StudyReader {
     return all;
   }
 
-  private static Link link(YamlNode group) {
+  private static Link link(YamlNode group, boolean allPlanes) {
     group.onlyKeys(ordered("payload-bytes", "header-bytes", "order"));
     YamlNode defaults = DEFAULTS.get("link");
+    int plane = allPlanes ? 1 : 0;
     List<Link.Order> orders = List.of(Link.Order.values());
     List<String> words = orders.stream().map(Link.Order::id).toList();
     return new Link(
-        (int) given(group, defaults, "payload-bytes").integer(Link.MIN_PAYLOAD, Link.MAX_PAYLOAD),
-        (int) given(group, defaults, "header-bytes").integer(0, Link.MAX_PAYLOAD),
+        (int)
+            given(group, defaults, "payload-bytes")
+                .integer(Link.MIN_PAYLOAD + plane, Link.MAX_PAYLOAD),
+        (int) given(group, defaults, "header-bytes").integer(0, Link.MAX_PAYLOAD - plane),
         orders.get(words.indexOf(given(group, defaults, "order").oneOf(words))));
   }
 

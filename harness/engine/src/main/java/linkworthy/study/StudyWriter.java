@@ -151,6 +151,9 @@ public final class StudyWriter {
     Object side = pictures.longestSide().isPresent() ? pictures.longestSide().getAsInt() : NONE;
     tree.put("longest-side", side);
     tree.put("planes", pictures.planes());
+    if (pictures.hasAllPlanes()) {
+      tree.put("chroma", pictures.chroma());
+    }
     tree.put("signal-power", pictures.signalPower().id());
     return tree;
   }

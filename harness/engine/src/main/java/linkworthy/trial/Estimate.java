@@ -34,10 +34,11 @@ public record Estimate(double seconds, double memoryBytes, double diskBytes) {
                       / (double) Math.max(entry.width(), entry.height()))
               : 1;
       double samples = scale * entry.width() * scale * entry.height();
+      double coded = samples * plan.study().pictures().codedSamples(entry);
       double order = scale * entry.height();
-      largest = Math.max(largest, samples);
+      largest = Math.max(largest, coded);
       work +=
-          SECONDS_PER_SAMPLE * samples * plan.trials() / plan.pictures().size()
+          SECONDS_PER_SAMPLE * coded * plan.trials() / plan.pictures().size()
               + SECONDS_PER_EIGEN_STEP * order * order * order * eigendecompositions(plan);
     }
     return new Estimate(

@@ -112,7 +112,7 @@ public final class LocalRunner {
       if (known != null) {
         return known;
       }
-      Subject subject = new Subject(plan.load(unit.entry()), plan.study());
+      Subject subject = new Subject(plan.planes(unit.entry()), plan.study());
       inUse.put(unit.picture(), subject);
       if (inUse.size() > threads + 1) {
         inUse.remove(inUse.keySet().iterator().next());

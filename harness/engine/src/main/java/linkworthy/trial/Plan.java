@@ -56,16 +56,18 @@ public final class Plan {
   }
 
   private void check(ManifestEntry entry) {
-    Picture picture = load(entry);
-    PictureShape shape = PictureShape.of(picture);
+    List<Picture> planes = planes(entry);
+    PictureShape shape = PictureShape.of(planes.get(0));
     try {
-      for (CodecChoice choice : study.codecs()) {
-        choice.codec().check(shape);
+      for (Picture coded : new PlaneCoding(study.pictures()).coded(planes)) {
+        for (CodecChoice choice : study.codecs()) {
+          choice.codec().check(PictureShape.of(coded));
+        }
       }
       for (String measure : study.measures()) {
         QualityMeasures.get(measure).check(shape);
       }
-      SignalStatistics signal = study.pictures().signalPower().of(picture);
+      SignalStatistics signal = Subject.signal(planes, study.pictures().signalPower());
       for (WorkUnit.Condition condition : conditions) {
         condition.at(signal);
       }
@@ -74,9 +76,9 @@ public final class Plan {
     }
   }
 
-  /** A picture as the study wants it. */
-  Picture load(ManifestEntry entry) {
-    return study.pictures().load(manifest, entry);
+  /** The planes of a picture as the study wants them, luma first. */
+  List<Picture> planes(ManifestEntry entry) {
+    return study.pictures().planes(manifest, entry);
   }
 
   public Study study() {

@@ -7,8 +7,10 @@ import linkworthy.codec.Memo;
 import linkworthy.codec.PictureShape;
 import linkworthy.corpus.Picture;
 import linkworthy.noise.SignalStatistics;
+import linkworthy.quality.Psnr;
 import linkworthy.quality.QualityMeasure;
 import linkworthy.quality.QualityMeasures;
+import linkworthy.study.SignalPower;
 import linkworthy.study.Study;
 
 /**
@@ -16,28 +18,85 @@ import linkworthy.study.Study;
  * and the encoders' work on it. Safe for several threads.
  */
 final class Subject {
-  private final Picture picture;
+  private final List<Picture> planes;
+  private final PlaneCoding coding;
+  private final List<Picture> coded;
   private final SignalStatistics signal;
   private final List<QualityMeasure.Judge> judges;
   private final Map<String, QualityMeasure.Judge> furtherJudges = new LinkedHashMap<>();
-  private final Memo memo = new Memo();
+  private final List<Memo> memos;
 
-  Subject(Picture picture, Study study) {
-    this.picture = picture;
-    this.signal = study.pictures().signalPower().of(picture);
+  /**
+   * @param planes luma, or luma and the two colour planes, all of one size
+   */
+  Subject(List<Picture> planes, Study study) {
+    this.planes = planes;
+    this.coding = new PlaneCoding(study.pictures());
+    this.coded = coding.coded(planes);
+    this.signal = signal(planes, study.pictures().signalPower());
     this.judges =
-        study.measures().stream().map(m -> QualityMeasures.get(m).against(picture)).toList();
+        study.measures().stream().map(m -> QualityMeasures.get(m).against(picture())).toList();
     for (QualityMeasure measure : study.furtherMeasures()) {
       furtherJudges.put(measure.column(), judges.get(study.measures().indexOf(measure.id())));
     }
+    this.memos = memos(planes);
   }
 
+  /** Statistics of all planes together: the mean over the planes of each figure. */
+  static SignalStatistics signal(List<Picture> planes, SignalPower signalPower) {
+    double power = 0;
+    double mean = 0;
+    double meanSquare = 0;
+    double variance = 0;
+    for (Picture plane : planes) {
+      SignalStatistics one = signalPower.of(plane);
+      power += one.power();
+      mean += one.mean();
+      meanSquare += one.meanSquare();
+      variance += one.variance();
+    }
+    int n = planes.size();
+    return new SignalStatistics(
+        power / n, mean / n, meanSquare / n, variance / n, planes.get(0).peak());
+  }
+
+  /** A fresh memo for each plane. */
+  static List<Memo> memos(List<Picture> planes) {
+    return planes.stream().map(plane -> new Memo()).toList();
+  }
+
+  /** Luma, which the measures of structure look at. */
   Picture picture() {
-    return picture;
+    return planes.get(0);
   }
 
-  PictureShape shape() {
-    return PictureShape.of(picture);
+  /** All planes at full size. */
+  List<Picture> planes() {
+    return planes;
+  }
+
+  /** Mean squared error over all samples of all planes at full size, grey levels squared. */
+  double meanSquaredError(List<Picture> others) {
+    double sum = 0;
+    for (int plane = 0; plane < planes.size(); plane++) {
+      sum += Psnr.meanSquaredError(planes.get(plane), others.get(plane));
+    }
+    return sum / planes.size();
+  }
+
+  /** How the planes go through a codec. */
+  PlaneCoding coding() {
+    return coding;
+  }
+
+  /** The planes as they are coded. */
+  List<Picture> coded() {
+    return coded;
+  }
+
+  /** Shapes of the planes as they are coded. */
+  List<PictureShape> shapes() {
+    return coded.stream().map(PictureShape::of).toList();
   }
 
   SignalStatistics signal() {
@@ -54,8 +113,13 @@ final class Subject {
     return furtherJudges;
   }
 
-  /** Encoders' work on the clean picture. */
+  /** Encoders' work on the clean luma plane. */
   Memo memo() {
-    return memo;
+    return memos.get(0);
+  }
+
+  /** Encoders' work on each clean plane. */
+  List<Memo> memos() {
+    return memos;
   }
 }

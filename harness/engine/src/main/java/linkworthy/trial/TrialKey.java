@@ -4,12 +4,12 @@ import java.nio.charset.StandardCharsets;
 import java.security.MessageDigest;
 import java.security.NoSuchAlgorithmException;
 import java.util.HexFormat;
-import java.util.OptionalInt;
 import linkworthy.link.Link;
 import linkworthy.study.CodecChoice;
+import linkworthy.study.PictureChoice;
 
 /** All that a trial depends on; its hash is the trial's id. */
-record TrialKey(long seed, WorkUnit unit, OptionalInt longestSide, CodecChoice codec, Link link) {
+record TrialKey(long seed, WorkUnit unit, PictureChoice pictures, CodecChoice codec, Link link) {
   private static final int ID_DIGITS = 16;
 
   /** The first 16 hexadecimal digits of the SHA-256 of the key. */
@@ -17,7 +17,7 @@ record TrialKey(long seed, WorkUnit unit, OptionalInt longestSide, CodecChoice c
     StringBuilder text = new StringBuilder();
     text.append(seed).append('\n');
     text.append(unit.entry().id()).append('\n');
-    text.append(unit.entry().sha256()).append('\n').append(longestSide).append('\n');
+    text.append(unit.entry().sha256()).append('\n').append(pictures.longestSide()).append('\n');
     WorkUnit.Condition condition = unit.condition();
     if (condition != null) {
       text.append(condition.impairment().model().fingerprint()).append('\n');
@@ -28,6 +28,9 @@ record TrialKey(long seed, WorkUnit unit, OptionalInt longestSide, CodecChoice c
     text.append(unit.replicate()).append('\n');
     text.append(codec.identity()).append('\n');
     text.append(link).append('\n');
+    if (pictures.hasAllPlanes()) {
+      text.append("planes all ").append(pictures.chroma()).append('\n');
+    }
     if (!codec.codec().training().isEmpty()) {
       text.append(codec.codec().training()).append('\n');
     }

@@ -41,26 +41,23 @@ final class UnitRunner {
     if (condition == null) {
       return evaluate(Circumstances.clean(subject));
     }
-    ImpairmentChoice choice = condition.impairment();
     Impairment impairment = condition.at(subject.signal());
-    var random =
-        NoiseStreams.open(
-            study.seed(),
-            unit.entry().id(),
-            choice.model().fingerprint(),
-            choice.site(),
-            condition.severity(),
-            unit.replicate(),
-            PURPOSE);
     double expected = impairment.equivalentNoiseVariance();
     if (impairment instanceof Impairment.OnSamples onSamples) {
-      Picture noisy = onSamples.apply(subject.picture(), random);
-      double realised = Psnr.meanSquaredError(subject.picture(), noisy);
-      return evaluate(new Circumstances(noisy, new Memo(), Passage.clear(realised), expected));
+      List<Picture> noisy = new ArrayList<>();
+      for (Picture plane : subject.planes()) {
+        noisy.add(onSamples.apply(plane, random(condition, noisy.size())));
+      }
+      return evaluate(
+          new Circumstances(
+              subject.coding().coded(noisy),
+              Subject.memos(noisy),
+              Passage.clear(subject.meanSquaredError(noisy)),
+              expected));
     }
     return evaluate(
         new Circumstances(
-            subject.picture(), subject.memo(), passage(impairment, random), expected));
+            subject.coded(), subject.memos(), passage(impairment, random(condition, 0)), expected));
   }
 
   private Passage passage(Impairment impairment, UniformRandomProvider random) {
@@ -78,17 +75,31 @@ final class UnitRunner {
     return Passage.losing(((Impairment.OnPackets) impairment).losses(random), variance);
   }
 
+  /** Each plane has a stream of its own; that of luma does not depend on the other planes. */
+  private UniformRandomProvider random(WorkUnit.Condition condition, int plane) {
+    ImpairmentChoice choice = condition.impairment();
+    return NoiseStreams.open(
+        study.seed(),
+        unit.entry().id(),
+        choice.model().fingerprint(),
+        choice.site(),
+        condition.severity(),
+        unit.replicate(),
+        plane == 0 ? PURPOSE : PURPOSE + " on plane " + plane);
+  }
+
   /**
    * What every codec of the unit meets.
    *
-   * @param seen the picture that the encoder sees
-   * @param memo encoders' work on that picture
+   * @param seen the planes that the encoder codes
+   * @param memos encoders' work on each of them
    * @param passage the way of its packets
    * @param expected equivalent noise variance, grey levels squared
    */
-  private record Circumstances(Picture seen, Memo memo, Passage passage, double expected) {
+  private record Circumstances(
+      List<Picture> seen, List<Memo> memos, Passage passage, double expected) {
     static Circumstances clean(Subject subject) {
-      return new Circumstances(subject.picture(), subject.memo(), Passage.clear(0), 0);
+      return new Circumstances(subject.coded(), subject.memos(), Passage.clear(0), 0);
     }
   }
 
@@ -102,7 +113,8 @@ final class UnitRunner {
       Passage.Crossing crossing = circumstances.passage().open();
       Channel.Outcome outcome =
           new Channel(study.link(), choice.protection()).send(encoding.packets(), crossing);
-      Decoding decoding = choice.codec().decode(subject.shape(), outcome.payloads());
+      PlaneCoding.Decoded decoding =
+          subject.coding().decode(choice.codec(), subject.shapes(), outcome.payloads());
       long decoded = System.nanoTime();
       trials.add(
           trial(
@@ -133,11 +145,15 @@ final class UnitRunner {
     Map<String, Object> settings = new HashMap<>(choice.codec().settings());
     settings.remove("label");
     return circumstances
-        .memo()
+        .memos()
+        .get(0)
         .once(
             new EncodingKey(settings, choice.protection().overheadBytes()),
             Encoding.class,
-            () -> choice.codec().encode(circumstances.seen(), circumstances.memo()));
+            () ->
+                subject
+                    .coding()
+                    .encode(choice.codec(), circumstances.seen(), circumstances.memos()));
   }
 
   private String impairmentLabel() {
@@ -152,12 +168,12 @@ final class UnitRunner {
       double realisedVariance,
       Encoding encoding,
       Channel.Outcome outcome,
-      Decoding decoding) {
+      PlaneCoding.Decoded decoding) {
     WorkUnit.Condition condition = unit.condition();
-    double mse = Psnr.meanSquaredError(subject.picture(), decoding.picture());
+    double mse = subject.meanSquaredError(decoding.planes());
     Codec.Description description = choice.codec().description();
     return new Trial(
-        new TrialKey(study.seed(), unit, study.pictures().longestSide(), choice, study.link()).id(),
+        new TrialKey(study.seed(), unit, study.pictures(), choice, study.link()).id(),
         unit.entry().id(),
         impairmentLabel(),
         condition == null ? "" : condition.impairment().site().id(),
@@ -176,14 +192,14 @@ final class UnitRunner {
         unit.replicate(),
         mse,
         Psnr.psnrDb(mse, subject.picture().peak()),
-        measured("ssim", decoding.picture()),
+        measured("ssim", decoding.luma()),
         outcome.payloadBits(),
         outcome.sentBits(),
         (double) outcome.sentBits() / subject.picture().size(),
         outcome.packetsSent(),
         outcome.packetsLost(),
         decoding.completeness() == Decoding.Completeness.NOTHING,
-        further(decoding.picture()));
+        further(decoding.luma()));
   }
 
   private double measured(String measure, Picture decoded) {

@@ -145,6 +145,10 @@ class StudyReaderTest {
             "name: yard\npictures: {train: []}",
             List.of("line 2", "'pictures.train'", "an empty list")),
         Arguments.of(
+            "- transform: mean\n    step: 16\n",
+            "- transform: pca\n    bits-per-pixel: 1\npictures: {planes: all}\n",
+            List.of("line 6", "which several planes share", "'planes: luma'")),
+        Arguments.of(
             "step: 16",
             "step: 16\n  - transform: pca\n    basis: shared\n    keep: 4",
             List.of("line 8", "learns from other pictures", "pictures.train:")),
@@ -157,7 +161,21 @@ class StudyReaderTest {
             "name: yard\npictures: {longest-side: [7]}",
             List.of("line 2", "a list", "or none")),
         Arguments.of(
-            "name: yard", "name: yard\npictures: {planes: all}", List.of("line 2", "luma")),
+            "name: yard",
+            "name: yard\npictures: {planes: al}",
+            List.of("line 2", "did you mean 'all'")),
+        Arguments.of(
+            "name: yard",
+            "name: yard\npictures: {chroma: 4:2:0}",
+            List.of("line 2", "'pictures.chroma'", "belongs to 'planes: all'")),
+        Arguments.of(
+            "name: yard",
+            "name: yard\npictures: {planes: all, chroma: 4:2:2}",
+            List.of("line 2", "'4:2:2'", "4:2:0")),
+        Arguments.of(
+            "name: yard",
+            "name: yard\npictures: {planes: all}\nlink: {payload-bytes: 32}",
+            List.of("line 3", "'32'", "33 to 65535")),
         Arguments.of(
             "name: yard",
             "name: yard\npictures: {signal-power: varianse}",

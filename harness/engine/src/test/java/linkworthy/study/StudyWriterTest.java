@@ -104,6 +104,18 @@ class StudyWriterTest {
     assertSame(study, Path.of("").toAbsolutePath());
   }
 
+  @ParameterizedTest
+  @ValueSource(
+      strings = {"planes: all", "planes: all, chroma: 4:2:0", "planes: all, chroma: 4:4:4"})
+  void chromaIsWrittenWhereAllPlanesAreCoded(String planes) {
+    Study study =
+        StudyReaderTest.read(
+            StudyReaderTest.SHORT.replace("name: yard", "name: yard\npictures: {" + planes + "}"));
+    assertThat(StudyWriter.canonical(study))
+        .contains("  planes: \"all\"\n  chroma: \"4:" + (planes.endsWith("4:4") ? "4:4" : "2:0"));
+    assertSame(study, Path.of("").toAbsolutePath());
+  }
+
   @Test
   void trainingPicturesAreWrittenWhereThereAreSome() {
     Study study =
@@ -257,6 +269,7 @@ class StudyWriterTest {
         "name: yard | measures: [psnr]",
         "name: yard | pictures: {select: [cat]}",
         "name: yard | pictures: {train: [cat]}",
+        "name: yard | pictures: {planes: all}",
         "name: yard | pictures: {longest-side: 64}",
         "name: yard | pictures: {signal-power: mean-square}",
         "name: yard | link: {order: by-region}"

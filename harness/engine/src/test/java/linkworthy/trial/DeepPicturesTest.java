@@ -91,8 +91,8 @@ class DeepPicturesTest {
   void theShippedDeepPictures() {
     Plan plan = plan("{select: [deep], longest-side: 96}");
     for (ManifestEntry entry : plan.pictures()) {
-      assertThat(plan.load(entry).peak()).isEqualTo(65_535);
-      assertThat(plan.load(entry).variance()).isGreaterThan(255.0 * 255.0);
+      assertThat(plan.planes(entry).get(0).peak()).isEqualTo(65_535);
+      assertThat(plan.planes(entry).get(0).variance()).isGreaterThan(255.0 * 255.0);
     }
     assertOnItsOwnScale(run(plan), 2, 65_535);
   }
@@ -128,7 +128,7 @@ class DeepPicturesTest {
 
     Plan plan = plan("{manifest: manifest.csv, select: [own]}");
 
-    Picture camera = plan.load(plan.pictures().get(0));
+    Picture camera = plan.planes(plan.pictures().get(0)).get(0);
     assertThat(camera.bitDepth()).isEqualTo(12);
     assertThat(camera.samples()[17]).isEqualTo(pattern.samples()[17] * 16 + 1);
     assertOnItsOwnScale(run(plan), 1, 4095);

@@ -213,7 +213,7 @@ class LocalRunnerTest {
   @Test
   void workIsDoneOncePerUnit() {
     Plan plan = plan(STUDY);
-    Subject subject = new Subject(plan.load(plan.pictures().get(0)), plan.study());
+    Subject subject = new Subject(plan.planes(plan.pictures().get(0)), plan.study());
     int analyses = 4;
     int encodings = plan.study().codecs().size();
     for (int index = 0; index < plan.units() / 2; index++) {

@@ -141,7 +141,7 @@ class ProtectedTrialsTest {
   @Test
   void encodingsAreShared() {
     Plan plan = Plan.of(StudyReader.read(YamlNode.parse("small.yaml", PROTECTED), Path.of("")));
-    Subject subject = new Subject(plan.load(plan.pictures().get(0)), plan.study());
+    Subject subject = new Subject(plan.planes(plan.pictures().get(0)), plan.study());
     new UnitRunner(plan.study(), subject, plan.unit(0)).run();
     int analysesAndSymbols = 2 + 2;
     int encodings = 2 + 2;

@@ -1,0 +1,130 @@
+package linkworthy.trial;
+
+import java.util.ArrayList;
+import java.util.List;
+import linkworthy.codec.Codec;
+import linkworthy.codec.Decoding;
+import linkworthy.codec.Encoding;
+import linkworthy.codec.Memo;
+import linkworthy.codec.PictureShape;
+import linkworthy.corpus.AreaAverage;
+import linkworthy.corpus.Picture;
+import linkworthy.link.Packet;
+import linkworthy.study.PictureChoice;
+
+/**
+ * How the planes of a picture go through a codec that knows one plane. With {@code planes: luma}
+ * the codec's own packets are sent. With {@code planes: all} every plane is coded alone, luma
+ * first, and each packet begins with a byte that says which plane it is of (0 Y, 1 Cb, 2 Cr).
+ *
+ * <p>With chroma 4:2:0 the colour planes are halved in both directions by area average, their sides
+ * rounded up, before coding; at the receiver each of their samples is shown over the area that it
+ * stands for.
+ */
+final class PlaneCoding {
+  private final boolean numbered;
+  private final boolean halved;
+
+  PlaneCoding(PictureChoice pictures) {
+    this.numbered = pictures.hasAllPlanes();
+    this.halved = pictures.chroma().equals(PictureChoice.HALVED);
+  }
+
+  /**
+   * @param planes all of the size of the first
+   * @param completeness NOTHING where no plane had anything, COMPLETE where all were complete
+   */
+  record Decoded(List<Picture> planes, Decoding.Completeness completeness) {
+    Picture luma() {
+      return planes.get(0);
+    }
+  }
+
+  /** The planes as they are coded. */
+  List<Picture> coded(List<Picture> planes) {
+    List<Picture> coded = new ArrayList<>();
+    for (Picture plane : planes) {
+      coded.add(
+          halved && !coded.isEmpty()
+              ? AreaAverage.toSize(plane, (plane.width() + 1) / 2, (plane.height() + 1) / 2)
+              : plane);
+    }
+    return coded;
+  }
+
+  /**
+   * Encodes the planes; the components in force are those of luma.
+   *
+   * @param memos one for each plane
+   */
+  Encoding encode(Codec codec, List<Picture> coded, List<Memo> memos) {
+    if (!numbered) {
+      return codec.encode(coded.get(0), memos.get(0));
+    }
+    List<Packet> packets = new ArrayList<>();
+    int keep = -1;
+    for (int plane = 0; plane < coded.size(); plane++) {
+      Encoding encoding = codec.encode(coded.get(plane), memos.get(plane));
+      keep = plane == 0 ? encoding.keep() : keep;
+      for (Packet packet : encoding.packets()) {
+        byte[] payload = new byte[packet.length() + 1];
+        payload[0] = (byte) plane;
+        System.arraycopy(packet.payload(), 0, payload, 1, packet.length());
+        packets.add(new Packet(payload, packet.importance()));
+      }
+    }
+    return new Encoding(packets, keep);
+  }
+
+  /**
+   * Decodes what arrived, damaged or not.
+   *
+   * @param coded shapes of the planes as they were coded
+   */
+  Decoded decode(Codec codec, List<PictureShape> coded, List<byte[]> arrived) {
+    if (!numbered) {
+      Decoding decoding = codec.decode(coded.get(0), arrived);
+      return new Decoded(List.of(decoding.picture()), decoding.completeness());
+    }
+    List<Picture> planes = new ArrayList<>();
+    int complete = 0;
+    int nothing = 0;
+    for (int plane = 0; plane < coded.size(); plane++) {
+      Decoding decoding = codec.decode(coded.get(plane), ofPlane(plane, arrived));
+      complete += decoding.completeness() == Decoding.Completeness.COMPLETE ? 1 : 0;
+      nothing += decoding.completeness() == Decoding.Completeness.NOTHING ? 1 : 0;
+      planes.add(stretched(decoding.picture(), coded.get(0)));
+    }
+    Decoding.Completeness completeness =
+        complete == planes.size()
+            ? Decoding.Completeness.COMPLETE
+            : nothing == planes.size()
+                ? Decoding.Completeness.NOTHING
+                : Decoding.Completeness.PARTIAL;
+    return new Decoded(planes, completeness);
+  }
+
+  private static List<byte[]> ofPlane(int plane, List<byte[]> arrived) {
+    List<byte[]> payloads = new ArrayList<>();
+    for (byte[] packet : arrived) {
+      if (packet.length > 0 && packet[0] == plane) {
+        payloads.add(java.util.Arrays.copyOfRange(packet, 1, packet.length));
+      }
+    }
+    return payloads;
+  }
+
+  private static Picture stretched(Picture plane, PictureShape shape) {
+    if (plane.width() == shape.width() && plane.height() == shape.height()) {
+      return plane;
+    }
+    int[] samples = new int[shape.size()];
+    for (int y = 0; y < shape.height(); y++) {
+      int row = y * plane.height() / shape.height() * plane.width();
+      for (int x = 0; x < shape.width(); x++) {
+        samples[y * shape.width() + x] = plane.samples()[row + x * plane.width() / shape.width()];
+      }
+    }
+    return new Picture(shape.width(), shape.height(), plane.bitDepth(), samples);
+  }
+}
