@@ -72,9 +72,11 @@ public interface Codec {
   /**
    * The columns that describe a codec; empty text where a column does not apply.
    *
-   * @param transform for the transform codec the basis: {@code mean}, {@code dct}, {@code pca}
-   * @param over {@code rows}, {@code blocks8}, ...
-   * @param step quantiser step in grey levels, or {@code none}
+   * @param transform for the transform codec the basis: {@code mean}, {@code dct}, {@code pca};
+   *     {@code jpeg}; the wavelet, {@code cdf-9-7} or {@code cdf-5-3}
+   * @param over {@code rows}, {@code blocks8}, {@code levels5}, ...
+   * @param step quantiser step in grey levels, or {@code none}; empty where the encoder chooses it
+   *     for each picture
    */
   record Description(String transform, String over, String step) {}
 }

@@ -30,7 +30,7 @@ public final class JpegCodecFamily implements CodecFamily {
         alone. The header and its tables are known to both ends. The order of packets is that of
         the picture, whatever the link's order. At the node, for pictures of W x H samples padded
         to whole blocks, 17 W H multiply-accumulates (16 for the transform, 1 to quantise) and
-        8 W bytes of samples, with 1 KiB for tables and a block; bits-per-pixel quantises up to 7
+        8 W bytes of samples, with 1 KiB for tables and a block; bits-per-pixel quantises up to 8
         times and so keeps the coefficients, 2 W H bytes.""";
   }
 

@@ -57,7 +57,7 @@ final class JpegScan {
   }
 
   /** The codes of blocks {@code from} to before {@code to}, which are one restart interval. */
-  private static List<Code> codes(int[] indices, int from, int to) {
+  private static List<Code> codesOf(int[] indices, int from, int to) {
     List<Code> codes = new ArrayList<>();
     int prediction = 0;
     for (int block = from; block < to; block++) {
@@ -101,23 +101,29 @@ final class JpegScan {
     List<Packetizer.Strip> strips = new ArrayList<>();
     int blocks = indices.length / JpegTables.BLOCK;
     for (int from = 0; from < blocks; from += blocksPerInterval) {
-      strips.add(new Interval(codes(indices, from, Math.min(blocks, from + blocksPerInterval))));
+      strips.add(new Interval(indices, from, Math.min(blocks, from + blocksPerInterval)));
     }
     return strips;
   }
 
-  /** A restart interval that is cut between its codes. */
+  /** A restart interval that is cut between its codes; it has them only while it is being cut. */
   private static final class Interval implements Packetizer.Strip {
-    private final List<Code> codes;
+    private final int[] indices;
+    private final int from;
+    private final int to;
+    private List<Code> codes = List.of();
     private int done;
+    private boolean ended;
 
-    Interval(List<Code> codes) {
-      this.codes = codes;
+    Interval(int[] indices, int from, int to) {
+      this.indices = indices;
+      this.from = from;
+      this.to = to;
     }
 
     @Override
     public boolean isDone() {
-      return done == codes.size();
+      return ended;
     }
 
     @Override
@@ -127,6 +133,9 @@ final class JpegScan {
 
     @Override
     public byte @Nullable [] take(int room, boolean whole) {
+      if (codes.isEmpty()) {
+        codes = codesOf(indices, from, to);
+      }
       Code first = codes.get(done);
       int start = done == 0 ? 1 : 1 + POSITION_BITS + PREDICTION_BITS;
       int header = BitWriter.varintBytes(first.block()) + BitWriter.varintBytes(room);
@@ -151,6 +160,10 @@ final class JpegScan {
       int spare = (int) (-bits & 7);
       out.write((1 << spare) - 1, spare);
       done = end;
+      if (done == codes.size()) {
+        ended = true;
+        codes = List.of();
+      }
       return out.toByteArray();
     }
   }
@@ -185,7 +198,7 @@ final class JpegScan {
       if (n > 0) {
         marker(out, 0xD0 + (n - 1) % 8);
       }
-      for (byte b : bytes(codes(indices, from, Math.min(blocks, from + blocksPerInterval)))) {
+      for (byte b : bytes(codesOf(indices, from, Math.min(blocks, from + blocksPerInterval)))) {
         out.write(b);
         if (b == (byte) 0xFF) {
           out.write(0);

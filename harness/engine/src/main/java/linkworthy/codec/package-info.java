@@ -7,6 +7,10 @@
  * times a {@link linkworthy.codec.Quantizer} or the like, coded by {@link
  * linkworthy.codec.RiceCoder} into units that decode alone.
  *
+ * <p>Beside it stand baseline JPEG ({@link linkworthy.codec.JpegCodec}) and wavelets ({@link
+ * linkworthy.codec.WaveletCodec}). All fill packets through {@link linkworthy.link.Packetizer} and
+ * start them with a {@link linkworthy.codec.Preamble}.
+ *
  * <p>What must stay fixed: every bit is counted; a decoder returns a picture whatever it is fed;
  * work that several codecs share goes through {@link linkworthy.codec.Memo}.
  *

@@ -17,9 +17,9 @@ import java.util.Map;
  * @param realisedNoiseVariance of this very realisation, grey levels squared; 0 for clean
  * @param snrDb signal power over equivalent noise variance, in dB; NaN for clean
  * @param codec label of the codec
- * @param transform basis of the transform codec, or empty
- * @param over arrangement, as in {@code blocks8}, or empty
- * @param keep components in force, or -1
+ * @param transform basis of the transform codec, {@code jpeg} or the wavelet, or empty
+ * @param over arrangement, as in {@code blocks8} or {@code levels5}, or empty
+ * @param keep components in force, for JPEG the quality in force, or -1
  * @param step quantiser step in grey levels, {@code none}, or empty
  * @param replicate from 0
  * @param mse against the clean picture, grey levels squared
