@@ -23,6 +23,8 @@ class ProtectedTrialsTest {
         - {noise: gaussian, snr-db: 20}
         - {noise: burst-loss, loss-rate: [0.1, 0.4], mean-burst: 1.1111111111111112, label: iid}
         - {noise: burst-loss, loss-rate: 0.1, mean-burst: 4}
+        - {noise: bit-errors, bit-error-rate: 0.001, label: flips}
+        - {noise: bit-errors, bit-error-rate: 0.0001, frame-check: true, label: checked}
       codecs:
         - {transform: pca, over: rows, keep: 8, step: 8}
         - {transform: dct, keep: 20, step: 4}
@@ -131,6 +133,32 @@ class ProtectedTrialsTest {
           .allSatisfy(t -> assertThat(t.psnrDb()).isGreaterThan(clean - 0.5))
           .allSatisfy(t -> assertThat(t.packetsLost()).isPositive());
     }
+  }
+
+  /**
+   * Frames that fail their check are erasures: at 1e-4 about 9 % of frames of 121 bytes, which
+   * further tries make up for but once in 15 000; seeds are fixed. Each transmission has a check of
+   * 2 bytes, counted.
+   */
+  @Test
+  void droppedFramesAreSentAgain() {
+    List<Trial> all = run(PROTECTED, 2);
+    double clean = of(all, "dct blocks8 K20 step4", "none").get(0).psnrDb();
+    List<Trial> retried = of(all, "dct blocks8 K20 step4 retry3", "checked");
+    assertThat(retried)
+        .allSatisfy(t -> assertThat(t.psnrDb()).isEqualTo(clean))
+        .allSatisfy(
+            t ->
+                assertThat(t.sentBits())
+                    .isEqualTo(
+                        t.payloadBits()
+                            + 8L * (23 + 2) * t.packetsSent()
+                            + 8L * 5 * (t.packetsSent() - t.packetsLost())));
+    assertThat(retried.stream().mapToInt(Trial::packetsLost).sum()).isPositive();
+    assertThat(of(all, "dct blocks8 K20 step4 rs12-8x1+retry1", "flips"))
+        .as("damaged packets reach the decoder")
+        .allSatisfy(t -> assertThat(t.packetsLost()).isZero())
+        .allSatisfy(t -> assertThat(t.psnrDb()).isLessThan(clean));
   }
 
   private static List<Trial> tenPercent(List<Trial> trials) {
