@@ -1,6 +1,8 @@
 package linkworthy.app;
 
 import java.nio.file.Path;
+import java.util.List;
+import linkworthy.codec.PluginFolder;
 import linkworthy.results.ResultsFolder;
 import linkworthy.results.ResultsWriter;
 import linkworthy.results.RunRecord;
@@ -15,6 +17,7 @@ final class Assessment {
 
   private final Surroundings surroundings;
   private final Plan plan;
+  private final List<PluginFolder.Jar> plugins;
   private final Path folder;
   private final int threads;
   private final boolean overwrite;
@@ -23,12 +26,14 @@ final class Assessment {
   Assessment(
       Surroundings surroundings,
       Plan plan,
+      List<PluginFolder.Jar> plugins,
       Path folder,
       int threads,
       boolean overwrite,
       boolean quiet) {
     this.surroundings = surroundings;
     this.plan = plan;
+    this.plugins = plugins;
     this.folder = folder;
     this.threads = threads;
     this.overwrite = overwrite;
@@ -44,12 +49,13 @@ final class Assessment {
     try (ResultsWriter writer = ResultsFolder.create(folder, overwrite)) {
       RunRecord begun =
           RunRecord.begin(
-              plan.study(),
-              Version.text(),
-              plan.manifest().fingerprint(),
-              plan.pictures(),
-              plan.trials(),
-              surroundings.clock());
+                  plan.study(),
+                  Version.text(),
+                  plan.manifest().fingerprint(),
+                  plan.pictures(),
+                  plan.trials(),
+                  surroundings.clock())
+              .withPlugins(plugins);
       writer.begin(plan.study(), begun);
       Cells cells = new Cells();
       int units = runUnits(writer, cells);
@@ -82,8 +88,9 @@ final class Assessment {
     Thread worker = Thread.currentThread();
     Thread onSignal = new Thread(() -> stop(worker), "stop");
     Runtime.getRuntime().addShutdownHook(onSignal);
+    Mishaps mishaps = new Mishaps();
     try (Progress progress = new Progress(surroundings, "assess", plan.trials(), quiet)) {
-      return new LocalRunner(plan, threads)
+      return new LocalRunner(plan, threads, mishaps::add)
           .run(
               0,
               (unit, trials, timings) -> {
@@ -92,6 +99,7 @@ final class Assessment {
                 progress.step(trials.size());
               });
     } finally {
+      mishaps.lines().forEach(surroundings.err()::println);
       release(onSignal);
     }
   }

@@ -47,7 +47,8 @@ public final class CellsCsv {
               number("realised_noise_variance_mean", Cell::realisedNoiseVarianceMean),
               number("behind_best_db", Cell::behindBestDb),
               evidence("behind_best_p_adjusted", Cell::behindBestPAdjusted),
-              words("standing", cell -> cell.standing().toString())),
+              words("standing", cell -> cell.standing().toString()),
+              whole("failures", Cell::failures)),
           CellsCsv::cell);
 
   private CellsCsv() {}
@@ -100,6 +101,7 @@ public final class CellsCsv {
         row.number("realised_noise_variance_mean"),
         row.number("behind_best_db"),
         row.number("behind_best_p_adjusted"),
-        row.oneOf("standing", List.of(Standing.values())));
+        row.oneOf("standing", List.of(Standing.values())),
+        row.whole("failures", 0, CsvRow.MAX_WHOLE));
   }
 }

@@ -43,7 +43,8 @@ public final class TrialsCsv {
               number("bits_per_pixel", Trial::bitsPerPixel),
               whole("packets_sent", Trial::packetsSent),
               whole("packets_lost", Trial::packetsLost),
-              words("outage", trial -> Boolean.toString(trial.outage()))),
+              words("outage", trial -> Boolean.toString(trial.outage())),
+              words("failure", Trial::failure)),
           TrialsCsv::trial);
 
   private TrialsCsv() {}
@@ -99,6 +100,7 @@ public final class TrialsCsv {
         row.number("bits_per_pixel"),
         row.count("packets_sent"),
         row.count("packets_lost"),
-        row.flag("outage"));
+        row.flag("outage"),
+        row.words("failure"));
   }
 }

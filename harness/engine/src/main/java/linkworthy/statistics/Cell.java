@@ -31,8 +31,9 @@ import linkworthy.input.Require;
  * @param behindBestDb how far the mean PSNR lies below the row's best, in dB; 0 for the best
  * @param behindBestPAdjusted adjusted p value of that difference, or NaN
  * @param standing what may be said of that difference
+ * @param failures number of trials in which the codec failed; they count as outages
  * @throws IllegalArgumentException if a name is empty, there is no picture, a picture without
- *     trial, or the outage rate is not 0 to 1
+ *     trial, the outage rate is not 0 to 1, or there are more failures than trials
  */
 public record Cell(
     String impairment,
@@ -59,7 +60,8 @@ public record Cell(
     double realisedNoiseVarianceMean,
     double behindBestDb,
     double behindBestPAdjusted,
-    Standing standing) {
+    Standing standing,
+    long failures) {
   public Cell {
     Require.notBlank(impairment, "impairment");
     Require.notBlank(codec, "codec");
@@ -69,5 +71,9 @@ public record Cell(
           "number of trials is " + trials + "; accepted: at least one for each picture");
     }
     Require.inRange(outageRate, 0, 1, "outage rate");
+    if (failures < 0 || failures > trials) {
+      throw new IllegalArgumentException(
+          "number of failures is " + failures + "; accepted: 0 to " + trials);
+    }
   }
 }

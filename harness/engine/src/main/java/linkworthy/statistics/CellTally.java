@@ -14,6 +14,7 @@ final class CellTally {
   private String over;
   private int keep;
   private String step;
+  private long failures;
 
   CellTally(Trial first) {
     this.first = first;
@@ -29,6 +30,7 @@ final class CellTally {
     over = over.equals(trial.over()) ? over : "";
     keep = keep == trial.keep() ? keep : -1;
     step = step.equals(trial.step()) ? step : "";
+    failures += trial.failure().isEmpty() ? 0 : 1;
   }
 
   /** Per-picture means of PSNR, in dB. */
@@ -84,7 +86,8 @@ final class CellTally {
         mean(PictureTally::realisedNoiseVariance),
         behindBestDb,
         behindBestPAdjusted,
-        standing);
+        standing,
+        failures);
   }
 
   private double mean(ToDoubleFunction<PictureTally> figure) {

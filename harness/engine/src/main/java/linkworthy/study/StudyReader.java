@@ -16,6 +16,7 @@ import java.util.OptionalInt;
 import java.util.Set;
 import linkworthy.codec.Codec;
 import linkworthy.codec.CodecFamilies;
+import linkworthy.codec.CodecReader;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
 import linkworthy.input.YamlNode;
@@ -46,7 +47,17 @@ public final class StudyReader {
    * @throws linkworthy.input.Unavailable if the file exists and cannot be read
    */
   public static Study read(Path file) {
-    return read(YamlNode.read(file), folderOf(file));
+    return read(file, CodecFamilies.installed());
+  }
+
+  /**
+   * Reads a file; its codecs are made by these families.
+   *
+   * @throws BadInput if the file cannot be used; one line with file, line and key
+   * @throws linkworthy.input.Unavailable if the file exists and cannot be read
+   */
+  public static Study read(Path file, CodecReader codecs) {
+    return read(YamlNode.read(file), folderOf(file), codecs);
   }
 
   /**
@@ -55,6 +66,16 @@ public final class StudyReader {
    * @throws BadInput if it cannot be used; one line with file, line and key
    */
   public static Study read(YamlNode root, Path baseFolder) {
+    return read(root, baseFolder, CodecFamilies.installed());
+  }
+
+  /**
+   * Reads a document that stands, or is taken to stand, in a folder; its codecs are made by these
+   * families.
+   *
+   * @throws BadInput if it cannot be used; one line with file, line and key
+   */
+  public static Study read(YamlNode root, Path baseFolder, CodecReader codecs) {
     root.onlyKeys(
         ordered(
             "name",
@@ -73,7 +94,7 @@ public final class StudyReader {
         given(root, DEFAULTS, "seed").integer(0, Study.MAX_SEED),
         pictures(root.find("pictures").orElse(DEFAULTS.get("pictures")), baseFolder),
         impairments(root.get("impairments"), baseFolder),
-        codecs(root.get("codecs"), link),
+        codecs(root.get("codecs"), link, codecs),
         link,
         replicates(given(root, DEFAULTS, "replicates")),
         measures(given(root, DEFAULTS, "measures")));
@@ -163,11 +184,11 @@ public final class StudyReader {
     return list.items().stream().map(reader::read).toList();
   }
 
-  private static List<Codec> codecs(YamlNode list, Link link) {
+  private static List<Codec> codecs(YamlNode list, Link link, CodecReader reader) {
     List<Codec> all = new ArrayList<>();
     Set<String> labels = new HashSet<>();
     for (YamlNode entry : list.items()) {
-      for (Codec codec : CodecFamilies.read(entry, link)) {
+      for (Codec codec : reader.read(entry, link)) {
         if (!labels.add(codec.label())) {
           throw entry.refuse(
               "gives the codec '"

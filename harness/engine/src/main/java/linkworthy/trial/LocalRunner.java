@@ -10,6 +10,8 @@ import java.util.concurrent.ExecutionException;
 import java.util.concurrent.ExecutorService;
 import java.util.concurrent.Executors;
 import java.util.concurrent.Future;
+import java.util.concurrent.TimeUnit;
+import java.util.function.Consumer;
 import linkworthy.input.Require;
 
 /**
@@ -20,15 +22,27 @@ public final class LocalRunner {
   /** Units waiting or running for each thread; bounds the memory that finished rows take. */
   private static final int WINDOW = 4;
 
+  private static final long PATIENCE_MS = 2000;
+
   private final Plan plan;
   private final int threads;
+  private final Consumer<Mishap> mishaps;
 
   /**
    * @param threads 1 to 1024
    */
   public LocalRunner(Plan plan, int threads) {
+    this(plan, threads, mishap -> {});
+  }
+
+  /**
+   * @param threads 1 to 1024
+   * @param mishaps takes the codecs' failures, in canonical order, before the rows of their unit
+   */
+  public LocalRunner(Plan plan, int threads, Consumer<Mishap> mishaps) {
     this.plan = plan;
     this.threads = Require.inRange(threads, 1, 1024, "threads");
+    this.mishaps = mishaps;
   }
 
   /** Takes the rows of one unit after the other, in canonical order, on one thread. */
@@ -60,6 +74,7 @@ public final class LocalRunner {
               executor.submit(() -> new UnitRunner(plan.study(), subjects.get(unit), unit).run()));
         }
         UnitRunner.Rows rows = window.remove().get();
+        rows.mishaps().forEach(mishaps);
         sink.accept(plan.unit(done++), rows.trials(), rows.timings());
       }
     } catch (InterruptedException | CancellationException e) {
@@ -71,8 +86,22 @@ public final class LocalRunner {
       throw new IllegalStateException(e.getCause());
     } finally {
       executor.shutdownNow();
+      awaitEnd(executor);
     }
     return done - firstUnit;
+  }
+
+  /** Gives units that were dropped the time to end the programs they run. */
+  private static void awaitEnd(ExecutorService executor) {
+    boolean interrupted = Thread.interrupted();
+    try {
+      boolean unused = executor.awaitTermination(PATIENCE_MS, TimeUnit.MILLISECONDS);
+    } catch (InterruptedException e) {
+      interrupted = true;
+    }
+    if (interrupted) {
+      Thread.currentThread().interrupt();
+    }
   }
 
   /** Pictures in use: one for each thread and one to come, the oldest dropped first. */

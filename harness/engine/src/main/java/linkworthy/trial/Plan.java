@@ -10,6 +10,7 @@ import linkworthy.corpus.Manifest;
 import linkworthy.corpus.ManifestEntry;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
+import linkworthy.input.Unavailable;
 import linkworthy.noise.Severity;
 import linkworthy.noise.SignalStatistics;
 import linkworthy.quality.QualityMeasures;
@@ -60,7 +61,7 @@ public final class Plan {
     PictureShape shape = PictureShape.of(picture);
     try {
       for (Codec codec : study.codecs()) {
-        codec.check(shape);
+        check(codec, shape);
       }
       for (String measure : study.measures()) {
         QualityMeasures.get(measure).check(shape);
@@ -71,6 +72,17 @@ public final class Plan {
       }
     } catch (BadInput e) {
       throw new BadInput("picture '" + entry.id() + "': " + e.getMessage(), e);
+    }
+  }
+
+  /** Codecs of the user's own may fail here as anywhere; nothing has begun yet, so this is said. */
+  private static void check(Codec codec, PictureShape shape) {
+    try {
+      codec.check(shape);
+    } catch (BadInput | Unavailable e) {
+      throw e;
+    } catch (RuntimeException | LinkageError | AssertionError | StackOverflowError e) {
+      throw new BadInput("codec '" + codec.label() + "' failed in check(): " + e, e);
     }
   }
 

@@ -26,7 +26,8 @@ package linkworthy.trial;
  * @param bitsPerPixel sent bits per sample of the picture
  * @param packetsSent packets sent
  * @param packetsLost packets that did not arrive
- * @param outage whether nothing usable arrived
+ * @param outage whether nothing usable arrived, or the codec failed
+ * @param failure the word of the codec's failure, or empty; mid-grey was judged then
  */
 public record Trial(
     String trial,
@@ -52,4 +53,5 @@ public record Trial(
     double bitsPerPixel,
     int packetsSent,
     int packetsLost,
-    boolean outage) {}
+    boolean outage,
+    String failure) {}

@@ -29,7 +29,7 @@ final class UnitRunner {
   }
 
   /** What a unit gives: a trial and its times for each codec of the study, in the study's order. */
-  record Rows(List<Trial> trials, List<Timing> timings) {}
+  record Rows(List<Trial> trials, List<Timing> timings, List<Mishap> mishaps) {}
 
   Rows run() {
     WorkUnit.Condition condition = unit.condition();
@@ -76,14 +76,19 @@ final class UnitRunner {
   private Rows evaluate(Circumstances circumstances) {
     List<Trial> trials = new ArrayList<>();
     List<Timing> timings = new ArrayList<>();
+    List<Mishap> mishaps = new ArrayList<>();
     for (Codec codec : study.codecs()) {
       long start = System.nanoTime();
-      Encoding encoding = encode(codec, circumstances);
+      GuardedCodec guarded = new GuardedCodec(codec, study.link());
+      GuardedCodec.Sent sent = encode(guarded, circumstances);
       long encoded = System.nanoTime();
-      List<byte[]> arrived = arrived(encoding, circumstances.losses());
-      Decoding decoding = codec.decode(subject.shape(), arrived);
+      List<byte[]> arrived = arrived(sent.encoding(), circumstances.losses());
+      Decoding decoding = guarded.decode(subject.shape(), sent, arrived);
       long decoded = System.nanoTime();
-      trials.add(trial(codec, circumstances, encoding, arrived.size(), decoding));
+      trials.add(trial(codec, circumstances, sent.encoding(), arrived.size(), decoding));
+      if (decoding.failure() != null) {
+        mishaps.add(new Mishap(codec.label(), unit.entry().id(), decoding.failure()));
+      }
       timings.add(
           new Timing(
               unit.entry().id(),
@@ -94,16 +99,16 @@ final class UnitRunner {
               (encoded - start) / 1e6,
               (decoded - encoded) / 1e6));
     }
-    return new Rows(trials, timings);
+    return new Rows(trials, timings, mishaps);
   }
 
   /** Encodes; an encoding of the clean picture serves all units that lose its packets. */
-  private Encoding encode(Codec codec, Circumstances circumstances) {
+  private GuardedCodec.Sent encode(GuardedCodec codec, Circumstances circumstances) {
     return circumstances
         .memo()
         .once(
             new EncodingKey(codec.label()),
-            Encoding.class,
+            GuardedCodec.Sent.class,
             () -> codec.encode(circumstances.seen(), circumstances.memo()));
   }
 
@@ -134,7 +139,7 @@ final class UnitRunner {
     int lostPackets = sentPackets - arrivedPackets;
     double realised =
         Double.isNaN(circumstances.realised())
-            ? subject.signal().variance() * lostPackets / sentPackets
+            ? subject.signal().variance() * lostPackets / Math.max(1, sentPackets)
             : circumstances.realised();
     double mse = Psnr.meanSquaredError(subject.picture(), decoding.picture());
     Link link = study.link();
@@ -166,7 +171,8 @@ final class UnitRunner {
         (double) sentBits / subject.picture().size(),
         sentPackets,
         lostPackets,
-        decoding.completeness() == Decoding.Completeness.NOTHING);
+        decoding.completeness() == Decoding.Completeness.NOTHING,
+        decoding.failure() == null ? "" : decoding.failure().word());
   }
 
   private double measured(String measure, Picture decoded) {

@@ -44,7 +44,7 @@ class TransformCodecTest extends CodecContractTest {
   }
 
   private static Codec codec(String entry) {
-    List<Codec> codecs = CodecFamilies.read(YamlNode.parse("test", entry), LINK);
+    List<Codec> codecs = CodecFamilies.installed().read(YamlNode.parse("test", entry), LINK);
     assertThat(codecs).hasSize(1);
     return codecs.get(0);
   }
@@ -98,7 +98,8 @@ class TransformCodecTest extends CodecContractTest {
         "{keep: 4} | names no codec"
       })
   void wrongEntriesAreRefusedInOneLine(String entry, String complaint) {
-    assertThatThrownBy(() -> CodecFamilies.read(YamlNode.parse("study.yaml", entry), LINK))
+    assertThatThrownBy(
+            () -> CodecFamilies.installed().read(YamlNode.parse("study.yaml", entry), LINK))
         .isInstanceOf(BadInput.class)
         .hasMessageContaining(complaint)
         .hasMessageStartingWith("study.yaml, line 1: ")
@@ -208,10 +209,11 @@ class TransformCodecTest extends CodecContractTest {
   void workIsSharedBetweenCodecs() {
     Memo memo = new Memo();
     for (Codec codec :
-        CodecFamilies.read(
-            YamlNode.parse(
-                "test", "{transform: pca, over: rows, keep: [1, 2, 4, 8], step: [8, 16]}"),
-            LINK)) {
+        CodecFamilies.installed()
+            .read(
+                YamlNode.parse(
+                    "test", "{transform: pca, over: rows, keep: [1, 2, 4, 8], step: [8, 16]}"),
+                LINK)) {
       codec.encode(TestPattern.cvp(64), memo);
     }
     assertThat(memo.computed()).as("one analysis, two sets of symbols").isEqualTo(3);
@@ -289,7 +291,8 @@ class TransformCodecTest extends CodecContractTest {
     Picture picture = TestPattern.cvp(256);
     for (Link.Order order : Link.Order.values()) {
       Codec codec =
-          CodecFamilies.read(
+          CodecFamilies.installed()
+              .read(
                   YamlNode.parse("test", "{transform: dct, keep: 16, step: 8}"),
                   new Link(96, 23, order))
               .get(0);
@@ -327,7 +330,8 @@ class TransformCodecTest extends CodecContractTest {
     }
     Picture picture = new Picture(16, 40, 8, samples);
     Codec codec =
-        CodecFamilies.read(
+        CodecFamilies.installed()
+            .read(
                 YamlNode.parse("test", "{transform: mean, keep: 0}"),
                 new Link(32, 0, Link.Order.BY_COMPONENT))
             .get(0);

@@ -99,7 +99,8 @@ class CsvFilesTest {
               number(random),
               random.nextInt(1 << 30),
               random.nextInt(1 << 30),
-              random.nextBoolean()));
+              random.nextBoolean(),
+              text(random)));
     }
     assertThat(read(TrialsCsv.text(trials))).isEqualTo(trials);
   }
@@ -123,11 +124,11 @@ class CsvFilesTest {
   @CsvSource(
       delimiter = '|',
       value = {
-        "00ff,cat | 00ff,cat,cat | line 2: the row has 25 fields; accepted: 24",
+        "00ff,cat | 00ff,cat,cat | line 2: the row has 26 fields; accepted: 25",
         "psnr_db | psnr | line 1: the columns are",
         "inf | infinity | line 2: psnr_db is 'infinity'; accepted: a number",
         "0.1, | 0x1p3, | line 3: severity is '0x1p3'",
-        "1234.5 | 1234,5 | line 3: the row has 25 fields",
+        "1234.5 | 1234,5 | line 3: the row has 26 fields",
         "4096,8192,2.5 | -1,8192,2.5 | line 2: payload_bits is '-1'; accepted: a whole number from 0",
         "true | TRUE | line 3: outage is 'TRUE'; accepted: false, true",
         "\"mine | \"m\"ine | is no table"

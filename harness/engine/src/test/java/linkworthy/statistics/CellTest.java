@@ -70,6 +70,7 @@ class CellTest {
         0,
         0,
         none,
-        Standing.BEST);
+        Standing.BEST,
+        0);
   }
 }

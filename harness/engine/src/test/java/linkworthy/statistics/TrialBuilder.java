@@ -100,6 +100,7 @@ record TrialBuilder(
         bitsPerPixel,
         4,
         0,
-        outage);
+        outage,
+        "");
   }
 }
