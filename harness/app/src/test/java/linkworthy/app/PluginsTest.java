@@ -196,6 +196,8 @@ class PluginsTest {
     refused("plugin own.jar is no jar");
     Files.write(folder().resolve("own.jar"), new byte[0]);
     refused("plugin own.jar is no jar");
+    Path another = Files.createDirectory(folder().resolve("a-folder.jar"));
+    refused("plugin " + another.getFileName() + " is no jar: it is no file");
   }
 
   @Test

@@ -75,6 +75,9 @@ public final class PluginFolder implements AutoCloseable {
     List<URL> addresses = new ArrayList<>();
     try {
       for (Path file : files) {
+        if (!Files.isRegularFile(file)) {
+          throw new BadInput(origin(file) + " is no jar: it is no file");
+        }
         jars.add(new Jar(String.valueOf(file.getFileName()), sha256(file)));
         addresses.add(file.toUri().toURL());
       }
