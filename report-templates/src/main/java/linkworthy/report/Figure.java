@@ -18,16 +18,31 @@ public record Figure(
    *
    * @param pictures number of pictures
    * @param trials number of trials on all of them
+   * @param failures number of trials in which the codec itself failed
    */
-  public record Evidence(int pictures, int trials) {
+  public record Evidence(int pictures, int trials, int failures) {
     /**
-     * @throws IllegalArgumentException if a number is negative
+     * @throws IllegalArgumentException if a number is negative, or failures are more than trials
      */
     public Evidence {
-      if (pictures < 0 || trials < 0) {
+      if (pictures < 0 || trials < 0 || failures < 0) {
         throw new IllegalArgumentException(
-            pictures + " pictures and " + trials + " trials; accepted: at least 0");
+            pictures
+                + " pictures, "
+                + trials
+                + " trials and "
+                + failures
+                + " failures; accepted: at least 0");
       }
+      if (failures > trials) {
+        throw new IllegalArgumentException(
+            failures + " failures; accepted: up to the number of trials, " + trials);
+      }
+    }
+
+    /** Trials without failure. */
+    public Evidence(int pictures, int trials) {
+      this(pictures, trials, 0);
     }
   }
 

@@ -17,6 +17,7 @@ record ReportView(
     List<LossTable> lossTables,
     List<OutageTable> outageTables,
     String outageSentence,
+    String failureSentence,
     List<SeverityRow> severities,
     List<Fact> provenance) {
 
@@ -47,7 +48,13 @@ record ReportView(
 
   /** How a codec fares when it goes badly. */
   record LossRow(
-      String codec, String psnr, String fall, String p05, String meanMse, String outage) {}
+      String codec,
+      String psnr,
+      String fall,
+      String p05,
+      String meanMse,
+      String outage,
+      String failures) {}
 
   /** Outage rates of an impairment that has any. */
   record OutageTable(String title, List<MatrixTable> tables) {}
@@ -72,6 +79,7 @@ record ReportView(
         lossTables(grid, noises),
         outages,
         outageSentence(page, outages),
+        failureSentence(page),
         severities(noises),
         provenance(page.provenance()));
   }
@@ -188,7 +196,28 @@ record ReportView(
         Numbers.db(fall),
         Numbers.db(quality.psnrP05Db()),
         Numbers.db(quality.psnrOfMeanMseDb()),
-        Numbers.percent(figure.outageRate()));
+        Numbers.percent(figure.outageRate()),
+        Numbers.count(figure.evidence().failures()));
+  }
+
+  /** Empty where no codec failed. */
+  private static String failureSentence(ReportPage page) {
+    long failures = page.figures().stream().mapToLong(f -> f.evidence().failures()).sum();
+    if (failures == 0) {
+      return "";
+    }
+    List<String> codecs =
+        page.figures().stream()
+            .filter(f -> f.evidence().failures() > 0)
+            .map(f -> f.codec().label())
+            .distinct()
+            .toList();
+    return "A codec failed in "
+        + Numbers.count(failures, "trial", "trials")
+        + ", the clean ones included ("
+        + String.join(", ", codecs)
+        + "): it crashed, hung or gave no picture. These trials are outages that the noise did not"
+        + " cause; the column failure of the record says why.";
   }
 
   private static List<OutageTable> outageTables(
@@ -215,6 +244,9 @@ record ReportView(
       return "Outage rates are not available.";
     }
     long trials = known.stream().mapToLong(f -> f.evidence().trials()).sum();
+    if (outages.isEmpty() && known.stream().anyMatch(f -> f.outageRate() > 0)) {
+      return "Outages were seen without noise, and under no noise.";
+    }
     return outages.isEmpty()
         ? "No outage was seen in "
             + Numbers.count(trials, "trial", "trials")

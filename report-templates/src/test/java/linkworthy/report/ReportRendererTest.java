@@ -234,6 +234,32 @@ class ReportRendererTest {
         .containsExactly("n/a", "n/a", "n/a", "n/a", "n/a");
   }
 
+  @Test
+  void failuresOfCodecsAreCountedWhereThereAreAny() {
+    CodecColumn codec = SamplePages.codec("dct", "rows", "K4");
+    List<Figure> figures = new ArrayList<>();
+    for (Condition condition : List.of(Condition.clean(), GAUSSIAN)) {
+      Figure figure = SamplePages.bare(condition, codec, 6, 0);
+      figures.add(
+          new Figure(
+              condition,
+              codec,
+              new Figure.Evidence(1, 10, condition.isClean() ? 1 : 7),
+              figure.quality(),
+              figure.bitsPerPixel(),
+              0.8,
+              figure.comparison()));
+    }
+    RenderedPage shown = RenderedPage.of(SamplePages.page(figures));
+    assertThat(shown.text("//section[@id='losses']"))
+        .contains("A codec failed in 8 trials, the clean ones included (dct rows K4)");
+    assertThat(shown.texts("//section[@id='losses']//table[@class='list']//tbody//td"))
+        .hasSize(6)
+        .endsWith("80.0 %", "7");
+    assertThat(RenderedPage.of(SamplePages.full()).text("//section[@id='losses']"))
+        .doesNotContain("failed", "failures");
+  }
+
   @ParameterizedTest
   @ValueSource(strings = {"de-DE", "tr-TR", "ar-EG", "hi-IN"})
   void noLocaleChangesAByte(String tag) {

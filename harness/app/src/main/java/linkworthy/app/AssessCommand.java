@@ -3,6 +3,8 @@ package linkworthy.app;
 import java.nio.file.Path;
 import java.util.List;
 import java.util.concurrent.Callable;
+import linkworthy.codec.CodecFamilies;
+import linkworthy.codec.PluginFolder;
 import linkworthy.input.BadInput;
 import linkworthy.input.YamlNode;
 import linkworthy.results.ResultsFolder;
@@ -12,6 +14,7 @@ import linkworthy.trial.Estimate;
 import linkworthy.trial.Plan;
 import org.jspecify.annotations.Nullable;
 import picocli.CommandLine.Command;
+import picocli.CommandLine.Mixin;
 import picocli.CommandLine.Option;
 import picocli.CommandLine.Parameters;
 
@@ -28,7 +31,8 @@ import picocli.CommandLine.Parameters;
       "Examples:",
       "  linkworthy assess",
       "  linkworthy assess yard.yaml --set replicates=20 --set codecs.0.step=4",
-      "  linkworthy assess yard.yaml --dry-run"
+      "  linkworthy assess yard.yaml --dry-run",
+      "  linkworthy assess yard.yaml --plugins my-plugins --allow-commands"
     })
 final class AssessCommand implements Callable<Integer> {
   private static final String BUILT_IN = "first-look.yaml";
@@ -69,6 +73,8 @@ final class AssessCommand implements Callable<Integer> {
   @Option(names = "--overwrite", description = "Replace the record in the results folder.")
   private boolean overwrite;
 
+  @Mixin private final CodecOptions codecs = new CodecOptions();
+
   @Option(names = "--quiet", description = "Show no progress and no summary.")
   private boolean quiet;
 
@@ -81,7 +87,12 @@ final class AssessCommand implements Callable<Integer> {
     if (threads < 1 || threads > MAX_THREADS) {
       throw new BadInput("--threads is " + threads + "; accepted: 1 to " + MAX_THREADS);
     }
-    Study study = study();
+    try (PluginFolder plugins = codecs.open()) {
+      return assess(study(codecs.families(plugins)), plugins);
+    }
+  }
+
+  private int assess(Study study, PluginFolder plugins) {
     Plan plan = Plan.of(study);
     if (dryRun) {
       printEstimate(plan);
@@ -92,10 +103,11 @@ final class AssessCommand implements Callable<Integer> {
             ? out
             : ResultsFolder.defaultPath(
                 surroundings.home().resolve("results"), study, surroundings.clock());
-    return new Assessment(surroundings, plan, folder, threads, overwrite, quiet).run();
+    return new Assessment(surroundings, plan, plugins.jars(), folder, threads, overwrite, quiet)
+        .run();
   }
 
-  private Study study() {
+  private Study study(CodecFamilies families) {
     YamlNode root =
         file == null
             ? YamlNode.parse(BUILT_IN, Resources.text("studies/" + BUILT_IN))
@@ -108,7 +120,7 @@ final class AssessCommand implements Callable<Integer> {
       root = root.with(setting.substring(0, equals), setting.substring(equals + 1));
     }
     Path folder = file == null ? surroundings.home() : file.toAbsolutePath().getParent();
-    return StudyReader.read(root, folder == null ? Path.of("/") : folder);
+    return StudyReader.read(root, folder == null ? Path.of("/") : folder, families);
   }
 
   private void printEstimate(Plan plan) {

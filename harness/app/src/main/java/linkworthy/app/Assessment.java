@@ -1,8 +1,10 @@
 package linkworthy.app;
 
 import java.nio.file.Path;
+import java.util.List;
 import java.util.concurrent.CountDownLatch;
 import java.util.concurrent.TimeUnit;
+import linkworthy.codec.PluginFolder;
 import linkworthy.results.ResultsFolder;
 import linkworthy.results.ResultsWriter;
 import linkworthy.results.RunRecord;
@@ -17,6 +19,7 @@ final class Assessment {
 
   private final Surroundings surroundings;
   private final Plan plan;
+  private final List<PluginFolder.Jar> plugins;
   private final Path folder;
   private final int threads;
   private final boolean overwrite;
@@ -25,12 +28,14 @@ final class Assessment {
   Assessment(
       Surroundings surroundings,
       Plan plan,
+      List<PluginFolder.Jar> plugins,
       Path folder,
       int threads,
       boolean overwrite,
       boolean quiet) {
     this.surroundings = surroundings;
     this.plan = plan;
+    this.plugins = plugins;
     this.folder = folder;
     this.threads = threads;
     this.overwrite = overwrite;
@@ -43,31 +48,33 @@ final class Assessment {
    * @return the exit code
    */
   int run() {
-    LocalRunner runner = new LocalRunner(plan, threads);
+    Mishaps mishaps = new Mishaps();
+    LocalRunner runner = new LocalRunner(plan, threads, mishaps::add);
     CountDownLatch closed = new CountDownLatch(1);
     Thread onSignal = new Thread(() -> stop(runner, closed), "stop");
     Runtime.getRuntime().addShutdownHook(onSignal);
     try {
-      return run(runner);
+      return run(runner, mishaps);
     } finally {
       closed.countDown();
       release(onSignal);
     }
   }
 
-  private int run(LocalRunner runner) {
+  private int run(LocalRunner runner, Mishaps mishaps) {
     try (ResultsWriter writer = ResultsFolder.create(folder, overwrite)) {
       RunRecord begun =
           RunRecord.begin(
-              plan.study(),
-              Version.text(),
-              plan.manifest().fingerprint(),
-              plan.pictures(),
-              plan.trials(),
-              surroundings.clock());
+                  plan.study(),
+                  Version.text(),
+                  plan.manifest().fingerprint(),
+                  plan.pictures(),
+                  plan.trials(),
+                  surroundings.clock())
+              .withPlugins(plugins);
       writer.begin(plan.study(), begun);
       Cells cells = new Cells();
-      int units = runUnits(runner, writer, cells);
+      int units = runUnits(runner, mishaps, writer, cells);
       RunRecord ended =
           begun.end((long) units * plan.study().codecs().size(), surroundings.clock());
       if (units < plan.units()) {
@@ -93,7 +100,7 @@ final class Assessment {
     }
   }
 
-  private int runUnits(LocalRunner runner, ResultsWriter writer, Cells cells) {
+  private int runUnits(LocalRunner runner, Mishaps mishaps, ResultsWriter writer, Cells cells) {
     try (Progress progress = new Progress(surroundings, "assess", plan.trials(), quiet)) {
       return runner.run(
           0,
@@ -102,6 +109,8 @@ final class Assessment {
             trials.forEach(cells::add);
             progress.step(trials.size());
           });
+    } finally {
+      mishaps.lines().forEach(surroundings.err()::println);
     }
   }
 

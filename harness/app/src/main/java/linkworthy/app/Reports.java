@@ -68,7 +68,8 @@ final class Reports {
             cell.over(),
             cell.keep() < 0 ? "" : Integer.toString(cell.keep()),
             cell.step()),
-        new Figure.Evidence(cell.pictures(), Math.toIntExact(cell.trials())),
+        new Figure.Evidence(
+            cell.pictures(), Math.toIntExact(cell.trials()), Math.toIntExact(cell.failures())),
         new Figure.Quality(
             cell.psnrMeanDb(),
             cell.psnrNoiseHalfWidthDb(),
@@ -114,7 +115,24 @@ final class Reports {
             run.end() == null ? "" : run.end().toString(),
             run.trialsPlanned(),
             run.trialsDone()),
-        settings(results.study()));
+        facts(results));
+  }
+
+  /** The settings, then what of the user's own took part. */
+  private static List<Fact> facts(ResultsFolder results) {
+    List<Fact> facts = new ArrayList<>(settings(results.studyOnPaper()));
+    for (RunRecord.PluginUsed plugin : results.run().plugins()) {
+      facts.add(new Fact("plugin " + plugin.jar(), "SHA-256 " + plugin.sha256()));
+    }
+    for (RunRecord.ProgramUsed program : results.run().programs()) {
+      facts.add(
+          new Fact(
+              "codec " + program.codec(),
+              "runs an external program, "
+                  + program.program()
+                  + "; the same study may give other numbers on another machine or day"));
+    }
+    return facts;
   }
 
   private static List<Fact> settings(Study study) {

@@ -36,6 +36,6 @@ final class Scenes {
    * packets carry 96 bytes.
    */
   static Codec codec(String entry) {
-    return CodecFamilies.read(YamlNode.parse("codec", entry), LINK).get(0);
+    return CodecFamilies.installed().read(YamlNode.parse("codec", entry), LINK).get(0);
   }
 }

@@ -46,10 +46,20 @@ public interface Codec {
   }
 
   /**
+   * Names of the programs outside this one that the codec runs. Where there are any, the same study
+   * may give other numbers on another machine or day, and the report says so.
+   */
+  default List<String> programs() {
+    return List.of();
+  }
+
+  /**
    * Encodes a picture into packets.
    *
    * @param picture what the encoder sees, noise on the samples included
    * @param memo work on this very picture that several codecs share
+   * @throws CodecFailure if it cannot; the trial is recorded as an outage with the failure's word,
+   *     and so is one whose codec throws anything else
    */
   Encoding encode(Picture picture, Memo memo);
 

@@ -1,5 +1,6 @@
 package linkworthy.codec;
 
+import java.util.Collection;
 import java.util.List;
 import java.util.ServiceLoader;
 import java.util.SortedMap;
@@ -9,33 +10,65 @@ import linkworthy.input.Spelling;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
 
-/** The codec families that are installed. */
-public final class CodecFamilies {
-  private static final SortedMap<String, CodecFamily> INSTALLED =
-      byId(ServiceLoader.load(CodecFamily.class));
+/** Codec families by id. Never changes: what adds families gives another object. */
+public final class CodecFamilies implements CodecReader {
+  private static final CodecFamilies INSTALLED =
+      new CodecFamilies(new TreeMap<>()).with(services());
 
-  private CodecFamilies() {}
+  private final SortedMap<String, CodecFamily> byId;
 
-  static SortedMap<String, CodecFamily> byId(Iterable<CodecFamily> families) {
-    SortedMap<String, CodecFamily> byId = new TreeMap<>();
-    for (CodecFamily family : families) {
-      CodecFamily other = byId.put(family.id(), family);
+  private CodecFamilies(SortedMap<String, CodecFamily> byId) {
+    this.byId = byId;
+  }
+
+  private static List<CodecFamily> services() {
+    return ServiceLoader.load(CodecFamily.class).stream().map(ServiceLoader.Provider::get).toList();
+  }
+
+  /** The families on the class path; none of them runs programs. */
+  public static CodecFamilies installed() {
+    return INSTALLED;
+  }
+
+  /**
+   * These families and more.
+   *
+   * @throws BadInput if two share an id; one line that names both
+   */
+  public CodecFamilies with(Collection<? extends CodecFamily> more) {
+    SortedMap<String, CodecFamily> all = new TreeMap<>(byId);
+    for (CodecFamily family : more) {
+      CodecFamily other = all.putIfAbsent(family.id(), family);
       if (other != null) {
-        throw new IllegalStateException(
-            "two codec families have the id '"
+        throw new BadInput(
+            origin(family)
+                + " has the id '"
                 + family.id()
-                + "': "
-                + other.getClass().getName()
-                + " and "
-                + family.getClass().getName());
+                + "', which "
+                + origin(other)
+                + " has as well; accepted: an id of its own");
       }
     }
-    return byId;
+    return new CodecFamilies(all);
+  }
+
+  private static String origin(CodecFamily family) {
+    return family instanceof PluginFamily plugin
+        ? plugin.origin()
+        : "class " + family.getClass().getName();
+  }
+
+  /** These families, with leave for {@code command} to run programs of this machine. */
+  public CodecFamilies allowingCommands() {
+    SortedMap<String, CodecFamily> all = new TreeMap<>(byId);
+    CodecFamily allowed = new CommandCodecFamily(true);
+    all.put(allowed.id(), allowed);
+    return new CodecFamilies(all);
   }
 
   /** All families, by id. */
-  public static List<CodecFamily> all() {
-    return List.copyOf(INSTALLED.values());
+  public List<CodecFamily> all() {
+    return List.copyOf(byId.values());
   }
 
   /**
@@ -44,9 +77,10 @@ public final class CodecFamilies {
    *
    * @throws BadInput if there is none, or the entry is wrong
    */
-  public static List<Codec> read(YamlNode entry, Link link) {
+  @Override
+  public List<Codec> read(YamlNode entry, Link link) {
     for (String key : entry.keys()) {
-      CodecFamily family = INSTALLED.get(key);
+      CodecFamily family = byId.get(key);
       if (family != null) {
         return family.read(entry, link);
       }
@@ -54,6 +88,6 @@ public final class CodecFamilies {
     String found = entry.keys().stream().findFirst().orElse("");
     throw entry.refuse(
         "names no codec; one key must be the kind of codec; "
-            + Spelling.hint(found, INSTALLED.keySet()));
+            + Spelling.hint(found, byId.keySet()));
   }
 }

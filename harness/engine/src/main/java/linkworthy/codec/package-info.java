@@ -15,8 +15,12 @@
  * work that several codecs share goes through {@link linkworthy.codec.Memo}.
  *
  * <p>To add a codec: one {@link linkworthy.codec.CodecFamily}, one line in {@code
- * META-INF/services}, one test that extends {@code CodecContractTest}, one line of docs. To add a
- * basis: one {@link linkworthy.codec.Basis} named in {@link linkworthy.codec.Basis#all()}.
+ * META-INF/services}, one test that extends {@code CodecContractTest}, one line of docs. The same
+ * in a jar of one's own is a plugin, read by {@link linkworthy.codec.PluginFolder}; {@code
+ * harness/handbook/plugin-example} is a whole one. Programs in any language are codecs through
+ * {@link linkworthy.codec.CommandCodecFamily}. What such codecs do wrong is a {@link
+ * linkworthy.codec.Failure}, recorded with its trial. To add a basis: one {@link
+ * linkworthy.codec.Basis} named in {@link linkworthy.codec.Basis#all()}.
  */
 @NullMarked
 package linkworthy.codec;

@@ -50,7 +50,8 @@ public final class CellsCsv {
               number("realised_noise_variance_mean", Cell::realisedNoiseVarianceMean),
               number("behind_best_db", Cell::behindBestDb),
               evidence("behind_best_p_adjusted", Cell::behindBestPAdjusted),
-              words("standing", cell -> cell.standing().toString())),
+              words("standing", cell -> cell.standing().toString()),
+              whole("failures", Cell::failures)),
           new CsvTable.Further<>(Cell::furtherMeans, MEAN),
           CellsCsv::cell);
 
@@ -105,6 +106,7 @@ public final class CellsCsv {
         row.number("behind_best_db"),
         row.number("behind_best_p_adjusted"),
         row.oneOf("standing", List.of(Standing.values())),
+        row.whole("failures", 0, CsvRow.MAX_WHOLE),
         row.further(TABLE.names().size(), MEAN));
   }
 }

@@ -10,6 +10,8 @@ import java.time.format.DateTimeFormatter;
 import java.util.List;
 import java.util.Locale;
 import java.util.function.Consumer;
+import linkworthy.codec.CodecFamilies;
+import linkworthy.codec.CodecReader;
 import linkworthy.input.BadInput;
 import linkworthy.statistics.Cell;
 import linkworthy.study.Study;
@@ -118,7 +120,29 @@ public final class ResultsFolder {
    * @throws BadInput if the file cannot be used
    */
   public Study study() {
-    Study study = StudyReader.read(folder.resolve(STUDY));
+    return study(CodecFamilies.installed());
+  }
+
+  /**
+   * The study as run, its codecs made by these families.
+   *
+   * @throws BadInput if the file cannot be used
+   */
+  public Study study(CodecReader codecs) {
+    return placed(StudyReader.read(folder.resolve(STUDY), codecs));
+  }
+
+  /**
+   * The study as run, for reading only: of its codecs it has the labels alone, so that neither
+   * plugins nor leave to run programs are needed.
+   *
+   * @throws BadInput if the file cannot be used
+   */
+  public Study studyOnPaper() {
+    return study(LabelledCodec.READER);
+  }
+
+  private Study placed(Study study) {
     Path manifest = run.manifestFile();
     return manifest == null ? study : study.withManifestAt(manifest);
   }
@@ -130,7 +154,16 @@ public final class ResultsFolder {
    *     version of the program has other noise models
    */
   public Study unchangedStudy() {
-    Study study = study();
+    return unchangedStudy(CodecFamilies.installed());
+  }
+
+  /**
+   * The same with codecs made by these families.
+   *
+   * @throws BadInput if its fingerprint is no longer that of the run
+   */
+  public Study unchangedStudy(CodecReader codecs) {
+    Study study = study(codecs);
     String found = StudyWriter.fingerprint(study);
     if (!found.equals(run.studyFingerprint())) {
       throw new BadInput(

@@ -7,6 +7,7 @@ import java.time.temporal.ChronoUnit;
 import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Set;
+import linkworthy.codec.PluginFolder;
 import linkworthy.corpus.ManifestEntry;
 import linkworthy.input.BadInput;
 import linkworthy.input.Require;
@@ -47,6 +48,8 @@ import tools.jackson.databind.json.JsonMapper;
  * @param trialsDone how many are in the record
  * @param complete whether the record has every planned trial and its cells
  * @param pictures the pictures used, with their credits
+ * @param plugins the plugin jars that were loaded, in the order of their names
+ * @param programs the programs outside this one that codecs run, in study order
  */
 public record RunRecord(
     String program,
@@ -66,7 +69,9 @@ public record RunRecord(
     long trialsPlanned,
     long trialsDone,
     boolean complete,
-    List<PictureUsed> pictures) {
+    List<PictureUsed> pictures,
+    List<PluginUsed> plugins,
+    List<ProgramUsed> programs) {
   /** Name of the file in a results folder. */
   public static final String FILE = "run.json";
 
@@ -91,6 +96,12 @@ public record RunRecord(
 
   /** A noise model in force. */
   public record ModelUsed(String id, int version, String fingerprint) {}
+
+  /** A jar with codecs of the user's own, or a library of theirs. */
+  public record PluginUsed(String jar, String sha256) {}
+
+  /** A program that a codec runs, as the study names it. */
+  public record ProgramUsed(String codec, String program) {}
 
   /** A picture used, as its manifest announces it. */
   public record PictureUsed(
@@ -140,6 +151,8 @@ public record RunRecord(
     }
     noiseModels = List.copyOf(noiseModels);
     pictures = List.copyOf(pictures);
+    plugins = List.copyOf(plugins);
+    programs = List.copyOf(programs);
   }
 
   /** The record of a run that begins now, on this machine. */
@@ -169,7 +182,38 @@ public record RunRecord(
         trialsPlanned,
         0,
         false,
-        pictures.stream().map(PictureUsed::of).toList());
+        pictures.stream().map(PictureUsed::of).toList(),
+        List.of(),
+        study.codecs().stream()
+            .flatMap(
+                codec ->
+                    codec.codec().programs().stream().map(p -> new ProgramUsed(codec.label(), p)))
+            .toList());
+  }
+
+  /** The same record of a run that has plugins. */
+  public RunRecord withPlugins(List<PluginFolder.Jar> jars) {
+    return new RunRecord(
+        program,
+        programVersion,
+        study,
+        purpose,
+        studyFingerprint,
+        corpusFingerprint,
+        manifest,
+        noiseModels,
+        seed,
+        javaVersion,
+        javaVendor,
+        operatingSystem,
+        start,
+        end,
+        trialsPlanned,
+        trialsDone,
+        complete,
+        pictures,
+        jars.stream().map(jar -> new PluginUsed(jar.name(), jar.sha256())).toList(),
+        programs);
   }
 
   /** The same record at the end of the run, or of a part of it. */
@@ -192,7 +236,9 @@ public record RunRecord(
         trialsPlanned,
         done,
         done == trialsPlanned,
-        pictures);
+        pictures,
+        plugins,
+        programs);
   }
 
   /** Where the manifest was, or null for the shipped pictures. */

@@ -44,7 +44,8 @@ public final class TrialsCsv {
               number("bits_per_pixel", Trial::bitsPerPixel),
               whole("packets_sent", Trial::packetsSent),
               whole("packets_lost", Trial::packetsLost),
-              words("outage", trial -> Boolean.toString(trial.outage()))),
+              words("outage", trial -> Boolean.toString(trial.outage())),
+              words("failure", Trial::failure)),
           new CsvTable.Further<>(Trial::further, ""),
           TrialsCsv::trial);
 
@@ -102,6 +103,7 @@ public final class TrialsCsv {
         row.count("packets_sent"),
         row.count("packets_lost"),
         row.flag("outage"),
+        row.words("failure"),
         row.further(TABLE.names().size(), ""));
   }
 }

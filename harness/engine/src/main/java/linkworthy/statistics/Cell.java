@@ -34,10 +34,11 @@ import linkworthy.input.Require;
  * @param behindBestDb how far the mean PSNR lies below the row's best, in dB; 0 for the best
  * @param behindBestPAdjusted adjusted p value of that difference, or NaN
  * @param standing what may be said of that difference
+ * @param failures number of trials in which the codec failed; they count as outages
  * @param furtherMeans means of the study's measures besides psnr and ssim, by column of the trial,
  *     in study order
  * @throws IllegalArgumentException if a name is empty, there is no picture, a picture without
- *     trial, or the outage rate is not 0 to 1
+ *     trial, the outage rate is not 0 to 1, or there are more failures than trials
  */
 public record Cell(
     String impairment,
@@ -65,6 +66,7 @@ public record Cell(
     double behindBestDb,
     double behindBestPAdjusted,
     Standing standing,
+    long failures,
     Map<String, Double> furtherMeans) {
   public Cell {
     Require.notBlank(impairment, "impairment");
@@ -75,6 +77,10 @@ public record Cell(
           "number of trials is " + trials + "; accepted: at least one for each picture");
     }
     Require.inRange(outageRate, 0, 1, "outage rate");
+    if (failures < 0 || failures > trials) {
+      throw new IllegalArgumentException(
+          "number of failures is " + failures + "; accepted: 0 to " + trials);
+    }
     furtherMeans = Collections.unmodifiableMap(new LinkedHashMap<>(furtherMeans));
   }
 }

@@ -14,6 +14,7 @@ final class CellTally {
   private String over;
   private int keep;
   private String step;
+  private long failures;
 
   CellTally(Trial first) {
     this.first = first;
@@ -29,6 +30,7 @@ final class CellTally {
     over = over.equals(trial.over()) ? over : "";
     keep = keep == trial.keep() ? keep : -1;
     step = step.equals(trial.step()) ? step : "";
+    failures += trial.failure().isEmpty() ? 0 : 1;
   }
 
   /** Per-picture means of PSNR, in dB. */
@@ -85,6 +87,7 @@ final class CellTally {
         behindBestDb,
         behindBestPAdjusted,
         standing,
+        failures,
         furtherMeans());
   }
 

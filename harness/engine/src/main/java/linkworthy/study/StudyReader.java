@@ -16,6 +16,7 @@ import java.util.OptionalInt;
 import java.util.Set;
 import linkworthy.codec.Codec;
 import linkworthy.codec.CodecFamilies;
+import linkworthy.codec.CodecReader;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
 import linkworthy.input.YamlNode;
@@ -48,7 +49,17 @@ public final class StudyReader {
    * @throws linkworthy.input.Unavailable if the file exists and cannot be read
    */
   public static Study read(Path file) {
-    return read(YamlNode.read(file), folderOf(file));
+    return read(file, CodecFamilies.installed());
+  }
+
+  /**
+   * Reads a file; its codecs are made by these families.
+   *
+   * @throws BadInput if the file cannot be used; one line with file, line and key
+   * @throws linkworthy.input.Unavailable if the file exists and cannot be read
+   */
+  public static Study read(Path file, CodecReader codecs) {
+    return read(YamlNode.read(file), folderOf(file), codecs);
   }
 
   /**
@@ -57,6 +68,16 @@ public final class StudyReader {
    * @throws BadInput if it cannot be used; one line with file, line and key
    */
   public static Study read(YamlNode root, Path baseFolder) {
+    return read(root, baseFolder, CodecFamilies.installed());
+  }
+
+  /**
+   * Reads a document that stands, or is taken to stand, in a folder; its codecs are made by these
+   * families.
+   *
+   * @throws BadInput if it cannot be used; one line with file, line and key
+   */
+  public static Study read(YamlNode root, Path baseFolder, CodecReader codecs) {
     root.onlyKeys(
         ordered(
             "name",
@@ -78,7 +99,7 @@ public final class StudyReader {
         given(root, DEFAULTS, "seed").integer(0, Study.MAX_SEED),
         pictures,
         impairments(root.get("impairments"), baseFolder),
-        codecs(root, link, pictures),
+        codecs(root, link, pictures, codecs),
         link,
         replicates(given(root, DEFAULTS, "replicates")),
         measures(given(root, DEFAULTS, "measures")));
@@ -209,7 +230,8 @@ public final class StudyReader {
     return list.items().stream().map(reader::read).toList();
   }
 
-  private static List<CodecChoice> codecs(YamlNode root, Link link, PictureChoice pictures) {
+  private static List<CodecChoice> codecs(
+      YamlNode root, Link link, PictureChoice pictures, CodecReader reader) {
     ProtectionReader protections = new ProtectionReader(DEFAULTS.get("protection"), link);
     Protection usual = protections.read(given(root, DEFAULTS, PROTECT));
     List<CodecChoice> all = new ArrayList<>();
@@ -219,7 +241,7 @@ public final class StudyReader {
       Protection protection = entry.find(PROTECT).map(protections::read).orElse(usual);
       boolean named = entry.find("label").isPresent();
       for (Codec codec :
-          CodecFamilies.read(entry.without(PROTECT), free.less(protection.overheadBytes()))) {
+          reader.read(entry.without(PROTECT), free.less(protection.overheadBytes()))) {
         CodecChoice choice =
             named
                 ? new CodecChoice(codec.label(), codec, protection)

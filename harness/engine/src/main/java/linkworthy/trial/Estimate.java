@@ -17,6 +17,9 @@ public record Estimate(double seconds, double memoryBytes, double diskBytes) {
   /** Seconds for one of the d^3 steps of an eigendecomposition of order d. */
   private static final double SECONDS_PER_EIGEN_STEP = 1.4e-9;
 
+  /** Seconds to start two programs, look after them and clean up. */
+  private static final double SECONDS_PER_COMMAND_TRIAL = 0.03;
+
   private static final double BYTES_PER_TRIAL = 330;
   private static final double BYTES_PER_SAMPLE = 200;
   private static final double BYTES_OF_PROGRAM = 100e6;
@@ -41,6 +44,11 @@ public record Estimate(double seconds, double memoryBytes, double diskBytes) {
           SECONDS_PER_SAMPLE * coded * plan.trials() / plan.pictures().size()
               + SECONDS_PER_EIGEN_STEP * order * order * order * eigendecompositions(plan);
     }
+    long commands =
+        plan.study().codecs().stream()
+            .filter(choice -> !choice.codec().programs().isEmpty())
+            .count();
+    work += SECONDS_PER_COMMAND_TRIAL * commands * plan.units();
     return new Estimate(
         work / threads,
         BYTES_OF_PROGRAM + BYTES_PER_SAMPLE * largest * threads,

@@ -12,6 +12,7 @@ import java.util.concurrent.Executors;
 import java.util.concurrent.Future;
 import java.util.concurrent.TimeUnit;
 import java.util.concurrent.TimeoutException;
+import java.util.function.Consumer;
 import linkworthy.input.Require;
 
 /**
@@ -25,16 +26,28 @@ public final class LocalRunner {
   /** How often a wait for a unit looks whether to stop, in milliseconds. */
   private static final long GLANCE_MS = 50;
 
+  private static final long PATIENCE_MS = 2000;
+
   private final Plan plan;
   private final int threads;
+  private final Consumer<Mishap> mishaps;
   private volatile boolean stopped;
 
   /**
    * @param threads 1 to 1024
    */
   public LocalRunner(Plan plan, int threads) {
+    this(plan, threads, mishap -> {});
+  }
+
+  /**
+   * @param threads 1 to 1024
+   * @param mishaps takes the codecs' failures, in canonical order, before the rows of their unit
+   */
+  public LocalRunner(Plan plan, int threads, Consumer<Mishap> mishaps) {
     this.plan = plan;
     this.threads = Require.inRange(threads, 1, 1024, "threads");
+    this.mishaps = mishaps;
   }
 
   /** Takes the rows of one unit after the other, in canonical order, on one thread. */
@@ -67,6 +80,7 @@ public final class LocalRunner {
         }
         if (isReady(window.element())) {
           UnitRunner.Rows rows = window.remove().get();
+          rows.mishaps().forEach(mishaps);
           sink.accept(plan.unit(done++), rows.trials(), rows.timings());
         }
       }
@@ -82,6 +96,7 @@ public final class LocalRunner {
       throw new IllegalStateException(e.getCause());
     } finally {
       executor.shutdownNow();
+      awaitEnd(executor);
     }
     return done - firstUnit;
   }
@@ -100,6 +115,19 @@ public final class LocalRunner {
       return true;
     } catch (TimeoutException notYet) {
       return false;
+    }
+  }
+
+  /** Gives units that were dropped the time to end the programs they run. */
+  private static void awaitEnd(ExecutorService executor) {
+    boolean interrupted = Thread.interrupted();
+    try {
+      boolean unused = executor.awaitTermination(PATIENCE_MS, TimeUnit.MILLISECONDS);
+    } catch (InterruptedException e) {
+      interrupted = true;
+    }
+    if (interrupted) {
+      Thread.currentThread().interrupt();
     }
   }
 

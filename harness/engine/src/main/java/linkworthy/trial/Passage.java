@@ -13,7 +13,7 @@ interface Passage {
 
   /** The way of one codec's packets, and what came of it so far. */
   interface Crossing extends Channel.Air {
-    /** Noise variance of this very realisation, grey levels squared. */
+    /** Noise variance of this very realisation, grey levels squared; 0 if nothing was sent. */
     double realisedNoiseVariance();
   }
 
@@ -82,7 +82,7 @@ interface Passage {
 
     @Override
     public double realisedNoiseVariance() {
-      return pictureVariance * lost / sent;
+      return pictureVariance * lost / Math.max(1, sent);
     }
   }
 
@@ -131,7 +131,7 @@ interface Passage {
 
     @Override
     public double realisedNoiseVariance() {
-      double share = (double) flippedBits / payloadBits;
+      double share = (double) flippedBits / Math.max(1, payloadBits);
       return share * peak * (peak + 2.0) / 3;
     }
   }

@@ -2,11 +2,13 @@ package linkworthy.trial;
 
 import java.util.ArrayList;
 import java.util.List;
+import linkworthy.codec.Codec;
 import linkworthy.codec.PictureShape;
 import linkworthy.corpus.Manifest;
 import linkworthy.corpus.ManifestEntry;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
+import linkworthy.input.Unavailable;
 import linkworthy.noise.Severity;
 import linkworthy.noise.SignalStatistics;
 import linkworthy.quality.QualityMeasures;
@@ -61,7 +63,7 @@ public final class Plan {
     try {
       for (Picture coded : new PlaneCoding(study.pictures()).coded(planes)) {
         for (CodecChoice choice : study.codecs()) {
-          choice.codec().check(PictureShape.of(coded));
+          check(choice.codec(), PictureShape.of(coded));
         }
       }
       for (String measure : study.measures()) {
@@ -73,6 +75,17 @@ public final class Plan {
       }
     } catch (BadInput e) {
       throw new BadInput("picture '" + entry.id() + "': " + e.getMessage(), e);
+    }
+  }
+
+  /** Codecs of the user's own may fail here as anywhere; nothing has begun yet, so this is said. */
+  private static void check(Codec codec, PictureShape shape) {
+    try {
+      codec.check(shape);
+    } catch (BadInput | Unavailable e) {
+      throw e;
+    } catch (RuntimeException | LinkageError | AssertionError | StackOverflowError e) {
+      throw new BadInput("codec '" + codec.label() + "' failed in check(): " + e, e);
     }
   }
 

@@ -5,12 +5,14 @@ import java.util.List;
 import linkworthy.codec.Codec;
 import linkworthy.codec.Decoding;
 import linkworthy.codec.Encoding;
+import linkworthy.codec.Failure;
 import linkworthy.codec.Memo;
 import linkworthy.codec.PictureShape;
 import linkworthy.corpus.AreaAverage;
 import linkworthy.corpus.Picture;
 import linkworthy.link.Packet;
 import linkworthy.study.PictureChoice;
+import org.jspecify.annotations.Nullable;
 
 /**
  * How the planes of a picture go through a codec that knows one plane. With {@code planes: luma}
@@ -33,11 +35,18 @@ final class PlaneCoding {
   /**
    * @param planes all of the size of the first
    * @param completeness NOTHING where no plane had anything, COMPLETE where all were complete
+   * @param failure of the first plane whose decoder failed, or null
    */
-  record Decoded(List<Picture> planes, Decoding.Completeness completeness) {
+  record Decoded(
+      List<Picture> planes, Decoding.Completeness completeness, @Nullable Failure failure) {
     Picture luma() {
       return planes.get(0);
     }
+  }
+
+  /** Makes a plane of what arrived. */
+  interface Decoder {
+    Decoding decode(PictureShape shape, List<byte[]> arrived);
   }
 
   /** The planes as they are coded. */
@@ -70,7 +79,7 @@ final class PlaneCoding {
         byte[] payload = new byte[packet.length() + 1];
         payload[0] = (byte) plane;
         System.arraycopy(packet.payload(), 0, payload, 1, packet.length());
-        packets.add(new Packet(payload, packet.importance()));
+        packets.add(new Packet(payload, packet.importance(), packet.node()));
       }
     }
     return new Encoding(packets, keep);
@@ -81,18 +90,20 @@ final class PlaneCoding {
    *
    * @param coded shapes of the planes as they were coded
    */
-  Decoded decode(Codec codec, List<PictureShape> coded, List<byte[]> arrived) {
+  Decoded decode(Decoder decoder, List<PictureShape> coded, List<byte[]> arrived) {
     if (!numbered) {
-      Decoding decoding = codec.decode(coded.get(0), arrived);
-      return new Decoded(List.of(decoding.picture()), decoding.completeness());
+      Decoding decoding = decoder.decode(coded.get(0), arrived);
+      return new Decoded(List.of(decoding.picture()), decoding.completeness(), decoding.failure());
     }
     List<Picture> planes = new ArrayList<>();
     int complete = 0;
     int nothing = 0;
+    Failure failure = null;
     for (int plane = 0; plane < coded.size(); plane++) {
-      Decoding decoding = codec.decode(coded.get(plane), ofPlane(plane, arrived));
+      Decoding decoding = decoder.decode(coded.get(plane), ofPlane(plane, arrived));
       complete += decoding.completeness() == Decoding.Completeness.COMPLETE ? 1 : 0;
       nothing += decoding.completeness() == Decoding.Completeness.NOTHING ? 1 : 0;
+      failure = failure == null ? decoding.failure() : failure;
       planes.add(stretched(decoding.picture(), coded.get(0)));
     }
     Decoding.Completeness completeness =
@@ -101,7 +112,7 @@ final class PlaneCoding {
             : nothing == planes.size()
                 ? Decoding.Completeness.NOTHING
                 : Decoding.Completeness.PARTIAL;
-    return new Decoded(planes, completeness);
+    return new Decoded(planes, completeness, failure);
   }
 
   private static List<byte[]> ofPlane(int plane, List<byte[]> arrived) {

@@ -34,7 +34,8 @@ import java.util.Map;
  *     acknowledgements, which are never lost
  * @param packetsLost those of them that did not arrive or were dropped by a frame check, whether or
  *     not protection made up for it
- * @param outage whether nothing usable arrived
+ * @param outage whether nothing usable arrived, or the codec failed
+ * @param failure the word of the codec's failure, or empty; mid-grey was judged then
  * @param further figures of the study's measures besides psnr and ssim, by column, in study order
  */
 public record Trial(
@@ -62,6 +63,7 @@ public record Trial(
     int packetsSent,
     int packetsLost,
     boolean outage,
+    String failure,
     Map<String, Double> further) {
   public Trial {
     further = Collections.unmodifiableMap(new LinkedHashMap<>(further));

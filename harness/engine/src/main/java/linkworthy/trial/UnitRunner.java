@@ -34,7 +34,7 @@ final class UnitRunner {
   }
 
   /** What a unit gives: a trial and its times for each codec of the study, in the study's order. */
-  record Rows(List<Trial> trials, List<Timing> timings) {}
+  record Rows(List<Trial> trials, List<Timing> timings, List<Mishap> mishaps) {}
 
   Rows run() {
     WorkUnit.Condition condition = unit.condition();
@@ -106,24 +106,32 @@ final class UnitRunner {
   private Rows evaluate(Circumstances circumstances) {
     List<Trial> trials = new ArrayList<>();
     List<Timing> timings = new ArrayList<>();
+    List<Mishap> mishaps = new ArrayList<>();
     for (CodecChoice choice : study.codecs()) {
+      GuardedCodec codec =
+          new GuardedCodec(
+              choice.codec(),
+              study.link().less(choice.protection().overheadBytes()),
+              subject.coding());
       long start = System.nanoTime();
-      Encoding encoding = encode(choice, circumstances);
+      GuardedCodec.Sent sent = encode(choice, codec, circumstances);
       long encoded = System.nanoTime();
       Passage.Crossing crossing = circumstances.passage().open();
       Channel.Outcome outcome =
-          new Channel(study.link(), choice.protection()).send(encoding.packets(), crossing);
-      PlaneCoding.Decoded decoding =
-          subject.coding().decode(choice.codec(), subject.shapes(), outcome.payloads());
+          new Channel(study.link(), choice.protection()).send(sent.encoding().packets(), crossing);
+      PlaneCoding.Decoded decoding = codec.decode(subject.shapes(), sent, outcome.payloads());
       long decoded = System.nanoTime();
       trials.add(
           trial(
               choice,
               circumstances.expected(),
               crossing.realisedNoiseVariance(),
-              encoding,
+              sent.encoding(),
               outcome,
               decoding));
+      if (decoding.failure() != null) {
+        mishaps.add(new Mishap(choice.label(), unit.entry().id(), decoding.failure()));
+      }
       timings.add(
           new Timing(
               unit.entry().id(),
@@ -134,14 +142,15 @@ final class UnitRunner {
               (encoded - start) / 1e6,
               (decoded - encoded) / 1e6));
     }
-    return new Rows(trials, timings);
+    return new Rows(trials, timings, mishaps);
   }
 
   /**
    * Encodes; an encoding of the clean picture serves all units that hurt its packets, and all
    * protections that leave packets of the same size.
    */
-  private Encoding encode(CodecChoice choice, Circumstances circumstances) {
+  private GuardedCodec.Sent encode(
+      CodecChoice choice, GuardedCodec codec, Circumstances circumstances) {
     Map<String, Object> settings = new HashMap<>(choice.codec().settings());
     settings.remove("label");
     return circumstances
@@ -149,11 +158,8 @@ final class UnitRunner {
         .get(0)
         .once(
             new EncodingKey(settings, choice.protection().overheadBytes()),
-            Encoding.class,
-            () ->
-                subject
-                    .coding()
-                    .encode(choice.codec(), circumstances.seen(), circumstances.memos()));
+            GuardedCodec.Sent.class,
+            () -> codec.encode(circumstances.seen(), circumstances.memos()));
   }
 
   private String impairmentLabel() {
@@ -199,6 +205,7 @@ final class UnitRunner {
         outcome.packetsSent(),
         outcome.packetsLost(),
         decoding.completeness() == Decoding.Completeness.NOTHING,
+        decoding.failure() == null ? "" : decoding.failure().word(),
         further(decoding.luma()));
   }
 

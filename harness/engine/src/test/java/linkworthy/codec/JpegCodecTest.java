@@ -53,7 +53,7 @@ class JpegCodecTest extends CodecContractTest {
   }
 
   private static JpegCodec codec(String entry) {
-    List<Codec> codecs = CodecFamilies.read(YamlNode.parse("study.yaml", entry), LINK);
+    List<Codec> codecs = CodecFamilies.installed().read(YamlNode.parse("study.yaml", entry), LINK);
     assertThat(codecs).hasSize(1);
     return (JpegCodec) codecs.get(0);
   }
@@ -91,7 +91,8 @@ class JpegCodecTest extends CodecContractTest {
         "{jpeg: baseline, qualty: 30} | did you mean 'quality'"
       })
   void wrongEntriesAreRefusedInOneLine(String entry, String complaint) {
-    assertThatThrownBy(() -> CodecFamilies.read(YamlNode.parse("study.yaml", entry), LINK))
+    assertThatThrownBy(
+            () -> CodecFamilies.installed().read(YamlNode.parse("study.yaml", entry), LINK))
         .isInstanceOf(BadInput.class)
         .hasMessageContaining(complaint)
         .hasMessageStartingWith("study.yaml, line 1: ")

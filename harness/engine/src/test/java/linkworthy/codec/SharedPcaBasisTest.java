@@ -23,7 +23,7 @@ class SharedPcaBasisTest {
   }
 
   private static Codec codec(String entry) {
-    return CodecFamilies.read(YamlNode.parse("study.yaml", entry), LINK).get(0);
+    return CodecFamilies.installed().read(YamlNode.parse("study.yaml", entry), LINK).get(0);
   }
 
   private static double[][] centred(Picture picture) {

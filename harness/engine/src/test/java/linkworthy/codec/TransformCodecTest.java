@@ -51,7 +51,7 @@ class TransformCodecTest extends CodecContractTest {
   }
 
   private static Codec codec(String entry) {
-    List<Codec> codecs = CodecFamilies.read(YamlNode.parse("test", entry), LINK);
+    List<Codec> codecs = CodecFamilies.installed().read(YamlNode.parse("test", entry), LINK);
     assertThat(codecs).hasSize(1);
     return codecs.get(0);
   }
@@ -135,7 +135,8 @@ class TransformCodecTest extends CodecContractTest {
         "{keep: 4} | names no codec"
       })
   void wrongEntriesAreRefusedInOneLine(String entry, String complaint) {
-    assertThatThrownBy(() -> CodecFamilies.read(YamlNode.parse("study.yaml", entry), LINK))
+    assertThatThrownBy(
+            () -> CodecFamilies.installed().read(YamlNode.parse("study.yaml", entry), LINK))
         .isInstanceOf(BadInput.class)
         .hasMessageContaining(complaint)
         .hasMessageStartingWith("study.yaml, line 1: ")
@@ -193,7 +194,8 @@ class TransformCodecTest extends CodecContractTest {
       Memo memo = new Memo();
       for (int k = 0; k <= 64; k++) {
         Encoding encoding =
-            CodecFamilies.read(YamlNode.parse("test", transform + "\nkeep: " + k), link)
+            CodecFamilies.installed()
+                .read(YamlNode.parse("test", transform + "\nkeep: " + k), link)
                 .get(0)
                 .encode(picture, memo);
         rates[k] =
@@ -206,8 +208,8 @@ class TransformCodecTest extends CodecContractTest {
           best = rates[k] <= target ? k : best;
         }
         Codec codec =
-            CodecFamilies.read(
-                    YamlNode.parse("test", transform + "\nbits-per-pixel: " + target), link)
+            CodecFamilies.installed()
+                .read(YamlNode.parse("test", transform + "\nbits-per-pixel: " + target), link)
                 .get(0);
         int kept = codec.encode(picture, memo).keep();
         assertThat(rates[kept]).as("%s %s at %s", transform, order, target).isEqualTo(rates[best]);
@@ -291,10 +293,11 @@ class TransformCodecTest extends CodecContractTest {
   void workIsSharedBetweenCodecs() {
     Memo memo = new Memo();
     for (Codec codec :
-        CodecFamilies.read(
-            YamlNode.parse(
-                "test", "{transform: pca, over: rows, keep: [1, 2, 4, 8], step: [8, 16]}"),
-            LINK)) {
+        CodecFamilies.installed()
+            .read(
+                YamlNode.parse(
+                    "test", "{transform: pca, over: rows, keep: [1, 2, 4, 8], step: [8, 16]}"),
+                LINK)) {
       codec.encode(TestPattern.cvp(64), memo);
     }
     assertThat(memo.computed()).as("one analysis, two sets of symbols").isEqualTo(3);
@@ -372,7 +375,8 @@ class TransformCodecTest extends CodecContractTest {
     Picture picture = TestPattern.cvp(256);
     for (Link.Order order : Link.Order.values()) {
       Codec codec =
-          CodecFamilies.read(
+          CodecFamilies.installed()
+              .read(
                   YamlNode.parse("test", "{transform: dct, keep: 16, step: 8}"),
                   new Link(96, 23, order))
               .get(0);
@@ -410,7 +414,8 @@ class TransformCodecTest extends CodecContractTest {
     }
     Picture picture = new Picture(16, 40, 8, samples);
     Codec codec =
-        CodecFamilies.read(
+        CodecFamilies.installed()
+            .read(
                 YamlNode.parse("test", "{transform: mean, keep: 0}"),
                 new Link(32, 0, Link.Order.BY_COMPONENT))
             .get(0);

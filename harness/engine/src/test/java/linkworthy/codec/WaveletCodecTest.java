@@ -40,7 +40,7 @@ class WaveletCodecTest extends CodecContractTest {
   }
 
   private static Codec codec(String entry, Link link) {
-    List<Codec> codecs = CodecFamilies.read(YamlNode.parse("study.yaml", entry), link);
+    List<Codec> codecs = CodecFamilies.installed().read(YamlNode.parse("study.yaml", entry), link);
     assertThat(codecs).hasSize(1);
     return codecs.get(0);
   }
@@ -75,7 +75,8 @@ class WaveletCodecTest extends CodecContractTest {
         "{wavelet: cdf-9-7, level: 3} | did you mean 'levels'"
       })
   void wrongEntriesAreRefusedInOneLine(String entry, String complaint) {
-    assertThatThrownBy(() -> CodecFamilies.read(YamlNode.parse("study.yaml", entry), LINK))
+    assertThatThrownBy(
+            () -> CodecFamilies.installed().read(YamlNode.parse("study.yaml", entry), LINK))
         .isInstanceOf(BadInput.class)
         .hasMessageContaining(complaint)
         .hasMessageStartingWith("study.yaml, line 1: ")

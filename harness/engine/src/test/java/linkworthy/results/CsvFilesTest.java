@@ -105,6 +105,7 @@ class CsvFilesTest {
               random.nextInt(1 << 30),
               random.nextInt(1 << 30),
               random.nextBoolean(),
+              text(random),
               further(random)));
     }
     assertThat(read(TrialsCsv.text(trials))).isEqualTo(trials);
@@ -136,9 +137,9 @@ class CsvFilesTest {
   void furtherMeasuresStandBehindTheFixedColumns() throws IOException {
     String trials =
         Samples.TRIALS
-            .replace(",outage\n", ",outage,spread_db,blur\n")
-            .replace(",false\n", ",false,inf,0.25\n")
-            .replace(",true\n", ",true,-3.0,\n");
+            .replace(",failure\n", ",failure,spread_db,blur\n")
+            .replace(",false,\n", ",false,,inf,0.25\n")
+            .replace(",decode-exit\n", ",decode-exit,-3.0,\n");
     List<Trial> read = read(trials);
     assertThat(read.get(0).further())
         .containsExactly(entry("spread_db", Double.POSITIVE_INFINITY), entry("blur", 0.25));
@@ -148,9 +149,9 @@ class CsvFilesTest {
 
     String cells =
         Samples.CELLS_TEXT
-            .replace(",standing\n", ",standing,spread_db_mean,blur_mean\n")
-            .replace(",untested\n", ",untested,inf,0.25\n")
-            .replace(",below\n", ",below,-3.0,\n");
+            .replace(",failures\n", ",failures,spread_db_mean,blur_mean\n")
+            .replace(",untested,0\n", ",untested,0,inf,0.25\n")
+            .replace(",below,2\n", ",below,2,-3.0,\n");
     Path file = folder.resolve("cells.csv");
     Files.writeString(file, cells);
     assertThat(CellsCsv.read(file).get(1).furtherMeans())
@@ -169,26 +170,28 @@ class CsvFilesTest {
   }
 
   @ParameterizedTest
-  @ValueSource(strings = {"outage,outage", "outage,Blur", "outage,", "outage,blur,blur", "blur"})
+  @ValueSource(
+      strings = {"failure,failure", "failure,Blur", "failure,", "failure,blur,blur", "blur"})
   void aHeaderThatIsNoneIsRefused(String end) {
     assertThatExceptionOfType(BadInput.class)
         .isThrownBy(
             () ->
                 read(
-                    Samples.TRIALS.lines().findFirst().orElseThrow().replace("outage", end) + "\n"))
+                    Samples.TRIALS.lines().findFirst().orElseThrow().replace("failure", end)
+                        + "\n"))
         .withMessageContaining("line 1: the columns are")
-        .withMessageEndingWith("outage, then one for each further measure, each once");
+        .withMessageEndingWith("failure, then one for each further measure, each once");
   }
 
   @ParameterizedTest
   @CsvSource(
       delimiter = '|',
       value = {
-        "00ff,cat | 00ff,cat,cat | line 2: the row has 25 fields; accepted: 24",
+        "00ff,cat | 00ff,cat,cat | line 2: the row has 26 fields; accepted: 25",
         "psnr_db | psnr | line 1: the columns are",
         "inf | infinity | line 2: psnr_db is 'infinity'; accepted: a number",
         "0.1, | 0x1p3, | line 3: severity is '0x1p3'",
-        "1234.5 | 1234,5 | line 3: the row has 25 fields",
+        "1234.5 | 1234,5 | line 3: the row has 26 fields",
         "4096,8192,2.5 | -1,8192,2.5 | line 2: payload_bits is '-1'; accepted: a whole number from 0",
         "true | TRUE | line 3: outage is 'TRUE'; accepted: false, true",
         "\"mine | \"m\"ine | is no table"

@@ -99,9 +99,9 @@ class ResultsFolderTest {
       writer.finish(cells.toList(), run.end(plan.trials(), Samples.CLOCK));
     }
     assertThat(Files.readString(out.resolve("trials.csv")))
-        .contains(",outage,mean_absolute_error\n");
+        .contains(",outage,failure,mean_absolute_error\n");
     assertThat(Files.readString(out.resolve("cells.csv")))
-        .contains(",standing,mean_absolute_error_mean\n");
+        .contains(",standing,failures,mean_absolute_error_mean\n");
     ResultsFolder folder = ResultsFolder.open(out);
     List<Trial> trials = new ArrayList<>();
     assertThat(folder.trials(trials::add)).isEqualTo(3);

@@ -47,6 +47,7 @@ final class Samples {
           12,
           0,
           false,
+          "",
           Map.of());
 
   static final Trial NOISY =
@@ -75,16 +76,17 @@ final class Samples {
           12,
           12,
           true,
+          "decode-exit",
           Map.of());
 
   static final String TRIALS =
       """
       trial,picture,impairment,acts_on,axis,severity,equivalent_noise_variance,\
       realised_noise_variance,snr_db,codec,transform,over,keep,step,replicate,mse,psnr_db,ssim,\
-      payload_bits,sent_bits,bits_per_pixel,packets_sent,packets_lost,outage
-      00ff,cat,none,,,,0.0,0.0,,mean rows step16,mean,rows,,16,0,0.0,inf,,4096,8192,2.5,12,0,false
+      payload_bits,sent_bits,bits_per_pixel,packets_sent,packets_lost,outage,failure
+      00ff,cat,none,,,,0.0,0.0,,mean rows step16,mean,rows,,16,0,0.0,inf,,4096,8192,2.5,12,0,false,
       1a2b,cat,"mine, ""so""\",packets,loss-rate,0.1,1234.5,1.0E-5,-30.0,pca rows K16 step8,pca,\
-      rows,16,8,3,2.0E23,12.34567890123456,0.5,4096,8192,1.0E7,12,12,true
+      rows,16,8,3,2.0E23,12.34567890123456,0.5,4096,8192,1.0E7,12,12,true,decode-exit
       """;
 
   static final List<Cell> CELLS =
@@ -115,6 +117,7 @@ final class Samples {
               Double.NaN,
               Double.NaN,
               Standing.UNTESTED,
+              0,
               Map.of()),
           new Cell(
               "gaussian",
@@ -142,6 +145,7 @@ final class Samples {
               0.5,
               0.03125,
               Standing.BELOW,
+              2,
               Map.of()));
 
   static final String CELLS_TEXT =
@@ -149,10 +153,10 @@ final class Samples {
       impairment,acts_on,axis,severity,equivalent_noise_variance,snr_db,codec,transform,over,keep,\
       step,pictures,trials,psnr_mean_db,psnr_noise_half_width_db,psnr_picture_half_width_db,\
       psnr_of_mean_mse_db,psnr_p05_db,ssim_mean,bits_per_pixel_mean,outage_rate,\
-      realised_noise_variance_mean,behind_best_db,behind_best_p_adjusted,standing
-      none,,,,0.0,,mean rows step16,mean,rows,,16,1,1,inf,n/a,n/a,inf,inf,,2.5,0.0,0.0,,n/a,untested
+      realised_noise_variance_mean,behind_best_db,behind_best_p_adjusted,standing,failures
+      none,,,,0.0,,mean rows step16,mean,rows,,16,1,1,inf,n/a,n/a,inf,inf,,2.5,0.0,0.0,,n/a,untested,0
       gaussian,samples,snr-db,20.0,30.25,20.0,pca rows K16 step8,pca,rows,16,8,12,60,31.5,0.25,1.75,\
-      30.0,28.0,0.875,1.25,0.0,30.0,0.5,0.03125,below
+      30.0,28.0,0.875,1.25,0.0,30.0,0.5,0.03125,below,2
       """;
 
   static final Timing TIMING = new Timing("cat", "gaussian", 20, 0, "mean rows step16", 1.5, 0.25);

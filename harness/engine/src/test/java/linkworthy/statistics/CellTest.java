@@ -72,6 +72,7 @@ class CellTest {
         0,
         none,
         Standing.BEST,
+        0,
         Map.of());
   }
 }

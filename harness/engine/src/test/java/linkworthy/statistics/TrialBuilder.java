@@ -136,6 +136,7 @@ record TrialBuilder(
         4,
         0,
         outage,
+        "",
         further);
   }
 }

@@ -166,16 +166,20 @@ class PlanesTest {
         .isEqualTo((subject.shapes().get(0).width() + 1) / 2);
 
     List<byte[]> blue = encoding.payloads().stream().filter(p -> p[0] == 1).toList();
-    PlaneCoding.Decoded decoded = subject.coding().decode(codec, subject.shapes(), blue);
+    PlaneCoding.Decoded decoded = subject.coding().decode(codec::decode, subject.shapes(), blue);
     assertThat(decoded.completeness()).isEqualTo(Decoding.Completeness.PARTIAL);
     assertThat(decoded.luma().samples()).containsOnly(128);
     assertThat(decoded.planes().get(1).samples()).isNotEqualTo(decoded.luma().samples());
     assertThat(decoded.planes().stream().map(PictureShape::of).distinct()).hasSize(1);
 
     List<byte[]> strange = List.of(new byte[0], new byte[] {3, 1, 2}, new byte[] {-1});
-    assertThat(subject.coding().decode(codec, subject.shapes(), strange).completeness())
+    assertThat(subject.coding().decode(codec::decode, subject.shapes(), strange).completeness())
         .isEqualTo(Decoding.Completeness.NOTHING);
-    assertThat(subject.coding().decode(codec, subject.shapes(), encoding.payloads()).completeness())
+    assertThat(
+            subject
+                .coding()
+                .decode(codec::decode, subject.shapes(), encoding.payloads())
+                .completeness())
         .isEqualTo(Decoding.Completeness.COMPLETE);
   }
 }

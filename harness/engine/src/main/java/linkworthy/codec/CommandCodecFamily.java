@@ -1,0 +1,122 @@
+package linkworthy.codec;
+
+import java.nio.file.Path;
+import java.util.LinkedHashSet;
+import java.util.List;
+import java.util.Set;
+import linkworthy.input.YamlNode;
+import linkworthy.link.Link;
+
+/**
+ * Reads codecs that are programs of the user's own: {@code command: {encode: [...], decode:
+ * [...]}}. Refuses every entry unless the user has allowed programs to be run.
+ */
+public final class CommandCodecFamily implements CodecFamily {
+  private static final String ID = "command";
+  private static final String AUTO = "auto";
+  private static final Set<String> KEYS =
+      new LinkedHashSet<>(List.of(ID, "on-loss", "seconds", "output-bytes", "memory-mib", "label"));
+
+  private final boolean allowed;
+
+  /** The family as it is found on the class path: it runs nothing. */
+  public CommandCodecFamily() {
+    this(false);
+  }
+
+  /**
+   * @param allowed whether programs may be run
+   */
+  CommandCodecFamily(boolean allowed) {
+    this.allowed = allowed;
+  }
+
+  @Override
+  public String id() {
+    return ID;
+  }
+
+  @Override
+  public String help() {
+    return """
+        command: {encode: [PROGRAM, ARGUMENT, ...], decode: [PROGRAM, ARGUMENT, ...]}
+          Any two programs of this machine, run only with --allow-commands. encode gets a PGM file
+          (8 or 16 bits a sample) and writes any bytes; decode gets those bytes and writes a PGM
+          of the same size and depth. {input}, {output}, {width} and {height} in the arguments are
+          replaced; no shell reads them, so spaces and other characters stay as they are. A PROGRAM
+          is a name on the PATH or an absolute path.
+          on-loss:      truncate (decode what came before the first missing byte), zero-fill (zeros
+                        in place of the missing bytes) or drop-picture (any loss is an outage)
+                        (truncate)
+          seconds:      longest time for one call, 1 to 3600 (30)
+          output-bytes: most that one call may write to its folder, or auto: 4 times the raw
+                        picture and 1 MiB (auto)
+          memory-mib:   most address space of each process, in MiB (1024); not limited where the
+                        program prlimit of util-linux is missing
+          label:        name in tables (command, PROGRAM of encode, on-loss)
+        Each call has a folder of its own, deleted afterwards, as its current folder, HOME and
+        TMPDIR; of the environment it sees PATH alone, and no input but the file. A call that takes
+        too long or writes too much is ended with all its processes. Whatever goes wrong is an
+        outage of that one trial, named in the column failure. This is no sandbox: a program may
+        do all that you may do, write outside its folder and use the network included. Run
+        programs that you trust.
+        Sent, and counted: every byte that encode writes, and 10 bytes a packet that say where it
+        belongs. What it costs at the node is the program's affair.""";
+  }
+
+  @Override
+  public List<Codec> read(YamlNode entry, Link link) {
+    entry.onlyKeys(KEYS);
+    YamlNode command = entry.get(ID);
+    command.onlyKeys(new LinkedHashSet<>(List.of("encode", "decode")));
+    List<String> encode = arguments(command.get("encode"));
+    List<String> decode = arguments(command.get("decode"));
+    if (!allowed) {
+      throw command.refuse(
+          "runs programs of this machine ("
+              + encode.get(0)
+              + ", "
+              + decode.get(0)
+              + "); accepted: only with --allow-commands");
+    }
+    List<OnLoss> ways = List.of(OnLoss.values());
+    List<String> words = ways.stream().map(OnLoss::id).toList();
+    OnLoss onLoss =
+        entry
+            .find("on-loss")
+            .map(node -> ways.get(words.indexOf(node.oneOf(words))))
+            .orElse(OnLoss.TRUNCATE);
+    String label = entry.find("label").map(YamlNode::text).orElse("");
+    return List.of(
+        new CommandCodec(label, encode, decode, onLoss, limits(entry), link.payloadBytes()));
+  }
+
+  private static CommandRun.Limits limits(YamlNode entry) {
+    return new CommandRun.Limits(
+        entry.find("seconds").map(node -> (int) node.integer(1, 3600)).orElse(30),
+        entry.find("output-bytes").map(CommandCodecFamily::outputBytes).orElse(0L),
+        entry.find("memory-mib").map(node -> (int) node.integer(1, 1 << 20)).orElse(1024));
+  }
+
+  private static long outputBytes(YamlNode node) {
+    return !node.isMapping() && !node.isSequence() && node.text().equals(AUTO)
+        ? 0
+        : node.integer(1, 1 << 30);
+  }
+
+  private static List<String> arguments(YamlNode list) {
+    List<String> arguments = list.items().stream().map(YamlNode::text).toList();
+    String program = arguments.get(0);
+    if (program.contains("/") && !Path.of(program).isAbsolute()) {
+      throw list.refuse(
+          "begins with '" + program + "'; accepted: a name on the PATH or an absolute path");
+    }
+    for (String file : List.of(CommandRun.INPUT, CommandRun.OUTPUT)) {
+      if (arguments.stream().skip(1).noneMatch(argument -> argument.contains(file))) {
+        throw list.refuse(
+            "has no " + file + " in its arguments; accepted: arguments with {input} and {output}");
+      }
+    }
+    return arguments;
+  }
+}
