@@ -165,7 +165,7 @@ class PluginsTest {
     assertThat(run.out()).contains("thumbnail: side of a block", "transform:", "command:");
     CommandLineRun without = assess("thumbnail: 4");
     assertThat(without.exitCode()).isEqualTo(Main.BAD_INPUT);
-    assertThat(without.err()).contains("names no codec", "accepted: command, transform");
+    assertThat(without.err()).contains("names no codec", "accepted: command, jpeg, transform");
   }
 
   @Test
