@@ -92,13 +92,20 @@ public abstract class NoiseProcessContractTest {
     if (impairment instanceof Impairment.OnBits onBits) {
       return flipped(onBits.errors(random), clean);
     }
-    Impairment.Losses losses = ((Impairment.OnPackets) impairment).losses(random);
+    Impairment.Losses losses = losses(impairment, random);
     int mean = (int) Math.floor(clean.mean() + 0.5);
     int[] samples = clean.samples().clone();
     for (int i = 0; i < samples.length; i++) {
       samples[i] = losses.lost(i / PACKET) ? mean : samples[i];
     }
     return new Picture(clean.width(), clean.height(), clean.bitDepth(), samples);
+  }
+
+  /** Fates of packets, or of nodes that each send one packet. */
+  private static Impairment.Losses losses(Impairment impairment, UniformRandomProvider random) {
+    return impairment instanceof Impairment.OnNodes onNodes
+        ? onNodes.failures(random)
+        : ((Impairment.OnPackets) impairment).losses(random);
   }
 
   /** Samples in natural binary, the most significant bit first, so many to a packet. */
@@ -244,14 +251,14 @@ public abstract class NoiseProcessContractTest {
   void packetFatesDoNotDependOnWhoAsks() {
     for (Site site : process().sites()) {
       Impairment impairment = at(severity(5), site, midRange());
-      if (impairment instanceof Impairment.OnPackets onPackets) {
-        Impairment.Losses all = onPackets.losses(Measured.stream(6));
+      if (site == Site.PACKETS) {
+        Impairment.Losses all = losses(impairment, Measured.stream(6));
         List<Boolean> fates = new ArrayList<>();
         IntStream.range(0, 1000).forEach(i -> fates.add(all.lost(i)));
         assertThat(fates).contains(true, false);
-        Impairment.Losses few = onPackets.losses(Measured.stream(6));
+        Impairment.Losses few = losses(impairment, Measured.stream(6));
         IntStream.range(0, 100).forEach(i -> assertThat(few.lost(i)).isEqualTo(fates.get(i)));
-        Impairment.Losses backwards = onPackets.losses(Measured.stream(6));
+        Impairment.Losses backwards = losses(impairment, Measured.stream(6));
         IntStream.iterate(999, i -> i >= 0, i -> i - 7)
             .forEach(i -> assertThat(backwards.lost(i)).isEqualTo(fates.get(i)));
       }
@@ -278,13 +285,14 @@ public abstract class NoiseProcessContractTest {
   @Test
   void sitesGiveTheirKindOfImpairment() {
     for (Site site : process().sites()) {
-      Class<?> kind =
+      List<Class<? extends Impairment>> kinds =
           switch (site) {
-            case SAMPLES -> Impairment.OnSamples.class;
-            case PACKETS -> Impairment.OnPackets.class;
-            case BITS -> Impairment.OnBits.class;
+            case SAMPLES -> List.of(Impairment.OnSamples.class);
+            case PACKETS -> List.of(Impairment.OnPackets.class, Impairment.OnNodes.class);
+            case BITS -> List.of(Impairment.OnBits.class);
           };
-      assertThat(at(severity(10), site, midRange())).isInstanceOf(kind);
+      Impairment found = at(severity(10), site, midRange());
+      assertThat(kinds).filteredOn(kind -> kind.isInstance(found)).hasSize(1);
     }
   }
 

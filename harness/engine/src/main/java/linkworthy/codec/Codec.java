@@ -10,6 +10,9 @@ import linkworthy.input.BadInput;
  * several threads at once.
  */
 public interface Codec {
+  /** The longest label a study may give, in characters. */
+  int MAX_LABEL = 64;
+
   /** How the codec is named in tables; derived from its parameters unless the study gives one. */
   String label();
 
@@ -68,6 +71,11 @@ public interface Codec {
    * allocates nothing by a number read from them.
    */
   Decoding decode(PictureShape shape, List<byte[]> arrived);
+
+  /** Whether raw samples travel to helper nodes, which do the coding. */
+  default boolean hasHelpers() {
+    return false;
+  }
 
   /**
    * What coding a picture asks of each node: the camera first, then its helpers, if any. Empty

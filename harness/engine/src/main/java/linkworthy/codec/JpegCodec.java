@@ -107,6 +107,19 @@ final class JpegCodec implements Codec {
     }
   }
 
+  /**
+   * For W x H samples padded to whole blocks: 16 multiply-accumulates a sample for the separable
+   * transform and one to quantise. Memory: eight rows of samples, 1 KiB for tables and a block, and
+   * a packet; with a target rate the coefficients of the picture instead, 2 bytes each.
+   */
+  @Override
+  public List<Workload> workloads(PictureShape shape, int keep) {
+    long width = (shape.width() + 7L) / 8 * 8;
+    long height = (shape.height() + 7L) / 8 * 8;
+    long samples = rate == null ? 8 * width : 2 * width * height;
+    return List.of(Workload.alone(17 * width * height, samples + 1024 + link.payloadBytes()));
+  }
+
   private int blocksPerInterval(PictureShape shape) {
     JpegBlocks blocks = new JpegBlocks(shape);
     return blocks.across() * Math.min(restartEvery, blocks.down());

@@ -40,7 +40,7 @@ public final class JpegCodecFamily implements CodecFamily {
     entry.get("jpeg").oneOf(List.of("baseline"));
     int restart =
         entry.find("restart-every").map(node -> (int) node.integer(1, LARGEST_RESTART)).orElse(1);
-    String label = entry.find("label").map(YamlNode::text).orElse("");
+    String label = entry.find("label").map(node -> node.line(Codec.MAX_LABEL)).orElse("");
     List<Codec> codecs =
         RateTarget.readEither(
             entry,

@@ -215,6 +215,11 @@ final class TiledCodec implements Codec {
         new Picture(shape.width(), shape.height(), shape.bitDepth(), samples), completeness);
   }
 
+  @Override
+  public boolean hasHelpers() {
+    return true;
+  }
+
   /**
    * The camera passes every tile's raw samples to its helper, in packets of the link; each helper
    * codes its tile.

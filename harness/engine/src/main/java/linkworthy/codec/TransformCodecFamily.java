@@ -2,7 +2,10 @@ package linkworthy.codec;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Optional;
 import java.util.Set;
+import java.util.regex.Matcher;
+import java.util.regex.Pattern;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
 
@@ -15,6 +18,7 @@ public final class TransformCodecFamily implements CodecFamily {
               "basis",
               "over",
               "side",
+              "grid",
               "keep",
               "share",
               "bits-per-pixel",
@@ -23,8 +27,9 @@ public final class TransformCodecFamily implements CodecFamily {
               "weights",
               "quality",
               "label"));
+  private static final List<String> ARRANGEMENTS = List.of("rows", "blocks", "tiles");
+  private static final Pattern GRID = Pattern.compile("(\\d{1,3})x(\\d{1,3})");
   private static final int DEFAULT_SIDE = 8;
-  private static final int MAX_LABEL = 64;
   private static final double DEFAULT_STEP = 8;
 
   @Override
@@ -40,7 +45,9 @@ public final class TransformCodecFamily implements CodecFamily {
 
           basis: own (sent with each picture) or shared (learnt from the study's pictures.train,
                  installed at both ends, not sent; over rows all pictures need as many rows): pca
-          over:  rows | blocks (rows for mean and pca, blocks for dct and wht unless given)
+          over:  rows | blocks | tiles (rows for mean and pca, blocks for dct and wht unless given)
+          grid:  with tiles, how many across and down, as in 4x4; each tile is coded alone over its
+                 rows by another node
           side:  side of a block in samples, 2 to 64 (8); wht: a power of two, rows likewise
           keep:  components K; a list means one codec for each. mean takes 0 (means alone) or all
           share: instead of keep, the share of the variance that the components must reach
@@ -61,10 +68,11 @@ public final class TransformCodecFamily implements CodecFamily {
   public List<Codec> read(YamlNode entry, Link link) {
     entry.onlyKeys(KEYS);
     Basis basis = basis(entry);
-    Arrangement arrangement = arrangement(entry, basis);
+    Optional<TiledCodec.Grid> grid = grid(entry, basis);
+    Arrangement arrangement = grid.isPresent() ? new Arrangement.Rows() : arrangement(entry, basis);
     List<Keep> keeps = KeepReader.read(entry, basis);
     List<? extends Quantization> quantizations = quantizations(entry, basis, arrangement);
-    String label = entry.find("label").map(node -> node.line(MAX_LABEL)).orElse("");
+    String label = entry.find("label").map(node -> node.line(Codec.MAX_LABEL)).orElse("");
     if (!label.isEmpty() && keeps.size() * quantizations.size() > 1) {
       throw entry
           .get("label")
@@ -73,7 +81,20 @@ public final class TransformCodecFamily implements CodecFamily {
     List<Codec> codecs = new ArrayList<>();
     for (Keep keep : keeps) {
       for (Quantization quantization : quantizations) {
-        codecs.add(new TransformCodec(label, arrangement, basis, keep, quantization, link));
+        codecs.add(
+            grid.isPresent()
+                ? new TiledCodec(
+                    grid.get(),
+                    new TransformCodec(
+                        "",
+                        arrangement,
+                        basis,
+                        keep,
+                        quantization,
+                        link.less(TiledCodec.OVERHEAD_BYTES)),
+                    link,
+                    label)
+                : new TransformCodec(label, arrangement, basis, keep, quantization, link));
       }
     }
     return codecs;
@@ -93,11 +114,47 @@ public final class TransformCodecFamily implements CodecFamily {
     return Basis.all().stream().filter(b -> b.id().equals(id)).findFirst().orElseThrow();
   }
 
+  private static Optional<TiledCodec.Grid> grid(YamlNode entry, Basis basis) {
+    boolean tiles =
+        entry.find("over").map(node -> node.oneOf(ARRANGEMENTS).equals("tiles")).orElse(false);
+    if (!tiles) {
+      entry
+          .find("grid")
+          .ifPresent(
+              node -> {
+                throw node.refuse("belongs to 'over: tiles'; accepted: no grid otherwise");
+              });
+      return Optional.empty();
+    }
+    if (basis instanceof SharedPcaBasis) {
+      throw entry.get("basis").refuse("is shared; accepted over tiles: own");
+    }
+    entry
+        .find("side")
+        .ifPresent(
+            node -> {
+              throw node.refuse("belongs to 'over: blocks'; accepted: no side over tiles");
+            });
+    YamlNode node = entry.get("grid");
+    String accepted = "columns x rows, from 1x1 up to " + TiledCodec.MOST_TILES + " tiles, as 4x4";
+    Matcher matcher = GRID.matcher(node.text());
+    if (!matcher.matches()) {
+      throw node.bad(accepted);
+    }
+    try {
+      return Optional.of(
+          new TiledCodec.Grid(
+              Integer.parseInt(matcher.group(1)), Integer.parseInt(matcher.group(2))));
+    } catch (IllegalArgumentException e) {
+      throw node.bad(accepted);
+    }
+  }
+
   private static Arrangement arrangement(YamlNode entry, Basis basis) {
     boolean blocks =
         entry
             .find("over")
-            .map(node -> node.oneOf(List.of("rows", "blocks")).equals("blocks"))
+            .map(node -> node.oneOf(ARRANGEMENTS).equals("blocks"))
             .orElse(Set.of("dct", "wht").contains(basis.id()));
     if (blocks) {
       return new Arrangement.Blocks(

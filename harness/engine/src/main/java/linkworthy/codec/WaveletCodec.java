@@ -83,10 +83,7 @@ final class WaveletCodec implements Codec {
 
   @Override
   public Description description() {
-    return new Description(
-        wavelet.id(),
-        "levels" + levels,
-        rate != null ? "" : quantizer.isNone() ? "none" : Double.toString(quantizer.step()));
+    return new Description(wavelet.id(), "levels" + levels, rate != null ? "" : quantizer.column());
   }
 
   @Override
@@ -105,6 +102,22 @@ final class WaveletCodec implements Codec {
 
   @Override
   public void check(PictureShape shape) {}
+
+  /**
+   * For W x H samples and L levels, with s = (1 - 4^-L) 4/3 for the samples of all levels together:
+   * a lifting step is half a multiply-accumulate a sample and direction; cdf-9-7 has four and a
+   * scaling, cdf-5-3 two, and quantising is one more. Memory: the coefficients and a line.
+   */
+  @Override
+  public List<Workload> workloads(PictureShape shape, int keep) {
+    double allLevels = (1 - StrictMath.pow(4, -levels)) * 4 / 3;
+    int each = wavelet == Wavelet.CDF_9_7 ? 6 : 2;
+    return List.of(
+        Workload.alone(
+            (long) StrictMath.ceil(shape.size() * (1 + each * allLevels)),
+            Workload.NUMBER_BYTES * ((long) shape.size() + Math.max(shape.width(), shape.height()))
+                + link.payloadBytes()));
+  }
 
   private Subbands subbands(PictureShape shape) {
     return new Subbands(wavelet, isReversible(), shape, levels);

@@ -47,7 +47,7 @@ public final class WaveletCodecFamily implements CodecFamily {
         Arrays.stream(Wavelet.values()).filter(w -> w.id().equals(id)).findFirst().orElseThrow();
     int levels =
         entry.find("levels").map(node -> (int) node.integer(1, MOST_LEVELS)).orElse(DEFAULT_LEVELS);
-    String label = entry.find("label").map(YamlNode::text).orElse("");
+    String label = entry.find("label").map(node -> node.line(Codec.MAX_LABEL)).orElse("");
     List<Codec> codecs =
         RateTarget.readEither(
             entry,

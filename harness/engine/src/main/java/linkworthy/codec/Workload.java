@@ -26,6 +26,15 @@ public record Workload(long macs, long memoryBytes, long rawBitsSent, long rawBi
     return new Workload(macs, memoryBytes, 0, 0);
   }
 
+  /** This work and that on another plane of the same picture, which waits in memory meanwhile. */
+  public Workload andAnother(Workload other, PictureShape plane) {
+    return new Workload(
+        macs + other.macs,
+        Math.max(memoryBytes, other.memoryBytes) + (rawBitsSent > 0 ? 0 : pictureBytes(plane)),
+        rawBitsSent + other.rawBitsSent,
+        rawBitsReceived + other.rawBitsReceived);
+  }
+
   /** Bytes of a picture's samples as a node stores them. */
   static long pictureBytes(PictureShape shape) {
     Require.inRange(shape.bitDepth(), 1, 16, "bit depth (bits)");

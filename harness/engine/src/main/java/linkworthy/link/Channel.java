@@ -2,6 +2,8 @@ package linkworthy.link;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.SortedMap;
+import java.util.TreeMap;
 import linkworthy.noise.Impairment;
 import org.jspecify.annotations.Nullable;
 
@@ -59,13 +61,31 @@ public final class Channel {
    * @param payloadBits bits in the payloads of all transmissions, protection headers included
    * @param sentBits payload bits, the link's overhead and frame check for each transmission, and
    *     the receiver's acknowledgements
+   * @param byNode the same bits by the node that sends the packets
    */
   public record Outcome(
-      List<byte[]> payloads, int packetsSent, int packetsLost, long payloadBits, long sentBits) {}
+      List<byte[]> payloads,
+      int packetsSent,
+      int packetsLost,
+      long payloadBits,
+      long sentBits,
+      SortedMap<Integer, Traffic> byNode) {}
+
+  /**
+   * What one node sent and got back.
+   *
+   * @param sentBits payloads, overhead and frame checks of all its transmissions
+   * @param receivedBits acknowledgements
+   */
+  public record Traffic(long sentBits, long receivedBits) {
+    private Traffic plus(Traffic other) {
+      return new Traffic(sentBits + other.sentBits, receivedBits + other.receivedBits);
+    }
+  }
 
   /** Sends packets in order. */
   public Outcome send(List<Packet> packets, Air air) {
-    Traffic traffic = new Traffic(air);
+    Sending traffic = new Sending(air);
     framing.send(packets, traffic::send);
     return new Outcome(
         framing.payloads(traffic.arrived),
@@ -74,18 +94,20 @@ public final class Channel {
         traffic.payloadBits,
         link.sentBits(traffic.sent, traffic.payloadBits)
             + (long) air.checkBits() * traffic.sent
-            + traffic.acknowledgementBits);
+            + traffic.acknowledgementBits,
+        traffic.byNode);
   }
 
   /** Counts as it sends. */
-  private static final class Traffic {
+  private final class Sending {
     private final Air air;
     private final List<byte[]> arrived = new ArrayList<>();
     private int sent;
     private long payloadBits;
     private long acknowledgementBits;
+    private final SortedMap<Integer, Traffic> byNode = new TreeMap<>();
 
-    Traffic(Air air) {
+    Sending(Air air) {
       this.air = air;
     }
 
@@ -99,17 +121,25 @@ public final class Channel {
         }
       }
       if (rule != null && rule.retransmit() > 0) {
-        acknowledgementBits += 8L * rule.ackBytes() * (arrived.size() - before);
+        long bits = 8L * rule.ackBytes() * (arrived.size() - before);
+        acknowledgementBits += bits;
+        count(node, new Traffic(0, bits));
       }
     }
 
     private void transmit(byte[] payload, int node) {
       byte[] got = air.carry(sent, node, payload);
       sent = Math.incrementExact(sent);
-      payloadBits += 8L * payload.length;
+      long bits = 8L * payload.length;
+      payloadBits += bits;
+      count(node, new Traffic(link.sentBits(1, bits) + air.checkBits(), 0));
       if (got != null) {
         arrived.add(got);
       }
+    }
+
+    private void count(int node, Traffic traffic) {
+      byNode.merge(node, traffic, Traffic::plus);
     }
   }
 }

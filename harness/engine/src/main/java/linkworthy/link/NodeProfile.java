@@ -5,8 +5,10 @@ import java.io.InputStream;
 import java.io.UncheckedIOException;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Path;
+import java.util.LinkedHashMap;
 import java.util.LinkedHashSet;
 import java.util.List;
+import java.util.Map;
 import java.util.Objects;
 import java.util.Set;
 import linkworthy.input.BadInput;
@@ -94,7 +96,12 @@ public record NodeProfile(
     return parse(YamlNode.read(file));
   }
 
-  private static NodeProfile parse(YamlNode root) {
+  /**
+   * Reads the keys of a profile.
+   *
+   * @throws BadInput if they cannot be used; one line with file, line and key
+   */
+  public static NodeProfile parse(YamlNode root) {
     root.onlyKeys(KEYS);
     String id = root.get("id").text();
     if (!id.matches(ID)) {
@@ -120,6 +127,21 @@ public record NodeProfile(
       throw node.bad(accepted);
     }
     return value;
+  }
+
+  /** The profile as a file writes it, in a fixed order. */
+  public Map<String, Object> settings() {
+    Map<String, Object> settings = new LinkedHashMap<>();
+    settings.put("id", id);
+    settings.put("sent-nj-per-bit", sentNanojoules);
+    settings.put("received-nj-per-bit", receivedNanojoules);
+    settings.put("mac-nj", macNanojoules);
+    settings.put("sleep-mw", sleepMilliwatts);
+    settings.put("ram-kib", ramKib);
+    settings.put("kbit-per-second", kilobitsPerSecond);
+    settings.put("battery-j", batteryJoules);
+    settings.put("source", source);
+    return settings;
   }
 
   private static String resource(String name) {

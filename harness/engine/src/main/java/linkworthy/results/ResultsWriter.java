@@ -7,7 +7,6 @@ import java.util.List;
 import java.util.Map;
 import java.util.stream.Stream;
 import linkworthy.input.BadInput;
-import linkworthy.quality.QualityMeasure;
 import linkworthy.statistics.Cell;
 import linkworthy.study.Study;
 import linkworthy.study.StudyWriter;
@@ -125,7 +124,7 @@ public final class ResultsWriter implements AutoCloseable {
       models.forEach(this::write);
     }
     write(ResultsFolder.STUDY, StudyWriter.canonical(study));
-    List<String> further = study.furtherMeasures().stream().map(QualityMeasure::column).toList();
+    List<String> further = study.furtherColumns();
     trials = new AppendedTable<>(TrialsCsv.TABLE.with(further), folder.resolve(TrialsCsv.FILE));
     timings = new AppendedTable<>(TimingsCsv.TABLE, folder.resolve(TimingsCsv.FILE));
   }

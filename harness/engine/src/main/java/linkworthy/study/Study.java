@@ -1,6 +1,7 @@
 package linkworthy.study;
 
 import java.nio.file.Path;
+import java.util.ArrayList;
 import java.util.List;
 import java.util.Set;
 import java.util.regex.Pattern;
@@ -8,6 +9,7 @@ import linkworthy.input.Require;
 import linkworthy.link.Link;
 import linkworthy.quality.QualityMeasure;
 import linkworthy.quality.QualityMeasures;
+import org.jspecify.annotations.Nullable;
 
 /**
  * A question put to the harness: which codecs, on which pictures, under which impairments. Made by
@@ -23,6 +25,8 @@ import linkworthy.quality.QualityMeasures;
  * @param link the packets they are sent in
  * @param replicates noise realisations of each picture and severity, 1 to {@link #MAX_REPLICATES}
  * @param measures ids of quality measures, {@code psnr} among them
+ * @param node what coding and sending costs, or null where no costs are asked for
+ * @param rawHop what hurts raw samples on their way to helper nodes, at one severity, or null
  */
 public record Study(
     String name,
@@ -33,7 +37,9 @@ public record Study(
     List<CodecChoice> codecs,
     Link link,
     int replicates,
-    List<String> measures) {
+    List<String> measures,
+    @Nullable NodeChoice node,
+    @Nullable ImpairmentChoice rawHop) {
   /** A name becomes a folder, so it has only letters, digits, dots, dashes and underscores. */
   public static final Pattern NAME = Pattern.compile("[A-Za-z0-9][A-Za-z0-9._-]{0,63}");
 
@@ -41,6 +47,16 @@ public record Study(
   public static final long MAX_SEED = (1L << 53) - 1;
 
   public static final int MAX_REPLICATES = 1_000_000;
+
+  /** Columns of what a trial cost its nodes. */
+  public static final List<String> COSTS =
+      List.of(
+          "macs",
+          "ram_kib",
+          "energy_mj",
+          "worst_node_energy_mj",
+          "air_time_ms",
+          "pictures_per_battery");
 
   /** Measures that have a column in every record, asked for or not. */
   private static final Set<String> ALWAYS_RECORDED = Set.of("psnr", "ssim");
@@ -62,6 +78,19 @@ public record Study(
     measures = List.copyOf(measures);
   }
 
+  /**
+   * Columns of the record behind the fixed ones: those of the further measures, then the costs if
+   * there is a node to bear them.
+   */
+  public List<String> furtherColumns() {
+    List<String> columns =
+        new ArrayList<>(furtherMeasures().stream().map(QualityMeasure::column).toList());
+    if (node != null) {
+      columns.addAll(COSTS);
+    }
+    return columns;
+  }
+
   /** The measures besides psnr and ssim, in study order; each adds a column to the record. */
   public List<QualityMeasure> furtherMeasures() {
     return measures.stream()
@@ -73,7 +102,17 @@ public record Study(
   /** The same study with other codecs, as after their training. */
   public Study withCodecs(List<CodecChoice> others) {
     return new Study(
-        name, purpose, seed, pictures, impairments, others, link, replicates, measures);
+        name,
+        purpose,
+        seed,
+        pictures,
+        impairments,
+        others,
+        link,
+        replicates,
+        measures,
+        node,
+        rawHop);
   }
 
   /** The same study whose manifest, if it has one of its own, is looked for in another place. */
@@ -87,6 +126,8 @@ public record Study(
         codecs,
         link,
         replicates,
-        measures);
+        measures,
+        node,
+        rawHop);
   }
 }

@@ -22,6 +22,7 @@ import linkworthy.input.BadInput;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
 import linkworthy.link.Protection;
+import linkworthy.noise.Site;
 import linkworthy.quality.QualityMeasure;
 import linkworthy.quality.QualityMeasures;
 import linkworthy.study.PictureChoice.ManifestFile;
@@ -89,7 +90,9 @@ public final class StudyReader {
             "protect",
             "link",
             "replicates",
-            "measures"));
+            "measures",
+            "node",
+            "raw-hop"));
     PictureChoice pictures =
         pictures(root.find("pictures").orElse(DEFAULTS.get("pictures")), baseFolder);
     Link link = link(root.find("link").orElse(DEFAULTS.get("link")), pictures.hasAllPlanes());
@@ -102,7 +105,9 @@ public final class StudyReader {
         codecs(root, link, pictures, codecs),
         link,
         replicates(given(root, DEFAULTS, "replicates")),
-        measures(given(root, DEFAULTS, "measures")));
+        measures(given(root, DEFAULTS, "measures")),
+        NodeReader.read(given(root, DEFAULTS, "node"), DEFAULTS.get("node-interval-s"), baseFolder),
+        root.find("raw-hop").map(node -> rawHop(node, baseFolder)).orElse(null));
   }
 
   /** The folder that paths in a file are relative to. */
@@ -228,6 +233,20 @@ public final class StudyReader {
   private static List<ImpairmentChoice> impairments(YamlNode list, Path baseFolder) {
     ImpairmentReader reader = new ImpairmentReader(baseFolder);
     return list.items().stream().map(reader::read).toList();
+  }
+
+  private static ImpairmentChoice rawHop(YamlNode entry, Path baseFolder) {
+    ImpairmentChoice hop = new ImpairmentReader(baseFolder).read(entry);
+    if (hop.site() != Site.SAMPLES || hop.severities().size() != 1) {
+      throw entry.refuse(
+          "acts on "
+              + hop.site().id()
+              + " at "
+              + hop.severities().size()
+              + " severities; accepted:"
+              + " a model that acts on samples, at one severity");
+    }
+    return hop;
   }
 
   private static List<CodecChoice> codecs(

@@ -4,6 +4,7 @@ import java.math.BigDecimal;
 import java.nio.charset.StandardCharsets;
 import java.security.MessageDigest;
 import java.security.NoSuchAlgorithmException;
+import java.util.ArrayList;
 import java.util.HexFormat;
 import java.util.LinkedHashMap;
 import java.util.List;
@@ -64,7 +65,7 @@ public final class StudyWriter {
     tree.put("pictures", pictures(study.pictures(), false));
     tree.put("codecs", study.codecs().stream().map(StudyWriter::decisive).toList());
     StringBuilder text = new StringBuilder(YAML.writeValueAsString(tree));
-    for (ImpairmentChoice impairment : study.impairments()) {
+    for (ImpairmentChoice impairment : impairments(study)) {
       text.append(impairment.model().fingerprint()).append('\n');
     }
     try {
@@ -81,7 +82,7 @@ public final class StudyWriter {
    */
   public static SortedMap<String, String> modelFiles(Study study) {
     SortedMap<String, String> files = new TreeMap<>();
-    for (ImpairmentChoice impairment : study.impairments()) {
+    for (ImpairmentChoice impairment : impairments(study)) {
       String reference = reference(impairment.model());
       if (isModelPath(reference)) {
         files.put(reference, YAML.writeValueAsString(tree(impairment.model())));
@@ -89,6 +90,15 @@ public final class StudyWriter {
       }
     }
     return files;
+  }
+
+  /** The impairments, and that of the raw hop if there is one. */
+  private static List<ImpairmentChoice> impairments(Study study) {
+    List<ImpairmentChoice> all = new ArrayList<>(study.impairments());
+    if (study.rawHop() != null) {
+      all.add(study.rawHop());
+    }
+    return all;
   }
 
   /** Whether the value of {@code noise} is a path, not the id of a shipped model. */
@@ -135,6 +145,14 @@ public final class StudyWriter {
     tree.put("link", link(study.link()));
     tree.put("replicates", study.replicates());
     tree.put("measures", study.measures());
+    NodeChoice node = study.node();
+    if (node != null) {
+      tree.put("node", node(node));
+    }
+    ImpairmentChoice hop = study.rawHop();
+    if (hop != null) {
+      tree.put("raw-hop", impairment(hop));
+    }
     return tree;
   }
 
@@ -180,6 +198,15 @@ public final class StudyWriter {
     Map<String, Object> tree = new LinkedHashMap<>();
     choice.identity().forEach((key, value) -> tree.put(key, plainValue(value)));
     tree.put("label", choice.label());
+    return tree;
+  }
+
+  private static Map<String, Object> node(NodeChoice node) {
+    Map<String, Object> profile = new LinkedHashMap<>();
+    node.profile().settings().forEach((key, value) -> profile.put(key, plainValue(value)));
+    Map<String, Object> tree = new LinkedHashMap<>();
+    tree.put("profile", profile);
+    tree.put("interval-s", plainValue(node.intervalSeconds()));
     return tree;
   }
 

@@ -8,6 +8,7 @@ import linkworthy.codec.Encoding;
 import linkworthy.codec.Failure;
 import linkworthy.codec.Memo;
 import linkworthy.codec.PictureShape;
+import linkworthy.codec.Workload;
 import linkworthy.corpus.AreaAverage;
 import linkworthy.corpus.Picture;
 import linkworthy.link.Packet;
@@ -113,6 +114,23 @@ final class PlaneCoding {
                 ? Decoding.Completeness.NOTHING
                 : Decoding.Completeness.PARTIAL;
     return new Decoded(planes, completeness, failure);
+  }
+
+  /**
+   * What coding the planes asks of each node: one plane after the other, the samples of all in
+   * memory. Every plane is taken to keep as many components as luma.
+   */
+  List<Workload> workloads(Codec codec, List<PictureShape> coded, int keep) {
+    List<Workload> nodes = codec.workloads(coded.get(0), keep);
+    for (PictureShape plane : coded.subList(1, coded.size())) {
+      List<Workload> more = codec.workloads(plane, keep);
+      List<Workload> sums = new ArrayList<>();
+      for (int node = 0; node < nodes.size(); node++) {
+        sums.add(nodes.get(node).andAnother(more.get(node), plane));
+      }
+      nodes = sums;
+    }
+    return nodes;
   }
 
   private static List<byte[]> ofPlane(int plane, List<byte[]> arrived) {

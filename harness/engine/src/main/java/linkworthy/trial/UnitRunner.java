@@ -9,6 +9,7 @@ import linkworthy.codec.Codec;
 import linkworthy.codec.Decoding;
 import linkworthy.codec.Encoding;
 import linkworthy.codec.Memo;
+import linkworthy.codec.Workload;
 import linkworthy.corpus.Picture;
 import linkworthy.link.Channel;
 import linkworthy.noise.Impairment;
@@ -16,12 +17,14 @@ import linkworthy.noise.NoiseStreams;
 import linkworthy.quality.Psnr;
 import linkworthy.study.CodecChoice;
 import linkworthy.study.ImpairmentChoice;
+import linkworthy.study.NodeChoice;
 import linkworthy.study.Study;
 import org.apache.commons.rng.UniformRandomProvider;
 
 /** Runs one work unit: draws its noise once and takes every codec through it. */
 final class UnitRunner {
   private static final String PURPOSE = "impairment";
+  private static final String RAW_HOP = "raw hop";
 
   private final Study study;
   private final Subject subject;
@@ -46,18 +49,17 @@ final class UnitRunner {
     if (impairment instanceof Impairment.OnSamples onSamples) {
       List<Picture> noisy = new ArrayList<>();
       for (Picture plane : subject.planes()) {
-        noisy.add(onSamples.apply(plane, random(condition, noisy.size())));
+        noisy.add(onSamples.apply(plane, random(condition, PURPOSE, noisy.size())));
       }
       return evaluate(
           new Circumstances(
-              subject.coding().coded(noisy),
-              Subject.memos(noisy),
+              Seen.anew(subject.coding().coded(noisy)),
               Passage.clear(subject.meanSquaredError(noisy)),
               expected));
     }
     return evaluate(
         new Circumstances(
-            subject.coded(), subject.memos(), passage(impairment, random(condition, 0)), expected));
+            Seen.clean(subject), passage(impairment, random(condition, PURPOSE, 0)), expected));
   }
 
   private Passage passage(Impairment impairment, UniformRandomProvider random) {
@@ -76,7 +78,7 @@ final class UnitRunner {
   }
 
   /** Each plane has a stream of its own; that of luma does not depend on the other planes. */
-  private UniformRandomProvider random(WorkUnit.Condition condition, int plane) {
+  private UniformRandomProvider random(WorkUnit.Condition condition, String purpose, int plane) {
     ImpairmentChoice choice = condition.impairment();
     return NoiseStreams.open(
         study.seed(),
@@ -85,28 +87,58 @@ final class UnitRunner {
         choice.site(),
         condition.severity(),
         unit.replicate(),
-        plane == 0 ? PURPOSE : PURPOSE + " on plane " + plane);
+        plane == 0 ? purpose : purpose + " on plane " + plane);
+  }
+
+  /**
+   * What an encoder sees.
+   *
+   * @param planes as they are coded
+   * @param memos encoders' work on each of them
+   */
+  private record Seen(List<Picture> planes, List<Memo> memos) {
+    static Seen clean(Subject subject) {
+      return new Seen(subject.coded(), subject.memos());
+    }
+
+    static Seen anew(List<Picture> planes) {
+      return new Seen(planes, Subject.memos(planes));
+    }
   }
 
   /**
    * What every codec of the unit meets.
    *
-   * @param seen the planes that the encoder codes
-   * @param memos encoders' work on each of them
+   * @param seen by an encoder in the camera
    * @param passage the way of its packets
    * @param expected equivalent noise variance, grey levels squared
    */
-  private record Circumstances(
-      List<Picture> seen, List<Memo> memos, Passage passage, double expected) {
+  private record Circumstances(Seen seen, Passage passage, double expected) {
     static Circumstances clean(Subject subject) {
-      return new Circumstances(subject.coded(), subject.memos(), Passage.clear(0), 0);
+      return new Circumstances(Seen.clean(subject), Passage.clear(0), 0);
     }
+  }
+
+  /** What encoders in helper nodes see: the planes after the raw hop, if that is hurt. */
+  private Seen afterRawHop(Seen seen) {
+    ImpairmentChoice hop = study.rawHop();
+    if (hop == null || study.codecs().stream().noneMatch(choice -> choice.codec().hasHelpers())) {
+      return seen;
+    }
+    WorkUnit.Condition condition = new WorkUnit.Condition(hop, hop.levels().get(0));
+    Impairment.OnSamples impairment = (Impairment.OnSamples) condition.at(subject.signal());
+    List<Picture> planes = new ArrayList<>();
+    for (Picture plane : seen.planes()) {
+      planes.add(impairment.apply(plane, random(condition, RAW_HOP, planes.size())));
+    }
+    return Seen.anew(planes);
   }
 
   private Rows evaluate(Circumstances circumstances) {
     List<Trial> trials = new ArrayList<>();
     List<Timing> timings = new ArrayList<>();
     List<Mishap> mishaps = new ArrayList<>();
+    Seen afterRawHop = afterRawHop(circumstances.seen());
     for (CodecChoice choice : study.codecs()) {
       GuardedCodec codec =
           new GuardedCodec(
@@ -114,7 +146,8 @@ final class UnitRunner {
               study.link().less(choice.protection().overheadBytes()),
               subject.coding());
       long start = System.nanoTime();
-      GuardedCodec.Sent sent = encode(choice, codec, circumstances);
+      GuardedCodec.Sent sent =
+          encode(choice, codec, choice.codec().hasHelpers() ? afterRawHop : circumstances.seen());
       long encoded = System.nanoTime();
       Passage.Crossing crossing = circumstances.passage().open();
       Channel.Outcome outcome =
@@ -149,17 +182,15 @@ final class UnitRunner {
    * Encodes; an encoding of the clean picture serves all units that hurt its packets, and all
    * protections that leave packets of the same size.
    */
-  private GuardedCodec.Sent encode(
-      CodecChoice choice, GuardedCodec codec, Circumstances circumstances) {
+  private GuardedCodec.Sent encode(CodecChoice choice, GuardedCodec codec, Seen seen) {
     Map<String, Object> settings = new HashMap<>(choice.codec().settings());
     settings.remove("label");
-    return circumstances
-        .memos()
+    return seen.memos()
         .get(0)
         .once(
             new EncodingKey(settings, choice.protection().overheadBytes()),
             GuardedCodec.Sent.class,
-            () -> codec.encode(circumstances.seen(), circumstances.memos()));
+            () -> codec.encode(seen.planes(), seen.memos()));
   }
 
   private String impairmentLabel() {
@@ -179,7 +210,7 @@ final class UnitRunner {
     double mse = subject.meanSquaredError(decoding.planes());
     Codec.Description description = choice.codec().description();
     return new Trial(
-        new TrialKey(study.seed(), unit, study.pictures(), choice, study.link()).id(),
+        new TrialKey(study, unit, choice).id(),
         unit.entry().id(),
         impairmentLabel(),
         condition == null ? "" : condition.impairment().site().id(),
@@ -206,7 +237,7 @@ final class UnitRunner {
         outcome.packetsLost(),
         decoding.completeness() == Decoding.Completeness.NOTHING,
         decoding.failure() == null ? "" : decoding.failure().word(),
-        further(decoding.luma()));
+        further(choice, encoding, outcome, decoding));
   }
 
   private double measured(String measure, Picture decoded) {
@@ -214,9 +245,23 @@ final class UnitRunner {
     return at < 0 ? Double.NaN : subject.judges().get(at).of(decoded);
   }
 
-  private Map<String, Double> further(Picture decoded) {
+  private Map<String, Double> further(
+      CodecChoice choice,
+      Encoding encoding,
+      Channel.Outcome outcome,
+      PlaneCoding.Decoded decoding) {
     Map<String, Double> figures = new LinkedHashMap<>();
-    subject.furtherJudges().forEach((column, judge) -> figures.put(column, judge.of(decoded)));
+    subject
+        .furtherJudges()
+        .forEach((column, judge) -> figures.put(column, judge.of(decoding.luma())));
+    NodeChoice node = study.node();
+    if (node != null) {
+      List<Workload> work =
+          decoding.failure() == null
+              ? subject.coding().workloads(choice.codec(), subject.shapes(), encoding.keep())
+              : List.of();
+      figures.putAll(NodeCosts.of(node, work, outcome.byNode()).figures());
+    }
     return figures;
   }
 

@@ -44,7 +44,9 @@ class TransformCodecTest extends CodecContractTest {
             "{transform: dct, keep: 64, weights: luminance, quality: [10, 50, 90]}",
             "{transform: mean, over: rows, step: 16}",
             "{transform: mean, over: blocks, step: 16}",
-            "{transform: mean, keep: 0}")
+            "{transform: mean, keep: 0}",
+            "{transform: pca, over: tiles, grid: 3x2, keep: 5, step: 8}",
+            "{transform: dct, over: tiles, grid: 2x1, keep: 9, step: 4}")
         .stream()
         .map(flow -> flow.substring(1, flow.length() - 1).replaceAll(", (?=[a-z-]+:)", "\n"))
         .toList();
@@ -81,6 +83,7 @@ class TransformCodecTest extends CodecContractTest {
         "{transform: dct, side: 4, keep: 3, step: none} | dct blocks4 K3 stepnone",
         "{transform: dct, keep: 3, label: ' ours '} | ours",
         "{transform: dct, keep: 3, step: 2.0E-3} | dct blocks8 K3 step0.002",
+        "{transform: pca, over: tiles, grid: 3x2, keep: 5} | pca tiles3x2 K5 step8",
         "{transform: wht, keep: 16} | wht blocks8 K16 step8",
         "{transform: wht, over: rows, share: 0.9} | wht rows share0.9 step8",
         "{transform: pca, bits-per-pixel: 0.5} | pca rows bpp0.5 step8",
@@ -99,6 +102,12 @@ class TransformCodecTest extends CodecContractTest {
       value = {
         "{transform: pcs, keep: 4} | did you mean 'pca'",
         "{transform: pca} | none of keep, share",
+        "{transform: pca, over: tiles, keep: 4} | missing key 'grid'",
+        "{transform: pca, over: tiles, grid: 17x16, keep: 4} | up to 256 tiles",
+        "{transform: pca, over: tiles, grid: four, keep: 4} | columns x rows",
+        "{transform: pca, grid: 2x2, keep: 4} | belongs to 'over: tiles'",
+        "{transform: pca, over: tiles, grid: 2x2, side: 8, keep: 4} | belongs to 'over: blocks'",
+        "{transform: pca, over: tiles, grid: 2x2, basis: shared, keep: 4} | accepted over tiles: own",
         "{transform: pca, keep: 4, share: 0.5} | one of the two",
         "{transform: pca, keep: []} | an empty list",
         "{transform: pca, keep: -1} | '-1'; accepted: a whole number from 0",

@@ -1,0 +1,96 @@
+package linkworthy.link;
+
+import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.assertThatThrownBy;
+import static org.assertj.core.api.Assertions.within;
+
+import linkworthy.input.BadInput;
+import linkworthy.input.YamlNode;
+import org.junit.jupiter.api.Test;
+import org.junit.jupiter.params.ParameterizedTest;
+import org.junit.jupiter.params.provider.CsvSource;
+
+/**
+ * The first-order radio model of Heinzelman, Chandrakasan and Balakrishnan (HICSS 2000, from
+ * memory): 50 nJ/bit electronics, 100 pJ/bit/m^2 amplifier. Joules recomputed independently in
+ * Python.
+ */
+class NodeProfileTest {
+  private static NodeProfile radio(double metres) {
+    return new NodeProfile(
+        "radio", 50 + 0.1 * metres * metres, 50, 5, 0, 64, 250, 20_000, "the model");
+  }
+
+  @Test
+  void twoThousandBitsOverAHundredAndTenMetres() {
+    assertThat(radio(100).millijoules(0, 2000, 0)).isCloseTo(2.1, within(1e-12));
+    assertThat(radio(100).millijoules(0, 0, 2000)).isCloseTo(0.1, within(1e-12));
+    assertThat(radio(10).millijoules(0, 2000, 0)).isCloseTo(0.120, within(1e-12));
+    assertThat(0.1 * 22.36067977 * 22.36067977)
+        .as("where the amplifier costs what the electronics cost")
+        .isCloseTo(50, within(1e-6));
+  }
+
+  @ParameterizedTest
+  @CsvSource({"524288, 157.2864", "131072, 39.3216", "65536, 19.6608", "32768, 9.8304"})
+  void aPictureAndPartsOfItOverFiftyMetres(long bits, double millijoules) {
+    assertThat(NodeProfile.find("first-order-radio").millijoules(0, bits, 0))
+        .isCloseTo(millijoules, within(1e-9));
+  }
+
+  @Test
+  void workAirTimeAndBattery() {
+    NodeProfile node = new NodeProfile("n", 1, 1, 0.5, 2, 64, 250, 100, "own example");
+    assertThat(node.millijoules(2_000_000, 0, 0)).isEqualTo(1);
+    assertThat(node.airTimeMs(8 * 133)).isCloseTo(4.256, within(1e-12));
+    assertThat(node.picturesPerBattery(10, 20)).isEqualTo(100_000 / 50.0);
+  }
+
+  @Test
+  void everyShippedProfileReads() {
+    assertThat(NodeProfile.shipped()).isNotEmpty();
+    for (String id : NodeProfile.shipped()) {
+      NodeProfile profile = NodeProfile.find(id);
+      assertThat(profile.id()).isEqualTo(id);
+      assertThat(profile.source()).isNotBlank();
+    }
+  }
+
+  @ParameterizedTest
+  @CsvSource(
+      delimiter = '|',
+      value = {
+        "mac-nj: 5 | mac-nj: -5 | at least 0",
+        "ram-kib: 64 | ram-kib: 0 | above 0",
+        "battery-j: 9 | battery-j: .inf | above 0",
+        "id: n | id: N! | lower-case",
+        "mac-nj: 5 | mac-njj: 5 | did you mean 'mac-nj'"
+      })
+  void wrongProfilesAreRefused(String from, String to, String complaint) {
+    String text =
+        """
+        id: n
+        sent-nj-per-bit: 1
+        received-nj-per-bit: 1
+        mac-nj: 5
+        sleep-mw: 0
+        ram-kib: 64
+        kbit-per-second: 250
+        battery-j: 9
+        source: a test
+        """;
+    assertThat(NodeProfile.parse(YamlNode.parse("node.yaml", text)).ramKib()).isEqualTo(64);
+    assertThat(text).contains(from);
+    assertThatThrownBy(() -> NodeProfile.parse(YamlNode.parse("node.yaml", text.replace(from, to))))
+        .isInstanceOf(BadInput.class)
+        .hasMessageStartingWith("node.yaml, line ")
+        .hasMessageContaining(complaint);
+  }
+
+  @Test
+  void anUnknownProfileNamesTheNearest() {
+    assertThatThrownBy(() -> NodeProfile.find("yard-camra"))
+        .isInstanceOf(BadInput.class)
+        .hasMessageContaining("yard-camera");
+  }
+}
