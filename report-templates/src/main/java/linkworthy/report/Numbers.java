@@ -55,6 +55,11 @@ final class Numbers {
         .toPlainString();
   }
 
+  /** A number rounded to a whole one, with its thousands apart. */
+  static String whole(double value) {
+    return Double.isFinite(value) ? count(Math.round(value)) : special(value);
+  }
+
   /** A count, in groups of three from five digits on. */
   static String count(long value) {
     String digits = Long.toString(value);

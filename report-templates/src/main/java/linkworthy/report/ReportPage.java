@@ -1,6 +1,7 @@
 package linkworthy.report;
 
 import java.util.List;
+import org.jspecify.annotations.Nullable;
 
 /**
  * All that a report shows.
@@ -11,6 +12,7 @@ import java.util.List;
  * @param figures a row a cell; codecs and impairments are shown in the order of their first figure
  * @param confidenceLevel level of both intervals and, as its complement, of the paired tests; above
  *     0 and below 1
+ * @param costs of the nodes, or null where none were asked for
  */
 public record ReportPage(
     String title,
@@ -19,7 +21,8 @@ public record ReportPage(
     List<Figure> figures,
     double confidenceLevel,
     List<PictureCredit> pictures,
-    Provenance provenance) {
+    Provenance provenance,
+    @Nullable Costs costs) {
   /**
    * @throws IllegalArgumentException if the confidence level is out of range
    */
@@ -30,5 +33,17 @@ public record ReportPage(
     }
     figures = List.copyOf(figures);
     pictures = List.copyOf(pictures);
+  }
+
+  /** A page without costs. */
+  public ReportPage(
+      String title,
+      String question,
+      Answer answer,
+      List<Figure> figures,
+      double confidenceLevel,
+      List<PictureCredit> pictures,
+      Provenance provenance) {
+    this(title, question, answer, figures, confidenceLevel, pictures, provenance, null);
   }
 }

@@ -3,6 +3,7 @@ package linkworthy.report;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.stream.Stream;
+import org.jspecify.annotations.Nullable;
 
 /** A page laid out for the template: every number is already text. */
 record ReportView(
@@ -19,7 +20,8 @@ record ReportView(
     String outageSentence,
     String failureSentence,
     List<SeverityRow> severities,
-    List<Fact> provenance) {
+    List<Fact> provenance,
+    @Nullable CostView costs) {
 
   /** An impairment with its tables and its panels. */
   record Section(String id, String title, List<MatrixTable> tables, List<LinePlot> plots) {}
@@ -81,7 +83,8 @@ record ReportView(
         outageSentence(page, outages),
         failureSentence(page),
         severities(noises),
-        provenance(page.provenance()));
+        provenance(page.provenance()),
+        page.costs() == null ? null : CostView.of(page.costs()));
   }
 
   private static String summary(ReportPage page, FigureGrid grid) {

@@ -1,5 +1,6 @@
 package linkworthy.report;
 
+import static java.lang.Double.NaN;
 import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.assertThatThrownBy;
 
@@ -178,6 +179,42 @@ class ReportRendererTest {
     RenderedPage shown = new RenderedPage(html);
     assertThat(shown.text("//h1")).isEqualTo(HOSTILE);
     assertThat(shown.texts("//@onload")).isEmpty();
+  }
+
+  @Test
+  void costsNameWhatDoesNotFit() {
+    ReportPage plain = SamplePages.page(List.of());
+    assertThat(RenderedPage.of(plain).texts("//section[@id='costs']")).isEmpty();
+    Costs costs =
+        new Costs(
+            HOSTILE,
+            64,
+            List.of(
+                new Costs.CodecCost("dct", 1_234_567, 63.99, 1.5, 1.5, 20, 4321.9),
+                new Costs.CodecCost("pca", 2e9, 64.01, 250, 125, 20, 99),
+                new Costs.CodecCost("own", NaN, NaN, NaN, NaN, NaN, NaN)),
+            List.of(
+                new Costs.NodeShare("tiles", "camera", 0, 500, 0, 0, 115),
+                new Costs.NodeShare("tiles", "helper 1", 716_000, 0, 31_044, 5788.4, 9.235)));
+    RenderedPage shown =
+        RenderedPage.of(
+            new ReportPage(
+                plain.title(),
+                plain.question(),
+                plain.answer(),
+                plain.figures(),
+                plain.confidenceLevel(),
+                plain.pictures(),
+                plain.provenance(),
+                costs));
+    assertThat(shown.texts("(//section[@id='costs']//table)[1]/tbody/tr/td[3]"))
+        .containsExactly("fits", "too much", "unknown");
+    assertThat(shown.texts("(//section[@id='costs']//table)[1]/tbody/tr/td[last()]"))
+        .containsExactly("4321", "99", "n/a");
+    assertThat(shown.texts("(//section[@id='costs']//table)[2]/tbody/tr[2]/td"))
+        .startsWith("helper 1")
+        .endsWith("9.23")
+        .hasSize(6);
   }
 
   @Test

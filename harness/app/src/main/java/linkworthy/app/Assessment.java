@@ -10,6 +10,7 @@ import linkworthy.results.ResultsWriter;
 import linkworthy.results.RunRecord;
 import linkworthy.statistics.Cells;
 import linkworthy.trial.LocalRunner;
+import linkworthy.trial.NodeTable;
 import linkworthy.trial.Plan;
 
 /** One run of a plan into a results folder. */
@@ -90,6 +91,7 @@ final class Assessment {
                     + folder);
         return Main.ENVIRONMENT;
       }
+      writer.writeNodes(NodeTable.of(plan));
       writer.finish(cells.toList(), ended);
       ResultsFolder results = ResultsFolder.open(folder);
       writer.writeReport(Reports.html(results));

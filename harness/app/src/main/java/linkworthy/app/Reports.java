@@ -1,10 +1,14 @@
 package linkworthy.app;
 
 import java.util.ArrayList;
+import java.util.Iterator;
 import java.util.List;
+import linkworthy.input.Decimal;
+import linkworthy.link.NodeProfile;
 import linkworthy.report.Answer;
 import linkworthy.report.CodecColumn;
 import linkworthy.report.Condition;
+import linkworthy.report.Costs;
 import linkworthy.report.Fact;
 import linkworthy.report.Figure;
 import linkworthy.report.PictureCredit;
@@ -16,7 +20,10 @@ import linkworthy.results.ResultsFolder;
 import linkworthy.results.RunRecord;
 import linkworthy.statistics.Cell;
 import linkworthy.statistics.StudentT;
+import linkworthy.study.NodeChoice;
 import linkworthy.study.Study;
+import linkworthy.trial.NodeShare;
+import org.jspecify.annotations.Nullable;
 
 /** Makes the report of a results folder from its recorded cells alone. */
 final class Reports {
@@ -35,7 +42,65 @@ final class Reports {
                 figures,
                 StudentT.CONFIDENCE,
                 run.pictures().stream().map(Reports::credit).toList(),
-                provenance(results)));
+                provenance(results),
+                costs(results)));
+  }
+
+  /** What the nodes bear, from the clean cells; null where the study names no node. */
+  private static @Nullable Costs costs(ResultsFolder results) {
+    NodeChoice node = results.studyOnPaper().node();
+    if (node == null) {
+      return null;
+    }
+    NodeProfile profile = node.profile();
+    return new Costs(
+        "Node '"
+            + profile.id()
+            + "': "
+            + Decimal.shortest(profile.sentNanojoules())
+            + " nJ to send a bit, "
+            + Decimal.shortest(profile.receivedNanojoules())
+            + " nJ to receive one, "
+            + Decimal.shortest(profile.macNanojoules())
+            + " nJ a multiply-accumulate, "
+            + Decimal.shortest(profile.ramKib())
+            + " KiB of memory, "
+            + Decimal.shortest(profile.kilobitsPerSecond())
+            + " kbit/s, a battery of "
+            + Decimal.shortest(profile.batteryJoules())
+            + " J, a picture every "
+            + Decimal.shortest(node.intervalSeconds())
+            + " s at "
+            + Decimal.shortest(profile.sleepMilliwatts())
+            + " mW of sleep. Source: "
+            + profile.source(),
+        profile.ramKib(),
+        results.cells().stream()
+            .filter(cell -> cell.axis().isEmpty())
+            .map(Reports::codecCost)
+            .toList(),
+        results.nodes().stream().map(Reports::nodeShare).toList());
+  }
+
+  private static Costs.CodecCost codecCost(Cell cell) {
+    Iterator<String> columns = Study.COSTS.iterator();
+    double[] values = new double[Study.COSTS.size()];
+    for (int i = 0; i < values.length; i++) {
+      values[i] = cell.furtherMeans().getOrDefault(columns.next(), Double.NaN);
+    }
+    return new Costs.CodecCost(
+        cell.codec(), values[0], values[1], values[2], values[3], values[4], values[5]);
+  }
+
+  private static Costs.NodeShare nodeShare(NodeShare share) {
+    return new Costs.NodeShare(
+        share.codec(),
+        share.node() == 0 ? "camera" : "helper " + share.node(),
+        share.macs(),
+        share.rawSentBits(),
+        share.rawReceivedBits(),
+        share.codedSentBits(),
+        share.energyMj());
   }
 
   /** The answer in lines for the console. */

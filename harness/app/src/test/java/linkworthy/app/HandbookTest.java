@@ -15,8 +15,10 @@ import java.util.regex.Matcher;
 import java.util.regex.Pattern;
 import java.util.stream.Stream;
 import linkworthy.results.CellsCsv;
+import linkworthy.results.NodesCsv;
 import linkworthy.results.TimingsCsv;
 import linkworthy.results.TrialsCsv;
+import linkworthy.study.Study;
 import linkworthy.study.StudyReader;
 import linkworthy.trial.Plan;
 import org.junit.jupiter.api.Test;
@@ -129,6 +131,8 @@ class HandbookTest {
     List<String> columns = new ArrayList<>(TrialsCsv.columns());
     columns.addAll(CellsCsv.columns());
     columns.addAll(TimingsCsv.columns());
+    columns.addAll(NodesCsv.columns());
+    columns.addAll(Study.COSTS);
     assertThat(columns).allMatch(column -> page.contains("`" + column + "`"));
   }
 }

@@ -78,13 +78,15 @@ final class CsvTable<T> {
     return new CsvTable<>(all, maker);
   }
 
-  /** The text of a file of these rows, of which the first says what further columns there are. */
+  /**
+   * The text of a file of these rows; in an open table the first row says what further columns
+   * there are.
+   */
   String text(List<T> rows) {
-    Collection<String> furtherNames =
-        rows.isEmpty()
-            ? List.of()
-            : Objects.requireNonNull(further).values().apply(rows.get(0)).keySet();
-    CsvTable<T> table = with(furtherNames);
+    CsvTable<T> table =
+        further == null
+            ? this
+            : with(rows.isEmpty() ? List.of() : further.values().apply(rows.get(0)).keySet());
     return table.header() + table.lines(rows);
   }
 

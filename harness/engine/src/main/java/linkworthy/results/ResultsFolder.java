@@ -17,6 +17,7 @@ import linkworthy.statistics.Cell;
 import linkworthy.study.Study;
 import linkworthy.study.StudyReader;
 import linkworthy.study.StudyWriter;
+import linkworthy.trial.NodeShare;
 import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 
@@ -197,6 +198,16 @@ public final class ResultsFolder {
   public List<Cell> cells() {
     requireFile(folder, CellsCsv.FILE);
     return CellsCsv.read(folder.resolve(CellsCsv.FILE));
+  }
+
+  /**
+   * Each node's part in the codecs that have helper nodes; empty where there are none.
+   *
+   * @throws BadInput if the file is no table of nodes
+   */
+  public List<NodeShare> nodes() {
+    Path file = folder.resolve(NodesCsv.FILE);
+    return Files.exists(file) ? NodesCsv.read(file) : List.of();
   }
 
   /**

@@ -10,6 +10,7 @@ import linkworthy.input.BadInput;
 import linkworthy.statistics.Cell;
 import linkworthy.study.Study;
 import linkworthy.study.StudyWriter;
+import linkworthy.trial.NodeShare;
 import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 import org.jspecify.annotations.Nullable;
@@ -25,6 +26,7 @@ public final class ResultsWriter implements AutoCloseable {
       List.of(
           ResultsFolder.REPORT,
           CellsCsv.FILE,
+          NodesCsv.FILE,
           TimingsCsv.FILE,
           TrialsCsv.FILE,
           ResultsFolder.STUDY,
@@ -161,6 +163,17 @@ public final class ResultsWriter implements AutoCloseable {
   public void finish(List<Cell> cells, RunRecord run) {
     write(CellsCsv.FILE, CellsCsv.text(cells));
     write(RunRecord.FILE, run.toJson());
+  }
+
+  /**
+   * Writes each node's part, if any codec has helper nodes.
+   *
+   * @throws linkworthy.input.Unavailable if the folder cannot be written
+   */
+  public void writeNodes(List<NodeShare> shares) {
+    if (!shares.isEmpty()) {
+      write(NodesCsv.FILE, NodesCsv.text(shares));
+    }
   }
 
   /**

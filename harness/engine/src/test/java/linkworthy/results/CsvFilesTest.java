@@ -18,6 +18,7 @@ import java.util.SplittableRandom;
 import linkworthy.input.BadInput;
 import linkworthy.quality.QualityMeasure;
 import linkworthy.quality.QualityMeasures;
+import linkworthy.trial.NodeShare;
 import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 import org.junit.jupiter.api.Test;
@@ -157,6 +158,18 @@ class CsvFilesTest {
     assertThat(CellsCsv.read(file).get(1).furtherMeans())
         .containsExactly(entry("spread_db", -3.0), entry("blur", Double.NaN));
     assertThat(CellsCsv.text(CellsCsv.read(file))).isEqualTo(cells);
+  }
+
+  @Test
+  void nodesReadBack() throws IOException {
+    List<NodeShare> shares =
+        List.of(
+            new NodeShare("pca, tiles", 0, 0, 0.09375, 1e6, 0, 0, 0, 115.5),
+            new NodeShare("pca, tiles", 1, 716_000.2, 23.2, 0, 31_044, 5788.1, 40, 9.25));
+    Path file = folder.resolve(NodesCsv.FILE);
+    Files.writeString(file, NodesCsv.text(shares));
+    assertThat(NodesCsv.read(file)).isEqualTo(shares);
+    assertThat(Files.readString(file)).startsWith(String.join(",", NodesCsv.columns()) + "\n");
   }
 
   @Test
