@@ -37,7 +37,7 @@ public class CodecBenchmark {
   @Setup
   public void prepare() {
     codec = Scenes.codec(entry);
-    packets = encode().packets();
+    packets = encode().payloads();
   }
 
   @Benchmark
