@@ -8,6 +8,7 @@ import java.util.Map;
 import linkworthy.codec.Codec;
 import linkworthy.codec.Decoding;
 import linkworthy.codec.Encoding;
+import linkworthy.codec.Failure;
 import linkworthy.codec.Memo;
 import linkworthy.codec.Workload;
 import linkworthy.corpus.Picture;
@@ -20,6 +21,7 @@ import linkworthy.study.ImpairmentChoice;
 import linkworthy.study.NodeChoice;
 import linkworthy.study.Study;
 import org.apache.commons.rng.UniformRandomProvider;
+import org.jspecify.annotations.Nullable;
 
 /** Runs one work unit: draws its noise once and takes every codec through it. */
 final class UnitRunner {
@@ -146,13 +148,13 @@ final class UnitRunner {
               study.link().less(choice.protection().overheadBytes()),
               subject.coding());
       long start = System.nanoTime();
-      GuardedCodec.Sent sent =
-          encode(choice, codec, choice.codec().hasHelpers() ? afterRawHop : circumstances.seen());
+      Seen seen = choice.codec().hasHelpers() ? afterRawHop : circumstances.seen();
+      GuardedCodec.Sent sent = encode(choice, codec, seen);
       long encoded = System.nanoTime();
       Passage.Crossing crossing = circumstances.passage().open();
       Channel.Outcome outcome =
           new Channel(study.link(), choice.protection()).send(sent.encoding().packets(), crossing);
-      PlaneCoding.Decoded decoding = codec.decode(subject.shapes(), sent, outcome.payloads());
+      Judged judged = judge(choice, codec, seen, sent, outcome.payloads());
       long decoded = System.nanoTime();
       trials.add(
           trial(
@@ -161,9 +163,9 @@ final class UnitRunner {
               crossing.realisedNoiseVariance(),
               sent.encoding(),
               outcome,
-              decoding));
-      if (decoding.failure() != null) {
-        mishaps.add(new Mishap(choice.label(), unit.entry().id(), decoding.failure()));
+              judged));
+      if (judged.failure() != null) {
+        mishaps.add(new Mishap(choice.label(), unit.entry().id(), judged.failure()));
       }
       timings.add(
           new Timing(
@@ -183,15 +185,63 @@ final class UnitRunner {
    * protections that leave packets of the same size.
    */
   private GuardedCodec.Sent encode(CodecChoice choice, GuardedCodec codec, Seen seen) {
-    Map<String, Object> settings = new HashMap<>(choice.codec().settings());
-    settings.remove("label");
     return seen.memos()
         .get(0)
         .once(
-            new EncodingKey(settings, choice.protection().overheadBytes()),
+            EncodingKey.of(choice),
             GuardedCodec.Sent.class,
             () -> codec.encode(seen.planes(), seen.memos()));
   }
+
+  /**
+   * Decodes and judges; what arrives as it was sent gives the same figures every time, so that is
+   * done once for each encoding.
+   */
+  private Judged judge(
+      CodecChoice choice,
+      GuardedCodec codec,
+      Seen seen,
+      GuardedCodec.Sent sent,
+      List<byte[]> arrived) {
+    return isIntact(sent.encoding(), arrived)
+        ? seen.memos()
+            .get(0)
+            .once(
+                new IntactKey(EncodingKey.of(choice)),
+                Judged.class,
+                () -> judge(codec.decode(subject.shapes(), sent, arrived)))
+        : judge(codec.decode(subject.shapes(), sent, arrived));
+  }
+
+  private static boolean isIntact(Encoding encoding, List<byte[]> arrived) {
+    boolean intact = arrived.size() == encoding.packets().size();
+    for (int i = 0; intact && i < arrived.size(); i++) {
+      intact = arrived.get(i) == encoding.packets().get(i).payload();
+    }
+    return intact;
+  }
+
+  private Judged judge(PlaneCoding.Decoded decoding) {
+    Map<String, Double> further = new LinkedHashMap<>();
+    subject
+        .furtherJudges()
+        .forEach((column, judge) -> further.put(column, judge.of(decoding.luma())));
+    int ssim = study.measures().indexOf("ssim");
+    return new Judged(
+        subject.meanSquaredError(decoding.planes()),
+        ssim < 0 ? Double.NaN : subject.judges().get(ssim).of(decoding.luma()),
+        further,
+        decoding.completeness() == Decoding.Completeness.NOTHING,
+        decoding.failure());
+  }
+
+  /** The figures of a decoded picture. */
+  private record Judged(
+      double mse,
+      double ssim,
+      Map<String, Double> further,
+      boolean outage,
+      @Nullable Failure failure) {}
 
   private String impairmentLabel() {
     return unit.condition() == null
@@ -205,9 +255,8 @@ final class UnitRunner {
       double realisedVariance,
       Encoding encoding,
       Channel.Outcome outcome,
-      PlaneCoding.Decoded decoding) {
+      Judged judged) {
     WorkUnit.Condition condition = unit.condition();
-    double mse = subject.meanSquaredError(decoding.planes());
     Codec.Description description = choice.codec().description();
     return new Trial(
         new TrialKey(study, unit, choice).id(),
@@ -227,37 +276,26 @@ final class UnitRunner {
         encoding.keep(),
         encoding.step().isEmpty() ? description.step() : encoding.step(),
         unit.replicate(),
-        mse,
-        Psnr.psnrDb(mse, subject.picture().peak()),
-        measured("ssim", decoding.luma()),
+        judged.mse(),
+        Psnr.psnrDb(judged.mse(), subject.picture().peak()),
+        judged.ssim(),
         outcome.payloadBits(),
         outcome.sentBits(),
         (double) outcome.sentBits() / subject.picture().size(),
         outcome.packetsSent(),
         outcome.packetsLost(),
-        decoding.completeness() == Decoding.Completeness.NOTHING,
-        decoding.failure() == null ? "" : decoding.failure().word(),
-        further(choice, encoding, outcome, decoding));
-  }
-
-  private double measured(String measure, Picture decoded) {
-    int at = study.measures().indexOf(measure);
-    return at < 0 ? Double.NaN : subject.judges().get(at).of(decoded);
+        judged.outage(),
+        judged.failure() == null ? "" : judged.failure().word(),
+        further(choice, encoding, outcome, judged));
   }
 
   private Map<String, Double> further(
-      CodecChoice choice,
-      Encoding encoding,
-      Channel.Outcome outcome,
-      PlaneCoding.Decoded decoding) {
-    Map<String, Double> figures = new LinkedHashMap<>();
-    subject
-        .furtherJudges()
-        .forEach((column, judge) -> figures.put(column, judge.of(decoding.luma())));
+      CodecChoice choice, Encoding encoding, Channel.Outcome outcome, Judged judged) {
+    Map<String, Double> figures = new LinkedHashMap<>(judged.further());
     NodeChoice node = study.node();
     if (node != null) {
       List<Workload> work =
-          decoding.failure() == null
+          judged.failure() == null
               ? subject.coding().workloads(choice.codec(), subject.shapes(), encoding.keep())
               : List.of();
       figures.putAll(NodeCosts.of(node, work, outcome.byNode()).figures());
@@ -265,5 +303,13 @@ final class UnitRunner {
     return figures;
   }
 
-  private record EncodingKey(Map<String, Object> settings, int overheadBytes) {}
+  private record EncodingKey(Map<String, Object> settings, int overheadBytes) {
+    static EncodingKey of(CodecChoice choice) {
+      Map<String, Object> settings = new HashMap<>(choice.codec().settings());
+      settings.remove("label");
+      return new EncodingKey(settings, choice.protection().overheadBytes());
+    }
+  }
+
+  private record IntactKey(EncodingKey encoding) {}
 }

@@ -208,7 +208,7 @@ class LocalRunnerTest {
   /**
    * What could be done once for a work unit is done once: the encoders' work on one noisy picture
    * is one analysis for each basis and arrangement, one set of symbols for each of their steps, and
-   * one encoding for each codec.
+   * for each codec one encoding and one look at the picture that arrives whole.
    */
   @Test
   void workIsDoneOncePerUnit() {
@@ -221,7 +221,28 @@ class LocalRunnerTest {
     }
     assertThat(subject.memo().computed())
         .as("every unit that loses packets of the clean picture shares the same work")
-        .isEqualTo(analyses + analyses + encodings);
+        .isEqualTo(analyses + analyses + encodings + encodings);
+  }
+
+  /** A picture that arrives whole is looked at once; the row is that of looking again. */
+  @Test
+  void whatArrivesWholeIsJudgedOnceAndAlike() {
+    String rare = STUDY.replace("loss-rate: [0.1, 0.4]", "loss-rate: [0.001]");
+    Plan plan = plan(rare);
+    Subject shared = new Subject(plan.planes(plan.pictures().get(0)), plan.study());
+    int whole = 0;
+    for (int index = 0; index < plan.units() / 2; index++) {
+      WorkUnit unit = plan.unit(index);
+      List<Trial> remembered = new UnitRunner(plan.study(), shared, unit).run().trials();
+      Subject fresh = new Subject(plan.planes(plan.pictures().get(0)), plan.study());
+      assertThat(remembered).isEqualTo(new UnitRunner(plan.study(), fresh, unit).run().trials());
+      whole +=
+          (int)
+              remembered.stream()
+                  .filter(t -> t.actsOn().equals("packets") && t.packetsLost() == 0)
+                  .count();
+    }
+    assertThat(whole).isPositive();
   }
 
   @ParameterizedTest
