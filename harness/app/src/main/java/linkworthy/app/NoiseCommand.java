@@ -1,11 +1,19 @@
 package linkworthy.app;
 
+import java.nio.file.Path;
 import java.util.Locale;
+import java.util.Optional;
 import java.util.stream.Collectors;
 import linkworthy.noise.NoiseLibrary;
 import linkworthy.noise.NoiseModel;
 import linkworthy.noise.Site;
+import linkworthy.noise.fit.LossFit;
+import linkworthy.noise.fit.LossFitText;
+import linkworthy.noise.fit.LossTrace;
+import linkworthy.noise.fit.ModelFile;
+import org.jspecify.annotations.Nullable;
 import picocli.CommandLine.Command;
+import picocli.CommandLine.Option;
 import picocli.CommandLine.Parameters;
 
 /** The noise-model library. */
@@ -60,6 +68,50 @@ final class NoiseCommand {
     out.println("source:      " + model.source());
     out.println("notes:       " + model.notes());
     out.println("fingerprint: " + model.fingerprint());
+  }
+
+  @Command(
+      name = "fit",
+      description = {
+        "Fit a model to measurements: burst losses to a column of 0 (delivered) and 1 (lost),",
+        "one packet a line."
+      },
+      mixinStandardHelpOptions = true,
+      footer = {
+        "",
+        "Exit code 1 if the measurements do not suffice for a model.",
+        "Example: linkworthy noise fit trace.csv --column lost --out my-link.yaml"
+      })
+  int fit(
+      @Parameters(paramLabel = "TRACE.csv", description = "Fates of packets.") Path trace,
+      @Option(
+              names = "--column",
+              paramLabel = "NAME",
+              description = "Column of the fates, by its name in the first line.")
+          @Nullable String column,
+      @Option(
+              names = "--out",
+              paramLabel = "FILE",
+              description = "Model file to write; must not exist.")
+          @Nullable Path out) {
+    if (out != null) {
+      ModelFile.requireNew(out);
+    }
+    LossTrace read = LossTrace.read(trace, Optional.ofNullable(column));
+    Optional<String> obstacle = LossFit.obstacle(read);
+    if (obstacle.isPresent()) {
+      surroundings.out().println(obstacle.get());
+      return Main.NO;
+    }
+    LossFit fit = LossFit.of(read);
+    LossFitText.lines(fit).forEach(surroundings.out()::println);
+    if (out != null) {
+      ModelFile.write(out, ModelFile.of(fit, ModelFile.id(out)));
+      surroundings
+          .out()
+          .println("wrote " + out + "; in a study: noise: " + out + " with loss-rate: [...]");
+    }
+    return Main.DONE;
   }
 
   private static String sites(NoiseModel model) {
