@@ -58,6 +58,10 @@ public record ManifestAddition(String licence, String attribution, String set, S
    * @throws Unavailable if the manifest cannot be written
    */
   public Result add(Path manifest, Path folder) {
+    List<Path> files = PictureFile.in(folder);
+    if (!Files.isDirectory(folderOf(manifest))) {
+      throw new BadInput("the folder of " + manifest + " does not exist");
+    }
     List<ManifestEntry> entries = new ArrayList<>();
     if (Files.exists(manifest)) {
       entries.addAll(Manifest.read(manifest).entries());
@@ -65,7 +69,6 @@ public record ManifestAddition(String licence, String attribution, String set, S
     Result result =
         new Result(new ArrayList<>(), new ArrayList<>(), new ArrayList<>(), new ArrayList<>());
     Path base = real(folderOf(manifest));
-    List<Path> files = PictureFile.in(folder);
     Path real = real(folder);
     if (!real.startsWith(base)) {
       throw new BadInput(

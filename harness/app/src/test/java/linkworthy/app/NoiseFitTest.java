@@ -2,14 +2,22 @@ package linkworthy.app;
 
 import static org.assertj.core.api.Assertions.assertThat;
 
+import java.io.ByteArrayOutputStream;
 import java.io.IOException;
+import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.util.List;
+import java.util.Map;
+import linkworthy.corpus.Manifest;
+import linkworthy.corpus.Picture;
 import linkworthy.noise.Impairment;
 import linkworthy.noise.MarkovLoss;
 import linkworthy.noise.NoiseModel;
 import linkworthy.noise.NoiseStreams;
 import linkworthy.noise.Severity;
+import linkworthy.noise.ShotNoise;
+import linkworthy.noise.SignalStatistics;
 import linkworthy.noise.Site;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
@@ -44,7 +52,9 @@ class NoiseFitTest {
     Path study =
         SmallStudy.write(
             folder,
-            SmallStudy.TEXT.replace("noise: burst-loss\n    acts-on: packets\n    mean-burst: 4", "noise: my-link.yaml"));
+            SmallStudy.TEXT.replace(
+                "noise: burst-loss\n    acts-on: packets\n    mean-burst: 4",
+                "noise: my-link.yaml"));
     assertThat(Files.readString(study)).contains("my-link.yaml");
     Outcome run = Program.run(folder, "assess", study.toString(), "--out", folder + "/out");
     assertThat(run.err()).isEmpty();
@@ -79,5 +89,60 @@ class NoiseFitTest {
     assertThat(fit.errors()).singleElement().asString().contains(part);
     assertThat(fit.out()).isEmpty();
     assertThat(fit.code()).isEqualTo(2);
+  }
+
+  @Test
+  void sensorNoiseIsFittedToPictures() throws IOException {
+    Path frames = Files.createDirectories(folder.resolve("frames"));
+    Manifest shipped = Manifest.shipped();
+    Picture canyon = shipped.load(shipped.select(List.of("canyon")).get(0));
+    Severity severity = new Severity(ShotNoise.GAIN, 0.5);
+    for (int i = 0; i < 2; i++) {
+      Impairment.OnSamples noise =
+          (Impairment.OnSamples)
+              new ShotNoise().at(severity, Map.of(), Site.SAMPLES, SignalStatistics.of(canyon));
+      Picture noisy =
+          noise.apply(canyon, NoiseStreams.open(i, "t", "t", Site.SAMPLES, severity, 0, "t"));
+      Files.write(frames.resolve(i + ".pgm"), pgm(noisy));
+    }
+    Path model = folder.resolve("sensor.yaml");
+    Outcome fit =
+        Program.run(
+            folder, "noise", "fit", "--pictures", frames.toString(), "--out", model.toString());
+    assertThat(fit.err()).isEmpty();
+    assertThat(fit.code()).isZero();
+    assertThat(fit.out()).contains("2 frames of one scene", "chosen: shot-noise");
+    assertThat(NoiseModel.read(model).process()).isEqualTo("shot-noise");
+    Outcome single =
+        Program.run(folder, "noise", "fit", "--pictures", frames.toString(), "--single");
+    assertThat(single.out()).contains("0.pgm: noise deviation", "chosen: gaussian");
+  }
+
+  private static byte[] pgm(Picture picture) {
+    ByteArrayOutputStream out = new ByteArrayOutputStream();
+    out.writeBytes(
+        ("P5\n" + picture.width() + " " + picture.height() + "\n255\n")
+            .getBytes(StandardCharsets.US_ASCII));
+    for (int sample : picture.samples()) {
+      out.write(sample);
+    }
+    return out.toByteArray();
+  }
+
+  @Test
+  void optionsThatDoNotGoTogetherAreRefused() throws IOException {
+    String trace = trace(100).toString();
+    for (List<String> wrong :
+        List.of(
+            List.of("noise", "fit"),
+            List.of("noise", "fit", trace, "--pictures", folder.toString()),
+            List.of("noise", "fit", trace, "--single"),
+            List.of("noise", "fit", "--pictures", folder.toString(), "--column", "x"),
+            List.of("noise", "fit", "--pictures", folder.toString(), "--single", "--repeated"),
+            List.of("noise", "fit", "--pictures", folder + "/nowhere"))) {
+      Outcome outcome = Program.run(folder, wrong.toArray(new String[0]));
+      assertThat(outcome.errors()).as("%s", wrong).hasSize(1);
+      assertThat(outcome.code()).isEqualTo(2);
+    }
   }
 }

@@ -13,6 +13,7 @@ import linkworthy.input.Unavailable;
 import linkworthy.input.YamlNode;
 import linkworthy.noise.BurstLoss;
 import linkworthy.noise.NoiseModel;
+import linkworthy.noise.ShotNoise;
 
 /** A fitted model as the text of a model file, which {@link NoiseModel#read} accepts. */
 public final class ModelFile {
@@ -59,8 +60,28 @@ public final class ModelFile {
     return notes.append('.').toString();
   }
 
+  /** Photon and read noise, to be set by its gain. */
+  static String shotNoise(String id, double readNoise, String source, String notes) {
+    StringBuilder text = head(id, "shot-noise", "samples");
+    text.append("parameters:\n  ").append(ShotNoise.READ_NOISE).append(": ");
+    text.append(Decimal.shortest(readNoise)).append("  # grey levels\n");
+    text.append("severity: [").append(ShotNoise.GAIN).append(", snr-db, variance]\n");
+    line(text, "source", source);
+    line(text, "notes", notes);
+    return text.toString();
+  }
+
+  /** Noise that does not depend on the light, to be set by its variance. */
+  static String gaussian(String id, String source, String notes) {
+    StringBuilder text = head(id, "gaussian", "samples");
+    text.append("severity: [variance, snr-db]\n");
+    line(text, "source", source);
+    line(text, "notes", notes);
+    return text.toString();
+  }
+
   /** The common keys down to acts-on. */
-  static StringBuilder head(String id, String process, String site) {
+  private static StringBuilder head(String id, String process, String site) {
     StringBuilder text = new StringBuilder();
     text.append("# A noise model fitted from measurements.\n");
     text.append("id: ").append(id).append("\nversion: 1\nprocess: ").append(process);
@@ -68,7 +89,7 @@ public final class ModelFile {
   }
 
   /** A key with a text in double quotes (YAML 1.2, section 7.3.1). */
-  static void line(StringBuilder text, String key, String value) {
+  private static void line(StringBuilder text, String key, String value) {
     text.append(key).append(": \"");
     for (int i = 0; i < value.length(); i++) {
       char c = value.charAt(i);
