@@ -49,6 +49,19 @@ public record PictureFile(
   }
 
   /**
+   * Whether a file begins as the pictures do that are read here.
+   *
+   * @throws Unavailable if it cannot be opened
+   */
+  public static boolean hasSignature(Path file) {
+    try (InputStream in = Files.newInputStream(file)) {
+      return PictureFormat.of(in.readNBytes(PictureFormat.LONGEST_SIGNATURE)).isPresent();
+    } catch (IOException e) {
+      throw Unavailable.cannot("read " + file, e);
+    }
+  }
+
+  /**
    * Reads a picture.
    *
    * @throws BadInput if it is of a kind that is not accepted, or too large

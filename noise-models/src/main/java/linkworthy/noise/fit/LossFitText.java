@@ -11,6 +11,8 @@ public final class LossFitText {
   private static final int LONGEST_SHOWN = 12;
   private static final int BAR = 40;
   private static final int FEW_RUNS = 10;
+  private static final double LEAST_CHANCE = 1e-4;
+  private static final String LEAST_CHANCE_TEXT = "0.0001";
 
   private LossFitText() {}
 
@@ -90,22 +92,22 @@ public final class LossFitText {
   private static void choice(List<String> lines, LossFit fit) {
     add(
         lines,
-        "independent or simple chain? A chain fits so much better by chance with p = %s",
-        number(fit.simpleByChance()));
+        "independent or simple chain? A chain fits so much better by chance: p %s",
+        chance(fit.simpleByChance()));
     if (fit.threeParameter().isPresent()) {
       add(
           lines,
-          "simple or three-parameter chain? The third fits so much better by chance with p = %s",
-          number(fit.threeParameterByChance()));
+          "simple or three-parameter chain? The third fits so much better by chance: p %s",
+          chance(fit.threeParameterByChance()));
       lines.add("  (likelihood ratio; h = 0 is the limit of its range, so half a tail of 1 df)");
     } else {
       add(lines, "three parameters are not fitted to fewer than %d losses", LossFit.LEAST_LOSSES);
     }
     add(
         lines,
-        "chosen: %s, the simplest that is not rejected at p < %s",
+        "chosen: %s, the simplest that is not rejected at p < %.2f",
         fit.chosen().form().label(),
-        number(LossFit.LEVEL));
+        LossFit.LEVEL);
   }
 
   private static void goodness(List<String> lines, LossFit fit) {
@@ -116,10 +118,10 @@ public final class LossFitText {
     }
     add(
         lines,
-        "run lengths: chi-square %.2f with %d degrees of freedom, p = %s: %s",
+        "run lengths: chi-square %.2f with %d degrees of freedom, p %s: %s",
         test.statistic(),
         test.degreesOfFreedom(),
-        number(test.pValue()),
+        chance(test.pValue()),
         test.pValue() < LossFit.LEVEL
             ? "the fit does not describe the runs; replay the trace itself (process trace)"
             : "the runs do not speak against the fit");
@@ -154,6 +156,10 @@ public final class LossFitText {
 
   private static void add(List<String> lines, String format, Object... values) {
     lines.add(String.format(Locale.ROOT, format, values).stripTrailing());
+  }
+
+  private static String chance(double p) {
+    return p < LEAST_CHANCE ? "< " + LEAST_CHANCE_TEXT : "= " + number(p);
   }
 
   private static String number(double value) {

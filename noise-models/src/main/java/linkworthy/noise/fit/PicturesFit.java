@@ -37,7 +37,7 @@ public record PicturesFit(
   }
 
   /**
-   * Reads the pictures of a folder and fits them.
+   * Reads the pictures of a folder and fits them; files of other kinds are passed over.
    *
    * @throws BadInput if there are none, they cannot be fitted, or several of equal size are neither
    *     clearly one scene nor said to be single
@@ -45,9 +45,13 @@ public record PicturesFit(
    */
   public static PicturesFit of(Path folder, Kind kind) {
     List<PictureFile> files =
-        PictureFile.in(folder).stream().map(PictureFile::read).collect(Collectors.toList());
+        PictureFile.in(folder).stream()
+            .filter(PictureFile::hasSignature)
+            .map(PictureFile::read)
+            .collect(Collectors.toList());
     if (files.isEmpty()) {
-      throw new BadInput(folder + " has no files; accepted: a folder of pictures");
+      throw new BadInput(
+          folder + " has no pictures; accepted: a folder with PNG, JPEG, TIFF, PNM or BMP");
     }
     List<Picture> lumas = files.stream().map(PictureFile::luma).toList();
     List<String> names = new ArrayList<>();

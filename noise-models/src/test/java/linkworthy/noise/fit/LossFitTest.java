@@ -321,6 +321,8 @@ class LossFitTest {
         .anyMatch(line -> line.matches("  r bad to good [0-9.]+ \\(s\\.e\\. [0-9.]+\\)"))
         .anyMatch(line -> line.matches(" +1 +\\d+ +[0-9.]+  #{40}"))
         .anyMatch(line -> line.startsWith(" >12"));
+    assertThat(lines)
+        .contains("independent or simple chain? A chain fits so much better by chance: p < 0.0001");
     assertThat(lines).noneMatch(line -> line.contains("NaN"));
     assertThat(LossFitText.lines(LossFit.of(SHORT)))
         .anyMatch(line -> line.startsWith("caution: only 3 runs"))

@@ -145,6 +145,14 @@ class SensorFitTest {
         .hasMessageContaining("at least 16 samples");
   }
 
+  @Test
+  void aFolderWithoutPicturesIsRefused() throws IOException {
+    Files.writeString(folder.resolve("notes.txt"), "no picture");
+    assertThatThrownBy(() -> PicturesFit.of(folder, PicturesFit.Kind.SINGLE))
+        .isInstanceOf(BadInput.class)
+        .hasMessageContaining("has no pictures");
+  }
+
   private void write(String name, Picture picture) throws IOException {
     byte[] head =
         ("P5\n" + picture.width() + " " + picture.height() + "\n255\n")
@@ -163,6 +171,7 @@ class SensorFitTest {
     for (int i = 0; i < frames.size(); i++) {
       write(i + ".pgm", frames.get(i));
     }
+    Files.writeString(folder.resolve("manifest.csv"), "no picture");
     PicturesFit fit = PicturesFit.of(folder, PicturesFit.Kind.TOLD_BY_PICTURES);
     assertThat(fit.repeated()).isPresent();
     assertThat(fit.lines())
