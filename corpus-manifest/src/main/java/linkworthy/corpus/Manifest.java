@@ -20,8 +20,8 @@ import linkworthy.input.Unavailable;
 
 /**
  * The list of a corpus's pictures. A manifest is a CSV file (RFC 4180, UTF-8, at most 16 MiB) with
- * one line a picture and the columns of {@link #COLUMNS}, in any order; files are found relative to
- * the manifest's own folder.
+ * one line a picture and the columns of {@link #COLUMNS}, in any order, and perhaps {@code
+ * address}; files are found relative to the manifest's own folder.
  */
 public final class Manifest {
   /** The columns, all of them needed; {@code source} and {@code derivation} may be empty. */
@@ -40,6 +40,9 @@ public final class Manifest {
           "source",
           "sha256",
           "derivation");
+
+  /** The column that may be left out: where a picture can be fetched. */
+  static final String ADDRESS = "address";
 
   private static final int MAX_BYTES = 16 << 20;
   private static final int SPARE_BYTES = 1 << 20;
@@ -240,12 +243,25 @@ public final class Manifest {
     return ManifestCsv.write(entries);
   }
 
+  /** Where the pictures are, if they are in a folder. */
+  Optional<Path> folder() {
+    return store instanceof PictureStore.Folder files
+        ? Optional.of(files.folder())
+        : Optional.empty();
+  }
+
   private Optional<byte[]> bytes(ManifestEntry entry) {
     return store.read(entry.file(), limit(entry) + 1);
   }
 
-  private static int limit(ManifestEntry entry) {
-    long limit = 2 * entry.header().rawBytes() + SPARE_BYTES;
+  /** The most bytes that a picture's file may have. */
+  static int limit(ManifestEntry entry) {
+    return limit(entry.header());
+  }
+
+  /** The most bytes that a file of this header may have. */
+  static int limit(PictureHeader header) {
+    long limit = 2 * header.rawBytes() + SPARE_BYTES;
     return (int) Math.min(limit, Integer.MAX_VALUE - 64);
   }
 

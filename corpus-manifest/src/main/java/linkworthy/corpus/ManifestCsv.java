@@ -13,6 +13,7 @@ import java.util.Iterator;
 import java.util.List;
 import java.util.Map;
 import java.util.Set;
+import java.util.stream.Stream;
 import linkworthy.input.BadInput;
 import linkworthy.input.Spelling;
 import org.apache.commons.csv.CSVFormat;
@@ -24,6 +25,9 @@ import org.apache.commons.csv.CSVRecord;
 final class ManifestCsv {
   private static final CSVFormat FORMAT =
       CSVFormat.RFC4180.builder().setIgnoreEmptyLines(true).setRecordSeparator("\n").get();
+
+  private static final List<String> KNOWN =
+      Stream.concat(Manifest.COLUMNS.stream(), Stream.of(Manifest.ADDRESS)).toList();
 
   private final String source;
   private final PictureStore store;
@@ -94,8 +98,8 @@ final class ManifestCsv {
   private List<String> columns(CSVRecord header) {
     List<String> columns = header.toList();
     for (String column : columns) {
-      if (!Manifest.COLUMNS.contains(column)) {
-        throw at(1, "unknown column '" + column + "'; " + Spelling.hint(column, Manifest.COLUMNS));
+      if (!KNOWN.contains(column)) {
+        throw at(1, "unknown column '" + column + "'; " + Spelling.hint(column, KNOWN));
       }
     }
     for (String needed : Manifest.COLUMNS) {
@@ -103,7 +107,7 @@ final class ManifestCsv {
         throw at(1, "missing column '" + needed + "'");
       }
     }
-    if (columns.size() > Manifest.COLUMNS.size()) {
+    if (columns.size() > Set.copyOf(columns).size()) {
       throw at(1, "a column stands twice; accepted: each once");
     }
     return columns;
@@ -140,7 +144,8 @@ final class ManifestCsv {
         text(values, "attribution"),
         text(values, "source"),
         text(values, "sha256"),
-        text(values, "derivation"));
+        text(values, "derivation"),
+        text(values, Manifest.ADDRESS));
   }
 
   private static String text(Map<String, String> values, String column) {
@@ -164,28 +169,37 @@ final class ManifestCsv {
   }
 
   static String write(List<ManifestEntry> entries) {
+    boolean addresses = entries.stream().anyMatch(entry -> !entry.address().isEmpty());
     StringBuilder out = new StringBuilder();
     try (CSVPrinter printer = new CSVPrinter(out, FORMAT)) {
-      printer.printRecord(Manifest.COLUMNS);
-      for (ManifestEntry e : entries) {
-        printer.printRecord(
-            e.id(),
-            e.set(),
-            e.file(),
-            e.width(),
-            e.height(),
-            e.channels(),
-            e.bitDepth(),
-            e.category(),
-            e.licence(),
-            e.attribution(),
-            e.source(),
-            e.sha256(),
-            e.derivation());
+      printer.printRecord(addresses ? KNOWN : Manifest.COLUMNS);
+      for (ManifestEntry entry : entries) {
+        List<Object> values = new ArrayList<>(values(entry));
+        if (addresses) {
+          values.add(entry.address());
+        }
+        printer.printRecord(values);
       }
     } catch (IOException e) {
       throw new IllegalStateException("a string cannot fail to be written", e);
     }
     return out.toString();
+  }
+
+  private static List<Object> values(ManifestEntry e) {
+    return List.of(
+        e.id(),
+        e.set(),
+        e.file(),
+        e.width(),
+        e.height(),
+        e.channels(),
+        e.bitDepth(),
+        e.category(),
+        e.licence(),
+        e.attribution(),
+        e.source(),
+        e.sha256(),
+        e.derivation());
   }
 }

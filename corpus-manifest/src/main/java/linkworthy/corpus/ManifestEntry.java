@@ -20,6 +20,8 @@ import linkworthy.input.Require;
  * @param source where it is from, one line of any text, may be empty
  * @param sha256 SHA-256 of the file, 64 hexadecimal digits, kept in lower case
  * @param derivation how it was made, one line of any text, may be empty
+ * @param address where it can be fetched, {@code https://}, or {@code http://} on this machine
+ *     alone; may be empty
  */
 public record ManifestEntry(
     String id,
@@ -34,7 +36,8 @@ public record ManifestEntry(
     String attribution,
     String source,
     String sha256,
-    String derivation) {
+    String derivation,
+    String address) {
   private static final Pattern ID = Pattern.compile("[A-Za-z0-9][A-Za-z0-9._-]{0,63}");
   private static final Pattern SHA_256 = Pattern.compile("[0-9a-fA-F]{64}");
   private static final Pattern DRIVE = Pattern.compile("[A-Za-z]:.*");
@@ -62,6 +65,44 @@ public record ManifestEntry(
     require(SHA_256.matcher(sha256).matches(), "sha256", sha256, "64 hexadecimal digits");
     sha256 = sha256.toLowerCase(Locale.ROOT);
     lineOrEmpty(derivation, "derivation");
+    require(
+        address.isEmpty() || Address.of(address).isPresent(), "address", address, Address.ACCEPTED);
+  }
+
+  /**
+   * A picture that is not to be fetched.
+   *
+   * @throws IllegalArgumentException as the other constructor
+   */
+  public ManifestEntry(
+      String id,
+      String set,
+      String file,
+      int width,
+      int height,
+      int channels,
+      int bitDepth,
+      String category,
+      String licence,
+      String attribution,
+      String source,
+      String sha256,
+      String derivation) {
+    this(
+        id,
+        set,
+        file,
+        width,
+        height,
+        channels,
+        bitDepth,
+        category,
+        licence,
+        attribution,
+        source,
+        sha256,
+        derivation,
+        "");
   }
 
   /** What the file has to be. */

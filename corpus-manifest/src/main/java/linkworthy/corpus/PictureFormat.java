@@ -26,7 +26,8 @@ enum PictureFormat {
   PNM(PNMImageReaderSpi.class.getName(), "P[1-6]"),
   BMP(BMPImageReaderSpi.class.getName(), "BM");
 
-  private static final int LONGEST_SIGNATURE = 8;
+  /** So many bytes tell the format. */
+  static final int LONGEST_SIGNATURE = 8;
 
   private final String providerClass;
   private final Pattern signature;

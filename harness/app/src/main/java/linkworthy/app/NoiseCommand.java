@@ -1,11 +1,24 @@
 package linkworthy.app;
 
+import java.nio.file.Path;
 import java.util.Locale;
+import java.util.Objects;
+import java.util.Optional;
 import java.util.stream.Collectors;
+import linkworthy.input.BadInput;
 import linkworthy.noise.NoiseLibrary;
 import linkworthy.noise.NoiseModel;
 import linkworthy.noise.Site;
+import linkworthy.noise.fit.LossFit;
+import linkworthy.noise.fit.LossFitText;
+import linkworthy.noise.fit.LossTrace;
+import linkworthy.noise.fit.ModelFile;
+import linkworthy.noise.fit.PicturesFit;
+import linkworthy.noise.fit.PicturesFit.Kind;
+import org.jspecify.annotations.Nullable;
+import picocli.CommandLine.ArgGroup;
 import picocli.CommandLine.Command;
+import picocli.CommandLine.Option;
 import picocli.CommandLine.Parameters;
 
 /** The noise-model library. */
@@ -60,6 +73,93 @@ final class NoiseCommand {
     out.println("source:      " + model.source());
     out.println("notes:       " + model.notes());
     out.println("fingerprint: " + model.fingerprint());
+  }
+
+  @Command(
+      name = "fit",
+      description = {
+        "Fit a model to measurements: burst losses to a column of 0 (delivered) and 1 (lost), one",
+        "packet a line; or with --pictures the noise of a sensor to a folder of its pictures."
+      },
+      mixinStandardHelpOptions = true,
+      footer = {
+        "",
+        "Exit code 1 if the measurements do not suffice for a model.",
+        "Examples:",
+        "  linkworthy noise fit trace.csv --column lost --out my-link.yaml",
+        "  linkworthy noise fit --pictures frames --out my-sensor.yaml"
+      })
+  int fit(
+      @ArgGroup(exclusive = true, multiplicity = "1") Measured measured,
+      @Option(
+              names = "--column",
+              paramLabel = "NAME",
+              description = "Column of the fates, by its name in the first line.")
+          @Nullable String column,
+      @Option(
+              names = "--repeated",
+              description = "The pictures are frames of one scene, even if they differ much.")
+          boolean repeated,
+      @Option(names = "--single", description = "Take each picture for itself.") boolean single,
+      @Option(
+              names = "--out",
+              paramLabel = "FILE",
+              description = "Model file to write; must not exist.")
+          @Nullable Path out) {
+    if (repeated && single) {
+      throw new BadInput("--repeated and --single are both given; accepted: one of them");
+    }
+    if (measured.pictures == null && (repeated || single)) {
+      throw new BadInput("--repeated and --single are for --pictures");
+    }
+    if (measured.pictures != null && column != null) {
+      throw new BadInput("--column is for a trace, not for --pictures");
+    }
+    if (out != null) {
+      ModelFile.requireNew(out);
+    }
+    if (measured.pictures != null) {
+      Kind kind = repeated ? Kind.REPEATED : single ? Kind.SINGLE : Kind.TOLD_BY_PICTURES;
+      fitPictures(measured.pictures, kind, out);
+      return Main.DONE;
+    }
+    return fitTrace(Objects.requireNonNull(measured.trace), column, out);
+  }
+
+  private void fitPictures(Path folder, Kind kind, @Nullable Path out) {
+    PicturesFit fit = PicturesFit.of(folder, kind);
+    fit.lines().forEach(surroundings.out()::println);
+    if (out != null) {
+      ModelFile.write(out, fit.model(ModelFile.id(out)));
+      surroundings.out().println("wrote " + out + "; its notes say what was measured");
+    }
+  }
+
+  private int fitTrace(Path trace, @Nullable String column, @Nullable Path out) {
+    LossTrace read = LossTrace.read(trace, Optional.ofNullable(column));
+    Optional<String> obstacle = LossFit.obstacle(read);
+    if (obstacle.isPresent()) {
+      surroundings.out().println(obstacle.get());
+      return Main.NO;
+    }
+    LossFit fit = LossFit.of(read);
+    LossFitText.lines(fit).forEach(surroundings.out()::println);
+    if (out != null) {
+      ModelFile.write(out, ModelFile.of(fit, ModelFile.id(out)));
+      surroundings
+          .out()
+          .println("wrote " + out + "; in a study: noise: " + out + " with loss-rate: [...]");
+    }
+    return Main.DONE;
+  }
+
+  /** What is fitted. */
+  private static final class Measured {
+    @Parameters(paramLabel = "TRACE.csv", description = "Fates of packets.")
+    private @Nullable Path trace;
+
+    @Option(names = "--pictures", paramLabel = "DIR", description = "Folder of pictures.")
+    private @Nullable Path pictures;
   }
 
   private static String sites(NoiseModel model) {
