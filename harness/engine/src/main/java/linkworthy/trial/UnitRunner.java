@@ -33,13 +33,28 @@ final class UnitRunner {
     this.unit = unit;
   }
 
-  /** What a unit gives: a trial and its times for each codec of the study, in the study's order. */
+  /** What a unit gives: a trial and its times for each codec. */
   record Rows(List<Trial> trials, List<Timing> timings, List<Mishap> mishaps) {}
 
+  /** Looks at the luma planes of each trial: as its encoder saw it, and as it was decoded. */
+  interface Viewer {
+    void see(Picture seen, Picture decoded);
+  }
+
+  /** Runs every codec of the study, in the study's order. */
   Rows run() {
+    return run(study.codecs(), (seen, decoded) -> {});
+  }
+
+  /** Runs some of the study's codecs. */
+  Rows run(List<CodecChoice> codecs, Viewer viewer) {
+    return evaluate(codecs, circumstances(), viewer);
+  }
+
+  private Circumstances circumstances() {
     WorkUnit.Condition condition = unit.condition();
     if (condition == null) {
-      return evaluate(Circumstances.clean(subject));
+      return Circumstances.clean(subject);
     }
     Impairment impairment = condition.at(subject.signal());
     double expected = impairment.equivalentNoiseVariance();
@@ -48,16 +63,14 @@ final class UnitRunner {
       for (Picture plane : subject.planes()) {
         noisy.add(onSamples.apply(plane, random(condition, noisy.size())));
       }
-      return evaluate(
-          new Circumstances(
-              subject.coding().coded(noisy),
-              Subject.memos(noisy),
-              Passage.clear(subject.meanSquaredError(noisy)),
-              expected));
+      return new Circumstances(
+          subject.coding().coded(noisy),
+          Subject.memos(noisy),
+          Passage.clear(subject.meanSquaredError(noisy)),
+          expected);
     }
-    return evaluate(
-        new Circumstances(
-            subject.coded(), subject.memos(), passage(impairment, random(condition, 0)), expected));
+    return new Circumstances(
+        subject.coded(), subject.memos(), passage(impairment, random(condition, 0)), expected);
   }
 
   private Passage passage(Impairment impairment, UniformRandomProvider random) {
@@ -103,11 +116,11 @@ final class UnitRunner {
     }
   }
 
-  private Rows evaluate(Circumstances circumstances) {
+  private Rows evaluate(List<CodecChoice> codecs, Circumstances circumstances, Viewer viewer) {
     List<Trial> trials = new ArrayList<>();
     List<Timing> timings = new ArrayList<>();
     List<Mishap> mishaps = new ArrayList<>();
-    for (CodecChoice choice : study.codecs()) {
+    for (CodecChoice choice : codecs) {
       GuardedCodec codec =
           new GuardedCodec(
               choice.codec(),
@@ -129,6 +142,7 @@ final class UnitRunner {
               sent.encoding(),
               outcome,
               decoding));
+      viewer.see(circumstances.seen().get(0), decoding.luma());
       if (decoding.failure() != null) {
         mishaps.add(new Mishap(choice.label(), unit.entry().id(), decoding.failure()));
       }
