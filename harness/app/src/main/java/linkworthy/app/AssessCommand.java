@@ -39,7 +39,7 @@ import picocli.CommandLine.Parameters;
     })
 final class AssessCommand implements Callable<Integer> {
   private static final String BUILT_IN = "first-look.yaml";
-  private static final int MAX_THREADS = 1024;
+  static final int MAX_THREADS = 1024;
 
   private final Surroundings surroundings;
 

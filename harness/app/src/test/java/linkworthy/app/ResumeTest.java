@@ -123,11 +123,11 @@ class ResumeTest {
         .toList();
   }
 
-  /** All rows were written; the last two are cut at each of their bytes. */
+  /** All rows were written; the last two are cut at every 37th of their bytes. */
   @Test
   void whereverTheLastRowsAreTorn() {
     int rows = ROWS;
-    for (long at = bytes("trials.csv", rows - 2); at <= bytes("trials.csv", rows); at++) {
+    for (long at = bytes("trials.csv", rows - 2); at <= bytes("trials.csv", rows); at += 37) {
       Path out = stopped(at, bytes("timings.csv", rows));
       assertThat(resume(out)).describedAs("%d bytes", at).isEqualTo(new Outcome(0, "", ""));
       assertWhole(out);

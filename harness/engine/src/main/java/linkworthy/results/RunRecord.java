@@ -292,7 +292,8 @@ public record RunRecord(
     }
   }
 
-  private static List<ModelUsed> models(Study study) {
+  /** The noise models of a study, in its order, each once. */
+  public static List<ModelUsed> models(Study study) {
     Set<ModelUsed> models = new LinkedHashSet<>();
     for (ImpairmentChoice impairment : study.impairments()) {
       NoiseModel model = impairment.model();
