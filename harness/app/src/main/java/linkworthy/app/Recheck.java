@@ -136,6 +136,9 @@ final class Recheck {
                 + ", which the study has not");
       }
     }
+    if (!StudyWriter.modelFiles(study).isEmpty()) {
+      notVerified.add("noise models: the words under source and notes in model files of one's own");
+    }
     if (before == mismatched) {
       verified.add("noise models: " + found.size() + ", by their fingerprints");
     }

@@ -231,12 +231,22 @@ class RecheckTest {
     assertThat(Program.run(folder, "assess", study + "", "--quiet", "--out", out + ""))
         .isEqualTo(new Outcome(0, "", ""));
     assertThat(recheck(out, "--sample", "5").code()).isZero();
+    Path recorded;
     try (var files = Files.list(out.resolve("models"))) {
-      change(files.toList().get(0), text -> text.replace("own measurement", "hearsay"));
+      recorded = files.toList().get(0);
     }
-    Outcome altered = recheck(out);
+    String original = Files.readString(recorded);
+    change(recorded, text -> text + "# harmless\n");
+    assertMismatch(out, "models/mine-", "is not what the program writes");
+    Files.writeString(recorded, original);
+    change(recorded, text -> text.replace("version: 1", "version: 2"));
+    assertMismatch(out, "study fingerprint recorded ", "noise model mine version 1 recorded");
+  }
+
+  private void assertMismatch(Path results, String... parts) {
+    Outcome altered = recheck(results);
     assertThat(altered.code()).isEqualTo(1);
-    assertThat(altered.out()).contains("MISMATCH      ");
+    assertThat(altered.out()).contains(parts);
   }
 
   @Test

@@ -153,8 +153,10 @@ class ReplayTest {
   @Test
   void sixteenBitsAreKept() throws IOException {
     byte[] deep = OwnPictures.picture("png", OwnPictures.WIDTH, OwnPictures.HEIGHT, 16);
-    Path own =
-        new OwnPictures(folder).add("deep.png", deep, 16, Manifest.sha256(deep), "me").study();
+    OwnPictures pictures =
+        new OwnPictures(folder).add("deep.png", deep, 16, Manifest.sha256(deep), "me");
+    Path own = pictures.study();
+    assertThat(pictures.manifest()).exists();
     Path out = folder.resolve("deep");
     assertThat(Program.run(folder, "assess", own + "", "--quiet", "--out", out + "").err())
         .isEmpty();

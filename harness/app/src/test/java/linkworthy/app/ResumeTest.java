@@ -362,4 +362,34 @@ class ResumeTest {
       process.destroyForcibly().waitFor();
     }
   }
+
+  /** A limit on the size of files, in 512 bytes, stands for a disk that fills up. */
+  private Outcome onSmallDisk(int blocks, List<String> command) {
+    List<String> limited =
+        new ArrayList<>(List.of("sh", "-c", "ulimit -f " + blocks + "; exec \"$@\"", "sh"));
+    limited.add(command.get(0));
+    // Its file of counters for other tools would be too large as well.
+    limited.add("-XX:-UsePerfData");
+    limited.addAll(command.subList(1, command.size()));
+    return Program.execute(limited);
+  }
+
+  @Test
+  void aDiskThatFillsUpCostsNoWholeUnit() throws IOException {
+    Path study = SmallStudy.write(folder, LONGER);
+    Path expected = folder.resolve("expected");
+    assertThat(Program.execute(command(expected, study.toString(), "--out")).code()).isZero();
+    Path out = folder.resolve("full");
+    Outcome first = onSmallDisk(200, command(out, study.toString(), "--out"));
+    assertThat(first.errors()).singleElement().asString().contains("cannot write", "trials.csv");
+    assertThat(first.code()).isEqualTo(3);
+    long rows = Files.readString(out.resolve("trials.csv")).lines().count();
+    assertThat(rows).isGreaterThan(100);
+    Outcome second = onSmallDisk(400, command(out, "--resume"));
+    assertThat(second.code()).isEqualTo(3);
+    assertThat(Files.readString(out.resolve("trials.csv")).lines().count())
+        .isGreaterThan(rows + 100);
+    assertThat(Program.execute(command(out, "--resume"))).isEqualTo(new Outcome(0, "", ""));
+    assertSameRows(out, expected);
+  }
 }
