@@ -1,5 +1,6 @@
 package linkworthy.app;
 
+import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.List;
 import java.util.concurrent.Callable;
@@ -7,6 +8,7 @@ import linkworthy.codec.CodecFamilies;
 import linkworthy.codec.PluginFolder;
 import linkworthy.input.BadInput;
 import linkworthy.input.YamlNode;
+import linkworthy.results.FolderFiles;
 import linkworthy.results.ResultsFolder;
 import linkworthy.study.Study;
 import linkworthy.study.StudyReader;
@@ -32,11 +34,12 @@ import picocli.CommandLine.Parameters;
       "  linkworthy assess",
       "  linkworthy assess yard.yaml --set replicates=20 --set codecs.0.step=4",
       "  linkworthy assess yard.yaml --dry-run",
-      "  linkworthy assess yard.yaml --plugins my-plugins --allow-commands"
+      "  linkworthy assess yard.yaml --plugins my-plugins --allow-commands",
+      "  linkworthy assess --resume results/yard/20261201T101500Z-0123abcd"
     })
 final class AssessCommand implements Callable<Integer> {
   private static final String BUILT_IN = "first-look.yaml";
-  private static final int MAX_THREADS = 1024;
+  static final int MAX_THREADS = 1024;
 
   private final Surroundings surroundings;
 
@@ -70,6 +73,15 @@ final class AssessCommand implements Callable<Integer> {
       description = "Check everything, count trials, estimate time, memory and disk; run nothing.")
   private boolean dryRun;
 
+  @Option(
+      names = "--resume",
+      paramLabel = "DIR",
+      description = {
+        "Complete the results folder of a run that was stopped, to the same bytes. The study",
+        "is the folder's own; plugins and leave to run programs are to be given again."
+      })
+  private @Nullable Path resume;
+
   @Option(names = "--overwrite", description = "Replace the record in the results folder.")
   private boolean overwrite;
 
@@ -87,9 +99,53 @@ final class AssessCommand implements Callable<Integer> {
     if (threads < 1 || threads > MAX_THREADS) {
       throw new BadInput("--threads is " + threads + "; accepted: 1 to " + MAX_THREADS);
     }
+    if (resume != null) {
+      return resume(resume);
+    }
     try (PluginFolder plugins = codecs.open()) {
       return assess(study(codecs.families(plugins)), plugins);
     }
+  }
+
+  private int resume(Path folder) {
+    refuseBesideResume();
+    ResultsFolder stopped = ResultsFolder.openStopped(folder);
+    if (stopped.isWhole()) {
+      surroundings.out().println(folder + " is complete; there is nothing to go on with");
+      if (!Files.exists(folder.resolve(ResultsFolder.REPORT))) {
+        Path report = folder.resolve(ResultsFolder.REPORT);
+        FolderFiles.replace(report, Reports.html(ResultsFolder.open(folder)));
+        surroundings.out().println("report: " + report);
+      }
+      return Main.DONE;
+    }
+    try (PluginFolder plugins = codecs.open()) {
+      Plan plan = Plan.of(stopped.unchangedStudy(codecs.families(plugins)));
+      return run(plan, plugins, folder, Assessment.Start.RESUME);
+    }
+  }
+
+  /** The study of a stopped run is the one in its folder, and the run goes on there. */
+  private void refuseBesideResume() {
+    String other =
+        file != null
+            ? "a study"
+            : !settings.isEmpty()
+                ? "--set"
+                : out != null ? "--out" : overwrite ? "--overwrite" : dryRun ? "--dry-run" : "";
+    if (!other.isEmpty()) {
+      throw new BadInput(
+          "--resume is given together with "
+              + other
+              + "; accepted: --resume alone, as study and settings are those in the folder");
+    }
+  }
+
+  private int run(Plan plan, PluginFolder plugins, Path folder, Assessment.Start start) {
+    String goOn =
+        "linkworthy assess --resume " + CodecOptions.quoted(folder) + codecs.asArguments();
+    return new Assessment(surroundings, plan, plugins.jars(), folder, start, threads, quiet, goOn)
+        .run();
   }
 
   private int assess(Study study, PluginFolder plugins) {
@@ -103,8 +159,8 @@ final class AssessCommand implements Callable<Integer> {
             ? out
             : ResultsFolder.defaultPath(
                 surroundings.home().resolve("results"), study, surroundings.clock());
-    return new Assessment(surroundings, plan, plugins.jars(), folder, threads, overwrite, quiet)
-        .run();
+    Assessment.Start start = overwrite ? Assessment.Start.OVERWRITE : Assessment.Start.NEW;
+    return run(plan, plugins, folder, start);
   }
 
   private Study study(CodecFamilies families) {

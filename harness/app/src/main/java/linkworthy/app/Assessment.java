@@ -23,24 +23,37 @@ final class Assessment {
   private final List<PluginFolder.Jar> plugins;
   private final Path folder;
   private final int threads;
-  private final boolean overwrite;
+  private final Start start;
   private final boolean quiet;
+  private final String goOn;
 
+  /** What is done with the folder. */
+  enum Start {
+    NEW,
+    OVERWRITE,
+    RESUME
+  }
+
+  /**
+   * @param goOn the command that takes the run up again once it has been stopped
+   */
   Assessment(
       Surroundings surroundings,
       Plan plan,
       List<PluginFolder.Jar> plugins,
       Path folder,
+      Start start,
       int threads,
-      boolean overwrite,
-      boolean quiet) {
+      boolean quiet,
+      String goOn) {
     this.surroundings = surroundings;
     this.plan = plan;
     this.plugins = plugins;
     this.folder = folder;
     this.threads = threads;
-    this.overwrite = overwrite;
+    this.start = start;
     this.quiet = quiet;
+    this.goOn = goOn;
   }
 
   /**
@@ -63,21 +76,15 @@ final class Assessment {
   }
 
   private int run(LocalRunner runner, Mishaps mishaps) {
-    try (ResultsWriter writer = ResultsFolder.create(folder, overwrite)) {
-      RunRecord begun =
-          RunRecord.begin(
-                  plan.study(),
-                  Version.text(),
-                  plan.manifest().fingerprint(),
-                  plan.pictures(),
-                  plan.trials(),
-                  surroundings.clock())
-              .withPlugins(plugins);
-      writer.begin(plan.study(), begun);
-      Cells cells = new Cells();
-      int units = runUnits(runner, mishaps, writer, cells);
+    Cells cells = new Cells();
+    try (ResultsWriter writer = open(cells)) {
+      int first = writer.unitsAtStart();
+      if (first > 0 && !quiet) {
+        sayWhatIsKept(first);
+      }
+      int units = first + runUnits(runner, first, mishaps, writer, cells);
       RunRecord ended =
-          begun.end((long) units * plan.study().codecs().size(), surroundings.clock());
+          writer.run().end((long) units * plan.study().codecs().size(), surroundings.clock());
       if (units < plan.units()) {
         writer.stop(ended);
         surroundings
@@ -87,8 +94,8 @@ final class Assessment {
                     + ended.trialsDone()
                     + " of "
                     + ended.trialsPlanned()
-                    + " trials; the rows so far are in "
-                    + folder);
+                    + " trials; go on with: "
+                    + goOn);
         return Main.ENVIRONMENT;
       }
       writer.writeNodes(NodeTable.of(plan));
@@ -102,10 +109,46 @@ final class Assessment {
     }
   }
 
-  private int runUnits(LocalRunner runner, Mishaps mishaps, ResultsWriter writer, Cells cells) {
-    try (Progress progress = new Progress(surroundings, "assess", plan.trials(), quiet)) {
+  private ResultsWriter open(Cells cells) {
+    RunRecord now =
+        RunRecord.begin(
+                plan.study(),
+                Version.text(),
+                plan.manifest().fingerprint(),
+                plan.pictures(),
+                plan.trials(),
+                surroundings.clock())
+            .withPlugins(plugins);
+    if (start == Start.RESUME) {
+      return ResultsFolder.resume(folder, plan, now, cells::add);
+    }
+    ResultsWriter writer = ResultsFolder.create(folder, start == Start.OVERWRITE);
+    try {
+      writer.begin(plan.study(), now);
+      return writer;
+    } catch (RuntimeException e) {
+      writer.close();
+      throw e;
+    }
+  }
+
+  private void sayWhatIsKept(int units) {
+    surroundings
+        .err()
+        .println(
+            "linkworthy: going on after "
+                + (long) units * plan.study().codecs().size()
+                + " of "
+                + plan.trials()
+                + " trials");
+  }
+
+  private int runUnits(
+      LocalRunner runner, int first, Mishaps mishaps, ResultsWriter writer, Cells cells) {
+    long left = (long) (plan.units() - first) * plan.study().codecs().size();
+    try (Progress progress = new Progress(surroundings, "assess", left, quiet)) {
       return runner.run(
-          0,
+          first,
           (unit, trials, timings) -> {
             writer.append(trials, timings);
             trials.forEach(cells::add);

@@ -36,4 +36,16 @@ final class CodecOptions {
     CodecFamilies families = CodecFamilies.installed().with(opened.families());
     return allowCommands ? families.allowingCommands() : families;
   }
+
+  /** These options as they would be given again, each with a space before it. */
+  String asArguments() {
+    return (plugins == null ? "" : " --plugins " + quoted(plugins))
+        + (allowCommands ? " --allow-commands" : "");
+  }
+
+  /** A path as a shell takes it. */
+  static String quoted(Path path) {
+    String text = path.toString();
+    return text.matches("[\\w./:@%+,-]+") ? text : "'" + text.replace("'", "'\\''") + "'";
+  }
 }

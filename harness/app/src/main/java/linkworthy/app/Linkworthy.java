@@ -17,6 +17,8 @@ import picocli.CommandLine.Spec;
     subcommands = {
       AssessCommand.class,
       ReportCommand.class,
+      ReplayCommand.class,
+      RecheckCommand.class,
       CorpusCommand.class,
       NoiseCommand.class,
       CodecsCommand.class,

@@ -83,7 +83,7 @@ class InterruptionTest {
         .containsExactly(
             "linkworthy: stopped after "
                 + rows
-                + " of 2000002 trials; the rows so far are in "
+                + " of 2000002 trials; go on with: linkworthy assess --resume "
                 + out);
     assertThat(out.resolve("cells.csv")).doesNotExist();
     assertThat(out.resolve("lock")).doesNotExist();

@@ -16,15 +16,52 @@ final class AppendedTable<T> implements AutoCloseable {
   private final Path file;
   private final FileChannel channel;
 
-  AppendedTable(CsvTable<T> table, Path file) {
+  private AppendedTable(CsvTable<T> table, Path file, FileChannel channel) {
     this.table = table;
     this.file = file;
+    this.channel = channel;
+  }
+
+  /** A new table with its header; there must be no such file yet. */
+  static <T> AppendedTable<T> create(CsvTable<T> table, Path file) {
+    return open(table, file, 0, StandardOpenOption.CREATE_NEW);
+  }
+
+  /** A table that goes on behind its first bytes; whatever comes after them is cut off. */
+  static <T> AppendedTable<T> reopen(CsvTable<T> table, Path file, long bytes) {
+    return open(table, file, bytes, StandardOpenOption.CREATE);
+  }
+
+  private static <T> AppendedTable<T> open(
+      CsvTable<T> table, Path file, long bytes, StandardOpenOption how) {
+    AppendedTable<T> opened = new AppendedTable<>(table, file, channel(file, bytes, how));
+    if (bytes == 0) {
+      opened.writeHeader();
+    }
+    return opened;
+  }
+
+  private static FileChannel channel(Path file, long bytes, StandardOpenOption how) {
     try {
-      channel = FileChannel.open(file, StandardOpenOption.CREATE_NEW, StandardOpenOption.WRITE);
+      FileChannel channel = FileChannel.open(file, how, StandardOpenOption.WRITE);
+      try {
+        return channel.truncate(bytes).position(bytes);
+      } catch (IOException e) {
+        channel.close();
+        throw e;
+      }
     } catch (IOException e) {
       throw FolderFiles.unavailable("write", file, e);
     }
-    write(table.header());
+  }
+
+  private void writeHeader() {
+    try {
+      write(table.header());
+    } catch (RuntimeException e) {
+      close();
+      throw e;
+    }
   }
 
   void append(List<T> rows) {

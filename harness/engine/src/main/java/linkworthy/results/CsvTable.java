@@ -2,6 +2,7 @@ package linkworthy.results;
 
 import java.io.BufferedReader;
 import java.io.IOException;
+import java.io.StringReader;
 import java.io.UncheckedIOException;
 import java.nio.ByteBuffer;
 import java.nio.channels.FileChannel;
@@ -11,7 +12,9 @@ import java.nio.file.Files;
 import java.nio.file.NoSuchFileException;
 import java.nio.file.Path;
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.Collection;
+import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
 import java.util.Objects;
@@ -127,6 +130,13 @@ final class CsvTable<T> {
     return line(names);
   }
 
+  /** What a row has in each column, by its name, in order. */
+  Map<String, String> fields(T row) {
+    Map<String, String> fields = new LinkedHashMap<>();
+    columns.forEach(column -> fields.put(column.name(), column.text().apply(row)));
+    return fields;
+  }
+
   /** The lines of these rows. */
   String lines(List<T> rows) {
     StringBuilder text = new StringBuilder();
@@ -167,6 +177,36 @@ final class CsvTable<T> {
     } catch (UncheckedIOException | IOException e) {
       throw unreadable(file, e);
     }
+  }
+
+  /**
+   * The row that a line of a file is. The line must have the very bytes that this table writes for
+   * the row.
+   *
+   * @throws BadInput if it is none
+   */
+  T row(Path file, long number, byte[] line) {
+    String text = new String(line, StandardCharsets.UTF_8);
+    try (CSVParser parser = FORMAT.parse(new StringReader(text))) {
+      List<CSVRecord> records = parser.getRecords();
+      if (records.size() == 1) {
+        CsvRow row = new CsvRow(file, number, names, records.get(0));
+        row.requireComplete();
+        T made = make(row);
+        if (Arrays.equals(lines(List.of(made)).getBytes(StandardCharsets.UTF_8), line)) {
+          return made;
+        }
+      }
+    } catch (UncheckedIOException | IOException e) {
+      throw notAsWritten(file, number, e);
+    }
+    throw notAsWritten(file, number, null);
+  }
+
+  private static BadInput notAsWritten(Path file, long number, @Nullable Throwable cause) {
+    String complaint =
+        file + ", line " + number + " is damaged; accepted: a row as the program writes it";
+    return cause == null ? new BadInput(complaint) : new BadInput(complaint, cause);
   }
 
   private T make(CsvRow row) {

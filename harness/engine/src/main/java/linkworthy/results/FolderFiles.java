@@ -24,6 +24,15 @@ public final class FolderFiles {
    * @throws Unavailable if that fails; what stood there before is unchanged
    */
   public static void replace(Path file, String text) {
+    replace(file, text.getBytes(StandardCharsets.UTF_8));
+  }
+
+  /**
+   * Writes a file under a temporary name, to the disk, and then moves it into place.
+   *
+   * @throws Unavailable if that fails; what stood there before is unchanged
+   */
+  public static void replace(Path file, byte[] bytes) {
     Path unfinished = file.resolveSibling(file.getFileName() + UNFINISHED);
     try {
       try (FileChannel channel =
@@ -32,7 +41,7 @@ public final class FolderFiles {
               StandardOpenOption.CREATE,
               StandardOpenOption.TRUNCATE_EXISTING,
               StandardOpenOption.WRITE)) {
-        writeFully(channel, text);
+        writeFully(channel, bytes);
         channel.force(true);
       }
       Files.move(
@@ -49,7 +58,11 @@ public final class FolderFiles {
   }
 
   static void writeFully(WritableByteChannel channel, String text) throws IOException {
-    ByteBuffer bytes = ByteBuffer.wrap(text.getBytes(StandardCharsets.UTF_8));
+    writeFully(channel, text.getBytes(StandardCharsets.UTF_8));
+  }
+
+  private static void writeFully(WritableByteChannel channel, byte[] all) throws IOException {
+    ByteBuffer bytes = ByteBuffer.wrap(all);
     while (bytes.hasRemaining()) {
       channel.write(bytes);
     }

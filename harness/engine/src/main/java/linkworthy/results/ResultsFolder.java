@@ -18,6 +18,7 @@ import linkworthy.study.Study;
 import linkworthy.study.StudyReader;
 import linkworthy.study.StudyWriter;
 import linkworthy.trial.NodeShare;
+import linkworthy.trial.Plan;
 import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 
@@ -71,12 +72,7 @@ public final class ResultsFolder {
    * @throws linkworthy.input.Unavailable if it cannot be read
    */
   public static ResultsFolder open(Path folder) {
-    if (!Files.isDirectory(folder)) {
-      throw new BadInput(
-          folder
-              + (Files.exists(folder) ? " is no folder" : " does not exist")
-              + "; accepted: a results folder");
-    }
+    requireFolder(folder);
     for (String name : List.of(RunRecord.FILE, STUDY, TrialsCsv.FILE)) {
       requireFile(folder, name);
     }
@@ -85,6 +81,70 @@ public final class ResultsFolder {
       requireFile(folder, CellsCsv.FILE);
     }
     return new ResultsFolder(folder, run);
+  }
+
+  private static void requireFolder(Path folder) {
+    if (!Files.isDirectory(folder)) {
+      throw new BadInput(
+          folder
+              + (Files.exists(folder) ? " is no folder" : " does not exist")
+              + "; accepted: a results folder");
+    }
+  }
+
+  /**
+   * Opens the record of a run that was stopped at any moment: tables may be cut off or missing.
+   *
+   * @throws BadInput if the folder is none, or the run was stopped before its study was written
+   * @throws linkworthy.input.Unavailable if it cannot be read
+   */
+  public static ResultsFolder openStopped(Path folder) {
+    requireFolder(folder);
+    requireFile(folder, RunRecord.FILE);
+    RunRecord run = readRun(folder);
+    if (!Files.isRegularFile(folder.resolve(STUDY))) {
+      throw new BadInput(
+          folder
+              + " has no "
+              + STUDY
+              + ": its run was stopped before it had begun; accepted: 'assess' with --overwrite");
+    }
+    return new ResultsFolder(folder, run);
+  }
+
+  /** Whether the record says that it is complete and has as many rows and files as it says. */
+  public boolean isWhole() {
+    Path trials = folder.resolve(TrialsCsv.FILE);
+    if (!run.complete()
+        || !Files.isRegularFile(trials)
+        || !Files.isRegularFile(folder.resolve(CellsCsv.FILE))) {
+      return false;
+    }
+    try (LineInput lines = new LineInput(trials)) {
+      long rows = -1;
+      while (lines.next() != null) {
+        rows++;
+      }
+      return rows == run.trialsPlanned() && lines.atEnd();
+    } catch (IOException e) {
+      throw FolderFiles.unavailable("read", trials, e);
+    }
+  }
+
+  /**
+   * Takes a run up again that was stopped, and holds its folder for writing until the writer is
+   * closed. Tables are cut back to whole work units, and to the same number of them.
+   *
+   * @param plan of the folder's own study
+   * @param now the record of a run of this plan that would begin now
+   * @param each takes the trials that are kept
+   * @throws BadInput if another run holds the folder, its rows are not those of the plan, or the
+   *     run that was stopped differs from this one in what decides the rows
+   * @throws linkworthy.input.Unavailable if it cannot be read or written
+   */
+  public static ResultsWriter resume(
+      Path folder, Plan plan, RunRecord now, Consumer<? super Trial> each) {
+    return ResultsWriter.resume(folder, plan, now, each);
   }
 
   static RunRecord readRun(Path folder) {

@@ -3,14 +3,17 @@ package linkworthy.results;
 import java.io.IOException;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.util.ArrayList;
 import java.util.List;
 import java.util.Map;
+import java.util.function.Consumer;
 import java.util.stream.Stream;
 import linkworthy.input.BadInput;
 import linkworthy.statistics.Cell;
 import linkworthy.study.Study;
 import linkworthy.study.StudyWriter;
 import linkworthy.trial.NodeShare;
+import linkworthy.trial.Plan;
 import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 import org.jspecify.annotations.Nullable;
@@ -36,6 +39,8 @@ public final class ResultsWriter implements AutoCloseable {
 
   private final Path folder;
   private final FolderLock lock;
+  private @Nullable RunRecord run;
+  private int units;
   private @Nullable AppendedTable<Trial> trials;
   private @Nullable AppendedTable<Timing> timings;
 
@@ -68,7 +73,7 @@ public final class ResultsWriter implements AutoCloseable {
 
   private static void requireFree(Path out, boolean overwrite) throws IOException {
     List<String> names = names(out);
-    if (names.isEmpty() || (names.equals(List.of(FolderLock.FILE)) && FolderLock.isBare(out))) {
+    if (isNothingBegun(out, names)) {
       return;
     }
     if (!overwrite) {
@@ -83,6 +88,17 @@ public final class ResultsWriter implements AutoCloseable {
               + " new, empty or results folder");
     }
     ResultsFolder.readRun(out);
+  }
+
+  /** Whether there is nothing, or what a run leaves that is killed before it has begun. */
+  private static boolean isNothingBegun(Path out, List<String> names) throws IOException {
+    for (String name : names) {
+      boolean bareLock = name.equals(FolderLock.FILE) && FolderLock.isBare(out);
+      if (!bareLock && !name.equals(RunRecord.FILE + FolderFiles.UNFINISHED)) {
+        return false;
+      }
+    }
+    return true;
   }
 
   private static void removeRecord(Path out) throws IOException {
@@ -118,17 +134,120 @@ public final class ResultsWriter implements AutoCloseable {
    *
    * @throws linkworthy.input.Unavailable if the folder cannot be written
    */
-  public void begin(Study study, RunRecord run) {
-    write(RunRecord.FILE, run.toJson());
+  public void begin(Study study, RunRecord begun) {
+    run = begun;
+    write(RunRecord.FILE, begun.toJson());
     Map<String, String> models = StudyWriter.modelFiles(study);
     if (!models.isEmpty()) {
       makeModelFolder();
       models.forEach(this::write);
     }
     write(ResultsFolder.STUDY, StudyWriter.canonical(study));
-    List<String> further = study.furtherColumns();
-    trials = new AppendedTable<>(TrialsCsv.TABLE.with(further), folder.resolve(TrialsCsv.FILE));
-    timings = new AppendedTable<>(TimingsCsv.TABLE, folder.resolve(TimingsCsv.FILE));
+    trials = AppendedTable.create(trialsTable(study), folder.resolve(TrialsCsv.FILE));
+    timings = AppendedTable.create(TimingsCsv.TABLE, folder.resolve(TimingsCsv.FILE));
+  }
+
+  private static CsvTable<Trial> trialsTable(Study study) {
+    return TrialsCsv.TABLE.with(study.furtherColumns());
+  }
+
+  static ResultsWriter resume(Path folder, Plan plan, RunRecord now, Consumer<? super Trial> each) {
+    try {
+      FolderLock.requireNotHeld(folder);
+      if (Files.exists(folder.resolve(FolderLock.FILE)) && !FolderLock.isBare(folder)) {
+        throw new BadInput(
+            folder.resolve(FolderLock.FILE) + " is not empty; accepted: none, or one of a run");
+      }
+    } catch (IOException e) {
+      throw FolderFiles.unavailable("read", folder, e);
+    }
+    ResultsWriter writer = new ResultsWriter(folder, FolderLock.take(folder));
+    try {
+      writer.goOn(plan, now, each);
+      return writer;
+    } catch (RuntimeException e) {
+      writer.close();
+      throw e;
+    }
+  }
+
+  /**
+   * Finds what can be kept before anything is changed. A unit counts if both tables have it: a run
+   * that is killed leaves the times at most one unit behind.
+   */
+  private void goOn(Plan plan, RunRecord now, Consumer<? super Trial> each) {
+    RunRecord begun = ResultsFolder.readRun(folder);
+    RunRecord unused = begun.goesOn(now, 0);
+    CsvTable<Trial> table = trialsTable(plan.study());
+    Path trialsFile = folder.resolve(TrialsCsv.FILE);
+    Path timingsFile = folder.resolve(TimingsCsv.FILE);
+    int codecs = plan.study().codecs().size();
+    PlannedRows planned = new PlannedRows(plan, trialsFile, timingsFile);
+    WholeUnits times =
+        WholeUnits.of(TimingsCsv.TABLE, timingsFile, codecs, plan.units(), planned::timings);
+    WholeUnits rows =
+        WholeUnits.of(
+            table,
+            trialsFile,
+            codecs,
+            plan.units(),
+            (unit, unitRows, line) -> {
+              planned.trials(unit, unitRows, line);
+              if (unit < times.units()) {
+                unitRows.forEach(each);
+              }
+            });
+    if (!Files.exists(timingsFile) && rows.units() > 1) {
+      throw new BadInput(
+          folder + " has no " + TimingsCsv.FILE + "; accepted: a folder as its run left it");
+    }
+    units = Math.min(rows.units(), times.units());
+    run = begun.goesOn(now, (long) units * codecs);
+    removeUnfinished(plan.study());
+    write(RunRecord.FILE, run.toJson());
+    trials = AppendedTable.reopen(table, trialsFile, upTo(units, rows, table, trialsFile, codecs));
+    timings =
+        AppendedTable.reopen(
+            TimingsCsv.TABLE,
+            timingsFile,
+            upTo(units, times, TimingsCsv.TABLE, timingsFile, codecs));
+  }
+
+  private static <T> long upTo(
+      int units, WholeUnits found, CsvTable<T> table, Path file, int rowsOfUnit) {
+    return found.units() == units
+        ? found.bytes()
+        : WholeUnits.of(table, file, rowsOfUnit, units, (unit, rows, line) -> {}).bytes();
+  }
+
+  private void removeUnfinished(Study study) {
+    List<String> names = new ArrayList<>(WRITTEN);
+    names.addAll(StudyWriter.modelFiles(study).keySet());
+    for (String name : names) {
+      Path file = folder.resolve(name + FolderFiles.UNFINISHED);
+      try {
+        Files.deleteIfExists(file);
+      } catch (IOException e) {
+        throw FolderFiles.unavailable("remove", file, e);
+      }
+    }
+  }
+
+  /** Whole units in the record when it was opened; 0 in a new one. */
+  public int unitsAtStart() {
+    return units;
+  }
+
+  /**
+   * The record of the run, as it stands in the folder.
+   *
+   * @throws IllegalStateException before {@link #begin}
+   */
+  public RunRecord run() {
+    if (run == null) {
+      throw new IllegalStateException("the record has not begun");
+    }
+    return run;
   }
 
   private void makeModelFolder() {

@@ -193,31 +193,53 @@ public record RunRecord(
 
   /** The same record of a run that has plugins. */
   public RunRecord withPlugins(List<PluginFolder.Jar> jars) {
-    return new RunRecord(
-        program,
-        programVersion,
-        study,
-        purpose,
-        studyFingerprint,
-        corpusFingerprint,
-        manifest,
-        noiseModels,
-        seed,
-        javaVersion,
-        javaVendor,
-        operatingSystem,
-        start,
+    return with(
         end,
-        trialsPlanned,
         trialsDone,
         complete,
-        pictures,
-        jars.stream().map(jar -> new PluginUsed(jar.name(), jar.sha256())).toList(),
-        programs);
+        jars.stream().map(jar -> new PluginUsed(jar.name(), jar.sha256())).toList());
   }
 
   /** The same record at the end of the run, or of a part of it. */
   public RunRecord end(long done, Clock clock) {
+    return with(now(clock), done, done == trialsPlanned, plugins);
+  }
+
+  /**
+   * The same record of a run that goes on with so many trials done.
+   *
+   * @param now the record of a run that begins now with the same study
+   * @throws BadInput if the rest of the rows would not be those of the run that was stopped: it had
+   *     another version of the program, other pictures, plugins or another number of trials
+   */
+  RunRecord goesOn(RunRecord now, long done) {
+    requireSame("program version", programVersion, now.programVersion);
+    requireSame("study fingerprint", studyFingerprint, now.studyFingerprint);
+    requireSame("pictures", checksums(), now.checksums());
+    requireSame("plugins", plugins.toString(), now.plugins.toString());
+    requireSame("number of trials", "" + trialsPlanned, "" + now.trialsPlanned);
+    return with(null, done, false, plugins);
+  }
+
+  /** The pictures used, with their checksums. */
+  private String checksums() {
+    return String.join(", ", pictures.stream().map(p -> p.id() + " " + p.sha256()).toList());
+  }
+
+  private static void requireSame(String what, String begun, String now) {
+    if (!begun.equals(now)) {
+      throw new BadInput(
+          "the run was begun with another "
+              + what
+              + ": "
+              + now
+              + "; accepted for going on: "
+              + begun);
+    }
+  }
+
+  private RunRecord with(
+      @Nullable Instant newEnd, long newDone, boolean newComplete, List<PluginUsed> newPlugins) {
     return new RunRecord(
         program,
         programVersion,
@@ -232,12 +254,12 @@ public record RunRecord(
         javaVendor,
         operatingSystem,
         start,
-        now(clock),
+        newEnd,
         trialsPlanned,
-        done,
-        done == trialsPlanned,
+        newDone,
+        newComplete,
         pictures,
-        plugins,
+        newPlugins,
         programs);
   }
 
@@ -270,7 +292,8 @@ public record RunRecord(
     }
   }
 
-  private static List<ModelUsed> models(Study study) {
+  /** The noise models of a study, in its order, each once. */
+  public static List<ModelUsed> models(Study study) {
     Set<ModelUsed> models = new LinkedHashSet<>();
     for (ImpairmentChoice impairment : study.impairments()) {
       NoiseModel model = impairment.model();

@@ -5,7 +5,11 @@ import static linkworthy.results.CsvTable.whole;
 import static linkworthy.results.CsvTable.words;
 
 import java.nio.file.Path;
+import java.util.ArrayList;
+import java.util.LinkedHashSet;
 import java.util.List;
+import java.util.Map;
+import java.util.Set;
 import java.util.function.Consumer;
 import linkworthy.trial.Trial;
 
@@ -70,6 +74,37 @@ public final class TrialsCsv {
    */
   public static long read(Path file, Consumer<? super Trial> each) {
     return TABLE.read(file, each);
+  }
+
+  /** A column of a trial in which two records differ, as each writes it. */
+  public record Difference(String column, String recorded, String repeated) {
+    @Override
+    public String toString() {
+      return column + " recorded " + said(recorded) + ", repeated " + said(repeated);
+    }
+
+    private static String said(String text) {
+      return text.isEmpty() ? "nothing" : text;
+    }
+  }
+
+  /** The columns, further ones included, in which a repeated trial differs from the recorded. */
+  public static List<Difference> differences(Trial recorded, Trial repeated) {
+    Set<String> further = new LinkedHashSet<>(repeated.further().keySet());
+    further.addAll(recorded.further().keySet());
+    Map<String, String> then = TABLE.with(further).fields(recorded);
+    List<Difference> differences = new ArrayList<>();
+    TABLE
+        .with(further)
+        .fields(repeated)
+        .forEach(
+            (column, text) -> {
+              String before = String.valueOf(then.get(column));
+              if (!before.equals(text)) {
+                differences.add(new Difference(column, before, text));
+              }
+            });
+    return differences;
   }
 
   /** Components in force; empty where there are none. */

@@ -1,9 +1,7 @@
 package linkworthy.trial;
 
 import java.util.ArrayDeque;
-import java.util.LinkedHashMap;
 import java.util.List;
-import java.util.Map;
 import java.util.Queue;
 import java.util.concurrent.CancellationException;
 import java.util.concurrent.ExecutionException;
@@ -66,7 +64,7 @@ public final class LocalRunner {
    * @return the number of units handed over
    */
   public int run(int firstUnit, Sink sink) {
-    Subjects subjects = new Subjects();
+    Subjects subjects = new Subjects(plan, threads + 1);
     ExecutorService executor = Executors.newFixedThreadPool(threads);
     Queue<Future<UnitRunner.Rows>> window = new ArrayDeque<>();
     int next = firstUnit;
@@ -128,24 +126,6 @@ public final class LocalRunner {
     }
     if (interrupted) {
       Thread.currentThread().interrupt();
-    }
-  }
-
-  /** Pictures in use: one for each thread and one to come, the oldest dropped first. */
-  private final class Subjects {
-    private final Map<Integer, Subject> inUse = new LinkedHashMap<>();
-
-    synchronized Subject get(WorkUnit unit) {
-      Subject known = inUse.get(unit.picture());
-      if (known != null) {
-        return known;
-      }
-      Subject subject = new Subject(plan.planes(unit.entry()), plan.study());
-      inUse.put(unit.picture(), subject);
-      if (inUse.size() > threads + 1) {
-        inUse.remove(inUse.keySet().iterator().next());
-      }
-      return subject;
     }
   }
 }

@@ -2,6 +2,7 @@ package linkworthy.trial;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Optional;
 import linkworthy.codec.Codec;
 import linkworthy.codec.PictureShape;
 import linkworthy.corpus.Manifest;
@@ -47,10 +48,7 @@ public final class Plan {
    * @throws linkworthy.input.Unavailable if a picture cannot be read
    */
   public static Plan of(Study study) {
-    Manifest manifest = study.pictures().open();
-    List<ManifestEntry> tested = manifest.select(study.pictures().select());
-    Study trained = TrainingSet.of(study, manifest, tested).train(study);
-    Plan plan = new Plan(trained, manifest, tested);
+    Plan plan = unchecked(study);
     for (ManifestEntry entry : plan.pictures) {
       plan.check(entry);
     }
@@ -87,6 +85,18 @@ public final class Plan {
     } catch (RuntimeException | LinkageError | AssertionError | StackOverflowError e) {
       throw new BadInput("codec '" + codec.label() + "' failed in check(): " + e, e);
     }
+  }
+
+  /**
+   * The same plan with no look at pictures beforehand: what does not go together shows when a unit
+   * runs.
+   *
+   * @throws BadInput if the pictures cannot be selected or codecs cannot be trained on them
+   */
+  public static Plan unchecked(Study study) {
+    Manifest manifest = study.pictures().open();
+    List<ManifestEntry> tested = manifest.select(study.pictures().select());
+    return new Plan(TrainingSet.of(study, manifest, tested).train(study), manifest, tested);
   }
 
   /** The planes of a picture as the study wants them, luma first. */
@@ -136,5 +146,48 @@ public final class Plan {
         entry,
         conditions.get((rest - 1) / study.replicates()),
         (rest - 1) % study.replicates());
+  }
+
+  /** The id of the trial of one codec of the study in a unit. */
+  public String trialId(WorkUnit unit, CodecChoice codec) {
+    return new TrialKey(study, unit, codec).id();
+  }
+
+  /** The id of the trial at a place in the canonical order, from 0. */
+  public String trialId(long index) {
+    int codecs = study.codecs().size();
+    return trialId(unit((int) (index / codecs)), study.codecs().get((int) (index % codecs)));
+  }
+
+  /**
+   * The unit that a recorded trial says it is of, found by its key columns; empty if the plan has
+   * none such.
+   */
+  public Optional<WorkUnit> unitOf(Trial trial) {
+    for (int picture = 0; picture < pictures.size(); picture++) {
+      if (pictures.get(picture).id().equals(trial.picture())) {
+        int first = picture * unitsOfPicture();
+        if (trial.impairment().equals(ImpairmentChoice.CLEAN)) {
+          return trial.replicate() == 0 ? Optional.of(unit(first)) : Optional.empty();
+        }
+        return place(trial).map(rest -> unit(first + 1 + rest));
+      }
+    }
+    return Optional.empty();
+  }
+
+  private Optional<Integer> place(Trial trial) {
+    for (int i = 0; i < conditions.size(); i++) {
+      ImpairmentChoice impairment = conditions.get(i).impairment();
+      Severity severity = conditions.get(i).severity();
+      if (impairment.label().equals(trial.impairment())
+          && impairment.site().id().equals(trial.actsOn())
+          && severity.axis().equals(trial.axis())
+          && severity.value() == trial.severity()
+          && trial.replicate() < study.replicates()) {
+        return Optional.of(i * study.replicates() + trial.replicate());
+      }
+    }
+    return Optional.empty();
   }
 }

@@ -38,13 +38,28 @@ final class UnitRunner {
     this.unit = unit;
   }
 
-  /** What a unit gives: a trial and its times for each codec of the study, in the study's order. */
+  /** What a unit gives: a trial and its times for each codec. */
   record Rows(List<Trial> trials, List<Timing> timings, List<Mishap> mishaps) {}
 
+  /** Looks at the luma planes of each trial: as its encoder saw it, and as it was decoded. */
+  interface Viewer {
+    void see(Picture seen, Picture decoded);
+  }
+
+  /** Runs every codec of the study, in the study's order. */
   Rows run() {
+    return run(study.codecs(), (seen, decoded) -> {});
+  }
+
+  /** Runs some of the study's codecs. */
+  Rows run(List<CodecChoice> codecs, Viewer viewer) {
+    return evaluate(codecs, circumstances(), viewer);
+  }
+
+  private Circumstances circumstances() {
     WorkUnit.Condition condition = unit.condition();
     if (condition == null) {
-      return evaluate(Circumstances.clean(subject));
+      return Circumstances.clean(subject);
     }
     Impairment impairment = condition.at(subject.signal());
     double expected = impairment.equivalentNoiseVariance();
@@ -53,15 +68,13 @@ final class UnitRunner {
       for (Picture plane : subject.planes()) {
         noisy.add(onSamples.apply(plane, random(condition, PURPOSE, noisy.size())));
       }
-      return evaluate(
-          new Circumstances(
-              Seen.anew(subject.coding().coded(noisy)),
-              Passage.clear(subject.meanSquaredError(noisy)),
-              expected));
+      return new Circumstances(
+          Seen.anew(subject.coding().coded(noisy)),
+          Passage.clear(subject.meanSquaredError(noisy)),
+          expected);
     }
-    return evaluate(
-        new Circumstances(
-            Seen.clean(subject), passage(impairment, random(condition, PURPOSE, 0)), expected));
+    return new Circumstances(
+        Seen.clean(subject), passage(impairment, random(condition, PURPOSE, 0)), expected);
   }
 
   private Passage passage(Impairment impairment, UniformRandomProvider random) {
@@ -136,12 +149,12 @@ final class UnitRunner {
     return Seen.anew(planes);
   }
 
-  private Rows evaluate(Circumstances circumstances) {
+  private Rows evaluate(List<CodecChoice> codecs, Circumstances circumstances, Viewer viewer) {
     List<Trial> trials = new ArrayList<>();
     List<Timing> timings = new ArrayList<>();
     List<Mishap> mishaps = new ArrayList<>();
     Seen afterRawHop = afterRawHop(circumstances.seen());
-    for (CodecChoice choice : study.codecs()) {
+    for (CodecChoice choice : codecs) {
       GuardedCodec codec =
           new GuardedCodec(
               choice.codec(),
@@ -164,6 +177,7 @@ final class UnitRunner {
               sent.encoding(),
               outcome,
               judged));
+      viewer.see(seen.planes().get(0), judged.luma());
       if (judged.failure() != null) {
         mishaps.add(new Mishap(choice.label(), unit.entry().id(), judged.failure()));
       }
@@ -228,6 +242,7 @@ final class UnitRunner {
         .forEach((column, judge) -> further.put(column, judge.of(decoding.luma())));
     int ssim = study.measures().indexOf("ssim");
     return new Judged(
+        decoding.luma(),
         subject.meanSquaredError(decoding.planes()),
         ssim < 0 ? Double.NaN : subject.judges().get(ssim).of(decoding.luma()),
         further,
@@ -237,6 +252,7 @@ final class UnitRunner {
 
   /** The figures of a decoded picture. */
   private record Judged(
+      Picture luma,
       double mse,
       double ssim,
       Map<String, Double> further,

@@ -1,0 +1,262 @@
+package linkworthy.app;
+
+import static org.assertj.core.api.Assertions.assertThat;
+
+import java.io.IOException;
+import java.nio.charset.StandardCharsets;
+import java.nio.file.Files;
+import java.nio.file.Path;
+import java.util.ArrayList;
+import java.util.List;
+import java.util.Map;
+import java.util.function.UnaryOperator;
+import linkworthy.results.TrialsCsv;
+import linkworthy.statistics.RowSample;
+import linkworthy.trial.Trial;
+import org.junit.jupiter.api.BeforeAll;
+import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.io.TempDir;
+
+/** A record that was altered is found out, and what was not looked at is said. */
+class RecheckTest {
+  private static final int ROWS = 90;
+
+  @TempDir private static Path shared;
+  private static Map<String, String> whole = Map.of();
+  @TempDir private Path folder;
+
+  @BeforeAll
+  static void run() {
+    Path out = shared.resolve("out");
+    String study = SmallStudy.in(shared).toString();
+    assertThat(Program.run(shared, "assess", study, "--quiet", "--out", out.toString()))
+        .isEqualTo(new Outcome(0, "", ""));
+    whole = Program.contents(out);
+  }
+
+  private Path copy() throws IOException {
+    Path copy = Files.createDirectories(folder.resolve("copy"));
+    for (Map.Entry<String, String> file : whole.entrySet()) {
+      if (!file.getKey().isEmpty()) {
+        Files.writeString(
+            copy.resolve(file.getKey()), file.getValue(), StandardCharsets.ISO_8859_1);
+      }
+    }
+    return copy;
+  }
+
+  private static void change(Path file, UnaryOperator<String> how) throws IOException {
+    String before = Files.readString(file);
+    String after = how.apply(before);
+    assertThat(after).isNotEqualTo(before);
+    Files.writeString(file, after);
+  }
+
+  private Outcome recheck(Path results, String... options) {
+    List<String> arguments = new ArrayList<>(List.of("recheck", results.toString(), "--quiet"));
+    arguments.addAll(List.of(options));
+    Outcome outcome = Program.run(folder, arguments.toArray(new String[0]));
+    assertThat(outcome.err()).isEmpty();
+    return outcome;
+  }
+
+  /** Adds a byte to the payload bits, which no cell depends on, of rows from a first one on. */
+  private static void alter(Path results, int first, int count) throws IOException {
+    List<Trial> trials = new ArrayList<>();
+    assertThat(TrialsCsv.read(results.resolve("trials.csv"), trials::add)).isEqualTo(ROWS);
+    change(
+        results.resolve("trials.csv"),
+        text -> {
+          List<String> lines = new ArrayList<>(text.lines().toList());
+          for (int row = first; row < first + count; row++) {
+            long bits = trials.get(row).payloadBits();
+            lines.set(
+                row + 1, lines.get(row + 1).replaceFirst("," + bits + ",", "," + (bits + 8) + ","));
+          }
+          return String.join("\n", lines) + "\n";
+        });
+  }
+
+  @Test
+  void aRecordAsItWasWrittenStands() throws IOException {
+    Outcome outcome = recheck(copy(), "--all", "--threads", "2");
+    assertThat(outcome.out())
+        .contains(
+            "verified      study:",
+            "verified      noise models: 3",
+            "verified      program: version development",
+            "verified      pictures: 2",
+            "verified      corpus:",
+            "verified      order: each of the 90 rows",
+            "verified      cells:",
+            "verified      rows: 90 of 90 trials repeated, equal bit for bit",
+            "not verified  timings.csv")
+        .endsWith("the record stands, as far as it was verified\n")
+        .doesNotContain("chance");
+    assertThat(outcome.code()).isZero();
+  }
+
+  @Test
+  void aSampleSaysWhatItMayHaveMissed() throws IOException {
+    Outcome outcome = recheck(copy(), "--sample", "30", "--seed", "5");
+    // 1 % of 90 rows is 1 row: 60 / 90. 5 % are 5: C(85, 30) / C(90, 30),
+    // recomputed independently in Python with scipy.stats.hypergeom.pmf(0, 90, 5, 30).
+    assertThat(outcome.out())
+        .contains(
+            "rows: 30 of 90 trials repeated, equal bit for bit (seed 5)",
+            "the figures of the other 60 trials",
+            "if 1 % of the rows were altered (1), the chance to have missed all of them is 0.6667",
+            "if 5 % of the rows were altered (5), the chance to have missed all of them is 0.1243");
+    assertThat(recheck(copy(), "--sample", "30", "--seed", "5")).isEqualTo(outcome);
+  }
+
+  @Test
+  void everyAlteredRowIsFoundByAll() throws IOException {
+    Path results = copy();
+    alter(results, 40, 7);
+    Outcome outcome = recheck(results, "--all");
+    assertThat(outcome.code()).isEqualTo(1);
+    assertThat(outcome.out())
+        .contains("MISMATCH      trials.csv, line 42, trial ", "payload_bits recorded ")
+        .contains("MISMATCH      and 2 more")
+        .endsWith("the record does not stand: mismatches: 7\n");
+  }
+
+  /**
+   * 5 of 90 rows side by side are altered, 10 are repeated: the share of 120 seeds that miss them
+   * all is compared with the stated chance. The limit is 4 standard deviations of the binomial
+   * distribution, which a correct program exceeds with about 1 seed set in 16 000.
+   */
+  @Test
+  void theStatedChanceIsHowOftenASampleMisses() throws IOException {
+    Path results = copy();
+    alter(results, 40, 5);
+    int seeds = 120;
+    int missed = 0;
+    for (int seed = 0; seed < seeds; seed++) {
+      int code = recheck(results, "--sample", "10", "--seed", "" + seed).code();
+      assertThat(code).isBetween(0, 1);
+      missed += code == 0 ? 1 : 0;
+    }
+    double chance = RowSample.chanceMissed(ROWS, 5, 10);
+    assertThat(missed - seeds * chance)
+        .isBetween(
+            -4 * Math.sqrt(seeds * chance * (1 - chance)),
+            4 * Math.sqrt(seeds * chance * (1 - chance)));
+  }
+
+  @Test
+  void cellsThatDoNotFollowFromTheRowsAreFound() throws IOException {
+    Path results = copy();
+    change(results.resolve("cells.csv"), text -> text.replaceFirst(",below,", ",best,"));
+    Outcome outcome = recheck(results, "--sample", "1");
+    assertThat(outcome.code()).isEqualTo(1);
+    assertThat(outcome.out()).contains("MISMATCH      cells.csv, line ");
+  }
+
+  @Test
+  void rowsOutOfPlaceAreFoundWithoutRepeatingAny() throws IOException {
+    Path results = copy();
+    change(
+        results.resolve("trials.csv"),
+        text -> {
+          List<String> lines = new ArrayList<>(text.lines().toList());
+          lines.add(31, lines.remove(30));
+          return String.join("\n", lines) + "\n";
+        });
+    Outcome outcome = recheck(results, "--sample", "1", "--seed", "1");
+    assertThat(outcome.code()).isEqualTo(1);
+    assertThat(outcome.out()).contains("MISMATCH      row 30: trial recorded");
+  }
+
+  @Test
+  void aChangedStudyIsFound() throws IOException {
+    Path results = copy();
+    change(results.resolve("study.yaml"), text -> text.replace("seed: 7", "seed: 8"));
+    Outcome outcome = recheck(results);
+    assertThat(outcome.code()).isEqualTo(1);
+    assertThat(outcome.out())
+        .contains("MISMATCH      study fingerprint recorded ", "no trial was repeated");
+  }
+
+  @Test
+  void anotherVersionIsNamedAndNotFatal() throws IOException {
+    Path results = copy();
+    change(results.resolve("run.json"), text -> text.replace("\"development\"", "\"0.0.9\""));
+    Outcome outcome = recheck(results, "--sample", "5");
+    assertThat(outcome.code()).isZero();
+    assertThat(outcome.out())
+        .contains("program: version development repeats what version 0.0.9 recorded");
+  }
+
+  @Test
+  void anAlteredPictureIsFound() throws IOException {
+    byte[] pgm = OwnPictures.pgm();
+    OwnPictures pictures = new OwnPictures(folder).add("yard.pgm", pgm);
+    Path study = pictures.study();
+    Path manifest = pictures.manifest();
+    Path out = folder.resolve("out");
+    assertThat(Program.run(folder, "assess", study + "", "--quiet", "--out", out + "").err())
+        .isEmpty();
+    assertThat(recheck(out, "--sample", "5").code()).isZero();
+    pgm[pgm.length - 1] ^= 1;
+    Files.write(folder.resolve("yard.pgm"), pgm);
+    Outcome altered = recheck(out);
+    assertThat(altered.code()).isEqualTo(1);
+    assertThat(altered.out()).contains("MISMATCH ", "yard.pgm has SHA-256");
+    // The manifest is made to fit; the record still knows the old checksum.
+    Path again = new OwnPictures(folder).add("yard.pgm", pgm).manifest();
+    assertThat(again).isEqualTo(manifest);
+    Outcome fitted = recheck(out);
+    assertThat(fitted.code()).isEqualTo(1);
+    assertThat(fitted.out()).contains("MISMATCH      picture 'yard.pgm' recorded with SHA-256");
+  }
+
+  @Test
+  void anAlteredModelFileIsFound() throws IOException {
+    Path model = folder.resolve("mine.yaml");
+    Files.writeString(
+        model,
+        """
+        id: mine
+        version: 1
+        process: gaussian
+        acts-on: [samples]
+        severity: [snr-db]
+        source: own measurement
+        """);
+    Path study =
+        SmallStudy.write(folder, SmallStudy.TEXT.replace("noise: gaussian", "noise: mine.yaml"));
+    Path out = folder.resolve("out");
+    assertThat(Program.run(folder, "assess", study + "", "--quiet", "--out", out + ""))
+        .isEqualTo(new Outcome(0, "", ""));
+    assertThat(recheck(out, "--sample", "5").code()).isZero();
+    Path recorded;
+    try (var files = Files.list(out.resolve("models"))) {
+      recorded = files.toList().get(0);
+    }
+    String original = Files.readString(recorded);
+    change(recorded, text -> text + "# harmless\n");
+    assertMismatch(out, "models/mine-", "is not what the program writes");
+    Files.writeString(recorded, original);
+    change(recorded, text -> text.replace("version: 1", "version: 2"));
+    assertMismatch(out, "study fingerprint recorded ", "noise model mine version 1 recorded");
+  }
+
+  private void assertMismatch(Path results, String... parts) {
+    Outcome altered = recheck(results);
+    assertThat(altered.code()).isEqualTo(1);
+    assertThat(altered.out()).contains(parts);
+  }
+
+  @Test
+  void whatDoesNotGoTogetherIsRefused() throws IOException {
+    for (String options : List.of("--all --sample 5", "--sample 0", "--seed -1", "--threads 0")) {
+      List<String> arguments = new ArrayList<>(List.of("recheck", copy().toString()));
+      arguments.addAll(List.of(options.split(" ", -1)));
+      Outcome outcome = Program.run(folder, arguments.toArray(new String[0]));
+      assertThat(outcome.errors()).singleElement().asString().contains("accepted: ");
+      assertThat(outcome.code()).isEqualTo(2);
+    }
+  }
+}
