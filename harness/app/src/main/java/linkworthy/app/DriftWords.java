@@ -22,6 +22,7 @@ import linkworthy.results.ResultsFolder;
 /** What a comparison of runs says, as sentences and tables for the console and the page alike. */
 final class DriftWords {
   private static final String NOT_AVAILABLE = "n/a";
+  private static final int SHORT_HASH = 8;
 
   private DriftWords() {}
 
@@ -191,7 +192,7 @@ final class DriftWords {
               Integer.toString(i + 1),
               run.run().start().toString(),
               run.run().programVersion(),
-              run.run().studyFingerprint().substring(0, 8),
+              shortly(run.run().studyFingerprint()),
               String.valueOf(run.path().getFileName()),
               steps.get(i)));
     }
@@ -206,6 +207,10 @@ final class DriftWords {
             words("folder"),
             words("against the run before")),
         rows);
+  }
+
+  private static String shortly(String fingerprint) {
+    return fingerprint.substring(0, Math.min(SHORT_HASH, fingerprint.length()));
   }
 
   /** A table for each noise: mean PSNR of every cell in every run. */

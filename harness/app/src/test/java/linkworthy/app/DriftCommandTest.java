@@ -186,7 +186,7 @@ class DriftCommandTest {
         .contains(
             "program version|development|<b>2</b>",
             "pictures.select|canyon, cat|canyon, gravel",
-            "noise burst-loss on packets: mean-burst|4.0|2.0",
+            "noise burst-loss on packets by loss-rate: mean-burst|4.0|2.0",
             "codec pca blocks8 share0.9 step8: step|8.0|4.0",
             "codec mean rows step16|in the study|-",
             "codec mean rows step12|-|in the study",

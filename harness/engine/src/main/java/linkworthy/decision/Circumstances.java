@@ -58,7 +58,7 @@ final class Circumstances {
   private void addImpairments(List<YamlNode> impairments) {
     List<String> found = new ArrayList<>();
     for (YamlNode impairment : impairments) {
-      String name = noise(impairment.get("label").text(), impairment.get("acts-on").text());
+      String name = noise(impairment);
       settings.put(name, "in the study");
       found.add(parameters(impairment));
       for (String key : impairment.keys()) {
@@ -70,10 +70,8 @@ final class Circumstances {
     List<String> distinct = List.copyOf(new LinkedHashSet<>(found));
     if (distinct.size() == run.noiseModels().size()) {
       for (int i = 0; i < found.size(); i++) {
-        YamlNode impairment = impairments.get(i);
         models.put(
-            noise(impairment.get("label").text(), impairment.get("acts-on").text()),
-            run.noiseModels().get(distinct.indexOf(found.get(i))));
+            noise(impairments.get(i)), run.noiseModels().get(distinct.indexOf(found.get(i))));
       }
     }
   }
@@ -90,8 +88,17 @@ final class Circumstances {
     return text.toString();
   }
 
-  private static String noise(String label, String actsOn) {
-    return "noise " + label + " on " + actsOn;
+  private static String noise(YamlNode impairment) {
+    String axis =
+        impairment.keys().stream()
+            .filter(key -> impairment.get(key).isSequence())
+            .findFirst()
+            .orElse("");
+    return noise(impairment.get("label").text(), impairment.get("acts-on").text(), axis);
+  }
+
+  private static String noise(String label, String actsOn, String axis) {
+    return "noise " + label + " on " + actsOn + " by " + axis;
   }
 
   private void flatten(String name, YamlNode value) {
@@ -136,7 +143,7 @@ final class Circumstances {
     if (cell.isClean()) {
       return true;
     }
-    String name = noise(cell.impairment(), cell.actsOn());
+    String name = noise(cell.impairment(), cell.actsOn(), cell.axis());
     RunRecord.ModelUsed model = models.get(name);
     RunRecord.ModelUsed theirs = other.models.get(name);
     return run.seed() == other.run.seed()
