@@ -70,6 +70,13 @@ class ArchitectureTest {
         "linkworthy.results..");
     mayNotUse("linkworthy.trial..", "linkworthy.statistics..", "linkworthy.results..");
     mayNotUse("linkworthy.statistics..", "linkworthy.results..");
+    noClasses()
+        .that()
+        .resideOutsideOfPackage("linkworthy.decision..")
+        .should()
+        .dependOnClassesThat()
+        .resideInAPackage("linkworthy.decision..")
+        .check(CLASSES);
   }
 
   @Test

@@ -46,13 +46,25 @@ public final class ReportRenderer {
     Context context = new Context(Locale.ROOT);
     context.setVariable("page", page);
     context.setVariable("view", ReportView.of(page));
+    return process("report.html", context);
+  }
+
+  /** A comparison of runs as HTML text, under the same rules. */
+  public String render(ComparisonPage page) {
+    Context context = new Context(Locale.ROOT);
+    context.setVariable("page", page);
+    context.setVariable("plots", TrendPlot.of(page.trends()));
+    return process("comparison.html", context);
+  }
+
+  private String process(String template, Context context) {
     context.setVariable("style", style);
     context.setVariable(
         "policy",
         "default-src 'none'; style-src '"
             + hash(style)
             + "'; img-src data:; base-uri 'none'; form-action 'none'");
-    return printable(engine.process("report.html", context));
+    return printable(engine.process(template, context));
   }
 
   /** The template engine writes some characters as references, so those are looked through too. */

@@ -19,6 +19,7 @@ import picocli.CommandLine.Spec;
       ReportCommand.class,
       ReplayCommand.class,
       RecheckCommand.class,
+      DriftCommand.class,
       CorpusCommand.class,
       NoiseCommand.class,
       CodecsCommand.class,

@@ -28,7 +28,8 @@ import linkworthy.trial.Trial;
  * {@code cells.csv} once the run is complete.
  */
 public final class ResultsFolder {
-  static final String STUDY = "study.yaml";
+  /** Name of the study in a results folder. */
+  public static final String STUDY = "study.yaml";
 
   /** Name of the report in a results folder. */
   public static final String REPORT = "report.html";

@@ -81,7 +81,7 @@ public final class StudentT {
     return 2 * distribution(differences.count() - 1.0).survivalProbability(Math.abs(t));
   }
 
-  private static TDistribution distribution(double degreesOfFreedom) {
+  static TDistribution distribution(double degreesOfFreedom) {
     return TDistribution.of(Require.positive(degreesOfFreedom, "degrees of freedom"));
   }
 }
