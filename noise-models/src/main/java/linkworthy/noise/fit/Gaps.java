@@ -55,17 +55,6 @@ record Gaps(int lead, Map<Integer, Integer> between, int tail) {
     return Double.isNaN(logLikelihood) ? Double.NEGATIVE_INFINITY : logLikelihood;
   }
 
-  /** Probability that a loss is followed by each number of deliveries and then a loss. */
-  static double[] gapProbabilities(MarkovLoss chain, int longest) {
-    Forward forward = new Forward(chain, chain.r(), 1 - chain.r());
-    double[] probabilities = new double[longest + 1];
-    for (int length = 0; length <= longest; length++) {
-      probabilities[length] = StrictMath.exp(forward.logLoss());
-      forward.deliver(1);
-    }
-    return probabilities;
-  }
-
   /** Joint probability of the state and of the deliveries so far, with a common factor apart. */
   private static final class Forward {
     private final MarkovLoss chain;

@@ -12,8 +12,8 @@ import org.apache.commons.statistics.distribution.ChiSquaredDistribution;
  * <p>Independent losses against the simple chain: twice the gain in log-likelihood is chi-square
  * with one degree of freedom if losses are independent. The simple chain against the
  * three-parameter one: h = 0 lies at the limit of its range, so half of the chance of one degree of
- * freedom counts (Self and Liang 1987). A richer form is taken if the p value is below {@link
- * #LEVEL}.
+ * freedom counts (Self and Liang 1987, quoted from memory). A richer form is taken if the p value
+ * is below {@link #LEVEL}.
  *
  * @param trace what was measured
  * @param independent fit of independent losses

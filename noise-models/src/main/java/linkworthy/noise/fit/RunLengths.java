@@ -9,7 +9,8 @@ import org.apache.commons.statistics.distribution.ChiSquaredDistribution;
  * over classes of neighbouring lengths, each with at least 5 expected runs, for runs of losses and
  * runs of deliveries together. Runs cut by the ends of the trace are left out. As the chain was
  * fitted to the packets and not to the classes, the degrees of freedom counted here are the lower
- * of two bounds (Chernoff and Lehmann 1954), so that the p value is if anything too small.
+ * of two bounds (Chernoff and Lehmann 1954, quoted from memory), so that the p value is if anything
+ * too small.
  *
  * @param statistic chi-square
  * @param degreesOfFreedom classes less one for each kind of run, less the parameters fitted; below

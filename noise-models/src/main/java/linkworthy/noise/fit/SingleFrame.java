@@ -6,11 +6,11 @@ import linkworthy.input.BadInput;
 /**
  * Noise of a single picture: the median absolute value of its finest diagonal Haar detail, (a - b -
  * c + d)/2 over blocks of 2 x 2 samples, over 0.6745, the same of a normal deviate (Donoho and
- * Johnstone 1994, "Ideal spatial adaptation by wavelet shrinkage"; the constant to four digits,
- * here the quartile of the normal distribution). The details are multiples of one half, so the
- * median is interpolated within its step, as of grouped figures. Fine texture counts as noise: the
- * result is an upper bound in busy pictures. Noise that changes with the light comes out as an
- * average.
+ * Johnstone 1994, "Ideal spatial adaptation by wavelet shrinkage", quoted from memory; the constant
+ * to four digits, here the quartile of the normal distribution). The details are multiples of one
+ * half, so the median is interpolated within its step, as of grouped figures. Fine texture counts
+ * as noise: the result is an upper bound in busy pictures. Noise that changes with the light comes
+ * out as an average.
  *
  * @param deviation standard deviation of the noise, grey levels; the rounding's 1/12 is taken off
  *     its square, down to 0
