@@ -70,6 +70,20 @@ class ArchitectureTest {
         "linkworthy.results..");
     mayNotUse("linkworthy.trial..", "linkworthy.statistics..", "linkworthy.results..");
     mayNotUse("linkworthy.statistics..", "linkworthy.results..");
+    noClasses()
+        .that()
+        .resideInAnyPackage(
+            "linkworthy.link..",
+            "linkworthy.codec..",
+            "linkworthy.quality..",
+            "linkworthy.study..",
+            "linkworthy.trial..",
+            "linkworthy.statistics..",
+            "linkworthy.results..")
+        .should()
+        .dependOnClassesThat()
+        .resideInAnyPackage("linkworthy.decision..")
+        .check(CLASSES);
   }
 
   @Test

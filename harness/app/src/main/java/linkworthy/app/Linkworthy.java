@@ -17,6 +17,7 @@ import picocli.CommandLine.Spec;
     subcommands = {
       AssessCommand.class,
       ReportCommand.class,
+      ShortlistCommand.class,
       CorpusCommand.class,
       NoiseCommand.class,
       CodecsCommand.class,
