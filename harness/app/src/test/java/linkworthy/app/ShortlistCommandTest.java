@@ -78,7 +78,7 @@ class ShortlistCommandTest {
         .contains("What does a small study show?")
         .contains("Need 2")
         .contains("Method")
-        .contains("default-src 'none'; style-src 'sha256-")
+        .contains("Content-Security-Policy")
         .doesNotContain("<script");
   }
 }
