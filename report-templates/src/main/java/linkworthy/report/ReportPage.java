@@ -11,6 +11,7 @@ import java.util.List;
  * @param figures a row a cell; codecs and impairments are shown in the order of their first figure
  * @param confidenceLevel level of both intervals and, as its complement, of the paired tests; above
  *     0 and below 1
+ * @param comparisons what was derived from the figures, or {@link Comparisons#NONE}
  */
 public record ReportPage(
     String title,
@@ -19,7 +20,8 @@ public record ReportPage(
     List<Figure> figures,
     double confidenceLevel,
     List<PictureCredit> pictures,
-    Provenance provenance) {
+    Provenance provenance,
+    Comparisons comparisons) {
   /**
    * @throws IllegalArgumentException if the confidence level is out of range
    */
@@ -30,5 +32,17 @@ public record ReportPage(
     }
     figures = List.copyOf(figures);
     pictures = List.copyOf(pictures);
+  }
+
+  /** A page without comparisons. */
+  public ReportPage(
+      String title,
+      String question,
+      Answer answer,
+      List<Figure> figures,
+      double confidenceLevel,
+      List<PictureCredit> pictures,
+      Provenance provenance) {
+    this(title, question, answer, figures, confidenceLevel, pictures, provenance, Comparisons.NONE);
   }
 }

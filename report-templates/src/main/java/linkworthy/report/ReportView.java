@@ -19,7 +19,8 @@ record ReportView(
     String outageSentence,
     String failureSentence,
     List<SeverityRow> severities,
-    List<Fact> provenance) {
+    List<Fact> provenance,
+    ComparisonView comparisons) {
 
   /** An impairment with its tables and its panels. */
   record Section(String id, String title, List<MatrixTable> tables, List<LinePlot> plots) {}
@@ -81,7 +82,8 @@ record ReportView(
         outageSentence(page, outages),
         failureSentence(page),
         severities(noises),
-        provenance(page.provenance()));
+        provenance(page.provenance()),
+        ComparisonView.of(page.comparisons()));
   }
 
   private static String summary(ReportPage page, FigureGrid grid) {

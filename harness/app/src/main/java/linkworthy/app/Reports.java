@@ -18,7 +18,7 @@ import linkworthy.statistics.Cell;
 import linkworthy.statistics.StudentT;
 import linkworthy.study.Study;
 
-/** Makes the report of a results folder from its recorded cells alone. */
+/** Makes the report of a results folder from its recorded cells and trials alone. */
 final class Reports {
   private Reports() {}
 
@@ -35,7 +35,8 @@ final class Reports {
                 figures,
                 StudentT.CONFIDENCE,
                 run.pictures().stream().map(Reports::credit).toList(),
-                provenance(results)));
+                provenance(results),
+                ReportComparisons.of(results)));
   }
 
   /** The answer in lines for the console. */
