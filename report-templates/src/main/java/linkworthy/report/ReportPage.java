@@ -13,6 +13,7 @@ import org.jspecify.annotations.Nullable;
  * @param confidenceLevel level of both intervals and, as its complement, of the paired tests; above
  *     0 and below 1
  * @param costs of the nodes, or null where none were asked for
+ * @param comparisons what was derived from the figures, or {@link Comparisons#NONE}
  */
 public record ReportPage(
     String title,
@@ -22,7 +23,8 @@ public record ReportPage(
     double confidenceLevel,
     List<PictureCredit> pictures,
     Provenance provenance,
-    @Nullable Costs costs) {
+    @Nullable Costs costs,
+    Comparisons comparisons) {
   /**
    * @throws IllegalArgumentException if the confidence level is out of range
    */
@@ -35,7 +37,7 @@ public record ReportPage(
     pictures = List.copyOf(pictures);
   }
 
-  /** A page without costs. */
+  /** A page without costs and comparisons. */
   public ReportPage(
       String title,
       String question,
@@ -44,6 +46,15 @@ public record ReportPage(
       double confidenceLevel,
       List<PictureCredit> pictures,
       Provenance provenance) {
-    this(title, question, answer, figures, confidenceLevel, pictures, provenance, null);
+    this(
+        title,
+        question,
+        answer,
+        figures,
+        confidenceLevel,
+        pictures,
+        provenance,
+        null,
+        Comparisons.NONE);
   }
 }

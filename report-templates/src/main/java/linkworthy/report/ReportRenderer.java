@@ -43,7 +43,7 @@ public final class ReportRenderer {
    * @throws IllegalArgumentException if two figures are of one codec in one condition
    */
   public String render(ReportPage page) {
-    Context context = new Context(Locale.ROOT);
+    Context context = context();
     context.setVariable("page", page);
     context.setVariable("view", ReportView.of(page));
     return process("report.html", context);
@@ -51,20 +51,32 @@ public final class ReportRenderer {
 
   /** A comparison of runs as HTML text, under the same rules. */
   public String render(ComparisonPage page) {
-    Context context = new Context(Locale.ROOT);
+    Context context = context();
     context.setVariable("page", page);
     context.setVariable("plots", TrendPlot.of(page.trends()));
     return process("comparison.html", context);
   }
 
+  /** A shortlist as HTML text, in the manner of the report. */
+  public String render(ShortlistPage page) {
+    Context context = context();
+    context.setVariable("page", page);
+    return process("shortlist.html", context);
+  }
+
   private String process(String template, Context context) {
+    return printable(engine.process(template, context));
+  }
+
+  private Context context() {
+    Context context = new Context(Locale.ROOT);
     context.setVariable("style", style);
     context.setVariable(
         "policy",
         "default-src 'none'; style-src '"
             + hash(style)
             + "'; img-src data:; base-uri 'none'; form-action 'none'");
-    return printable(engine.process(template, context));
+    return context;
   }
 
   /** The template engine writes some characters as references, so those are looked through too. */

@@ -21,7 +21,8 @@ record ReportView(
     String failureSentence,
     List<SeverityRow> severities,
     List<Fact> provenance,
-    @Nullable CostView costs) {
+    @Nullable CostView costs,
+    ComparisonView comparisons) {
 
   /** An impairment with its tables and its panels. */
   record Section(String id, String title, List<MatrixTable> tables, List<LinePlot> plots) {}
@@ -84,7 +85,8 @@ record ReportView(
         failureSentence(page),
         severities(noises),
         provenance(page.provenance()),
-        page.costs() == null ? null : CostView.of(page.costs()));
+        page.costs() == null ? null : CostView.of(page.costs()),
+        ComparisonView.of(page.comparisons()));
   }
 
   private static String summary(ReportPage page, FigureGrid grid) {

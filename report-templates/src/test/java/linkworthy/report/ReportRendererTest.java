@@ -206,7 +206,8 @@ class ReportRendererTest {
                 plain.confidenceLevel(),
                 plain.pictures(),
                 plain.provenance(),
-                costs));
+                costs,
+                Comparisons.NONE));
     assertThat(shown.texts("(//section[@id='costs']//table)[1]/tbody/tr/td[3]"))
         .containsExactly("fits", "too much", "unknown");
     assertThat(shown.texts("(//section[@id='costs']//table)[1]/tbody/tr/td[last()]"))

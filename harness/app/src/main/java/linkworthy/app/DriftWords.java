@@ -13,7 +13,7 @@ import linkworthy.decision.CellKey;
 import linkworthy.decision.Change;
 import linkworthy.decision.Drift;
 import linkworthy.decision.History;
-import linkworthy.decision.Verdict;
+import linkworthy.decision.Movement;
 import linkworthy.input.Decimal;
 import linkworthy.report.ComparisonPage;
 import linkworthy.report.Fact;
@@ -34,16 +34,16 @@ final class DriftWords {
           + count(cells, "cell", "cells")
           + ")";
     }
-    long moved = drift.count(Verdict.MOVED);
+    long moved = drift.count(Movement.MOVED);
     return count(cells, "cell", "cells")
         + ": "
         + moved
         + " moved ("
         + drift.worse()
         + " for the worse), "
-        + drift.count(Verdict.SAME)
+        + drift.count(Movement.SAME)
         + " same, "
-        + drift.count(Verdict.UNDECIDED)
+        + drift.count(Movement.UNDECIDED)
         + " undecided; tolerance "
         + plain(toleranceDb)
         + " dB; bits per pixel differ by more than 0.1 % in "
@@ -125,7 +125,7 @@ final class DriftWords {
     if (cell.identical()) {
       return "same (identical)";
     }
-    if (cell.verdict() == Verdict.MOVED) {
+    if (cell.verdict() == Movement.MOVED) {
       return cell.isWorse() ? "moved: worse" : "moved: better";
     }
     return cell.verdict().toString();

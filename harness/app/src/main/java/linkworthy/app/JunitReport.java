@@ -6,7 +6,7 @@ import javax.xml.stream.XMLStreamException;
 import javax.xml.stream.XMLStreamWriter;
 import linkworthy.decision.CellDrift;
 import linkworthy.decision.Drift;
-import linkworthy.decision.Verdict;
+import linkworthy.decision.Movement;
 
 /**
  * A comparison as JUnit XML, the form that build servers read: a test case a cell, a failure where
@@ -55,7 +55,7 @@ final class JunitReport {
       xml.writeStartElement("failure");
       xml.writeAttribute("message", note);
       xml.writeEndElement();
-    } else if (cell.verdict() != Verdict.SAME) {
+    } else if (cell.verdict() != Movement.SAME) {
       xml.writeStartElement("system-out");
       xml.writeCharacters(note);
       xml.writeEndElement();

@@ -20,6 +20,7 @@ import picocli.CommandLine.Spec;
       ReplayCommand.class,
       RecheckCommand.class,
       DriftCommand.class,
+      ShortlistCommand.class,
       CorpusCommand.class,
       NoiseCommand.class,
       CodecsCommand.class,

@@ -25,7 +25,7 @@ import linkworthy.study.Study;
 import linkworthy.trial.NodeShare;
 import org.jspecify.annotations.Nullable;
 
-/** Makes the report of a results folder from its recorded cells alone. */
+/** Makes the report of a results folder from its recorded cells and trials alone. */
 final class Reports {
   private Reports() {}
 
@@ -43,7 +43,8 @@ final class Reports {
                 StudentT.CONFIDENCE,
                 run.pictures().stream().map(Reports::credit).toList(),
                 provenance(results),
-                costs(results)));
+                costs(results),
+                ReportComparisons.of(results)));
   }
 
   /** What the nodes bear, from the clean cells; null where the study names no node. */

@@ -110,6 +110,7 @@ class HandbookTest {
         "README.md",
         "DEVELOPERS.md",
         "results/README.md",
+        "harness/handbook/decisions.md",
         "harness/handbook/methods.md",
         "harness/handbook/results.md"
       })

@@ -27,7 +27,7 @@ public record CellDrift(
     double pAdjusted,
     double equivalenceP,
     boolean identical,
-    Verdict verdict,
+    Movement verdict,
     double oldBits,
     double newBits) {
   /** Bits per pixel have moved when their means differ by more than this share. */
@@ -64,7 +64,7 @@ public record CellDrift(
 
   /** Whether the mean PSNR fell, as far as anything may be said. */
   public boolean isWorse() {
-    return verdict == Verdict.MOVED && difference.estimate() < 0;
+    return verdict == Movement.MOVED && difference.estimate() < 0;
   }
 
   /**
@@ -72,7 +72,7 @@ public record CellDrift(
    * noise did not.
    */
   public boolean isOfNote() {
-    return verdict != Verdict.SAME || (test.isOfSameNoise() && bitsMoved());
+    return verdict != Movement.SAME || (test.isOfSameNoise() && bitsMoved());
   }
 
   /** New mean of bits per pixel over the old one, less 1; NaN where both are 0. */

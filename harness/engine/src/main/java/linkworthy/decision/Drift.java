@@ -165,7 +165,7 @@ public final class Drift {
         after.meanBits());
   }
 
-  private static Verdict verdict(
+  private static Movement verdict(
       CellFigures.Compared compared,
       double adjusted,
       double equivalence,
@@ -174,12 +174,12 @@ public final class Drift {
     double size = Math.abs(compared.difference().estimate());
     boolean certain = compared.test().isOfSameNoise() && Double.isInfinite(size);
     if (identical) {
-      return Verdict.SAME;
+      return Movement.SAME;
     }
     if (certain || (adjusted < ALPHA && size > toleranceDb)) {
-      return Verdict.MOVED;
+      return Movement.MOVED;
     }
-    return equivalence < ALPHA ? Verdict.SAME : Verdict.UNDECIDED;
+    return equivalence < ALPHA ? Movement.SAME : Movement.UNDECIDED;
   }
 
   /** What differs in the runs' records, apart from times. */
@@ -208,7 +208,7 @@ public final class Drift {
   }
 
   /** How many cells have this verdict. */
-  public long count(Verdict verdict) {
+  public long count(Movement verdict) {
     return cells.stream().filter(cell -> cell.verdict() == verdict).count();
   }
 

@@ -53,7 +53,7 @@ class DriftFalseAlarmTest {
               key -> false,
               0);
       assertThat(drift.cells()).hasSize(CELLS).allMatch(cell -> cell.test() == test);
-      alarms += drift.count(Verdict.MOVED) > 0 ? 1 : 0;
+      alarms += drift.count(Movement.MOVED) > 0 ? 1 : 0;
     }
     BinomialDistribution stated = BinomialDistribution.of(TABLES, Drift.ALPHA);
     assertThat(alarms)

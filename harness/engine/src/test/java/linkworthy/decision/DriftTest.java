@@ -35,7 +35,7 @@ class DriftTest {
     assertThat(cell.difference().estimate()).isCloseTo(-1, within(1e-12));
     assertThat(cell.difference().p())
         .isCloseTo(MeanDifference.paired(Moments.of(-0.9, -1.1)).p(), within(1e-10));
-    assertThat(cell.verdict()).isEqualTo(Verdict.UNDECIDED);
+    assertThat(cell.verdict()).isEqualTo(Movement.UNDECIDED);
   }
 
   @Test
@@ -79,16 +79,16 @@ class DriftTest {
     }
     Drift drift = drift(old, now, Set.of("p0", "p1", "p2", "p3", "p4", "p5"), true);
     assertThat(drift.cells().stream().map(CellDrift::verdict))
-        .containsExactly(Verdict.MOVED, Verdict.SAME, Verdict.SAME);
+        .containsExactly(Movement.MOVED, Movement.SAME, Movement.SAME);
     assertThat(drift.cells().stream().map(CellDrift::isWorse)).containsExactly(true, false, false);
     assertThat(drift.cells().stream().map(CellDrift::identical))
         .containsExactly(false, false, true);
     assertThat(drift.cells().get(0).pAdjusted())
         .isCloseTo(3 * drift.cells().get(0).difference().p(), within(1e-12));
     assertThat(drift.worse()).isOne();
-    assertThat(drift.count(Verdict.SAME)).isEqualTo(2);
+    assertThat(drift.count(Movement.SAME)).isEqualTo(2);
     Drift back = drift(now, old, Set.of("p0", "p1", "p2", "p3", "p4", "p5"), true);
-    assertThat(back.count(Verdict.MOVED)).isOne();
+    assertThat(back.count(Movement.MOVED)).isOne();
     assertThat(back.worse()).isZero();
   }
 
@@ -105,7 +105,7 @@ class DriftTest {
     }
     Drift drift = drift(old, now, Set.of("p0", "p1", "p2", "p3"), true);
     assertThat(drift.cells()).allMatch(cell -> cell.difference().p() < 0.05);
-    assertThat(drift.count(Verdict.UNDECIDED)).isEqualTo(8);
+    assertThat(drift.count(Movement.UNDECIDED)).isEqualTo(8);
   }
 
   @Test
@@ -113,14 +113,14 @@ class DriftTest {
     Rows old = new Rows().add(Rows.CODEC, "a", Double.POSITIVE_INFINITY).add(Rows.CODEC, "b", 40);
     Rows now = new Rows().add(Rows.CODEC, "a", 60).add(Rows.CODEC, "b", 40);
     CellDrift worse = only(drift(old, now, BOTH, true));
-    assertThat(worse.verdict()).isEqualTo(Verdict.MOVED);
+    assertThat(worse.verdict()).isEqualTo(Movement.MOVED);
     assertThat(worse.isWorse()).isTrue();
     CellDrift better = only(drift(now, old, BOTH, true));
-    assertThat(better.verdict()).isEqualTo(Verdict.MOVED);
+    assertThat(better.verdict()).isEqualTo(Movement.MOVED);
     assertThat(better.isWorse()).isFalse();
-    assertThat(only(drift(old, now, BOTH, false)).verdict()).isEqualTo(Verdict.UNDECIDED);
+    assertThat(only(drift(old, now, BOTH, false)).verdict()).isEqualTo(Movement.UNDECIDED);
     CellDrift lossless = only(drift(old, old, BOTH, false));
-    assertThat(lossless.verdict()).isEqualTo(Verdict.SAME);
+    assertThat(lossless.verdict()).isEqualTo(Movement.SAME);
     assertThat(lossless.identical()).isTrue();
     assertThat(lossless.difference().estimate()).isZero();
   }

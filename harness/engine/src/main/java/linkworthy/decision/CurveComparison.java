@@ -1,0 +1,144 @@
+package linkworthy.decision;
+
+import java.util.ArrayList;
+import java.util.LinkedHashMap;
+import java.util.LinkedHashSet;
+import java.util.List;
+import java.util.Map;
+import java.util.Optional;
+import java.util.Set;
+import linkworthy.input.Require;
+import linkworthy.statistics.Cell;
+
+/**
+ * Two families of codecs in one condition, in numbers: mean PSNR against mean sent bits per pixel
+ * of the families' codecs.
+ *
+ * <p>A family is three or more codecs of one transform and arrangement that differ in the
+ * components kept (or JPEG quality) at one step; or, of what is left, in the step at one number of
+ * components. The first family of the study is the reference of all others.
+ *
+ * @param condition where
+ * @param reference name of the family that the other is compared with
+ * @param family its name
+ * @param pchip by monotone piecewise cubics; empty if it was refused
+ * @param cubic by polynomials of third order; empty if it was refused or the curves have other than
+ *     four points
+ * @param refusal why there are no numbers, or empty
+ */
+public record CurveComparison(
+    Measurements.Condition condition,
+    String reference,
+    String family,
+    Optional<BjontegaardDelta> pchip,
+    Optional<BjontegaardDelta> cubic,
+    String refusal) {
+  public CurveComparison {
+    Require.notBlank(reference, "reference");
+    Require.notBlank(family, "family");
+  }
+
+  /** All comparisons of a run, in the order of its cells; none for fewer than two families. */
+  public static List<CurveComparison> of(List<Cell> cells) {
+    Map<String, Set<String>> families = families(cells);
+    Map<Measurements.Condition, List<Cell>> conditions = new LinkedHashMap<>();
+    for (Cell cell : cells) {
+      conditions
+          .computeIfAbsent(
+              new Measurements.Condition(
+                  cell.impairment(), cell.actsOn(), cell.axis(), cell.severity()),
+              c -> new ArrayList<>())
+          .add(cell);
+    }
+    List<CurveComparison> comparisons = new ArrayList<>();
+    List<String> names = List.copyOf(families.keySet());
+    conditions.forEach(
+        (condition, row) -> {
+          for (String name : names.subList(Math.min(1, names.size()), names.size())) {
+            comparisons.add(
+                compare(
+                    condition,
+                    names.get(0),
+                    pick(row, families.getOrDefault(names.get(0), Set.of())),
+                    name,
+                    pick(row, families.getOrDefault(name, Set.of()))));
+          }
+        });
+    return comparisons;
+  }
+
+  private static List<Cell> pick(List<Cell> row, Set<String> codecs) {
+    return row.stream().filter(cell -> codecs.contains(cell.codec())).toList();
+  }
+
+  private static CurveComparison compare(
+      Measurements.Condition condition,
+      String reference,
+      List<Cell> referenceCells,
+      String family,
+      List<Cell> cells) {
+    try {
+      RateCurve a = curve(reference, referenceCells);
+      RateCurve b = curve(family, cells);
+      boolean four =
+          Interpolation.CUBIC.takes(a.points().size())
+              && Interpolation.CUBIC.takes(b.points().size());
+      return new CurveComparison(
+          condition,
+          reference,
+          family,
+          Optional.of(BjontegaardDelta.of(a, b, Interpolation.PCHIP)),
+          four ? Optional.of(BjontegaardDelta.of(a, b, Interpolation.CUBIC)) : Optional.empty(),
+          "");
+    } catch (IllegalArgumentException e) {
+      String reason = String.valueOf(e.getMessage()).split("; accepted", 2)[0];
+      return new CurveComparison(
+          condition, reference, family, Optional.empty(), Optional.empty(), reason);
+    }
+  }
+
+  private static RateCurve curve(String family, List<Cell> cells) {
+    try {
+      return new RateCurve(
+          cells.stream()
+              .map(cell -> new RateCurve.Point(cell.bitsPerPixelMean(), cell.psnrMeanDb()))
+              .toList());
+    } catch (IllegalArgumentException e) {
+      throw new IllegalArgumentException(family + ": " + e.getMessage(), e);
+    }
+  }
+
+  /** Labels of the codecs of each family, by its name. */
+  private static Map<String, Set<String>> families(List<Cell> cells) {
+    Map<String, Cell> codecs = new LinkedHashMap<>();
+    cells.stream()
+        .filter(cell -> !cell.transform().isEmpty())
+        .forEach(cell -> codecs.putIfAbsent(cell.codec(), cell));
+    Map<String, Set<String>> byStep = new LinkedHashMap<>();
+    codecs.forEach((label, cell) -> add(byStep, name(cell, step(cell)), label));
+    byStep.values().removeIf(members -> members.size() < RateCurve.FEWEST);
+    byStep.values().forEach(codecs.keySet()::removeAll);
+    Map<String, Set<String>> byKeep = new LinkedHashMap<>();
+    codecs.forEach((label, cell) -> add(byKeep, name(cell, keep(cell)), label));
+    byKeep.values().removeIf(members -> members.size() < RateCurve.FEWEST);
+    byStep.putAll(byKeep);
+    return byStep;
+  }
+
+  private static void add(Map<String, Set<String>> families, String name, String label) {
+    families.computeIfAbsent(name, n -> new LinkedHashSet<>()).add(label);
+  }
+
+  private static String name(Cell cell, String last) {
+    return String.join(" ", cell.transform(), cell.over(), last).replaceAll(" +", " ").strip();
+  }
+
+  private static String step(Cell cell) {
+    String step = cell.step();
+    return step.isEmpty() ? "" : "step" + (step.endsWith(".0") ? step.replace(".0", "") : step);
+  }
+
+  private static String keep(Cell cell) {
+    return cell.keep() < 0 ? "" : "K" + cell.keep();
+  }
+}

@@ -1,0 +1,140 @@
+package linkworthy.decision;
+
+import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.within;
+
+import java.util.ArrayList;
+import java.util.List;
+import java.util.Map;
+import linkworthy.statistics.Cell;
+import linkworthy.statistics.Standing;
+import org.junit.jupiter.api.Test;
+
+class CurveComparisonTest {
+  private static Cell cell(
+      String transform,
+      String step,
+      int keep,
+      double severity,
+      double bits,
+      double psnr,
+      Standing standing) {
+    String label = transform + " rows K" + keep + " step" + step;
+    return new Cell(
+        "gaussian",
+        "samples",
+        "snr-db",
+        severity,
+        40,
+        severity,
+        label,
+        transform,
+        "rows",
+        keep,
+        step,
+        2,
+        4,
+        psnr,
+        0.1,
+        0.5,
+        psnr,
+        psnr,
+        Double.NaN,
+        bits,
+        0,
+        40,
+        0,
+        Double.NaN,
+        standing,
+        0,
+        Map.of());
+  }
+
+  /** The curves of {@link BjontegaardDeltaTest}; rates in any unit give the same deltas. */
+  private static List<Cell> twoFamilies() {
+    List<Cell> cells = new ArrayList<>();
+    double[][] a = {{2, 27}, {4, 30}, {8, 33.2}, {16, 36}};
+    double[][] b = {{1.8, 27.4}, {3.5, 30.6}, {7.2, 33.9}, {15, 36.5}};
+    for (int i = 0; i < a.length; i++) {
+      cells.add(cell("pca", "8.0", 4 << i, 20, a[i][0], a[i][1], Standing.BELOW));
+      cells.add(cell("dct", "8.0", 4 << i, 20, b[i][0], b[i][1], Standing.BELOW));
+    }
+    cells.add(cell("mean", "16.0", -1, 20, 3, 30, Standing.BELOW));
+    return cells;
+  }
+
+  @Test
+  void familiesAreComparedWithTheFirst() {
+    List<CurveComparison> found = CurveComparison.of(twoFamilies());
+    assertThat(found).hasSize(1);
+    assertThat(found.get(0).reference()).isEqualTo("pca rows step8");
+    assertThat(found.get(0).family()).isEqualTo("dct rows step8");
+    assertThat(found.get(0).pchip().orElseThrow().psnrDb()).isCloseTo(1.095878951, within(1e-7));
+    assertThat(found.get(0).cubic().orElseThrow().psnrDb()).isCloseTo(1.099030975, within(1e-7));
+    assertThat(found.get(0).refusal()).isEmpty();
+  }
+
+  @Test
+  void stepsMakeAFamilyToo() {
+    List<Cell> cells = twoFamilies();
+    for (int i = 0; i < 3; i++) {
+      String step = Integer.toString(4 << i) + ".0";
+      cells.add(cell("wht", step, 8, 20, 12 - i, 34 - i, Standing.BELOW));
+    }
+    List<CurveComparison> found = CurveComparison.of(cells);
+    assertThat(found.stream().map(CurveComparison::family))
+        .containsExactly("dct rows step8", "wht rows K8");
+    assertThat(found.get(1).cubic()).isEmpty();
+    assertThat(found.get(1).pchip()).isPresent();
+  }
+
+  @Test
+  void aCurveThatFallsIsRefusedWithTheReason() {
+    List<Cell> cells = twoFamilies();
+    cells.add(cell("dct", "8.0", 64, 20, 30, 30, Standing.BELOW));
+    CurveComparison found = CurveComparison.of(cells).get(0);
+    assertThat(found.pchip()).isEmpty();
+    assertThat(found.refusal()).isEqualTo("dct rows step8: PSNR does not increase with rate");
+  }
+
+  @Test
+  void oneFamilyIsComparedWithNothing() {
+    assertThat(CurveComparison.of(twoFamilies().subList(0, 1))).isEmpty();
+    assertThat(CurveComparison.of(List.of())).isEmpty();
+  }
+
+  /** Only codecs that are best somewhere count. */
+  @Test
+  void leadersThatChangeOrderAreFound() {
+    List<Cell> cells = new ArrayList<>();
+    Measurements measured = new Measurements();
+    for (double snr : new double[] {20, 10}) {
+      double[] psnrs = snr == 20 ? new double[] {34, 32, 31} : new double[] {25, 27, 26};
+      String[] transforms = {"pca", "dct", "wht"};
+      for (int i = 0; i < psnrs.length; i++) {
+        boolean best = i == (snr == 20 ? 0 : 1);
+        Cell cell =
+            cell(
+                transforms[i],
+                "8.0",
+                4,
+                snr,
+                1,
+                psnrs[i],
+                best ? Standing.BEST : Standing.NOT_DISTINGUISHABLE);
+        cells.add(cell);
+        for (int picture = 0; picture < 3; picture++) {
+          measured.add(
+              Trials.of(cell.codec(), snr, "p" + picture, 0, psnrs[i] + 0.1 * picture * i, 1));
+        }
+      }
+    }
+    List<OrderChange> changes = OrderChange.of(cells, measured);
+    assertThat(changes).hasSize(1);
+    assertThat(changes.get(0).impairment()).isEqualTo("gaussian");
+    Crossover crossover = changes.get(0).crossover();
+    assertThat(crossover.below()).isEqualTo("dct rows K4 step8.0");
+    assertThat(crossover.above()).isEqualTo("pca rows K4 step8.0");
+    assertThat(crossover.at()).isBetween(15.0, 15.3);
+  }
+}
