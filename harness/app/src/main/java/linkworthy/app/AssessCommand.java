@@ -1,6 +1,5 @@
 package linkworthy.app;
 
-import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.List;
 import java.util.concurrent.Callable;
@@ -8,8 +7,8 @@ import linkworthy.codec.CodecFamilies;
 import linkworthy.codec.PluginFolder;
 import linkworthy.input.BadInput;
 import linkworthy.input.YamlNode;
-import linkworthy.results.FolderFiles;
 import linkworthy.results.ResultsFolder;
+import linkworthy.results.ResultsWriter;
 import linkworthy.study.Study;
 import linkworthy.study.StudyReader;
 import linkworthy.trial.Estimate;
@@ -112,10 +111,11 @@ final class AssessCommand implements Callable<Integer> {
     ResultsFolder stopped = ResultsFolder.openStopped(folder);
     if (stopped.isWhole()) {
       surroundings.out().println(folder + " is complete; there is nothing to go on with");
-      if (!Files.exists(folder.resolve(ResultsFolder.REPORT))) {
-        Path report = folder.resolve(ResultsFolder.REPORT);
-        FolderFiles.replace(report, Reports.html(ResultsFolder.open(folder)));
-        surroundings.out().println("report: " + report);
+      if (stopped.isUntidy()) {
+        try (ResultsWriter writer = stopped.tidy()) {
+          writer.writeReport(Reports.html(ResultsFolder.open(folder)));
+        }
+        surroundings.out().println("report: " + folder.resolve(ResultsFolder.REPORT));
       }
       return Main.DONE;
     }

@@ -148,6 +148,23 @@ public final class ResultsFolder {
     return ResultsWriter.resume(folder, plan, now, each);
   }
 
+  /**
+   * Whether a complete folder lacks its report or has files of a run that was killed at its end.
+   */
+  public boolean isUntidy() {
+    return !Files.exists(folder.resolve(REPORT)) || ResultsWriter.hasRemains(folder);
+  }
+
+  /**
+   * Holds a complete folder for its report to be written; what a killed run left is removed.
+   *
+   * @throws BadInput if another run holds the folder
+   * @throws linkworthy.input.Unavailable if it cannot be written
+   */
+  public ResultsWriter tidy() {
+    return ResultsWriter.complete(folder);
+  }
+
   static RunRecord readRun(Path folder) {
     Path file = folder.resolve(RunRecord.FILE);
     try {

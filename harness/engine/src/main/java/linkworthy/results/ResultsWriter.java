@@ -3,7 +3,6 @@ package linkworthy.results;
 import java.io.IOException;
 import java.nio.file.Files;
 import java.nio.file.Path;
-import java.util.ArrayList;
 import java.util.List;
 import java.util.Map;
 import java.util.function.Consumer;
@@ -203,7 +202,10 @@ public final class ResultsWriter implements AutoCloseable {
     }
     units = Math.min(rows.units(), times.units());
     run = begun.goesOn(now, (long) units * codecs);
-    removeUnfinished(plan.study());
+    removeUnfinished();
+    for (String model : StudyWriter.modelFiles(plan.study()).keySet()) {
+      removeUnfinished(model);
+    }
     write(RunRecord.FILE, run.toJson());
     trials = AppendedTable.reopen(table, trialsFile, upTo(units, rows, table, trialsFile, codecs));
     timings =
@@ -220,16 +222,35 @@ public final class ResultsWriter implements AutoCloseable {
         : WholeUnits.of(table, file, rowsOfUnit, units, (unit, rows, line) -> {}).bytes();
   }
 
-  private void removeUnfinished(Study study) {
-    List<String> names = new ArrayList<>(WRITTEN);
-    names.addAll(StudyWriter.modelFiles(study).keySet());
-    for (String name : names) {
-      Path file = folder.resolve(name + FolderFiles.UNFINISHED);
-      try {
-        Files.deleteIfExists(file);
-      } catch (IOException e) {
-        throw FolderFiles.unavailable("remove", file, e);
-      }
+  /** Holds a complete folder to write its report, and removes what a killed run left. */
+  static ResultsWriter complete(Path folder) {
+    ResultsWriter writer = new ResultsWriter(folder, FolderLock.take(folder));
+    try {
+      writer.removeUnfinished();
+      return writer;
+    } catch (RuntimeException e) {
+      writer.close();
+      throw e;
+    }
+  }
+
+  /** Whether a run that was killed at its very end left files behind. */
+  static boolean hasRemains(Path folder) {
+    return Files.exists(folder.resolve(FolderLock.FILE))
+        || WRITTEN.stream()
+            .anyMatch(name -> Files.exists(folder.resolve(name + FolderFiles.UNFINISHED)));
+  }
+
+  private void removeUnfinished() {
+    WRITTEN.forEach(this::removeUnfinished);
+  }
+
+  private void removeUnfinished(String name) {
+    Path file = folder.resolve(name + FolderFiles.UNFINISHED);
+    try {
+      Files.deleteIfExists(file);
+    } catch (IOException e) {
+      throw FolderFiles.unavailable("remove", file, e);
     }
   }
 
