@@ -4,8 +4,10 @@ import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.assertThatThrownBy;
 import static org.assertj.core.api.Assertions.within;
 
+import java.util.List;
 import linkworthy.input.BadInput;
 import linkworthy.input.YamlNode;
+import org.jspecify.annotations.Nullable;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
@@ -44,6 +46,42 @@ class NodeProfileTest {
     assertThat(node.millijoules(2_000_000, 0, 0)).isEqualTo(1);
     assertThat(node.airTimeMs(8 * 133)).isCloseTo(4.256, within(1e-12));
     assertThat(node.picturesPerBattery(10, 20)).isEqualTo(100_000 / 50.0);
+  }
+
+  /**
+   * IEEE 802.15.4-2003/2006, clause 6 (from memory; arithmetic recomputed): at 250 kbit/s the
+   * longest frame, 133 octets with preamble and length, lasts 4.256 ms, and 127 octets less 11 or
+   * 25 of overhead leave 116 or 102, so 4096 octets take 36 or 41 packets and 65536 take 565 or
+   * 643.
+   */
+  @ParameterizedTest
+  @CsvSource({"4096, 116, 36", "4096, 102, 41", "65536, 116, 565", "65536, 102, 643"})
+  void packetsOfAStandardRadio(int octets, int payload, int packets) {
+    Packetizer.Strip strip =
+        new Packetizer.Strip() {
+          private int left = octets;
+
+          @Override
+          public boolean isDone() {
+            return left == 0;
+          }
+
+          @Override
+          public Importance importance() {
+            return Importance.REST;
+          }
+
+          @Override
+          public byte @Nullable [] take(int room, boolean whole) {
+            int count = Math.min(room, left);
+            if (count == 0) {
+              return null;
+            }
+            left -= count;
+            return new byte[count];
+          }
+        };
+    assertThat(Packetizer.pack(new byte[0], List.of(strip), payload)).hasSize(packets);
   }
 
   @Test
