@@ -16,6 +16,21 @@ import picocli.CommandLine.Option;
     mixinStandardHelpOptions = true,
     footer = {"", "Examples:", "  linkworthy codecs", "  linkworthy codecs --plugins my-plugins"})
 final class CodecsCommand implements Runnable {
+  private static final String PROTECT =
+      """
+      Every entry also takes
+        protect: none | a group of keys | a list of groups for classes of their own; it goes before
+                 the protect of the study (none). A group has one or more of
+                 repeat:       copies of each packet in all, 1 to 16 (1)
+                 reed-solomon: {n, k, depth}: n - k parity packets for every k, symbols of a code
+                               word depth packets apart (none; depth 1)
+                 retransmit:   further tries for a packet that did not arrive, 0 to 255 (0)
+                 and may have
+                 ack-bytes:    length of an acknowledgement, with retransmit (5)
+                 only:         classes of packets: header, basis, first, rest (all four)
+      Sent, and counted: every copy, parity packet, further try and acknowledgement; with
+      reed-solomon 1, 4 or 5 bytes in front of each payload.""";
+
   private final Surroundings surroundings;
 
   @Option(
@@ -34,6 +49,7 @@ final class CodecsCommand implements Runnable {
       CodecFamilies families = CodecFamilies.installed().with(opened.families());
       List<String> help = families.all().stream().map(CodecFamily::help).toList();
       help.forEach(surroundings.out()::println);
+      surroundings.out().println(PROTECT);
     }
   }
 }

@@ -47,7 +47,7 @@ final class NoiseCommand {
           .println(
               String.format(
                   Locale.ROOT,
-                  "%-18s version %d  acts on %-18s  severity by %s",
+                  "%-20s version %d  acts on %-18s  severity by %s",
                   model.id(),
                   model.version(),
                   sites(model),
@@ -68,7 +68,11 @@ final class NoiseCommand {
     out.println("process:     " + model.process());
     out.println("does:        " + model.implementation().summary());
     out.println("acts on:     " + sites(model));
-    out.println("parameters:  " + model.parameters());
+    model
+        .implementation()
+        .settings()
+        .forEach((key, value) -> out.println("%-13s".formatted(key + ":") + setting(value)));
+    out.println("parameters:  " + parameters(model));
     out.println("severity by: " + String.join(", ", model.axes()));
     out.println("source:      " + model.source());
     out.println("notes:       " + model.notes());
@@ -160,6 +164,25 @@ final class NoiseCommand {
 
     @Option(names = "--pictures", paramLabel = "DIR", description = "Folder of pictures.")
     private @Nullable Path pictures;
+  }
+
+  /** A word, such as the id of a curve; of the content of a file how many lines it has. */
+  private static String setting(String text) {
+    long lines = text.lines().count();
+    return lines > 1 ? lines + " lines" : text.strip();
+  }
+
+  /** By name, as in files: those that are on or off as true or false. */
+  private static String parameters(NoiseModel model) {
+    return model.parameters().entrySet().stream()
+        .map(entry -> entry.getKey() + "=" + value(model, entry.getKey(), entry.getValue()))
+        .collect(Collectors.joining(", ", "{", "}"));
+  }
+
+  private static String value(NoiseModel model, String name, double value) {
+    return model.implementation().flags().contains(name)
+        ? String.valueOf(value == 1)
+        : String.valueOf(value);
   }
 
   private static String sites(NoiseModel model) {

@@ -118,7 +118,27 @@ class CommandsTest {
         .contains("id:          burst-loss\n", "mean-burst", "source: ")
         .containsPattern("fingerprint: [0-9a-f]{64}\n");
     assertThat(Program.run(folder, "codecs").out())
-        .contains("transform: mean | dct | ", "keep:", "step:");
+        .contains("transform: mean | dct | ", "keep:", "step:", "protect: none | ");
+  }
+
+  @Test
+  void aColumnOfTheListHoldsTheLongestId() {
+    assertThat(Program.run(folder, "noise", "list").out().lines().map(l -> l.indexOf(" version ")))
+        .isNotEmpty()
+        .containsOnly(20);
+  }
+
+  @Test
+  void aModelIsShownAsFilesWriteIt() {
+    assertThat(Program.run(folder, "noise", "show", "radio-bpsk").out())
+        .contains(
+            "curve:       bpsk\n",
+            "parameters:  {errors-bad=0.5, frame-check=true, mean-burst=1.0}\n");
+    assertThat(Program.run(folder, "noise", "show", "stripes").out())
+        .contains("parameters:  {columns=false}\n")
+        .doesNotContain("curve:");
+    assertThat(Program.run(folder, "noise", "show", "trace").out())
+        .contains("trace:       2000 lines\n");
   }
 
   @Test

@@ -2,6 +2,7 @@ package linkworthy.app;
 
 import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.assertThatCode;
+import static org.assertj.core.api.Assertions.assertThatExceptionOfType;
 
 import java.io.IOException;
 import java.io.PrintWriter;
@@ -14,6 +15,11 @@ import java.util.List;
 import java.util.regex.Matcher;
 import java.util.regex.Pattern;
 import java.util.stream.Stream;
+import linkworthy.codec.CodecFamilies;
+import linkworthy.input.BadInput;
+import linkworthy.input.YamlNode;
+import linkworthy.noise.NoiseLibrary;
+import linkworthy.noise.NoiseModel;
 import linkworthy.results.CellsCsv;
 import linkworthy.results.NodesCsv;
 import linkworthy.results.TimingsCsv;
@@ -110,9 +116,11 @@ class HandbookTest {
         "README.md",
         "DEVELOPERS.md",
         "results/README.md",
+        "harness/handbook/README.md",
         "harness/handbook/decisions.md",
         "harness/handbook/methods.md",
-        "harness/handbook/results.md"
+        "harness/handbook/results.md",
+        "harness/handbook/studies.md"
       })
   void everyLinkLeadsToAFile(String file) throws IOException {
     Matcher link = Pattern.compile("\\]\\(([^)#:]+)(#[^)]*)?\\)").matcher(text(file));
@@ -135,5 +143,64 @@ class HandbookTest {
     columns.addAll(NodesCsv.columns());
     columns.addAll(Study.COSTS);
     assertThat(columns).allMatch(column -> page.contains("`" + column + "`"));
+  }
+
+  /**
+   * Studies with an unknown key, one for each group of keys; the refusal lists all that is known.
+   */
+  private static List<String> misspelt() {
+    String study = "name: a\nimpairments: [{noise: gaussian, snr-db: 20}]\n";
+    String codecs = "codecs: [{transform: dct, keep: 8}]\n";
+    List<String> all = new ArrayList<>();
+    all.add(study + codecs + "qqqqqq: 1\n");
+    for (String group :
+        List.of(
+            "pictures: {qqqqqq: 1}",
+            "link: {qqqqqq: 1}",
+            "node: {qqqqqq: 1}",
+            "node: {profile: {qqqqqq: 1}}",
+            "protect: {qqqqqq: 1}",
+            "protect: {reed-solomon: {qqqqqq: 1}}")) {
+      all.add(study + codecs + group + "\n");
+    }
+    for (String codec :
+        List.of("transform: dct", "jpeg: baseline", "wavelet: cdf-9-7", "command: {}")) {
+      all.add(study + "codecs: [{" + codec + ", qqqqqq: 1}]\n");
+    }
+    all.add(study + "codecs: [{command: {qqqqqq: 1}}]\n");
+    for (NoiseModel model : NoiseLibrary.shipped()) {
+      all.add("name: a\nimpairments: [{noise: " + model.id() + ", qqqqqq: 1}]\n" + codecs);
+    }
+    return all;
+  }
+
+  @ParameterizedTest
+  @MethodSource("misspelt")
+  void theStudiesPageNamesEveryKey(String study) throws IOException {
+    String page = text("harness/handbook/studies.md");
+    String refusal =
+        assertThatExceptionOfType(BadInput.class)
+            .isThrownBy(() -> StudyReader.read(YamlNode.parse("a.yaml", study), Path.of("")))
+            .actual()
+            .getMessage();
+    assertThat(refusal).contains("unknown key 'qqqqqq'");
+    List<String> keys = List.of(refusal.split("accepted: ", 2)[1].split(", "));
+    assertThat(keys).isNotEmpty().allMatch(key -> page.contains("`" + key + "`"));
+  }
+
+  @Test
+  void theStudiesPageKnowsEveryFamily() throws IOException {
+    String page = text("harness/handbook/studies.md");
+    assertThat(CodecFamilies.installed().all())
+        .allMatch(family -> page.contains("\n### " + family.id() + "\n"));
+  }
+
+  @Test
+  void theExampleOfTheStudiesPagePlans(@TempDir Path folder) throws IOException {
+    Matcher block = BLOCK.matcher(text("harness/handbook/studies.md"));
+    assertThat(block.find()).isTrue();
+    Path file = Files.writeString(folder.resolve("study.yaml"), block.group(2));
+    // 2 pictures, 6 codecs; clean once and 5 severities 3 times
+    assertThat(Plan.of(StudyReader.read(file)).trials()).isEqualTo(2 * 6 * (1 + 5 * 3));
   }
 }
