@@ -116,11 +116,10 @@ record LinePlot(
 
     List<Tick> horizontal() {
       List<Tick> ticks = new ArrayList<>();
+      grid.clean().ifPresent(c -> ticks.add(tick(CLEAN_AT, "clean")));
       Axis x = x();
       x.ticks().forEach(v -> ticks.add(tick(x.at(v), Numbers.typed(v))));
-      List<Tick> apart = spaced(ticks);
-      grid.clean().ifPresent(c -> apart.add(0, tick(CLEAN_AT, "clean")));
-      return apart;
+      return spaced(ticks);
     }
 
     List<Tick> top() {

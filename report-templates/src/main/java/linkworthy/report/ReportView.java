@@ -173,7 +173,7 @@ record ReportView(
         Numbers.db(figure.comparison().behindBestDb()),
         (standing.mark() + " " + standing.id().replace('-', ' ')).strip(),
         Numbers.index(quality.ssimMean()),
-        front.contains(figure.codec()));
+        front.stream().anyMatch(codec -> codec.label().equals(figure.codec().label())));
   }
 
   private static List<LossTable> lossTables(FigureGrid grid, List<FigureGrid.Noise> noises) {

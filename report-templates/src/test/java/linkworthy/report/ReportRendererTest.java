@@ -154,6 +154,42 @@ class ReportRendererTest {
         .containsExactly("\u25ce no", "yes", "\u25ce no");
   }
 
+  /** A codec that aims at a rate has other parameters in force under noise than without. */
+  @Test
+  void parametersInForceDoNotMakeAnotherCodec() {
+    CodecColumn quiet = new CodecColumn("jpeg 1bpp", "jpeg", "blocks8", "40", "");
+    CodecColumn noisy = new CodecColumn("jpeg 1bpp", "jpeg", "blocks8", "34", "");
+    RenderedPage shown =
+        RenderedPage.of(
+            SamplePages.page(
+                List.of(
+                    SamplePages.bare(Condition.clean(), quiet, 35, 1),
+                    SamplePages.bare(GAUSSIAN, noisy, 30, 1))));
+    assertThat(shown.texts("//section[@id='rate']//tbody/tr/td[last()]"))
+        .containsExactly("\u25ce no");
+  }
+
+  /** The place of "clean" is left of an axis that starts at a power of ten. */
+  @Test
+  void noTickLabelTouchesTheOneOfClean() {
+    CodecColumn codec = SamplePages.codec("dct", "rows", "K4");
+    List<Figure> figures = new ArrayList<>();
+    figures.add(SamplePages.bare(Condition.clean(), codec, 35, 1));
+    // variances 0.00998, 0.24 and 2.4 of a signal power of 2400
+    for (double snr : List.of(53.81, 40.0, 30.0)) {
+      figures.add(
+          SamplePages.bare(
+              SamplePages.condition("gaussian", "samples", "snr-db", snr, snr), codec, 30, 1));
+    }
+    RenderedPage shown = RenderedPage.of(SamplePages.page(figures));
+    assertThat(shown.texts("//section[@class='noise']//*[local-name()='svg']//*[.='clean']"))
+        .isNotEmpty();
+    assertThat(shown.texts("//section[@class='noise']//*[local-name()='svg']//*[.='0.01']"))
+        .isEmpty();
+    assertThat(shown.texts("//section[@class='noise']//*[local-name()='svg']//*[.='0.1']"))
+        .isNotEmpty();
+  }
+
   @Test
   void textIsEscapedWhereverItComesFrom() {
     CodecColumn codec = new CodecColumn(HOSTILE, HOSTILE, HOSTILE, HOSTILE, HOSTILE);

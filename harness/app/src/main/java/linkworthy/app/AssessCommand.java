@@ -22,10 +22,7 @@ import picocli.CommandLine.Parameters;
 /** Runs a study. */
 @Command(
     name = "assess",
-    description = {
-      "Run a study: take its pictures through its noise and its codecs, write a results folder",
-      "with a report, and print the summary."
-    },
+    description = {"Run a study: write a results folder with a report, and print the summary."},
     mixinStandardHelpOptions = true,
     footer = {
       "",

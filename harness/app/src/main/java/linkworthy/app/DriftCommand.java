@@ -21,8 +21,9 @@ import picocli.CommandLine.Parameters;
 @Command(
     name = "drift",
     description = {
-      "Compare two results folders cell by cell: what moved, what stayed the same, what is",
-      "undecided, and what changed in between. With --over, show all runs below a folder.",
+      "Compare two results folders cell by cell, or show the history of a study.",
+      "What moved, what stayed the same, what is undecided, and what changed in between. With",
+      "--over, all runs below a folder.",
       "Exit code 1 only if a cell moved for the worse beyond the tolerance; with --over, in the",
       "newest run against the one before."
     },

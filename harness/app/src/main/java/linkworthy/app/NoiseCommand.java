@@ -82,8 +82,9 @@ final class NoiseCommand {
   @Command(
       name = "fit",
       description = {
-        "Fit a model to measurements: burst losses to a column of 0 (delivered) and 1 (lost), one",
-        "packet a line; or with --pictures the noise of a sensor to a folder of its pictures."
+        "Fit a model to measurements.",
+        "Burst losses to a column of 0 (delivered) and 1 (lost), one packet a line; or with",
+        "--pictures the noise of a sensor to a folder of its pictures."
       },
       mixinStandardHelpOptions = true,
       footer = {

@@ -17,8 +17,9 @@ import picocli.CommandLine.Parameters;
 @Command(
     name = "recheck",
     description = {
-      "Repeat a random sample of the recorded trials and compare bit for bit; check pictures, noise",
-      "models, study and cells; say the chance that altered rows would have been missed."
+      "Repeat a random sample of the recorded trials and compare bit for bit.",
+      "Checks pictures, noise models, study and cells as well, and says the chance that altered",
+      "rows would have been missed."
     },
     mixinStandardHelpOptions = true,
     footer = {

@@ -24,8 +24,8 @@ import picocli.CommandLine.Parameters;
 @Command(
     name = "replay",
     description = {
-      "Repeat one recorded trial, show its pictures, and say whether its figures are those of the",
-      "record bit for bit. Writes clean.png, noisy.png, decoded.png, error.png and figures.json."
+      "Repeat one recorded trial, and say whether its figures are the recorded ones.",
+      "They must agree bit for bit. Writes clean.png, noisy.png, decoded.png, error.png and figures.json."
     },
     mixinStandardHelpOptions = true,
     footer = {

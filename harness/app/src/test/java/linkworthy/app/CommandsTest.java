@@ -192,6 +192,24 @@ class CommandsTest {
     }
   }
 
+  /** The list of commands shows the first line of each description alone. */
+  @Test
+  void everyCommandIsListedWithAWholeSentence() {
+    PrintWriter nowhere = new PrintWriter(Writer.nullWriter());
+    Surroundings surroundings = new Surroundings(nowhere, nowhere, false, Program.CLOCK, folder);
+    CommandLine top = new CommandLine(new Linkworthy(), new Commands(surroundings));
+    assertThat(top.getSubcommands()).isNotEmpty();
+    for (CommandLine group : List.of(top, top.getSubcommands().get("noise"))) {
+      group
+          .getSubcommands()
+          .forEach(
+              (name, sub) ->
+                  assertThat(sub.getCommandSpec().usageMessage().description()[0])
+                      .describedAs(name)
+                      .endsWith("."));
+    }
+  }
+
   private static void collect(CommandLine command, List<String> path, List<List<String>> paths) {
     paths.add(path);
     command

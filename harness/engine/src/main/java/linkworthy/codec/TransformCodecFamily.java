@@ -78,6 +78,14 @@ public final class TransformCodecFamily implements CodecFamily {
           .get("label")
           .refuse("names several codecs; accepted: one keep and one step with a label");
     }
+    if (grid.isPresent() && link.payloadBytes() < Link.MIN_PAYLOAD + TiledCodec.OVERHEAD_BYTES) {
+      throw entry.refuse(
+          "numbers its tiles in each packet, and of payload-bytes only "
+              + link.payloadBytes()
+              + " are left for it; accepted: at least "
+              + (Link.MIN_PAYLOAD + TiledCodec.OVERHEAD_BYTES)
+              + ", so a larger payload-bytes or no tiles");
+    }
     List<Codec> codecs = new ArrayList<>();
     for (Keep keep : keeps) {
       for (Quantization quantization : quantizations) {

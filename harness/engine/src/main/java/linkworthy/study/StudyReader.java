@@ -243,8 +243,8 @@ public final class StudyReader {
               + hop.site().id()
               + " at "
               + hop.severities().size()
-              + " severities; accepted:"
-              + " a model that acts on samples, at one severity");
+              + (hop.severities().size() == 1 ? " severity" : " severities")
+              + "; accepted: a model that acts on samples, at one severity");
     }
     return hop;
   }
@@ -258,6 +258,17 @@ public final class StudyReader {
     Link free = pictures.hasAllPlanes() ? link.less(1) : link;
     for (YamlNode entry : root.get("codecs").items()) {
       Protection protection = entry.find(PROTECT).map(protections::read).orElse(usual);
+      int left = free.payloadBytes() - protection.overheadBytes();
+      if (left < Link.MIN_PAYLOAD) {
+        throw entry.refuse(
+            "has only "
+                + left
+                + " bytes of payload-bytes left beside protection and the number of the plane;"
+                + " accepted: at least "
+                + Link.MIN_PAYLOAD
+                + ", so payload-bytes of at least "
+                + (link.payloadBytes() + Link.MIN_PAYLOAD - left));
+      }
       boolean named = entry.find("label").isPresent();
       for (Codec codec :
           reader.read(entry.without(PROTECT), free.less(protection.overheadBytes()))) {

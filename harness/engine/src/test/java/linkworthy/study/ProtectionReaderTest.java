@@ -233,4 +233,32 @@ class ProtectionReaderTest {
         .hasMessageStartingWith("study.yaml, line 2: 'protect' takes up to 7 bytes")
         .hasMessageContaining("at least 39");
   }
+
+  /** One byte each for the number of a tile and of a plane, beside the 32 of the codec. */
+  @Test
+  void tilesAndPlanesNeedRoomBesideProtection() {
+    String tiles =
+        """
+        name: yard
+        link: {payload-bytes: 32}
+        impairments: [{noise: gaussian, variance: 100}]
+        codecs:
+          - {transform: pca, over: tiles, grid: 2x2, keep: 2}
+        """;
+    assertThatThrownBy(() -> StudyReaderTest.read(tiles))
+        .isInstanceOf(BadInput.class)
+        .hasMessageStartingWith("study.yaml, line 5: 'codecs[0]' numbers its tiles")
+        .hasMessageContaining("only 32 are left")
+        .hasMessageContaining("at least 33");
+    assertThat(StudyReaderTest.read(tiles.replace("32", "33")).codecs()).hasSize(1);
+    String planes =
+        "link: {payload-bytes: 39}\npictures: {planes: all}\n"
+            + "protect: {reed-solomon: {n: 12, k: 8}}\n"
+            + StudyReaderTest.SHORT;
+    assertThatThrownBy(() -> StudyReaderTest.read(planes))
+        .isInstanceOf(BadInput.class)
+        .hasMessageContaining("has only 31 bytes of payload-bytes left")
+        .hasMessageContaining("payload-bytes of at least 40");
+    assertThat(StudyReaderTest.read(planes.replace("39", "40")).codecs()).hasSize(1);
+  }
 }
