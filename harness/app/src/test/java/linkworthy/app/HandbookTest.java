@@ -16,6 +16,7 @@ import java.util.regex.Pattern;
 import java.util.stream.Stream;
 import linkworthy.results.CellsCsv;
 import linkworthy.results.NodesCsv;
+import linkworthy.results.PredictionsCsv;
 import linkworthy.results.TimingsCsv;
 import linkworthy.results.TrialsCsv;
 import linkworthy.study.Study;
@@ -133,6 +134,7 @@ class HandbookTest {
     columns.addAll(CellsCsv.columns());
     columns.addAll(TimingsCsv.columns());
     columns.addAll(NodesCsv.columns());
+    columns.addAll(PredictionsCsv.columns());
     columns.addAll(Study.COSTS);
     assertThat(columns).allMatch(column -> page.contains("`" + column + "`"));
   }
