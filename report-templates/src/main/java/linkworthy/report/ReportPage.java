@@ -14,6 +14,7 @@ import org.jspecify.annotations.Nullable;
  *     0 and below 1
  * @param costs of the nodes, or null where none were asked for
  * @param comparisons what was derived from the figures, or {@link Comparisons#NONE}
+ * @param predictions by formula, beside the measured figures; may be empty
  */
 public record ReportPage(
     String title,
@@ -24,7 +25,8 @@ public record ReportPage(
     List<PictureCredit> pictures,
     Provenance provenance,
     @Nullable Costs costs,
-    Comparisons comparisons) {
+    Comparisons comparisons,
+    List<Predicted> predictions) {
   /**
    * @throws IllegalArgumentException if the confidence level is out of range
    */
@@ -35,9 +37,34 @@ public record ReportPage(
     }
     figures = List.copyOf(figures);
     pictures = List.copyOf(pictures);
+    predictions = List.copyOf(predictions);
   }
 
-  /** A page without costs and comparisons. */
+  /** A page without predictions. */
+  public ReportPage(
+      String title,
+      String question,
+      Answer answer,
+      List<Figure> figures,
+      double confidenceLevel,
+      List<PictureCredit> pictures,
+      Provenance provenance,
+      @Nullable Costs costs,
+      Comparisons comparisons) {
+    this(
+        title,
+        question,
+        answer,
+        figures,
+        confidenceLevel,
+        pictures,
+        provenance,
+        costs,
+        comparisons,
+        List.of());
+  }
+
+  /** A page without costs, comparisons and predictions. */
   public ReportPage(
       String title,
       String question,

@@ -22,7 +22,8 @@ record ReportView(
     List<SeverityRow> severities,
     List<Fact> provenance,
     @Nullable CostView costs,
-    ComparisonView comparisons) {
+    ComparisonView comparisons,
+    PredictionView predictions) {
 
   /** An impairment with its tables and its panels. */
   record Section(String id, String title, List<MatrixTable> tables, List<LinePlot> plots) {}
@@ -86,7 +87,8 @@ record ReportView(
         severities(noises),
         provenance(page.provenance()),
         page.costs() == null ? null : CostView.of(page.costs()),
-        ComparisonView.of(page.comparisons()));
+        ComparisonView.of(page.comparisons()),
+        PredictionView.of(page.predictions()));
   }
 
   private static String summary(ReportPage page, FigureGrid grid) {

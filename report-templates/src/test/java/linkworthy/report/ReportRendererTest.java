@@ -254,6 +254,42 @@ class ReportRendererTest {
         .hasSize(6);
   }
 
+  /** Gaps against the larger of 0.1 dB and the noise interval; without an interval 0.1 dB. */
+  @Test
+  void predictionsStandBesideMeasurements() {
+    ReportPage plain = SamplePages.full();
+    assertThat(RenderedPage.of(plain).texts("//section[@id='predictions']")).isEmpty();
+    RenderedPage shown =
+        RenderedPage.of(
+            new ReportPage(
+                plain.title(),
+                plain.question(),
+                plain.answer(),
+                plain.figures(),
+                plain.confidenceLevel(),
+                plain.pictures(),
+                plain.provenance(),
+                null,
+                Comparisons.NONE,
+                List.of(
+                    new Predicted(GAUSSIAN, "a", 30, 30.09, 0.01, ""),
+                    new Predicted(GAUSSIAN, "b", 30, 30.5, 0.6, ""),
+                    new Predicted(GAUSSIAN, "c", 30, 30.5, NaN, ""),
+                    new Predicted(GAUSSIAN, "d", 30, 29.5, 0.2, ""),
+                    new Predicted(GAUSSIAN, "e", NaN, 30, 0.2, HOSTILE))));
+    assertThat(shown.texts("(//section[@id='predictions']//table)[1]/tbody/tr/td[last()]"))
+        .containsExactly(
+            "as predicted",
+            "as predicted",
+            "finding: measured is better than predicted",
+            "finding: measured is worse than predicted");
+    assertThat(shown.texts("(//section[@id='predictions']//table)[1]/tbody/tr/td[5]"))
+        .containsExactly("0.09", "0.50", "0.50", "-0.50");
+    assertThat(shown.text("//section[@id='predictions']/p")).contains("2 gaps are larger", "of 4");
+    assertThat(shown.texts("(//section[@id='predictions']//table)[2]/tbody/tr/td"))
+        .containsExactly("e");
+  }
+
   @Test
   void onlyWebAddressesBecomeLinks() {
     for (String source : List.of("javascript:alert(1)", "data:text/html,x", "own picture")) {

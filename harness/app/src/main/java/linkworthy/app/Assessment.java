@@ -12,6 +12,7 @@ import linkworthy.statistics.Cells;
 import linkworthy.trial.LocalRunner;
 import linkworthy.trial.NodeTable;
 import linkworthy.trial.Plan;
+import linkworthy.trial.PredictionTable;
 
 /** One run of a plan into a results folder. */
 final class Assessment {
@@ -99,6 +100,7 @@ final class Assessment {
         return Main.ENVIRONMENT;
       }
       writer.writeNodes(NodeTable.of(plan));
+      writer.writePredictions(PredictionTable.of(plan));
       writer.finish(cells.toList(), ended);
       ResultsFolder results = ResultsFolder.open(folder);
       writer.writeReport(Reports.html(results));

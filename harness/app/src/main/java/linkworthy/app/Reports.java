@@ -44,7 +44,8 @@ final class Reports {
                 run.pictures().stream().map(Reports::credit).toList(),
                 provenance(results),
                 costs(results),
-                ReportComparisons.of(results)));
+                ReportComparisons.of(results),
+                ReportPredictions.of(results)));
   }
 
   /** What the nodes bear, from the clean cells; null where the study names no node. */

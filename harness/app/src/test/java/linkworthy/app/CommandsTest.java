@@ -51,6 +51,7 @@ class CommandsTest {
           .containsExactly(
               "",
               "cells.csv",
+              "predictions.csv",
               "report.html",
               "run.json",
               "study.yaml",
@@ -59,7 +60,8 @@ class CommandsTest {
       Outcome again =
           Program.run(folder, "assess", run + "/study.yaml", "--out", folder + "/again");
       assertThat(again.code()).isZero();
-      for (String file : List.of("trials.csv", "cells.csv", "study.yaml", "report.html")) {
+      for (String file :
+          List.of("trials.csv", "cells.csv", "predictions.csv", "study.yaml", "report.html")) {
         assertThat(folder.resolve("again").resolve(file))
             .hasSameTextualContentAs(run.resolve(file));
       }

@@ -22,6 +22,7 @@ import linkworthy.noise.NoiseLibrary;
 import linkworthy.noise.NoiseModel;
 import linkworthy.results.CellsCsv;
 import linkworthy.results.NodesCsv;
+import linkworthy.results.PredictionsCsv;
 import linkworthy.results.TimingsCsv;
 import linkworthy.results.TrialsCsv;
 import linkworthy.study.Study;
@@ -141,6 +142,7 @@ class HandbookTest {
     columns.addAll(CellsCsv.columns());
     columns.addAll(TimingsCsv.columns());
     columns.addAll(NodesCsv.columns());
+    columns.addAll(PredictionsCsv.columns());
     columns.addAll(Study.COSTS);
     assertThat(columns).allMatch(column -> page.contains("`" + column + "`"));
   }

@@ -60,6 +60,11 @@ final class Analysis {
     return centred.length;
   }
 
+  /** Number of observations n. */
+  int observations() {
+    return centred[0].length;
+  }
+
   /** Components there are: d, or fewer where a sent basis needs fewer to be exact. */
   int components() {
     return coefficients.length;
@@ -123,6 +128,23 @@ final class Analysis {
       }
     }
     return total / centred[0].length;
+  }
+
+  /**
+   * Energy of one observation about the means that travel, less that of its first {@code kept}
+   * coefficients; mean over the observations, grey levels squared.
+   */
+  double energyBeyond(int kept) {
+    double energy = totalVariance();
+    for (double rest : meanRests) {
+      energy += rest * rest;
+    }
+    for (int k = 0; k < kept; k++) {
+      for (double value : component(k)) {
+        energy -= value * value / observations();
+      }
+    }
+    return Math.max(0, energy);
   }
 
   /**

@@ -160,22 +160,41 @@ final class TransformCodec implements Codec {
 
   @Override
   public Encoding encode(Picture picture, Memo memo) {
-    Analysis analysis =
-        memo.once(
-            new AnalysisKey(arrangement, basis.id()),
-            Analysis.class,
-            () -> Analysis.of(picture, arrangement, basis));
-    Symbols symbols =
-        memo.once(
-            new SymbolsKey(arrangement, basis.id(), quantization),
-            Symbols.class,
-            () -> new Symbols(analysis, quantization));
+    Analysis analysis = analysis(picture, memo);
+    Symbols symbols = symbols(picture, memo);
     PictureShape shape = PictureShape.of(picture);
     int kept =
         keep instanceof Keep.Rate rate
             ? largestWithin(rate.bitsPerPixel() * picture.size(), shape, analysis, symbols, memo)
             : analysis.kept(keep);
     return new Encoding(pack(shape, analysis, symbols, kept), kept);
+  }
+
+  Analysis analysis(Picture picture, Memo memo) {
+    return memo.once(
+        new AnalysisKey(arrangement, basis.id()),
+        Analysis.class,
+        () -> Analysis.of(picture, arrangement, basis));
+  }
+
+  Symbols symbols(Picture picture, Memo memo) {
+    Analysis analysis = analysis(picture, memo);
+    return memo.once(
+        new SymbolsKey(arrangement, basis.id(), quantization),
+        Symbols.class,
+        () -> new Symbols(analysis, quantization));
+  }
+
+  Basis basis() {
+    return basis;
+  }
+
+  Keep keep() {
+    return keep;
+  }
+
+  Quantization quantization() {
+    return quantization;
   }
 
   /** The largest K whose sent bits stay within a budget; 0 where none does. */
@@ -255,6 +274,12 @@ final class TransformCodec implements Codec {
 
   @Override
   public Decoding decode(PictureShape shape, List<byte[]> arrived) {
+    Received received = received(shape, arrived);
+    return new Decoding(reconstruct(shape, received), received.completeness());
+  }
+
+  /** What a decoder gathers of these packets. */
+  Received received(PictureShape shape, List<byte[]> arrived) {
     int d = arrangement.variables(shape);
     int most = keep instanceof Keep.First first ? Math.min(d, first.components()) : d;
     int[] lengths = new int[most];
@@ -268,7 +293,7 @@ final class TransformCodec implements Codec {
         received.addUnits(in, announced);
       }
     }
-    return new Decoding(reconstruct(shape, received), received.completeness());
+    return received;
   }
 
   private Picture reconstruct(PictureShape shape, Received received) {

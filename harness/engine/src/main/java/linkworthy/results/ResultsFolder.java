@@ -19,6 +19,7 @@ import linkworthy.study.StudyReader;
 import linkworthy.study.StudyWriter;
 import linkworthy.trial.NodeShare;
 import linkworthy.trial.Plan;
+import linkworthy.trial.Prediction;
 import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 
@@ -286,6 +287,16 @@ public final class ResultsFolder {
   public List<NodeShare> nodes() {
     Path file = folder.resolve(NodesCsv.FILE);
     return Files.exists(file) ? NodesCsv.read(file) : List.of();
+  }
+
+  /**
+   * What formulas say of the quality under noise; empty where they say nothing.
+   *
+   * @throws BadInput if the file is no table of predictions
+   */
+  public List<Prediction> predictions() {
+    Path file = folder.resolve(PredictionsCsv.FILE);
+    return Files.exists(file) ? PredictionsCsv.read(file) : List.of();
   }
 
   /**

@@ -13,6 +13,7 @@ import linkworthy.study.Study;
 import linkworthy.study.StudyWriter;
 import linkworthy.trial.NodeShare;
 import linkworthy.trial.Plan;
+import linkworthy.trial.Prediction;
 import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 import org.jspecify.annotations.Nullable;
@@ -29,6 +30,7 @@ public final class ResultsWriter implements AutoCloseable {
           ResultsFolder.REPORT,
           CellsCsv.FILE,
           NodesCsv.FILE,
+          PredictionsCsv.FILE,
           TimingsCsv.FILE,
           TrialsCsv.FILE,
           ResultsFolder.STUDY,
@@ -313,6 +315,17 @@ public final class ResultsWriter implements AutoCloseable {
   public void writeNodes(List<NodeShare> shares) {
     if (!shares.isEmpty()) {
       write(NodesCsv.FILE, NodesCsv.text(shares));
+    }
+  }
+
+  /**
+   * Writes the predictions, if anything is predicted.
+   *
+   * @throws linkworthy.input.Unavailable if the folder cannot be written
+   */
+  public void writePredictions(List<Prediction> predictions) {
+    if (predictions.stream().anyMatch(Prediction::isMade)) {
+      write(PredictionsCsv.FILE, PredictionsCsv.text(predictions));
     }
   }
 

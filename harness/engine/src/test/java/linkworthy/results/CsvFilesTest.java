@@ -19,6 +19,7 @@ import linkworthy.input.BadInput;
 import linkworthy.quality.QualityMeasure;
 import linkworthy.quality.QualityMeasures;
 import linkworthy.trial.NodeShare;
+import linkworthy.trial.Prediction;
 import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 import org.junit.jupiter.api.Test;
@@ -158,6 +159,21 @@ class CsvFilesTest {
     assertThat(CellsCsv.read(file).get(1).furtherMeans())
         .containsExactly(entry("spread_db", -3.0), entry("blur", Double.NaN));
     assertThat(CellsCsv.text(CellsCsv.read(file))).isEqualTo(cells);
+  }
+
+  @Test
+  void predictionsReadBack() throws IOException {
+    List<Prediction> predictions =
+        List.of(
+            new Prediction("gaussian", "samples", "snr-db", 20, "dct, K16", 31.25, ""),
+            new Prediction(
+                "loss", "packets", "loss-rate", 0.1, "pca", Double.NaN, "its basis is sent"));
+    Path file = folder.resolve(PredictionsCsv.FILE);
+    Files.writeString(file, PredictionsCsv.text(predictions));
+    assertThat(PredictionsCsv.read(file)).isEqualTo(predictions);
+    assertThat(Files.readString(file))
+        .startsWith(String.join(",", PredictionsCsv.columns()) + "\n")
+        .contains("gaussian,samples,snr-db,20.0,\"dct, K16\",31.25,\n");
   }
 
   @Test
