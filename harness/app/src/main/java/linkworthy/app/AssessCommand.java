@@ -178,19 +178,22 @@ final class AssessCommand implements Callable<Integer> {
 
   private void printEstimate(Plan plan) {
     Estimate estimate = Estimate.of(plan, threads);
+    String upTo = plan.study().earlyStop() == null ? "" : Progress.UP_TO;
     var to = surroundings.out();
     to.println("study:    " + plan.study().name());
     to.println("pictures: " + plan.pictures().size());
     to.println("codecs:   " + plan.study().codecs().size());
-    to.println("units:    " + plan.units() + " (picture, impairment, severity, replicate)");
-    to.println("trials:   " + plan.trials());
+    to.println("units:    " + upTo + plan.units() + " (picture, impairment, severity, replicate)");
+    to.println("trials:   " + upTo + plan.trials());
     to.println(
-        "time:     about "
+        "time:     "
+            + upTo
+            + "about "
             + Progress.duration(Math.round(estimate.seconds()))
             + " on "
             + threads
             + " threads (a rough figure, for a processor of about 3 GHz)");
     to.println("memory:   about " + Estimate.mebibytes(estimate.memoryBytes()) + " MiB");
-    to.println("disk:     about " + Estimate.mebibytes(estimate.diskBytes()) + " MiB");
+    to.println("disk:     " + upTo + "about " + Estimate.mebibytes(estimate.diskBytes()) + " MiB");
   }
 }

@@ -9,6 +9,7 @@ import linkworthy.results.ResultsFolder;
 import linkworthy.results.ResultsWriter;
 import linkworthy.results.RunRecord;
 import linkworthy.statistics.Cells;
+import linkworthy.trial.Course;
 import linkworthy.trial.LocalRunner;
 import linkworthy.trial.NodeTable;
 import linkworthy.trial.Plan;
@@ -78,15 +79,16 @@ final class Assessment {
 
   private int run(LocalRunner runner, Mishaps mishaps) {
     Cells cells = new Cells();
-    try (ResultsWriter writer = open(cells)) {
+    Course course = new Course(plan);
+    try (ResultsWriter writer = open(cells, course)) {
       int first = writer.unitsAtStart();
       if (first > 0 && !quiet) {
         sayWhatIsKept(first);
       }
-      int units = first + runUnits(runner, first, mishaps, writer, cells);
-      RunRecord ended =
-          writer.run().end((long) units * plan.study().codecs().size(), surroundings.clock());
-      if (units < plan.units()) {
+      int units = first + runUnits(runner, course, mishaps, writer, cells);
+      long done = (long) units * plan.study().codecs().size();
+      if (!course.isAtEnd()) {
+        RunRecord ended = writer.run().end(done, surroundings.clock());
         writer.stop(ended);
         surroundings
             .err()
@@ -94,6 +96,7 @@ final class Assessment {
                 "linkworthy: stopped after "
                     + ended.trialsDone()
                     + " of "
+                    + upTo()
                     + ended.trialsPlanned()
                     + " trials; go on with: "
                     + goOn);
@@ -101,7 +104,7 @@ final class Assessment {
       }
       writer.writeNodes(NodeTable.of(plan));
       writer.writePredictions(PredictionTable.of(plan));
-      writer.finish(cells.toList(), ended);
+      writer.finish(cells.toList(), writer.run().complete(done, surroundings.clock()));
       ResultsFolder results = ResultsFolder.open(folder);
       writer.writeReport(Reports.html(results));
       if (!quiet) {
@@ -111,7 +114,12 @@ final class Assessment {
     }
   }
 
-  private ResultsWriter open(Cells cells) {
+  /** What stands before a number of trials that may turn out to be smaller. */
+  private String upTo() {
+    return plan.study().earlyStop() == null ? "" : Progress.UP_TO;
+  }
+
+  private ResultsWriter open(Cells cells, Course course) {
     RunRecord now =
         RunRecord.begin(
                 plan.study(),
@@ -122,7 +130,14 @@ final class Assessment {
                 surroundings.clock())
             .withPlugins(plugins);
     if (start == Start.RESUME) {
-      return ResultsFolder.resume(folder, plan, now, cells::add);
+      return ResultsFolder.resume(
+          folder,
+          plan,
+          now,
+          trial -> {
+            cells.add(trial);
+            course.add(trial);
+          });
     }
     ResultsWriter writer = ResultsFolder.create(folder, start == Start.OVERWRITE);
     try {
@@ -141,16 +156,17 @@ final class Assessment {
             "linkworthy: going on after "
                 + (long) units * plan.study().codecs().size()
                 + " of "
+                + upTo()
                 + plan.trials()
                 + " trials");
   }
 
   private int runUnits(
-      LocalRunner runner, int first, Mishaps mishaps, ResultsWriter writer, Cells cells) {
-    long left = (long) (plan.units() - first) * plan.study().codecs().size();
-    try (Progress progress = new Progress(surroundings, "assess", left, quiet)) {
+      LocalRunner runner, Course course, Mishaps mishaps, ResultsWriter writer, Cells cells) {
+    long left = (long) (plan.units() - course.next()) * plan.study().codecs().size();
+    try (Progress progress = new Progress(surroundings, "assess", upTo(), left, quiet)) {
       return runner.run(
-          first,
+          course,
           (unit, trials, timings) -> {
             writer.append(trials, timings);
             trials.forEach(cells::add);
@@ -182,6 +198,7 @@ final class Assessment {
   private void summarise(ResultsFolder results) {
     var out = surroundings.out();
     Reports.answer(results).forEach(out::println);
+    Reports.widths(results).ifPresent(out::println);
     out.println();
     for (String line : SummaryTable.of(results.cells())) {
       out.println(line);

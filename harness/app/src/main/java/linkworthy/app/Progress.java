@@ -16,11 +16,15 @@ import org.jspecify.annotations.Nullable;
  * with done and total, rate and time left.
  */
 final class Progress implements AutoCloseable {
+  /** Stands before a total that may turn out to be smaller. */
+  static final String UP_TO = "up to ";
+
   private static final Duration INTERVAL = Duration.ofSeconds(10);
 
   private final PrintWriter out;
   private final Clock clock;
   private final String task;
+  private final String upTo;
   private final long total;
   private final boolean quiet;
   private final Instant start;
@@ -29,13 +33,15 @@ final class Progress implements AutoCloseable {
   private long done;
 
   /**
+   * @param upTo {@link #UP_TO} if there may be fewer steps in the end, or empty
    * @param total steps there are
    * @param quiet show nothing
    */
-  Progress(Surroundings surroundings, String task, long total, boolean quiet) {
+  Progress(Surroundings surroundings, String task, String upTo, long total, boolean quiet) {
     this.out = surroundings.err();
     this.clock = surroundings.clock();
     this.task = task;
+    this.upTo = upTo;
     this.total = total;
     this.quiet = quiet;
     this.start = clock.instant();
@@ -76,12 +82,14 @@ final class Progress implements AutoCloseable {
     long left = done == 0 ? 0 : Math.round((total - done) / rate);
     return String.format(
         Locale.ROOT,
-        "%s: %d of %d trials, %d %%, %.1f a second, %s left",
+        "%s: %d of %s%d trials, %d %%, %.1f a second, %s%s left",
         task,
         done,
+        upTo,
         total,
         total == 0 ? 100 : 100 * done / total,
         rate,
+        upTo,
         duration(left));
   }
 

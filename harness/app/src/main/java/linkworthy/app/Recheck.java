@@ -29,6 +29,7 @@ import linkworthy.statistics.RowSample;
 import linkworthy.study.CodecChoice;
 import linkworthy.study.Study;
 import linkworthy.study.StudyWriter;
+import linkworthy.trial.Course;
 import linkworthy.trial.Plan;
 import linkworthy.trial.Repetition;
 import linkworthy.trial.Trial;
@@ -263,12 +264,13 @@ final class Recheck {
   private long checkKeysAndCells(Plan plan) {
     long before = mismatched;
     Cells cells = new Cells();
+    Course course = new Course(plan);
     long[] row = {0};
     long rows =
         results.trials(
             trial -> {
               long index = row[0]++;
-              String expected = index < plan.trials() ? plan.trialId(index) : "none";
+              String expected = course.isAtEnd() ? "none" : course.trialId();
               if (!trial.trial().equals(expected)) {
                 mismatch(
                     "row "
@@ -279,10 +281,14 @@ final class Recheck {
                         + expected);
               }
               cells.add(trial);
+              if (!course.isAtEnd()) {
+                course.add(trial);
+              }
             });
     RunRecord run = results.run();
-    if (run.complete() && rows != plan.trials()) {
-      mismatch("run.json says complete; trials.csv has " + rows + " of " + plan.trials() + " rows");
+    long planned = plan.study().earlyStop() == null ? plan.trials() : run.trialsPlanned();
+    if (run.complete() && (rows != planned || !course.isAtEnd())) {
+      mismatch("run.json says complete; trials.csv has " + rows + " of " + planned + " rows");
     }
     if (before == mismatched) {
       verified.add("order: each of the " + rows + " rows has the id that the plan has there");
@@ -319,26 +325,32 @@ final class Recheck {
 
   /** Repeats the trials at these places, the codecs of one unit together. */
   private void repeat(Plan plan, SortedSet<Long> sample) {
-    int codecs = plan.study().codecs().size();
+    Course course = new Course(plan);
     Repetition repetition = new Repetition(plan, extent.threads());
     ExecutorService executor = Executors.newFixedThreadPool(extent.threads());
-    Map<Integer, Map<Integer, Trial>> batch = new LinkedHashMap<>();
+    Map<Integer, Map<Integer, Row>> batch = new LinkedHashMap<>();
     long[] row = {0};
-    try (Progress progress = new Progress(surroundings, "recheck", sample.size(), extent.quiet())) {
+    try (Progress progress =
+        new Progress(surroundings, "recheck", "", sample.size(), extent.quiet())) {
       long unused =
           results.trials(
               trial -> {
                 long index = row[0]++;
+                if (course.isAtEnd()) {
+                  return;
+                }
+                int unit = course.next();
+                int codec = course.codec();
+                course.add(trial);
                 if (!sample.contains(index)) {
                   return;
                 }
-                int unit = (int) (index / codecs);
                 if (!batch.containsKey(unit) && batch.size() >= BATCH * extent.threads()) {
                   progress.step(compare(plan, repetition, executor, batch));
                 }
                 batch
                     .computeIfAbsent(unit, u -> new LinkedHashMap<>())
-                    .put((int) (index % codecs), trial);
+                    .put(codec, new Row(2 + index, trial));
               });
       progress.step(compare(plan, repetition, executor, batch));
     } finally {
@@ -346,12 +358,15 @@ final class Recheck {
     }
   }
 
+  /** A recorded trial and its line in the table. */
+  private record Row(long line, Trial trial) {}
+
   /** Runs a batch of units, compares their rows in order and empties the batch. */
   private long compare(
       Plan plan,
       Repetition repetition,
       ExecutorService executor,
-      Map<Integer, Map<Integer, Trial>> batch) {
+      Map<Integer, Map<Integer, Row>> batch) {
     Map<Integer, Future<List<Trial>>> running = new LinkedHashMap<>();
     batch.forEach(
         (unit, recorded) -> {
@@ -360,12 +375,11 @@ final class Recheck {
           running.put(unit, executor.submit(() -> repetition.trials(plan.unit(unit), choices)));
         });
     long compared = 0;
-    for (Map.Entry<Integer, Map<Integer, Trial>> unit : batch.entrySet()) {
+    for (Map.Entry<Integer, Map<Integer, Row>> unit : batch.entrySet()) {
       List<Trial> repeated = result(Objects.requireNonNull(running.get(unit.getKey())));
       int i = 0;
-      for (Map.Entry<Integer, Trial> recorded : unit.getValue().entrySet()) {
-        long line = 2 + (long) unit.getKey() * plan.study().codecs().size() + recorded.getKey();
-        compare(line, recorded.getValue(), repeated.get(i++));
+      for (Row recorded : unit.getValue().values()) {
+        compare(recorded.line(), recorded.trial(), repeated.get(i++));
         compared++;
       }
     }

@@ -3,6 +3,7 @@ package linkworthy.app;
 import java.util.ArrayList;
 import java.util.Iterator;
 import java.util.List;
+import java.util.Optional;
 import linkworthy.input.Decimal;
 import linkworthy.link.NodeProfile;
 import linkworthy.report.Answer;
@@ -20,6 +21,8 @@ import linkworthy.results.ResultsFolder;
 import linkworthy.results.RunRecord;
 import linkworthy.statistics.Cell;
 import linkworthy.statistics.StudentT;
+import linkworthy.study.EarlyStop;
+import linkworthy.study.ImpairmentChoice;
 import linkworthy.study.NodeChoice;
 import linkworthy.study.Study;
 import linkworthy.trial.NodeShare;
@@ -188,6 +191,7 @@ final class Reports {
   /** The settings, then what of the user's own took part. */
   private static List<Fact> facts(ResultsFolder results) {
     List<Fact> facts = new ArrayList<>(settings(results.studyOnPaper()));
+    widths(results).ifPresent(text -> facts.add(new Fact("noise half-width", text)));
     for (RunRecord.PluginUsed plugin : results.run().plugins()) {
       facts.add(new Fact("plugin " + plugin.jar(), "SHA-256 " + plugin.sha256()));
     }
@@ -200,6 +204,57 @@ final class Reports {
                   + "; the same study may give other numbers on another machine or day"));
     }
     return facts;
+  }
+
+  private static String replicates(Study study) {
+    EarlyStop rule = study.earlyStop();
+    return rule == null
+        ? Integer.toString(study.replicates())
+        : rule.atLeast()
+            + " to "
+            + rule.atMost()
+            + ", until the noise half-width is "
+            + Decimal.shortest(rule.halfWidthDb())
+            + " dB";
+  }
+
+  /**
+   * In how many cells with noise the half-width that the study wants was not reached; empty without
+   * such a wish, or while there are no cells.
+   */
+  static Optional<String> widths(ResultsFolder results) {
+    EarlyStop rule = results.studyOnPaper().earlyStop();
+    if (rule == null || !results.run().complete()) {
+      return Optional.empty();
+    }
+    List<Double> widths =
+        results.cells().stream()
+            .filter(cell -> !cell.impairment().equals(ImpairmentChoice.CLEAN))
+            .map(Cell::psnrNoiseHalfWidthDb)
+            .toList();
+    long wide = widths.stream().filter(width -> width > rule.halfWidthDb()).count();
+    long none = widths.stream().filter(width -> width.isNaN()).count();
+    String wanted = "wanted noise half-width " + Decimal.shortest(rule.halfWidthDb()) + " dB ";
+    String most = " (" + rule.atMost() + " replicates at most)";
+    String infinite = none == 0 ? "" : "; infinite PSNR, so no half-width, in " + none;
+    return Optional.of(
+        wide == 0
+            ? wanted
+                + "reached in "
+                + (widths.size() - none)
+                + " of "
+                + widths.size()
+                + " cells"
+                + most
+                + infinite
+            : wanted
+                + "not reached in "
+                + wide
+                + " of "
+                + widths.size()
+                + " cells"
+                + most
+                + infinite);
   }
 
   private static List<Fact> settings(Study study) {
@@ -224,7 +279,7 @@ final class Reports {
             new Fact("packet payload", study.link().payloadBytes() + " bytes at most"),
             new Fact("packet overhead", study.link().headerBytes() + " bytes each"),
             new Fact("packet order", study.link().order().id()),
-            new Fact("replicates", Integer.toString(study.replicates())),
+            new Fact("replicates", replicates(study)),
             new Fact("measures", String.join(", ", study.measures()))));
     return facts;
   }

@@ -24,7 +24,8 @@ class ProgressTest {
   private Progress progress(boolean terminal, boolean quiet) {
     Clock clock = ((InstantSource) () -> now).withZone(ZoneOffset.UTC);
     PrintWriter to = new PrintWriter(err);
-    return new Progress(new Surroundings(to, to, terminal, clock, folder), "assess", 400, quiet);
+    return new Progress(
+        new Surroundings(to, to, terminal, clock, folder), "assess", "", 400, quiet);
   }
 
   private void pass(int seconds) {

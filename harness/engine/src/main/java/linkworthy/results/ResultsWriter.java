@@ -178,7 +178,8 @@ public final class ResultsWriter implements AutoCloseable {
    */
   private void goOn(Plan plan, RunRecord now, Consumer<? super Trial> each) {
     RunRecord begun = ResultsFolder.readRun(folder);
-    RunRecord unused = begun.goesOn(now, 0);
+    boolean mayEndEarly = plan.study().earlyStop() != null;
+    RunRecord unused = begun.goesOn(now, 0, mayEndEarly);
     CsvTable<Trial> table = trialsTable(plan.study());
     Path trialsFile = folder.resolve(TrialsCsv.FILE);
     Path timingsFile = folder.resolve(TimingsCsv.FILE);
@@ -203,7 +204,7 @@ public final class ResultsWriter implements AutoCloseable {
           folder + " has no " + TimingsCsv.FILE + "; accepted: a folder as its run left it");
     }
     units = Math.min(rows.units(), times.units());
-    run = begun.goesOn(now, (long) units * codecs);
+    run = begun.goesOn(now, (long) units * codecs, mayEndEarly);
     removeUnfinished();
     for (String model : StudyWriter.modelFiles(plan.study()).keySet()) {
       removeUnfinished(model);

@@ -44,7 +44,8 @@ import tools.jackson.databind.json.JsonMapper;
  * @param operatingSystem name, version and processor architecture
  * @param start of the run, UTC, whole seconds
  * @param end of the run, or null while it is not finished
- * @param trialsPlanned how many trials the plan has
+ * @param trialsPlanned how many trials the plan has; where replicates may end early, at most so
+ *     many until the run is complete, and then as many as it came to
  * @param trialsDone how many are in the record
  * @param complete whether the record has every planned trial and its cells
  * @param pictures the pictures used, with their credits
@@ -205,20 +206,28 @@ public record RunRecord(
     return with(now(clock), done, done == trialsPlanned, plugins);
   }
 
+  /** The same record at the end of a run that has done every trial its plan comes to. */
+  public RunRecord complete(long done, Clock clock) {
+    return planned(done).end(done, clock);
+  }
+
   /**
    * The same record of a run that goes on with so many trials done.
    *
    * @param now the record of a run that begins now with the same study
+   * @param mayEndEarly whether a complete record may have fewer trials than planned at first
    * @throws BadInput if the rest of the rows would not be those of the run that was stopped: it had
    *     another version of the program, other pictures, plugins or another number of trials
    */
-  RunRecord goesOn(RunRecord now, long done) {
+  RunRecord goesOn(RunRecord now, long done, boolean mayEndEarly) {
     requireSame("program version", programVersion, now.programVersion);
     requireSame("study fingerprint", studyFingerprint, now.studyFingerprint);
     requireSame("pictures", checksums(), now.checksums());
     requireSame("plugins", plugins.toString(), now.plugins.toString());
-    requireSame("number of trials", "" + trialsPlanned, "" + now.trialsPlanned);
-    return with(null, done, false, plugins);
+    if (!complete || !mayEndEarly) {
+      requireSame("number of trials", "" + trialsPlanned, "" + now.trialsPlanned);
+    }
+    return planned(now.trialsPlanned).with(null, done, false, plugins);
   }
 
   /** The pictures used, with their checksums. */
@@ -260,6 +269,31 @@ public record RunRecord(
         newComplete,
         pictures,
         newPlugins,
+        programs);
+  }
+
+  /** The same record, not ended, of a plan that has so many trials. */
+  private RunRecord planned(long trials) {
+    return new RunRecord(
+        program,
+        programVersion,
+        study,
+        purpose,
+        studyFingerprint,
+        corpusFingerprint,
+        manifest,
+        noiseModels,
+        seed,
+        javaVersion,
+        javaVendor,
+        operatingSystem,
+        start,
+        null,
+        trials,
+        0,
+        false,
+        pictures,
+        plugins,
         programs);
   }
 

@@ -23,10 +23,12 @@ import org.jspecify.annotations.Nullable;
  *     plan
  * @param codecs the options compared, codecs with their protection, in study order, labels distinct
  * @param link the packets they are sent in
- * @param replicates noise realisations of each picture and severity, 1 to {@link #MAX_REPLICATES}
+ * @param replicates noise realisations of each picture and severity, 1 to {@link #MAX_REPLICATES};
+ *     with {@code earlyStop} its {@code atMost}
  * @param measures ids of quality measures, {@code psnr} among them
  * @param node what coding and sending costs, or null where no costs are asked for
  * @param rawHop what hurts raw samples on their way to helper nodes, at one severity, or null
+ * @param earlyStop when fewer replicates are enough, or null where their number is fixed
  */
 public record Study(
     String name,
@@ -39,7 +41,8 @@ public record Study(
     int replicates,
     List<String> measures,
     @Nullable NodeChoice node,
-    @Nullable ImpairmentChoice rawHop) {
+    @Nullable ImpairmentChoice rawHop,
+    @Nullable EarlyStop earlyStop) {
   /** A name becomes a folder, so it has only letters, digits, dots, dashes and underscores. */
   public static final Pattern NAME = Pattern.compile("[A-Za-z0-9][A-Za-z0-9._-]{0,63}");
 
@@ -73,6 +76,10 @@ public record Study(
       throw new IllegalArgumentException("seed is " + seed + "; accepted: 0 to " + MAX_SEED);
     }
     Require.inRange(replicates, 1, MAX_REPLICATES, "replicates");
+    if (earlyStop != null && replicates != earlyStop.atMost()) {
+      throw new IllegalArgumentException(
+          "replicates is " + replicates + "; accepted: at-most, " + earlyStop.atMost());
+    }
     impairments = List.copyOf(impairments);
     codecs = List.copyOf(codecs);
     measures = List.copyOf(measures);
@@ -112,7 +119,8 @@ public record Study(
         replicates,
         measures,
         node,
-        rawHop);
+        rawHop,
+        earlyStop);
   }
 
   /** The same study whose manifest, if it has one of its own, is looked for in another place. */
@@ -128,6 +136,7 @@ public record Study(
         replicates,
         measures,
         node,
-        rawHop);
+        rawHop,
+        earlyStop);
   }
 }

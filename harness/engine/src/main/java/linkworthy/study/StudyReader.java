@@ -95,6 +95,8 @@ public final class StudyReader {
             "raw-hop"));
     PictureChoice pictures =
         pictures(root.find("pictures").orElse(DEFAULTS.get("pictures")), baseFolder);
+    YamlNode replicates = given(root, DEFAULTS, "replicates");
+    EarlyStop rule = earlyStop(replicates);
     Link link = link(root.find("link").orElse(DEFAULTS.get("link")), pictures.hasAllPlanes());
     return new Study(
         name(root.get("name")),
@@ -104,10 +106,11 @@ public final class StudyReader {
         impairments(root.get("impairments"), baseFolder),
         codecs(root, link, pictures, codecs),
         link,
-        replicates(given(root, DEFAULTS, "replicates")),
+        rule == null ? (int) replicates.integer(1, Study.MAX_REPLICATES) : rule.atMost(),
         measures(given(root, DEFAULTS, "measures")),
         NodeReader.read(given(root, DEFAULTS, "node"), DEFAULTS.get("node-interval-s"), baseFolder),
-        root.find("raw-hop").map(node -> rawHop(node, baseFolder)).orElse(null));
+        root.find("raw-hop").map(node -> rawHop(node, baseFolder)).orElse(null),
+        rule);
   }
 
   /** The folder that paths in a file are relative to. */
@@ -311,14 +314,20 @@ public final class StudyReader {
         orders.get(words.indexOf(given(group, defaults, "order").oneOf(words))));
   }
 
-  private static int replicates(YamlNode node) {
-    if (node.isMapping()) {
-      throw node.refuse(
-          "asks to stop at a half-width, which this version does not do; accepted: a whole number"
-              + " from 1 to "
-              + Study.MAX_REPLICATES);
+  /** The rule by which replicates end early; null if the node is a number of replicates. */
+  private static @Nullable EarlyStop earlyStop(YamlNode node) {
+    if (!node.isMapping()) {
+      return null;
     }
-    return (int) node.integer(1, Study.MAX_REPLICATES);
+    node.onlyKeys(ordered("at-least", "at-most", "half-width-db"));
+    int most = (int) node.get("at-most").integer(2, Study.MAX_REPLICATES);
+    int least = (int) node.get("at-least").integer(2, most);
+    String accepted = "a half-width above 0, in dB";
+    double halfWidth = node.get("half-width-db").number(accepted);
+    if (!(halfWidth > 0) || Double.isInfinite(halfWidth)) {
+      throw node.get("half-width-db").bad(accepted);
+    }
+    return new EarlyStop(least, most, halfWidth);
   }
 
   private static List<String> measures(YamlNode list) {

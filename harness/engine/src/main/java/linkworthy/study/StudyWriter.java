@@ -143,7 +143,8 @@ public final class StudyWriter {
     tree.put("impairments", study.impairments().stream().map(StudyWriter::impairment).toList());
     tree.put("codecs", study.codecs().stream().map(StudyWriter::codec).toList());
     tree.put("link", link(study.link()));
-    tree.put("replicates", study.replicates());
+    EarlyStop rule = study.earlyStop();
+    tree.put("replicates", rule == null ? study.replicates() : earlyStop(rule));
     tree.put("measures", study.measures());
     NodeChoice node = study.node();
     if (node != null) {
@@ -153,6 +154,14 @@ public final class StudyWriter {
     if (hop != null) {
       tree.put("raw-hop", impairment(hop));
     }
+    return tree;
+  }
+
+  private static Map<String, Object> earlyStop(EarlyStop rule) {
+    Map<String, Object> tree = new LinkedHashMap<>();
+    tree.put("at-least", rule.atLeast());
+    tree.put("at-most", rule.atMost());
+    tree.put("half-width-db", plainValue(rule.halfWidthDb()));
     return tree;
   }
 

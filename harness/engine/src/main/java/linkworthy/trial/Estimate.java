@@ -4,7 +4,8 @@ import linkworthy.corpus.ManifestEntry;
 import linkworthy.noise.Site;
 
 /**
- * What a plan will roughly take, from closed formulas; nothing is run.
+ * What a plan will roughly take, from closed formulas; nothing is run. Where replicates may end
+ * early, what it takes at most.
  *
  * @param seconds of wall-clock time on the threads that were asked for
  * @param memoryBytes of working memory

@@ -3,22 +3,26 @@ package linkworthy.trial;
 import java.util.ArrayDeque;
 import java.util.List;
 import java.util.Queue;
+import java.util.concurrent.ArrayBlockingQueue;
+import java.util.concurrent.BlockingQueue;
 import java.util.concurrent.CancellationException;
 import java.util.concurrent.ExecutionException;
 import java.util.concurrent.ExecutorService;
 import java.util.concurrent.Executors;
 import java.util.concurrent.Future;
 import java.util.concurrent.TimeUnit;
-import java.util.concurrent.TimeoutException;
 import java.util.function.Consumer;
 import linkworthy.input.Require;
+import org.jspecify.annotations.Nullable;
 
 /**
  * Runs a plan on threads of this machine and hands over finished units in the canonical order,
  * whatever the order they finish in.
  */
 public final class LocalRunner {
-  /** Units waiting or running for each thread; bounds the memory that finished rows take. */
+  /**
+   * Groups of units waiting or running for each thread; bounds the memory that finished rows take.
+   */
   private static final int WINDOW = 4;
 
   /** How often a wait for a unit looks whether to stop, in milliseconds. */
@@ -58,28 +62,44 @@ public final class LocalRunner {
   }
 
   /**
-   * Runs the units from {@code firstUnit} on. If the calling thread is interrupted, or {@link
-   * #stop} is called, the units that have been handed over stay whole and the rest is dropped.
+   * Runs the units from {@code firstUnit} on, as {@link #run(Course, Sink)} does.
    *
+   * @param firstUnit where replicates may end early, the first replicate of a severity
    * @return the number of units handed over
    */
   public int run(int firstUnit, Sink sink) {
+    return run(new Course(plan, firstUnit), sink);
+  }
+
+  /**
+   * Runs the rest of a course, and moves it on. If the calling thread is interrupted, or {@link
+   * #stop} is called, the units that have been handed over stay whole and the rest is dropped.
+   *
+   * @param course stands before the first trial of a unit
+   * @return the number of units handed over
+   */
+  public int run(Course course, Sink sink) {
     Subjects subjects = new Subjects(plan, threads + 1);
     ExecutorService executor = Executors.newFixedThreadPool(threads);
-    Queue<Future<UnitRunner.Rows>> window = new ArrayDeque<>();
-    int next = firstUnit;
-    int done = firstUnit;
+    Queue<Group> window = new ArrayDeque<>();
+    int next = course.next();
+    int done = 0;
     try {
-      while (done < plan.units() && !stopped && !Thread.currentThread().isInterrupted()) {
+      while (!course.isAtEnd() && !stopped && !Thread.currentThread().isInterrupted()) {
         while (next < plan.units() && window.size() < WINDOW * threads) {
-          WorkUnit unit = plan.unit(next++);
-          window.add(
-              executor.submit(() -> new UnitRunner(plan.study(), subjects.get(unit), unit).run()));
+          Course own = next == course.next() ? course.copy() : new Course(plan, next);
+          next = own.groupEnd();
+          window.add(new Group(own, subjects, executor));
         }
-        if (isReady(window.element())) {
-          UnitRunner.Rows rows = window.remove().get();
+        UnitRunner.Rows rows = window.element().poll();
+        if (rows != null) {
           rows.mishaps().forEach(mishaps);
-          sink.accept(plan.unit(done++), rows.trials(), rows.timings());
+          sink.accept(course.unit(), rows.trials(), rows.timings());
+          rows.trials().forEach(course::add);
+          done++;
+          if (course.next() >= window.element().end) {
+            window.remove();
+          }
         }
       }
     } catch (InterruptedException | CancellationException e) {
@@ -96,7 +116,7 @@ public final class LocalRunner {
       executor.shutdownNow();
       awaitEnd(executor);
     }
-    return done - firstUnit;
+    return done;
   }
 
   /**
@@ -107,12 +127,44 @@ public final class LocalRunner {
     stopped = true;
   }
 
-  private static boolean isReady(Future<?> unit) throws InterruptedException, ExecutionException {
-    try {
-      Object unused = unit.get(GLANCE_MS, TimeUnit.MILLISECONDS);
-      return true;
-    } catch (TimeoutException notYet) {
-      return false;
+  /**
+   * Units that one task runs, one after the other: a single one, or where replicates may end early
+   * the replicates of one severity.
+   */
+  private final class Group {
+    /** Finished units that may wait; a task with more waits itself. */
+    private static final int WAITING = 32;
+
+    private final BlockingQueue<UnitRunner.Rows> finished = new ArrayBlockingQueue<>(WAITING);
+    private final Course course;
+    private final Subjects subjects;
+    private final int end;
+    private final Future<?> task;
+
+    Group(Course course, Subjects subjects, ExecutorService executor) {
+      this.course = course;
+      this.subjects = subjects;
+      this.end = course.groupEnd();
+      this.task = executor.submit(this::run);
+    }
+
+    private @Nullable Void run() throws InterruptedException {
+      while (course.next() < end && !Thread.currentThread().isInterrupted()) {
+        WorkUnit unit = course.unit();
+        UnitRunner.Rows rows = new UnitRunner(plan.study(), subjects.get(unit), unit).run();
+        rows.trials().forEach(course::add);
+        finished.put(rows);
+      }
+      return null;
+    }
+
+    /** The next finished unit, or null if there is none for a while. */
+    UnitRunner.@Nullable Rows poll() throws InterruptedException, ExecutionException {
+      UnitRunner.Rows rows = finished.poll(GLANCE_MS, TimeUnit.MILLISECONDS);
+      if (rows == null && task.isDone() && finished.isEmpty()) {
+        Object unused = task.get();
+      }
+      return rows;
     }
   }
 

@@ -122,12 +122,12 @@ public final class Plan {
     return Math.addExact(1, Math.multiplyExact(conditions.size(), study.replicates()));
   }
 
-  /** Number of work units. */
+  /** Number of work units, as if no replicates ended early. */
   public int units() {
     return Math.multiplyExact(pictures.size(), unitsOfPicture());
   }
 
-  /** Number of trials: units times codecs. */
+  /** Number of trials, units times codecs; where replicates may end early, at most so many. */
   public long trials() {
     return (long) units() * study.codecs().size();
   }
@@ -153,10 +153,11 @@ public final class Plan {
     return new TrialKey(study, unit, codec).id();
   }
 
-  /** The id of the trial at a place in the canonical order, from 0. */
-  public String trialId(long index) {
-    int codecs = study.codecs().size();
-    return trialId(unit((int) (index / codecs)), study.codecs().get((int) (index % codecs)));
+  /** The first unit at or after a place that is the first replicate of its severity. */
+  public int groupFrom(int index) {
+    int rest = index % unitsOfPicture();
+    int into = rest == 0 ? 0 : (rest - 1) % study.replicates();
+    return into == 0 ? index : index - into + study.replicates();
   }
 
   /**

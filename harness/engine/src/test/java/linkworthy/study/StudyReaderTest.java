@@ -193,8 +193,32 @@ class StudyReaderTest {
         Arguments.of("name: yard", "name: yard\nreplicates: 2.5", List.of("line 2", "'2.5'")),
         Arguments.of(
             "name: yard",
-            "name: yard\nreplicates: {at-least: 5, at-most: 100, half-width-db: 0.1}",
-            List.of("line 2", "half-width", "a whole number")),
+            "name: yard\nreplicates: {at-least: 1, at-most: 9, half-width-db: 1}",
+            List.of("line 2", "at-least", "2 to 9")),
+        Arguments.of(
+            "name: yard",
+            "name: yard\nreplicates: {at-least: 5, at-most: 4, half-width-db: 1}",
+            List.of("line 2", "at-least", "2 to 4")),
+        Arguments.of(
+            "name: yard",
+            "name: yard\nreplicates: {at-least: 5, at-most: 1000001, half-width-db: 1}",
+            List.of("line 2", "at-most", "2 to 1000000")),
+        Arguments.of(
+            "name: yard",
+            "name: yard\nreplicates: {at-least: 5, at-most: 9, half-width-db: 0}",
+            List.of("line 2", "half-width-db", "above 0")),
+        Arguments.of(
+            "name: yard",
+            "name: yard\nreplicates: {at-least: 5, at-most: 9, half-width-db: wide}",
+            List.of("line 2", "'wide'", "above 0")),
+        Arguments.of(
+            "name: yard",
+            "name: yard\nreplicates: {at-least: 5, at-most: 9}",
+            List.of("line 2", "half-width-db")),
+        Arguments.of(
+            "name: yard",
+            "name: yard\nreplicates: {at-least: 5, at-most: 9, half-width: 1}",
+            List.of("line 2", "'half-width'", "'half-width-db'")),
         Arguments.of(
             "name: yard", "name: yard\nmeasures: [psnr, sim]", List.of("line 2", "'ssim'")),
         Arguments.of("name: yard", "name: yard\nmeasures: [ssim]", List.of("line 2", "psnr")),

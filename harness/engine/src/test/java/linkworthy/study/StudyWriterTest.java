@@ -239,6 +239,19 @@ class StudyWriterTest {
   }
 
   @Test
+  void replicatesThatEndEarlyAreWrittenWithTheirRule() {
+    Study study =
+        StudyReaderTest.read(
+            StudyReaderTest.SHORT
+                + "replicates: {half-width-db: 1e-1, at-most: 100, at-least: 5}\n");
+    assertThat(study.earlyStop()).isEqualTo(new EarlyStop(5, 100, 0.1));
+    assertThat(study.replicates()).isEqualTo(100);
+    assertThat(StudyWriter.canonical(study))
+        .contains("replicates:\n  at-least: 5\n  at-most: 100\n  half-width-db: 0.1\n");
+    assertSame(study, Path.of("").toAbsolutePath());
+  }
+
+  @Test
   void shippedModelsNeedNoFile() {
     assertThat(StudyWriter.modelFiles(StudyReaderTest.read(StudyTemplate.text()))).isEmpty();
   }
@@ -266,6 +279,7 @@ class StudyWriterTest {
         "step: 16 | step: 8",
         "name: yard | seed: 2",
         "name: yard | replicates: 6",
+        "name: yard | replicates: {at-least: 5, at-most: 5, half-width-db: 1}",
         "name: yard | measures: [psnr]",
         "name: yard | pictures: {select: [cat]}",
         "name: yard | pictures: {train: [cat]}",
