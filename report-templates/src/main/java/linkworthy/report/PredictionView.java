@@ -42,7 +42,7 @@ record PredictionView(String tolerance, String sentence, List<Row> rows, List<Fa
   private static String sentence(List<Row> rows) {
     long findings = rows.stream().filter(Row::finding).count();
     return findings == 0
-        ? "No gap is larger than that."
+        ? "No gap is known to be larger than that."
         : Numbers.count(findings, "gap is", "gaps are")
             + " larger than that, of "
             + Numbers.count(rows.size())
@@ -60,7 +60,7 @@ record PredictionView(String tolerance, String sentence, List<Row> rows, List<Fa
         one.isFinding(),
         one.isFinding()
             ? "finding: measured is " + (one.gapDb() > 0 ? "better" : "worse") + " than predicted"
-            : "as predicted");
+            : one.isUndecided() ? "undecided: all replicates came out alike" : "as predicted");
   }
 
   private static String title(Condition condition) {

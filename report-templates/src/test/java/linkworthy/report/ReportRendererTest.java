@@ -276,16 +276,18 @@ class ReportRendererTest {
                     new Predicted(GAUSSIAN, "b", 30, 30.5, 0.6, ""),
                     new Predicted(GAUSSIAN, "c", 30, 30.5, NaN, ""),
                     new Predicted(GAUSSIAN, "d", 30, 29.5, 0.2, ""),
+                    new Predicted(GAUSSIAN, "f", 30, 30.5, 0, ""),
                     new Predicted(GAUSSIAN, "e", NaN, 30, 0.2, HOSTILE))));
     assertThat(shown.texts("(//section[@id='predictions']//table)[1]/tbody/tr/td[last()]"))
         .containsExactly(
             "as predicted",
             "as predicted",
             "finding: measured is better than predicted",
-            "finding: measured is worse than predicted");
+            "finding: measured is worse than predicted",
+            "undecided: all replicates came out alike");
     assertThat(shown.texts("(//section[@id='predictions']//table)[1]/tbody/tr/td[5]"))
-        .containsExactly("0.09", "0.50", "0.50", "-0.50");
-    assertThat(shown.text("//section[@id='predictions']/p")).contains("2 gaps are larger", "of 4");
+        .containsExactly("0.09", "0.50", "0.50", "-0.50", "0.50");
+    assertThat(shown.text("//section[@id='predictions']/p")).contains("2 gaps are larger", "of 5");
     assertThat(shown.texts("(//section[@id='predictions']//table)[2]/tbody/tr/td"))
         .containsExactly("e");
   }
