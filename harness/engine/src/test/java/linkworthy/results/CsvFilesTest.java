@@ -2,6 +2,7 @@ package linkworthy.results;
 
 import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.assertThatExceptionOfType;
+import static org.assertj.core.api.Assertions.assertThatThrownBy;
 import static org.assertj.core.api.Assertions.entry;
 
 import java.io.IOException;
@@ -158,6 +159,18 @@ class CsvFilesTest {
     assertThat(CellsCsv.read(file).get(1).furtherMeans())
         .containsExactly(entry("spread_db", -3.0), entry("blur", Double.NaN));
     assertThat(CellsCsv.text(CellsCsv.read(file))).isEqualTo(cells);
+  }
+
+  @Test
+  void aCellStandsOnce() throws IOException {
+    String text = Samples.CELLS_TEXT;
+    String last = text.substring(text.lastIndexOf('\n', text.length() - 2) + 1);
+    Path file = folder.resolve("cells.csv");
+    Files.writeString(file, text + last);
+    assertThatThrownBy(() -> CellsCsv.read(file))
+        .isInstanceOf(BadInput.class)
+        .hasMessageContaining("has two rows of '" + Samples.CELLS.get(1).codec() + "' under ")
+        .hasMessageEndingWith("; accepted: one row a cell");
   }
 
   @Test
