@@ -7,7 +7,10 @@ import static linkworthy.results.CsvTable.words;
 
 import java.nio.file.Path;
 import java.util.ArrayList;
+import java.util.HashSet;
 import java.util.List;
+import java.util.Set;
+import linkworthy.input.BadInput;
 import linkworthy.statistics.Cell;
 import linkworthy.statistics.Standing;
 
@@ -76,6 +79,20 @@ public final class CellsCsv {
   public static List<Cell> read(Path file) {
     List<Cell> cells = new ArrayList<>();
     TABLE.read(file, cells::add);
+    Set<List<Object>> seen = new HashSet<>();
+    for (Cell cell : cells) {
+      if (!seen.add(
+          List.of(cell.impairment(), cell.actsOn(), cell.axis(), cell.severity(), cell.codec()))) {
+        throw new BadInput(
+            file
+                + " has two rows of '"
+                + cell.codec()
+                + "' under "
+                + (cell.impairment() + " " + cell.axis()).strip()
+                + (Double.isNaN(cell.severity()) ? "" : " " + cell.severity())
+                + "; accepted: one row a cell");
+      }
+    }
     return cells;
   }
 

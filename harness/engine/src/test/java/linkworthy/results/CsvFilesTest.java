@@ -2,6 +2,7 @@ package linkworthy.results;
 
 import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.assertThatExceptionOfType;
+import static org.assertj.core.api.Assertions.assertThatThrownBy;
 import static org.assertj.core.api.Assertions.entry;
 
 import java.io.IOException;
@@ -174,6 +175,18 @@ class CsvFilesTest {
     assertThat(Files.readString(file))
         .startsWith(String.join(",", PredictionsCsv.columns()) + "\n")
         .contains("gaussian,samples,snr-db,20.0,\"dct, K16\",31.25,\n");
+  }
+
+  @Test
+  void aCellStandsOnce() throws IOException {
+    String text = Samples.CELLS_TEXT;
+    String last = text.substring(text.lastIndexOf('\n', text.length() - 2) + 1);
+    Path file = folder.resolve("cells.csv");
+    Files.writeString(file, text + last);
+    assertThatThrownBy(() -> CellsCsv.read(file))
+        .isInstanceOf(BadInput.class)
+        .hasMessageContaining("has two rows of '" + Samples.CELLS.get(1).codec() + "' under ")
+        .hasMessageEndingWith("; accepted: one row a cell");
   }
 
   @Test
