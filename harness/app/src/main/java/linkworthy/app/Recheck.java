@@ -266,6 +266,7 @@ final class Recheck {
     Cells cells = new Cells();
     Course course = new Course(plan);
     long[] row = {0};
+    boolean[] countable = {true};
     long rows =
         results.trials(
             trial -> {
@@ -280,7 +281,12 @@ final class Recheck {
                         + ", by the plan "
                         + expected);
               }
-              cells.add(trial);
+              try {
+                cells.add(trial);
+              } catch (IllegalArgumentException e) {
+                countable[0] = false;
+                mismatch("row " + row[0] + " of trials.csv: " + e.getMessage());
+              }
               if (!course.isAtEnd()) {
                 course.add(trial);
               }
@@ -293,7 +299,11 @@ final class Recheck {
     if (before == mismatched) {
       verified.add("order: each of the " + rows + " rows has the id that the plan has there");
     }
-    checkCells(cells);
+    if (countable[0]) {
+      checkCells(cells);
+    } else {
+      notVerified.add("cells: the rows of trials.csv do not add up to any");
+    }
     return rows;
   }
 

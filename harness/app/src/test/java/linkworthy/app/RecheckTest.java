@@ -155,6 +155,15 @@ class RecheckTest {
   }
 
   @Test
+  void aDoubledRowIsFound() throws IOException {
+    Path results = copy();
+    change(
+        results.resolve("trials.csv"),
+        text -> text + text.substring(text.lastIndexOf('\n', text.length() - 2) + 1));
+    assertMismatch(results, "by the plan none");
+  }
+
+  @Test
   void rowsOutOfPlaceAreFoundWithoutRepeatingAny() throws IOException {
     Path results = copy();
     change(
