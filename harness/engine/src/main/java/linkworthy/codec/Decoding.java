@@ -1,6 +1,7 @@
 package linkworthy.codec;
 
 import java.util.Arrays;
+import java.util.Set;
 import linkworthy.corpus.Picture;
 import org.jspecify.annotations.Nullable;
 
@@ -16,7 +17,12 @@ public record Decoding(Picture picture, Completeness completeness, @Nullable Fai
     COMPLETE,
     PARTIAL,
     /** An outage: nothing usable arrived. */
-    NOTHING
+    NOTHING;
+
+    /** Of a picture in parts: what all of them are, or partial if they differ. */
+    public static Completeness ofParts(Set<Completeness> parts) {
+      return parts.size() == 1 ? parts.iterator().next() : PARTIAL;
+    }
   }
 
   /** A picture that was decoded. */

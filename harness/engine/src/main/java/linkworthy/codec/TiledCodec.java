@@ -2,9 +2,11 @@ package linkworthy.codec;
 
 import java.util.ArrayList;
 import java.util.Arrays;
+import java.util.EnumSet;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
+import java.util.Set;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
 import linkworthy.link.Link;
@@ -196,23 +198,16 @@ final class TiledCodec implements Codec {
       }
     }
     int[] samples = new int[shape.size()];
-    int complete = 0;
-    int nothing = 0;
+    Set<Decoding.Completeness> parts = EnumSet.noneOf(Decoding.Completeness.class);
     for (int t = 0; t < grid.tiles(); t++) {
       Tile tile = grid.tile(t, shape);
       Decoding decoding = inner.decode(tile.shape(), byTile.get(t));
       tile.putInto(samples, shape.width(), decoding.picture());
-      complete += decoding.completeness() == Decoding.Completeness.COMPLETE ? 1 : 0;
-      nothing += decoding.completeness() == Decoding.Completeness.NOTHING ? 1 : 0;
+      parts.add(decoding.completeness());
     }
-    Decoding.Completeness completeness =
-        nothing == grid.tiles()
-            ? Decoding.Completeness.NOTHING
-            : complete == grid.tiles()
-                ? Decoding.Completeness.COMPLETE
-                : Decoding.Completeness.PARTIAL;
     return new Decoding(
-        new Picture(shape.width(), shape.height(), shape.bitDepth(), samples), completeness);
+        new Picture(shape.width(), shape.height(), shape.bitDepth(), samples),
+        Decoding.Completeness.ofParts(parts));
   }
 
   @Override

@@ -1,7 +1,9 @@
 package linkworthy.trial;
 
 import java.util.ArrayList;
+import java.util.EnumSet;
 import java.util.List;
+import java.util.Set;
 import linkworthy.codec.Codec;
 import linkworthy.codec.Decoding;
 import linkworthy.codec.Encoding;
@@ -97,23 +99,15 @@ final class PlaneCoding {
       return new Decoded(List.of(decoding.picture()), decoding.completeness(), decoding.failure());
     }
     List<Picture> planes = new ArrayList<>();
-    int complete = 0;
-    int nothing = 0;
+    Set<Decoding.Completeness> parts = EnumSet.noneOf(Decoding.Completeness.class);
     Failure failure = null;
     for (int plane = 0; plane < coded.size(); plane++) {
       Decoding decoding = decoder.decode(coded.get(plane), ofPlane(plane, arrived));
-      complete += decoding.completeness() == Decoding.Completeness.COMPLETE ? 1 : 0;
-      nothing += decoding.completeness() == Decoding.Completeness.NOTHING ? 1 : 0;
+      parts.add(decoding.completeness());
       failure = failure == null ? decoding.failure() : failure;
       planes.add(stretched(decoding.picture(), coded.get(0)));
     }
-    Decoding.Completeness completeness =
-        complete == planes.size()
-            ? Decoding.Completeness.COMPLETE
-            : nothing == planes.size()
-                ? Decoding.Completeness.NOTHING
-                : Decoding.Completeness.PARTIAL;
-    return new Decoded(planes, completeness, failure);
+    return new Decoded(planes, Decoding.Completeness.ofParts(parts), failure);
   }
 
   /**
