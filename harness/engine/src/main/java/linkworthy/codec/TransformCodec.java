@@ -167,7 +167,12 @@ final class TransformCodec implements Codec {
         keep instanceof Keep.Rate rate
             ? largestWithin(rate.bitsPerPixel() * picture.size(), shape, analysis, symbols, memo)
             : analysis.kept(keep);
-    return new Encoding(pack(shape, analysis, symbols, kept), kept);
+    WholePicture whole =
+        memo.once(
+            new WholeKey(arrangement, basis.id(), quantization),
+            WholePicture.class,
+            () -> new WholePicture(shape, arrangement, basis, analysis, symbols, quantization));
+    return new Encoding(pack(shape, analysis, symbols, kept), kept, "", () -> whole.upTo(kept));
   }
 
   Analysis analysis(Picture picture, Memo memo) {
@@ -367,6 +372,8 @@ final class TransformCodec implements Codec {
   private record AnalysisKey(Arrangement arrangement, String basis) {}
 
   private record SymbolsKey(Arrangement arrangement, String basis, Quantization quantization) {}
+
+  private record WholeKey(Arrangement arrangement, String basis, Quantization quantization) {}
 
   private record SentBitsKey(
       Arrangement arrangement, String basis, Quantization quantization, Link link, int kept) {}
