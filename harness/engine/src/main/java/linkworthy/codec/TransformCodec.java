@@ -40,7 +40,7 @@ final class TransformCodec implements Codec {
       Quantization quantization,
       Link link) {
     this.arrangement = arrangement;
-    this.basis = basis;
+    this.basis = keep instanceof Keep.First first ? basis.forAtMost(first.components()) : basis;
     this.keep = keep;
     this.quantization = quantization;
     this.link = link;
@@ -169,7 +169,7 @@ final class TransformCodec implements Codec {
             : analysis.kept(keep);
     WholePicture whole =
         memo.once(
-            new WholeKey(arrangement, basis.id(), quantization),
+            new WholeKey(arrangement, basis.work(), quantization),
             WholePicture.class,
             () -> new WholePicture(shape, arrangement, basis, analysis, symbols, quantization));
     return new Encoding(pack(shape, analysis, symbols, kept), kept, "", () -> whole.upTo(kept));
@@ -177,7 +177,7 @@ final class TransformCodec implements Codec {
 
   Analysis analysis(Picture picture, Memo memo) {
     return memo.once(
-        new AnalysisKey(arrangement, basis.id()),
+        new AnalysisKey(arrangement, basis.work()),
         Analysis.class,
         () -> Analysis.of(picture, arrangement, basis));
   }
@@ -185,7 +185,7 @@ final class TransformCodec implements Codec {
   Symbols symbols(Picture picture, Memo memo) {
     Analysis analysis = analysis(picture, memo);
     return memo.once(
-        new SymbolsKey(arrangement, basis.id(), quantization),
+        new SymbolsKey(arrangement, basis.work(), quantization),
         Symbols.class,
         () -> new Symbols(analysis, quantization));
   }
@@ -209,7 +209,7 @@ final class TransformCodec implements Codec {
         analysis.components(),
         k ->
             memo.once(
-                    new SentBitsKey(arrangement, basis.id(), quantization, link, k),
+                    new SentBitsKey(arrangement, basis.work(), quantization, link, k),
                     Long.class,
                     () -> sentBits(pack(shape, analysis, symbols, k)))
                 <= budget);
