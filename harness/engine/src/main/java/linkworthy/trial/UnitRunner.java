@@ -167,7 +167,11 @@ final class UnitRunner {
       Passage.Crossing crossing = circumstances.passage().open();
       Channel.Outcome outcome =
           new Channel(study.link(), choice.protection()).send(sent.encoding().packets(), crossing);
-      Judged judged = judge(choice, codec, seen, sent, outcome.payloads());
+      boolean intact = crossing.isClear() || isIntact(sent.encoding(), outcome.payloads());
+      Judged judged =
+          intact
+              ? judgeIntact(choice, codec, seen, sent)
+              : judge(codec.decode(subject.shapes(), sent, outcome.payloads()));
       long decoded = System.nanoTime();
       trials.add(
           trial(
@@ -208,23 +212,17 @@ final class UnitRunner {
   }
 
   /**
-   * Decodes and judges; what arrives as it was sent gives the same figures every time, so that is
-   * done once for each encoding.
+   * Decodes and judges all that was sent, as it was sent: that gives the same figures every time,
+   * so it is done once for each encoding.
    */
-  private Judged judge(
-      CodecChoice choice,
-      GuardedCodec codec,
-      Seen seen,
-      GuardedCodec.Sent sent,
-      List<byte[]> arrived) {
-    return isIntact(sent.encoding(), arrived)
-        ? seen.memos()
-            .get(0)
-            .once(
-                new IntactKey(EncodingKey.of(choice)),
-                Judged.class,
-                () -> judge(codec.decode(subject.shapes(), sent, arrived)))
-        : judge(codec.decode(subject.shapes(), sent, arrived));
+  private Judged judgeIntact(
+      CodecChoice choice, GuardedCodec codec, Seen seen, GuardedCodec.Sent sent) {
+    return seen.memos()
+        .get(0)
+        .once(
+            new IntactKey(EncodingKey.of(choice)),
+            Judged.class,
+            () -> judge(codec.decodeAll(subject.shapes(), sent)));
   }
 
   private static boolean isIntact(Encoding encoding, List<byte[]> arrived) {

@@ -7,6 +7,7 @@ import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.Collections;
 import java.util.List;
+import java.util.function.Supplier;
 import linkworthy.corpus.Picture;
 import linkworthy.corpus.TestPattern;
 import linkworthy.input.BadInput;
@@ -168,6 +169,29 @@ public abstract class CodecContractTest {
         assertThat(mixed.completeness()).isEqualTo(Decoding.Completeness.COMPLETE);
         assertThat(mixed.picture().samples()).isEqualTo(plain.picture().samples());
         assertThat(PictureShape.of(plain.picture())).isEqualTo(shape);
+      }
+    }
+  }
+
+  /** With one memo for all, so that pictures are built on each other, up and down again. */
+  @Test
+  void theWholePictureIsWhatAllPacketsDecodeTo() {
+    for (Picture picture : pictures()) {
+      Memo shared = new Memo();
+      List<Codec> there = new ArrayList<>(codecs());
+      there.removeIf(codec -> !accepts(codec, PictureShape.of(picture)));
+      List<Codec> back = new ArrayList<>(there);
+      Collections.reverse(back);
+      there.addAll(back);
+      for (Codec codec : there) {
+        Encoding encoding = codec.encode(picture, shared);
+        Supplier<Picture> whole = encoding.whole();
+        if (whole != null) {
+          assertThat(whole.get().samples())
+              .as(codec.label())
+              .isEqualTo(
+                  codec.decode(PictureShape.of(picture), encoding.payloads()).picture().samples());
+        }
       }
     }
   }

@@ -118,6 +118,31 @@ class ChannelTest {
     assertThat(outcome.packetsLost()).isEqualTo(7);
   }
 
+  /** Clear air is an outcome like any other, reached without looking at a payload. */
+  @ParameterizedTest
+  @MethodSource("protections")
+  void clearAirIsCountedLikeAirThatLosesNothing(Protection protection) {
+    Channel.Air clear =
+        new Channel.Air() {
+          @Override
+          public byte[] carry(int index, int node, byte[] payload) {
+            return payload;
+          }
+
+          @Override
+          public boolean isClear() {
+            return true;
+          }
+        };
+    for (Protection each : List.of(protection, Protection.NONE)) {
+      List<Packet> packets = packets(70, 3);
+      Channel.Outcome expected = new Channel(LINK, each).send(packets, new Recorder(t -> false));
+      Channel.Outcome found = new Channel(LINK, each).send(packets, clear);
+      assertThat(found).usingRecursiveComparison().ignoringFields("payloads").isEqualTo(expected);
+      assertSameBytes(found.payloads(), expected.payloads());
+    }
+  }
+
   /** The bits counted are the bits that were produced, whatever the protection and the losses. */
   @ParameterizedTest
   @MethodSource("protections")

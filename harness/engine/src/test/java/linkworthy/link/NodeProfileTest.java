@@ -72,13 +72,13 @@ class NodeProfileTest {
           }
 
           @Override
-          public byte @Nullable [] take(int room, boolean whole) {
+          public Packetizer.@Nullable Unit take(int room, boolean whole) {
             int count = Math.min(room, left);
             if (count == 0) {
               return null;
             }
             left -= count;
-            return new byte[count];
+            return Packetizer.Unit.of(new byte[count]);
           }
         };
     assertThat(Packetizer.pack(new byte[0], List.of(strip), payload)).hasSize(packets);
