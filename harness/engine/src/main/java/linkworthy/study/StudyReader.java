@@ -261,7 +261,8 @@ public final class StudyReader {
     Link free = pictures.hasAllPlanes() ? link.less(1) : link;
     for (YamlNode entry : root.get("codecs").items()) {
       Protection protection = entry.find(PROTECT).map(protections::read).orElse(usual);
-      int left = free.payloadBytes() - protection.overheadBytes();
+      int overhead = protection.overheadBytes(link.payloadBytes());
+      int left = free.payloadBytes() - overhead;
       if (left < Link.MIN_PAYLOAD) {
         throw entry.refuse(
             "has only "
@@ -270,11 +271,11 @@ public final class StudyReader {
                 + " accepted: at least "
                 + Link.MIN_PAYLOAD
                 + ", so payload-bytes of at least "
-                + (link.payloadBytes() + Link.MIN_PAYLOAD - left));
+                + protection.leastPayload(
+                    Link.MIN_PAYLOAD + link.payloadBytes() - free.payloadBytes()));
       }
       boolean named = entry.find("label").isPresent();
-      for (Codec codec :
-          reader.read(entry.without(PROTECT), free.less(protection.overheadBytes()))) {
+      for (Codec codec : reader.read(entry.without(PROTECT), free.less(overhead))) {
         CodecChoice choice =
             named
                 ? new CodecChoice(codec.label(), codec, protection)
