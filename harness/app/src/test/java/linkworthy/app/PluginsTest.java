@@ -10,7 +10,9 @@ import java.security.NoSuchAlgorithmException;
 import java.util.HexFormat;
 import java.util.List;
 import java.util.Map;
+import linkworthy.codec.Confinement;
 import linkworthy.results.ResultsFolder;
+import linkworthy.results.RunRecord;
 import linkworthy.statistics.Cell;
 import linkworthy.trial.Trial;
 import org.junit.jupiter.api.Test;
@@ -333,7 +335,13 @@ class PluginsTest {
             assertThat(trial.outage()).isEqualTo(!whole);
           }
         });
-    assertThat(results.run().programs()).hasSize(1);
+    String confinement = Confinement.ofThisMachine().id();
+    assertThat(results.run().programs())
+        .containsExactly(new RunRecord.ProgramUsed("command cp truncate", "cp", confinement));
+    assertThat(run.err().lines().filter(line -> line.startsWith("linkworthy: commands run ")))
+        .containsExactly("linkworthy: " + Confinement.ofThisMachine().sentence());
+    assertThat(Files.readString(home.resolve("out/run.json")))
+        .contains("\"confinement\" : \"" + confinement + "\"");
     assertThat(Files.readString(home.resolve("out/report.html")))
         .contains("codec command cp truncate", "runs an external program, cp");
     assertThat(CommandLineRun.of(home, "report", home.resolve("out").toString()).exitCode())
