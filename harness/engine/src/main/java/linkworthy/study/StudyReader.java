@@ -286,7 +286,7 @@ public final class StudyReader {
                   + choice.label()
                   + "' a second time; remove it, or add label: to tell the two apart");
         }
-        if (pictures.hasAllPlanes() && codec.settings().containsKey("bits-per-pixel")) {
+        if (pictures.hasAllPlanes() && entry.find("bits-per-pixel").isPresent()) {
           throw entry.refuse(
               "aims at bits-per-pixel, which several planes share; accepted with 'planes: luma'");
         }
