@@ -51,7 +51,8 @@ public final class TransformCodecFamily implements CodecFamily {
           side:  side of a block in samples, 2 to 64 (8); wht: a power of two, rows likewise
           keep:  components K; a list means one codec for each. mean takes 0 (means alone) or all
           share: instead of keep, the share of the variance that the components must reach
-          bits-per-pixel: instead of keep, as many components as fit into these sent bits
+          bits-per-pixel: instead of keep, as many components as fit into these sent bits; each
+                 packet counts once, protection's copies, parity and tries come on top
           noise-floor: instead of keep, the standard deviation of the noise in grey levels, or true
                  if it is unknown: the components above it (pca)
           step:  quantiser step in grey levels, or none for 32-bit floats (8)
