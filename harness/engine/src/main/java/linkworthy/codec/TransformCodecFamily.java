@@ -8,6 +8,7 @@ import java.util.regex.Matcher;
 import java.util.regex.Pattern;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
+import linkworthy.link.PartNumber;
 
 /** Reads transform codecs from a study: {@code transform: pca}, {@code over: rows} and so on. */
 public final class TransformCodecFamily implements CodecFamily {
@@ -79,12 +80,12 @@ public final class TransformCodecFamily implements CodecFamily {
           .get("label")
           .refuse("names several codecs; accepted: one keep and one step with a label");
     }
-    if (grid.isPresent() && link.payloadBytes() < Link.MIN_PAYLOAD + TiledCodec.OVERHEAD_BYTES) {
+    if (grid.isPresent() && link.payloadBytes() < Link.MIN_PAYLOAD + PartNumber.BYTES) {
       throw entry.refuse(
           "numbers its tiles in each packet, and of payload-bytes only "
               + link.payloadBytes()
               + " are left for it; accepted: at least "
-              + (Link.MIN_PAYLOAD + TiledCodec.OVERHEAD_BYTES)
+              + (Link.MIN_PAYLOAD + PartNumber.BYTES)
               + ", so a larger payload-bytes or no tiles");
     }
     List<Codec> codecs = new ArrayList<>();
@@ -95,12 +96,7 @@ public final class TransformCodecFamily implements CodecFamily {
                 ? new TiledCodec(
                     grid.get(),
                     new TransformCodec(
-                        "",
-                        arrangement,
-                        basis,
-                        keep,
-                        quantization,
-                        link.less(TiledCodec.OVERHEAD_BYTES)),
+                        "", arrangement, basis, keep, quantization, link.less(PartNumber.BYTES)),
                     link,
                     label)
                 : new TransformCodec(label, arrangement, basis, keep, quantization, link));

@@ -21,6 +21,7 @@ import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
+import linkworthy.link.PartNumber;
 import linkworthy.link.Protection;
 import linkworthy.noise.Site;
 import linkworthy.quality.QualityMeasure;
@@ -258,7 +259,7 @@ public final class StudyReader {
     Protection usual = protections.read(given(root, DEFAULTS, PROTECT));
     List<CodecChoice> all = new ArrayList<>();
     Set<String> labels = new HashSet<>();
-    Link free = pictures.hasAllPlanes() ? link.less(1) : link;
+    Link free = pictures.hasAllPlanes() ? link.less(PartNumber.BYTES) : link;
     for (YamlNode entry : root.get("codecs").items()) {
       Protection protection = entry.find(PROTECT).map(protections::read).orElse(usual);
       int overhead = protection.overheadBytes(link.payloadBytes());
