@@ -17,6 +17,11 @@ import org.jspecify.annotations.Nullable;
  * stop-and-wait: the receiver acknowledges every copy that arrives, an acknowledgement is never
  * lost and takes no place among the transmissions, and while no copy of a packet has arrived all
  * copies are sent again at once, before any other packet.
+ *
+ * <p>A {@link HammingCode} stands closest to the air: it codes the bits of every transmission,
+ * copies and parity included, and sets them right as they arrive. Which transmissions are coded is
+ * taken to be known from the link's header, which arrives as it was sent. A frame check of the air
+ * comes first and drops what is hit before the code sees it.
  */
 public final class Channel {
   private final Link link;
@@ -158,7 +163,7 @@ public final class Channel {
       int before = arrived.size();
       for (int i = 0; i < tries && arrived.size() == before; i++) {
         for (int copy = 0; copy < copies; copy++) {
-          transmit(payload, node);
+          transmit(payload, node, rule == null ? null : rule.hamming());
         }
       }
       if (rule != null && rule.retransmit() > 0) {
@@ -168,14 +173,15 @@ public final class Channel {
       }
     }
 
-    private void transmit(byte[] payload, int node) {
-      byte[] got = air.carry(sent, node, payload);
+    private void transmit(byte[] payload, int node, @Nullable HammingCode code) {
+      byte[] onAir = code == null ? payload : code.encode(payload);
+      byte[] got = air.carry(sent, node, onAir);
       sent = Math.incrementExact(sent);
-      long bits = 8L * payload.length;
+      long bits = 8L * onAir.length;
       payloadBits += bits;
       count(node, new Traffic(link.sentBits(1, bits) + air.checkBits(), 0));
       if (got != null) {
-        arrived.add(got);
+        arrived.add(got == onAir ? payload : code == null ? got : code.decode(got));
       }
     }
 

@@ -157,9 +157,7 @@ final class UnitRunner {
     for (CodecChoice choice : codecs) {
       GuardedCodec codec =
           new GuardedCodec(
-              choice.codec(),
-              study.link().less(choice.protection().overheadBytes()),
-              subject.coding());
+              choice.codec(), study.link().less(overheadBytes(choice)), subject.coding());
       long start = System.nanoTime();
       Seen seen = choice.codec().hasHelpers() ? afterRawHop : circumstances.seen();
       GuardedCodec.Sent sent = encode(choice, codec, seen);
@@ -206,7 +204,7 @@ final class UnitRunner {
     return seen.memos()
         .get(0)
         .once(
-            EncodingKey.of(choice),
+            encodingKey(choice),
             GuardedCodec.Sent.class,
             () -> codec.encode(seen.planes(), seen.memos()));
   }
@@ -220,7 +218,7 @@ final class UnitRunner {
     return seen.memos()
         .get(0)
         .once(
-            new IntactKey(EncodingKey.of(choice)),
+            new IntactKey(encodingKey(choice)),
             Judged.class,
             () -> judge(codec.decodeAll(subject.shapes(), sent)));
   }
@@ -317,13 +315,18 @@ final class UnitRunner {
     return figures;
   }
 
-  private record EncodingKey(Map<String, Object> settings, int overheadBytes) {
-    static EncodingKey of(CodecChoice choice) {
-      Map<String, Object> settings = new HashMap<>(choice.codec().settings());
-      settings.remove("label");
-      return new EncodingKey(settings, choice.protection().overheadBytes());
-    }
+  /** Bytes of each payload that protection takes from the codec. */
+  private int overheadBytes(CodecChoice choice) {
+    return choice.protection().overheadBytes(study.link().payloadBytes());
   }
+
+  private EncodingKey encodingKey(CodecChoice choice) {
+    Map<String, Object> settings = new HashMap<>(choice.codec().settings());
+    settings.remove("label");
+    return new EncodingKey(settings, overheadBytes(choice));
+  }
+
+  private record EncodingKey(Map<String, Object> settings, int overheadBytes) {}
 
   private record IntactKey(EncodingKey encoding) {}
 }
