@@ -174,10 +174,10 @@ class ProtectedTrialsTest {
     Plan plan = Plan.of(StudyReader.read(YamlNode.parse("small.yaml", PROTECTED), Path.of("")));
     Subject subject = new Subject(plan.planes(plan.pictures().get(0)), plan.study());
     new UnitRunner(plan.study(), subject, plan.unit(0)).run();
-    int analysesAndSymbols = 2 + 2;
+    int analysesSymbolsAndPictures = 2 + 2 + 2;
     int encodings = 2 + 2;
     int looks = 2;
-    assertThat(subject.memo().computed()).isEqualTo(analysesAndSymbols + encodings + looks);
+    assertThat(subject.memo().computed()).isEqualTo(analysesSymbolsAndPictures + encodings + looks);
   }
 
   /**
