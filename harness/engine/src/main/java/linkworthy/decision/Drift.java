@@ -14,6 +14,7 @@ import linkworthy.input.Unavailable;
 import linkworthy.results.ResultsFolder;
 import linkworthy.results.TrialsCsv;
 import linkworthy.statistics.Holm;
+import linkworthy.trial.Trial;
 
 /**
  * Two runs compared cell by cell: what moved, what stayed the same within a tolerance, and what the
@@ -101,6 +102,25 @@ public final class Drift {
     } catch (IOException e) {
       throw Unavailable.cannot("read " + file, e);
     }
+  }
+
+  /**
+   * Compares the trials of two runs, of which nothing else is known.
+   *
+   * @param unchangedPictures ids of the pictures that are the same in both
+   * @param sameNoise whether equal replicates of these pictures met the same noise in a cell
+   * @param toleranceDb smallest difference of mean PSNR that matters, 0 to 100 dB
+   * @throws IllegalArgumentException if the tolerance is outside its range, or a picture has a
+   *     replicate of a cell twice
+   */
+  public static Drift between(
+      Iterable<Trial> old,
+      Iterable<Trial> now,
+      Set<String> unchangedPictures,
+      Predicate<CellKey> sameNoise,
+      double toleranceDb) {
+    return between(
+        RunFigures.of(old), RunFigures.of(now), unchangedPictures, sameNoise, toleranceDb);
   }
 
   static Drift between(
