@@ -68,13 +68,14 @@ public final class Drift {
    * Compares two records.
    *
    * @param toleranceDb smallest difference of mean PSNR that matters, 0 to 100 dB
-   * @throws BadInput if a run is not complete, a file cannot be used, or no cell is in both
+   * @throws BadInput if a run is not complete, contradicts itself or cannot be read, or no cell is
+   *     in both
    * @throws Unavailable if a file cannot be read
    * @throws IllegalArgumentException if the tolerance is outside its range
    */
   public static Drift between(ResultsFolder old, ResultsFolder now, double toleranceDb) {
-    RunFigures.requireComplete(old);
-    RunFigures.requireComplete(now);
+    old.requireComplete();
+    now.requireComplete();
     Circumstances before = Circumstances.of(old);
     Circumstances after = Circumstances.of(now);
     Drift drift =
