@@ -1,5 +1,7 @@
 package linkworthy.trial;
 
+import java.util.concurrent.ConcurrentHashMap;
+import java.util.concurrent.ConcurrentMap;
 import org.apache.commons.statistics.distribution.TDistribution;
 
 /**
@@ -25,6 +27,8 @@ final class NoiseWidth {
   private static final int FEWEST = 5;
   private static final int RESERVE = 10;
   private static final double STEEPNESS = 3;
+
+  private static final ConcurrentMap<Long, Double> QUANTILES = new ConcurrentHashMap<>();
 
   private long count;
   private double first;
@@ -62,7 +66,8 @@ final class NoiseWidth {
     }
     double scatter = squares - sum * sum / count;
     return Double.isFinite(scatter)
-        ? quantile() * Math.sqrt(Math.max(0, scatter) / (count - 1) / counted())
+        ? QUANTILES.computeIfAbsent(count, NoiseWidth::quantile)
+            * Math.sqrt(Math.max(0, scatter) / (count - 1) / counted())
         : Double.POSITIVE_INFINITY;
   }
 
@@ -74,7 +79,7 @@ final class NoiseWidth {
     return counted;
   }
 
-  private double quantile() {
+  private static double quantile(long count) {
     double t = TDistribution.of(count - 1.0).inverseSurvivalProbability(TAIL);
     return Math.rint(t * DECIMALS) / DECIMALS;
   }
