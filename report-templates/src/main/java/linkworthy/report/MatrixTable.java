@@ -42,11 +42,13 @@ record MatrixTable(String part, List<Head> families, List<Column> columns, List<
         figure -> new Cell(Numbers.percent(figure.outageRate()), outageRange(figure), "", "", ""));
   }
 
+  /** Short, as it stands in every column. */
   private static String outageRange(Figure figure) {
     Figure.Evidence evidence = figure.evidence();
     return Double.isNaN(evidence.outageLow())
         ? ""
-        : Numbers.percent(evidence.outageLow()) + " to " + Numbers.percent(evidence.outageHigh());
+        : Numbers.percent(evidence.outageLow()).replace(" %", "\u2013")
+            + Numbers.percent(evidence.outageHigh()).replace(" %", "");
   }
 
   private static List<MatrixTable> of(

@@ -382,7 +382,13 @@ class DriftCommandTest {
             SmallStudy.TEXT
                 .replace("name: small", "name: other")
                 .replaceAll("(?s)codecs:.*", "codecs: [{transform: mean, step: 9}]"));
-    assertRefused(2, List.of("no cell in common"), "drift", first.toString(), other.toString());
+    assertRefused(
+        2,
+        List.of(
+            "no cell in common", "study 'small', 'other'; ", "codec pca rows K2", " and 4 more"),
+        "drift",
+        first.toString(),
+        other.toString());
     assertRefused(2, List.of("several studies (other, small)"), "drift", "--over", shared + "");
   }
 

@@ -8,6 +8,7 @@ import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Set;
 import java.util.function.Predicate;
+import java.util.stream.Collectors;
 import linkworthy.input.BadInput;
 import linkworthy.input.Require;
 import linkworthy.input.Unavailable;
@@ -44,6 +45,7 @@ public final class Drift {
   public static final double ALPHA = 0.05;
 
   private static final double MAX_TOLERANCE_DB = 100;
+  private static final int CHANGES_TOLD = 4;
 
   private final List<Change> changes;
   private final List<CellDrift> cells;
@@ -85,15 +87,32 @@ public final class Drift {
             after.unchangedPictures(before),
             cell -> after.hasNoiseOf(before, cell),
             toleranceDb);
+    List<Change> changes = after.since(before);
     if (drift.cells.isEmpty()) {
       throw new BadInput(
           now.path()
               + " has no cell in common with "
               + old.path()
+              + ": "
+              + words(changes)
               + "; accepted: two runs that share an impairment at a severity and a codec");
     }
-    return new Drift(
-        after.since(before), drift.cells, drift.onlyOld, drift.onlyNew, sameBytes(old, now));
+    return new Drift(changes, drift.cells, drift.onlyOld, drift.onlyNew, sameBytes(old, now));
+  }
+
+  private static String words(List<Change> changes) {
+    String first =
+        changes.stream()
+            .limit(CHANGES_TOLD)
+            .map(
+                change -> change.what() + " " + said(change.before()) + ", " + said(change.after()))
+            .collect(Collectors.joining("; "));
+    int more = changes.size() - CHANGES_TOLD;
+    return "they differ in " + first + (more > 0 ? " and " + more + " more" : "");
+  }
+
+  private static String said(String setting) {
+    return setting.isEmpty() ? "absent" : "'" + setting + "'";
   }
 
   private static boolean sameBytes(ResultsFolder old, ResultsFolder now) {
