@@ -4,6 +4,7 @@ import java.util.List;
 import java.util.Map;
 import java.util.Set;
 import linkworthy.input.BadInput;
+import linkworthy.input.Key;
 import org.apache.commons.rng.UniformRandomProvider;
 
 /**
@@ -46,6 +47,11 @@ public final class NodeOutage implements NoiseProcess {
   @Override
   public Map<String, Double> parameters() {
     return Map.of();
+  }
+
+  @Override
+  public List<Key> keys() {
+    return List.of(SeverityChecks.axis(OUTAGE_RATE, 0, 1, "share of nodes that fail"));
   }
 
   @Override
