@@ -26,6 +26,7 @@ public final class ReportRenderer {
 
   private final TemplateEngine engine = new TemplateEngine();
   private final String style = resource("report.css").replace("\r", "");
+  private final String pages = resource("pages.css").replace("\r", "");
 
   public ReportRenderer() {
     ClassLoaderTemplateResolver resolver =
@@ -64,11 +65,29 @@ public final class ReportRenderer {
     return process("shortlist.html", context);
   }
 
+  /** A start page over runs as HTML text, under the same rules. */
+  public String render(IndexPage page) {
+    Context context = context(style + pages);
+    context.setVariable("page", page);
+    return process("index.html", context);
+  }
+
+  /** A page of the handbook as HTML text; its content is taken as it is. */
+  public String render(HandbookPage page) {
+    Context context = context(style + pages);
+    context.setVariable("page", page);
+    return process("handbook.html", context);
+  }
+
   private String process(String template, Context context) {
     return printable(engine.process(template, context));
   }
 
   private Context context() {
+    return context(style);
+  }
+
+  private static Context context(String style) {
     Context context = new Context(Locale.ROOT);
     context.setVariable("style", style);
     context.setVariable(
