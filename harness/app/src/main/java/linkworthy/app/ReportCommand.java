@@ -43,12 +43,26 @@ final class ReportCommand implements Runnable {
 
   @Override
   public void run() {
-    Path file = out == null ? folder.resolve(index ? RunsIndex.FILE : ResultsFolder.REPORT) : out;
+    if (index) {
+      writeIndex();
+      return;
+    }
+    Path file = out == null ? folder.resolve(ResultsFolder.REPORT) : out;
+    requireNoFolder(file);
+    FolderFiles.replace(file, Reports.html(ResultsFolder.open(folder)));
+    surroundings.out().println("report: " + file);
+  }
+
+  private void writeIndex() {
+    Path file = out == null ? folder.resolve(RunsIndex.FILE) : out;
+    requireNoFolder(file);
+    FolderFiles.replace(file, RunsIndex.html(folder, file));
+    surroundings.out().println("page: " + file);
+  }
+
+  private static void requireNoFolder(Path file) {
     if (Files.isDirectory(file)) {
       throw new BadInput("--out is the folder " + file + "; accepted: a file");
     }
-    FolderFiles.replace(
-        file, index ? RunsIndex.html(folder, file) : Reports.html(ResultsFolder.open(folder)));
-    surroundings.out().println((index ? "page: " : "report: ") + file);
   }
 }
