@@ -127,6 +127,6 @@ public record KeyGroup(String name, List<Key> keys, List<String> exactlyOneOf, S
         (key.what().isEmpty() ? "" : key.what() + ": ")
             + key.kind().words()
             + (key.isRequired() ? "" : "; default: " + key.usual());
-    return text.replaceAll("\\[([^\\]]+)\\]\\(#[^)]*\\)", "$1").replace("`", "");
+    return text.replaceAll("\\[([^\\]]+)\\]\\([^)]*#[^)]*\\)", "$1").replace("`", "");
   }
 }

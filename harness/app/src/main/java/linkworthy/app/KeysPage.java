@@ -146,7 +146,8 @@ final class KeysPage {
                 table(keys.keys());
               });
       if (family.id().equals("command")) {
-        say("\nRuns only with `--allow-commands`. Keys of the group `command`:\n");
+        say(
+            "\nRuns only with `--allow-commands`; [confined](methods.md#plugins-and-programs) where the machine can. Keys of the group `command`:\n");
         KeyGroup keys = family.keys().orElseThrow();
         table(((KeyGroup) keys.kind(family.id())).keys());
       }
@@ -160,11 +161,14 @@ final class KeysPage {
 
         ## Protect
 
-        `none`, a group, or a list of groups for classes of their own. A group has one or more of the first three keys.
+        `none`, a group, or a list of groups for classes of their own. A group has `repeat`, `reed-solomon`,
+        `hamming`, `retransmit` or several of them.
         """);
     table(StudyKeys.protection().keys());
     say("\nKeys of the group `reed-solomon`:\n");
     table(StudyKeys.codeKeys().keys());
+    say("\nKeys of the group `hamming`:\n");
+    table(StudyKeys.hammingKeys().keys());
     say("\n## Link\n");
     table(StudyKeys.link().keys());
     say(
@@ -172,6 +176,8 @@ final class KeysPage {
     table(StudyKeys.node().keys());
     say("\nKeys of a profile, in the group or in a file:\n");
     table(NodeProfile.KEYS.keys());
+    say("\nKeys of the group `sent-nj-per-bit`:\n");
+    table(NodeProfile.Radio.KEYS.keys());
     say("\n## Noise model files\n");
     NoiseProcess first = NoiseProcesses.find("gaussian");
     table(NoiseModel.group(first).keys().stream().map(KeysPage::ofAnyProcess).toList());

@@ -121,7 +121,7 @@ class HandbookInBrowserTest {
           .doesNotContain("<script", "src=\"http");
       Matcher link = Pattern.compile("href=\"([^\"#]*)(?:#([^\"]*))?\"").matcher(html);
       while (link.find()) {
-        if (link.group(1).startsWith("data:")) {
+        if (link.group(1).matches("(data:|https://).*")) {
           continue;
         }
         Path to = link.group(1).isEmpty() ? page : page.resolveSibling(link.group(1));

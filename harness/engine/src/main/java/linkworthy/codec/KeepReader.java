@@ -40,7 +40,7 @@ final class KeepReader {
             "bits-per-pixel",
             new Kind.OneOrMore(RATE),
             OTHERS,
-            "sent bits over samples, with `planes: luma`"),
+            "sent bits over samples, [before protection](methods.md#which-k), with `planes: luma`"),
         Key.optional(
             "noise-floor",
             new Kind.OneOrMore(NOISE_FLOOR),

@@ -10,7 +10,8 @@ import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
 
 /**
- * How many bits a codec may send of a picture, packet headers included.
+ * How many bits a codec may send of a picture, packet headers included, before protection: every
+ * packet counts once, with the bytes that protection takes from it.
  *
  * @param bitsPerPixel above 0, up to 64
  */
@@ -25,7 +26,7 @@ record RateTarget(double bitsPerPixel) {
           "bits-per-pixel",
           new Kind.OneOrMore(KIND),
           "none",
-          "in place of the key above: sent bits over samples, with `planes: luma`");
+          "in place of the key above: sent bits over samples, [before protection](methods.md#which-k), with `planes: luma`");
 
   RateTarget {
     Require.inRange(bitsPerPixel, Double.MIN_VALUE, LARGEST, "bits-per-pixel (bits)");

@@ -16,6 +16,7 @@ import linkworthy.input.Kind;
 import linkworthy.input.Require;
 import linkworthy.input.Spelling;
 import linkworthy.input.YamlNode;
+import org.jspecify.annotations.Nullable;
 
 /**
  * What a node's work costs it: the energy of computing, sending and receiving, and what it has of
@@ -30,6 +31,7 @@ import linkworthy.input.YamlNode;
  * @param kilobitsPerSecond bit rate on the air, in kbit/s
  * @param batteryJoules usable energy of the battery, in joules
  * @param source where the numbers come from
+ * @param radio the model that the energy to send a bit follows from; null where it is given itself
  */
 public record NodeProfile(
     String id,
@@ -40,7 +42,8 @@ public record NodeProfile(
     double ramKib,
     double kilobitsPerSecond,
     double batteryJoules,
-    String source) {
+    String source,
+    @Nullable Radio radio) {
   private static final String ID = "[a-z][a-z0-9-]{0,63}";
   private static final String FOLDER = "/linkworthy/noise/library/nodes/";
   private static final Kind.Real NOT_NEGATIVE =
@@ -56,7 +59,10 @@ public record NodeProfile(
               "id",
               new Kind.Text(ID, "lower-case letters, digits and hyphens, a letter first"),
               "name in reports"),
-          Key.required("sent-nj-per-bit", NOT_NEGATIVE, "energy to send a bit, nJ"),
+          Key.required(
+              "sent-nj-per-bit",
+              new Kind.GroupOr(Radio.KEYS, NOT_NEGATIVE),
+              "energy to send a bit, nJ"),
           Key.required("received-nj-per-bit", NOT_NEGATIVE, "energy to receive a bit, nJ"),
           Key.required("mac-nj", NOT_NEGATIVE, "energy of a multiply-accumulate, nJ"),
           Key.required("sleep-mw", NOT_NEGATIVE, "power between pictures, mW"),
@@ -68,7 +74,7 @@ public record NodeProfile(
 
   /**
    * @throws IllegalArgumentException if a figure is negative or not finite, or the memory, bit rate
-   *     or battery is 0
+   *     or battery is 0, or the energy to send a bit is not that of the radio
    */
   public NodeProfile {
     Require.notNegative(sentNanojoules, "sent-nj-per-bit (nJ)");
@@ -78,6 +84,98 @@ public record NodeProfile(
     Require.positive(ramKib, "ram-kib (KiB)");
     Require.positive(kilobitsPerSecond, "kbit-per-second (kbit/s)");
     Require.positive(batteryJoules, "battery-j (J)");
+    if (radio != null && radio.sentNanojoules() != sentNanojoules) {
+      throw new IllegalArgumentException(
+          "sent-nj-per-bit is " + sentNanojoules + " and the radio's " + radio.sentNanojoules());
+    }
+  }
+
+  /** A profile that gives the energy to send a bit itself. */
+  public NodeProfile(
+      String id,
+      double sentNanojoules,
+      double receivedNanojoules,
+      double macNanojoules,
+      double sleepMilliwatts,
+      double ramKib,
+      double kilobitsPerSecond,
+      double batteryJoules,
+      String source) {
+    this(
+        id,
+        sentNanojoules,
+        receivedNanojoules,
+        macNanojoules,
+        sleepMilliwatts,
+        ramKib,
+        kilobitsPerSecond,
+        batteryJoules,
+        source,
+        null);
+  }
+
+  /**
+   * A radio whose amplifier has two regimes: a bit over d metres costs {@code electronics + near
+   * d^2} up to {@code d0 = sqrt(near / far)}, where the two meet, and {@code electronics + far d^4}
+   * beyond (Heinzelman, Chandrakasan and Balakrishnan, IEEE Transactions on Wireless Communications
+   * 1(4), 2002, from memory: free space, then two-ray ground propagation).
+   *
+   * @param electronicsNanojoules nanojoules a bit, from 0
+   * @param nearPicojoules picojoules a bit and square metre, above 0
+   * @param farPicojoules picojoules a bit and metre to the fourth, above 0
+   * @param metres distance, from 0
+   */
+  public record Radio(
+      double electronicsNanojoules, double nearPicojoules, double farPicojoules, double metres) {
+    /** The keys of a radio. */
+    public static final KeyGroup KEYS =
+        KeyGroup.of(
+            "radio",
+            Key.required(
+                "electronics-nj", NOT_NEGATIVE, "energy of a bit before the amplifier, nJ"),
+            Key.required(
+                "near-pj-per-m2", POSITIVE, "amplifier up to √(near/far) m, pJ a bit and m²"),
+            Key.required("far-pj-per-m4", POSITIVE, "amplifier beyond, pJ a bit and m⁴"),
+            Key.required("distance-m", NOT_NEGATIVE, "metres to the receiver"));
+
+    public Radio {
+      Require.notNegative(electronicsNanojoules, "electronics-nj (nJ)");
+      Require.positive(nearPicojoules, "near-pj-per-m2 (pJ/m^2)");
+      Require.positive(farPicojoules, "far-pj-per-m4 (pJ/m^4)");
+      Require.notNegative(metres, "distance-m (m)");
+    }
+
+    private static Radio parse(YamlNode group) {
+      return new Radio(
+          NOT_NEGATIVE.read(group.get("electronics-nj")),
+          POSITIVE.read(group.get("near-pj-per-m2")),
+          POSITIVE.read(group.get("far-pj-per-m4")),
+          NOT_NEGATIVE.read(group.get("distance-m")));
+    }
+
+    private Map<String, Object> settings() {
+      Map<String, Object> settings = new LinkedHashMap<>();
+      settings.put("electronics-nj", electronicsNanojoules);
+      settings.put("near-pj-per-m2", nearPicojoules);
+      settings.put("far-pj-per-m4", farPicojoules);
+      settings.put("distance-m", metres);
+      return settings;
+    }
+
+    /** The distance d0 at which the regimes meet, in metres. */
+    public double crossoverMetres() {
+      return Math.sqrt(nearPicojoules / farPicojoules);
+    }
+
+    /** Energy to send a bit, in nanojoules. */
+    public double sentNanojoules() {
+      double squared = metres * metres;
+      return electronicsNanojoules
+          + (metres <= crossoverMetres()
+                  ? nearPicojoules * squared
+                  : farPicojoules * squared * squared)
+              / 1000;
+    }
   }
 
   /** Ids of the shipped profiles. */
@@ -113,23 +211,26 @@ public record NodeProfile(
    */
   public static NodeProfile parse(YamlNode root) {
     KEYS.check(root);
+    YamlNode sent = root.get("sent-nj-per-bit");
+    Radio radio = sent.isMapping() ? Radio.parse(sent) : null;
     return new NodeProfile(
         root.get("id").text(),
-        NOT_NEGATIVE.read(root.get("sent-nj-per-bit")),
+        radio == null ? NOT_NEGATIVE.read(sent) : radio.sentNanojoules(),
         NOT_NEGATIVE.read(root.get("received-nj-per-bit")),
         NOT_NEGATIVE.read(root.get("mac-nj")),
         NOT_NEGATIVE.read(root.get("sleep-mw")),
         POSITIVE.read(root.get("ram-kib")),
         POSITIVE.read(root.get("kbit-per-second")),
         POSITIVE.read(root.get("battery-j")),
-        root.get("source").text());
+        root.get("source").text(),
+        radio);
   }
 
   /** The profile as a file writes it, in a fixed order. */
   public Map<String, Object> settings() {
     Map<String, Object> settings = new LinkedHashMap<>();
     settings.put("id", id);
-    settings.put("sent-nj-per-bit", sentNanojoules);
+    settings.put("sent-nj-per-bit", radio == null ? sentNanojoules : radio.settings());
     settings.put("received-nj-per-bit", receivedNanojoules);
     settings.put("mac-nj", macNanojoules);
     settings.put("sleep-mw", sleepMilliwatts);

@@ -6,6 +6,7 @@ import java.util.List;
 import java.util.Locale;
 import java.util.Set;
 import linkworthy.input.YamlNode;
+import linkworthy.link.HammingCode;
 import linkworthy.link.Importance;
 import linkworthy.link.Link;
 import linkworthy.link.Protection;
@@ -13,7 +14,9 @@ import org.jspecify.annotations.Nullable;
 
 /** Reads the value of {@code protect}. */
 final class ProtectionReader {
-  private static final List<String> PARTS = List.of("repeat", "reed-solomon", "retransmit");
+  private static final List<String> PARTS =
+      List.of("repeat", "reed-solomon", "hamming", "retransmit");
+
   private final YamlNode defaults;
   private final Link link;
 
@@ -37,14 +40,14 @@ final class ProtectionReader {
       rules.add(rule(group, taken));
     }
     Protection protection = new Protection(rules);
-    int least = Link.MIN_PAYLOAD + protection.overheadBytes();
+    int least = protection.leastPayload(Link.MIN_PAYLOAD);
     if (link.payloadBytes() < least) {
       throw node.refuse(
           "takes up to "
-              + protection.overheadBytes()
+              + protection.overheadBytes(link.payloadBytes())
               + " bytes of a payload, and payload-bytes is "
               + link.payloadBytes()
-              + "; accepted: no reed-solomon, or payload-bytes of at least "
+              + "; accepted: no reed-solomon and no hamming, or payload-bytes of at least "
               + least);
     }
     return protection;
@@ -64,6 +67,7 @@ final class ProtectionReader {
         classes(group, taken),
         StudyKeys.REPEAT.read(given(group, "repeat")),
         code(given(group, "reed-solomon")),
+        hamming(given(group, "hamming")),
         retransmit,
         StudyKeys.ACK.read(given(group, "ack-bytes")));
   }
@@ -99,5 +103,9 @@ final class ProtectionReader {
       throw node.get("k").refuse("is " + k + "; accepted: 1 to " + (n - 1) + ", below n");
     }
     return new Protection.ErasureCode(n, k, StudyKeys.DEPTH.read(given(node, "depth")));
+  }
+
+  private @Nullable HammingCode hamming(YamlNode node) {
+    return node.isMapping() ? new HammingCode(StudyKeys.DEPTH.read(given(node, "depth"))) : null;
   }
 }

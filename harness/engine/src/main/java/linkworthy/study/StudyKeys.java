@@ -103,7 +103,7 @@ public final class StudyKeys {
             "payload-bytes",
             PAYLOAD,
             "largest payload of a packet, bytes; at least 1 more with `planes: all` and with `over:"
-                + " tiles`, 7 more with `reed-solomon`, each on top of the others"),
+                + " tiles`, 7 more with `reed-solomon`, each on top of the others; with `hamming` 7/4 of all that"),
         usual("link", "header-bytes", HEADER, "overhead of each packet, bytes"),
         usual("link", "order", ORDER, "which coefficients share a packet"));
   }
@@ -123,6 +123,12 @@ public final class StudyKeys {
         "protect",
         usual("protection", "repeat", REPEAT, "copies of each packet in all"),
         usual("protection", "reed-solomon", code(), "erasure code across packets"),
+        usual(
+            "protection",
+            "hamming",
+            new Kind.WordOr(StudyWriter.NONE, hammingKeys(), "none, or a group with depth"),
+            "the code (7,4) on the bits of every transmission, for `bit-errors` without"
+                + " `frame-check` (the check drops a hit frame before the code can set it right)"),
         usual(
             "protection",
             "retransmit",
@@ -151,6 +157,13 @@ public final class StudyKeys {
         Key.required("n", N, "symbols of a code word"),
         Key.required("k", K, "data symbols among them, below n"),
         usual("protection", "depth", DEPTH, "distance between the symbols of a word, in packets"));
+  }
+
+  /** The keys of {@code hamming}. */
+  public static KeyGroup hammingKeys() {
+    return KeyGroup.of(
+        "hamming",
+        usual("protection", "depth", DEPTH, "distance between the bits of a word, in bits"));
   }
 
   static Kind.WordOr protect() {
