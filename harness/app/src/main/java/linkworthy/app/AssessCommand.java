@@ -1,6 +1,7 @@
 package linkworthy.app;
 
 import java.nio.file.Path;
+import java.util.ArrayList;
 import java.util.List;
 import java.util.concurrent.Callable;
 import linkworthy.codec.CodecFamilies;
@@ -30,12 +31,15 @@ import picocli.CommandLine.Parameters;
       "  linkworthy assess",
       "  linkworthy assess yard.yaml --set replicates=20 --set codecs.0.step=4",
       "  linkworthy assess yard.yaml --dry-run",
+      "  linkworthy assess yard.yaml --format json",
       "  linkworthy assess yard.yaml --plugins my-plugins --allow-commands",
       "  linkworthy assess --resume results/yard/20261201T101500Z-0123abcd"
     })
 final class AssessCommand implements Callable<Integer> {
   private static final String BUILT_IN = "first-look.yaml";
   static final int MAX_THREADS = 1024;
+  private static final String TEXT = "text";
+  private static final String JSON = "json";
 
   private final Surroundings surroundings;
 
@@ -83,7 +87,15 @@ final class AssessCommand implements Callable<Integer> {
 
   @Mixin private final CodecOptions codecs = new CodecOptions();
 
-  @Option(names = "--quiet", description = "Show no progress and no summary.")
+  @Option(
+      names = "--format",
+      paramLabel = "FORMAT",
+      completionCandidates = Formats.class,
+      description =
+          "What is printed at the end: text, or json: one document for scripts and nothing else.")
+  private String format = TEXT;
+
+  @Option(names = "--quiet", description = "Show no progress and no summary in words.")
   private boolean quiet;
 
   AssessCommand(Surroundings surroundings) {
@@ -95,6 +107,13 @@ final class AssessCommand implements Callable<Integer> {
     if (threads < 1 || threads > MAX_THREADS) {
       throw new BadInput("--threads is " + threads + "; accepted: 1 to " + MAX_THREADS);
     }
+    if (!new Formats().contains(format)) {
+      throw new BadInput("--format is '" + format + "'; accepted: text, json");
+    }
+    if (dryRun && format.equals(JSON)) {
+      throw new BadInput(
+          "--format json is given together with --dry-run; accepted: one of the two");
+    }
     if (resume != null) {
       return resume(resume);
     }
@@ -103,16 +122,31 @@ final class AssessCommand implements Callable<Integer> {
     }
   }
 
+  /** What {@code --format} accepts. */
+  static final class Formats extends ArrayList<String> {
+    private static final long serialVersionUID = 1;
+
+    Formats() {
+      super(List.of(TEXT, JSON));
+    }
+  }
+
   private int resume(Path folder) {
     refuseBesideResume();
     ResultsFolder stopped = ResultsFolder.openStopped(folder);
     if (stopped.isWhole()) {
-      surroundings.out().println(folder + " is complete; there is nothing to go on with");
+      boolean asJson = format.equals(JSON);
+      var words = asJson ? surroundings.err() : surroundings.out();
+      words.println(folder + " is complete; there is nothing to go on with");
       if (stopped.isUntidy()) {
         try (ResultsWriter writer = stopped.tidy()) {
           writer.writeReport(Reports.html(ResultsFolder.open(folder)));
         }
-        surroundings.out().println("report: " + folder.resolve(ResultsFolder.REPORT));
+        words.println("report: " + folder.resolve(ResultsFolder.REPORT));
+      }
+      if (asJson) {
+        surroundings.out().print(SummaryJson.of(ResultsFolder.open(folder)));
+        surroundings.out().flush();
       }
       return Main.DONE;
     }
@@ -141,7 +175,12 @@ final class AssessCommand implements Callable<Integer> {
   private int run(Plan plan, PluginFolder plugins, Path folder, Assessment.Start start) {
     String goOn =
         "linkworthy assess --resume " + CodecOptions.quoted(folder) + codecs.asArguments();
-    return new Assessment(surroundings, plan, plugins.jars(), folder, start, threads, quiet, goOn)
+    Assessment.Ending ending =
+        format.equals(JSON)
+            ? Assessment.Ending.JSON
+            : quiet ? Assessment.Ending.NOTHING : Assessment.Ending.TEXT;
+    return new Assessment(
+            surroundings, plan, plugins.jars(), folder, start, threads, quiet, ending, goOn)
         .run();
   }
 

@@ -28,7 +28,15 @@ final class Assessment {
   private final int threads;
   private final Start start;
   private final boolean quiet;
+  private final Ending ending;
   private final String goOn;
+
+  /** What is printed at the end of a run. */
+  enum Ending {
+    TEXT,
+    JSON,
+    NOTHING
+  }
 
   /** What is done with the folder. */
   enum Start {
@@ -48,6 +56,7 @@ final class Assessment {
       Start start,
       int threads,
       boolean quiet,
+      Ending ending,
       String goOn) {
     this.surroundings = surroundings;
     this.plan = plan;
@@ -56,6 +65,7 @@ final class Assessment {
     this.threads = threads;
     this.start = start;
     this.quiet = quiet;
+    this.ending = ending;
     this.goOn = goOn;
   }
 
@@ -111,7 +121,10 @@ final class Assessment {
       writer.finish(cells.toList(), writer.run().complete(done, surroundings.clock()));
       ResultsFolder results = ResultsFolder.open(folder);
       writer.writeReport(Reports.html(results));
-      if (!quiet) {
+      if (ending == Ending.JSON) {
+        surroundings.out().print(SummaryJson.of(results));
+        surroundings.out().flush();
+      } else if (ending == Ending.TEXT) {
         summarise(results);
       }
       return Main.DONE;

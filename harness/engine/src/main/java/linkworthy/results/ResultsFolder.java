@@ -1,6 +1,7 @@
 package linkworthy.results;
 
 import java.io.IOException;
+import java.io.UncheckedIOException;
 import java.nio.charset.CharacterCodingException;
 import java.nio.file.Files;
 import java.nio.file.Path;
@@ -9,10 +10,13 @@ import java.time.ZoneOffset;
 import java.time.format.DateTimeFormatter;
 import java.util.List;
 import java.util.Locale;
+import java.util.Objects;
 import java.util.function.Consumer;
+import java.util.stream.Stream;
 import linkworthy.codec.CodecFamilies;
 import linkworthy.codec.CodecReader;
 import linkworthy.input.BadInput;
+import linkworthy.input.Unavailable;
 import linkworthy.statistics.Cell;
 import linkworthy.study.Study;
 import linkworthy.study.StudyReader;
@@ -83,6 +87,35 @@ public final class ResultsFolder {
       requireFile(folder, CellsCsv.FILE);
     }
     return new ResultsFolder(folder, run);
+  }
+
+  /**
+   * Every folder below a folder, or the folder itself, that has the record of a run or a table of
+   * trials, in the order of the paths. Whether it can be used is another matter.
+   *
+   * @throws BadInput if there is no such folder
+   * @throws Unavailable if a folder cannot be read
+   */
+  public static List<Path> below(Path folder) {
+    if (!Files.isDirectory(folder)) {
+      throw new BadInput(
+          folder
+              + (Files.exists(folder) ? " is no folder" : " does not exist")
+              + "; accepted: a folder with results folders in it");
+    }
+    try (Stream<Path> paths = Files.walk(folder)) {
+      return paths
+          .filter(path -> path.endsWith(RunRecord.FILE) || path.endsWith(TrialsCsv.FILE))
+          .filter(Files::isRegularFile)
+          .map(path -> path.resolveSibling(""))
+          .distinct()
+          .sorted()
+          .toList();
+    } catch (UncheckedIOException e) {
+      throw Unavailable.cannot("read " + folder, Objects.requireNonNull(e.getCause()));
+    } catch (IOException e) {
+      throw Unavailable.cannot("read " + folder, e);
+    }
   }
 
   private static void requireFolder(Path folder) {
