@@ -118,7 +118,7 @@ final class AssessCommand implements Callable<Integer> {
     }
     try (PluginFolder plugins = codecs.open()) {
       Plan plan = Plan.of(stopped.unchangedStudy(codecs.families(plugins)));
-      return run(plan, plugins, folder, Assessment.Start.RESUME);
+      return run(plan, plugins, folder, ResultsFolder.Start.RESUME);
     }
   }
 
@@ -138,7 +138,7 @@ final class AssessCommand implements Callable<Integer> {
     }
   }
 
-  private int run(Plan plan, PluginFolder plugins, Path folder, Assessment.Start start) {
+  private int run(Plan plan, PluginFolder plugins, Path folder, ResultsFolder.Start start) {
     String goOn =
         "linkworthy assess --resume " + CodecOptions.quoted(folder) + codecs.asArguments();
     return new Assessment(surroundings, plan, plugins.jars(), folder, start, threads, quiet, goOn)
@@ -156,7 +156,7 @@ final class AssessCommand implements Callable<Integer> {
             ? out
             : ResultsFolder.defaultPath(
                 surroundings.home().resolve("results"), study, surroundings.clock());
-    Assessment.Start start = overwrite ? Assessment.Start.OVERWRITE : Assessment.Start.NEW;
+    ResultsFolder.Start start = overwrite ? ResultsFolder.Start.OVERWRITE : ResultsFolder.Start.NEW;
     return run(plan, plugins, folder, start);
   }
 
@@ -165,15 +165,8 @@ final class AssessCommand implements Callable<Integer> {
         file == null
             ? YamlNode.parse(BUILT_IN, Resources.text("studies/" + BUILT_IN))
             : YamlNode.read(file);
-    for (String setting : settings) {
-      int equals = setting.indexOf('=');
-      if (equals < 1) {
-        throw new BadInput("--set is '" + setting + "'; accepted: key.path=value");
-      }
-      root = root.with(setting.substring(0, equals), setting.substring(equals + 1));
-    }
     Path folder = file == null ? surroundings.home() : file.toAbsolutePath().getParent();
-    return StudyReader.read(root, folder == null ? Path.of("/") : folder, families);
+    return StudyReader.read(root.with(settings), folder == null ? Path.of("/") : folder, families);
   }
 
   private void printEstimate(Plan plan) {

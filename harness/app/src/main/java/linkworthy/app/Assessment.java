@@ -11,9 +11,8 @@ import linkworthy.results.RunRecord;
 import linkworthy.statistics.Cells;
 import linkworthy.trial.Course;
 import linkworthy.trial.LocalRunner;
-import linkworthy.trial.NodeTable;
+import linkworthy.trial.Mishaps;
 import linkworthy.trial.Plan;
-import linkworthy.trial.PredictionTable;
 
 /** One run of a plan into a results folder. */
 final class Assessment {
@@ -25,16 +24,9 @@ final class Assessment {
   private final List<PluginFolder.Jar> plugins;
   private final Path folder;
   private final int threads;
-  private final Start start;
+  private final ResultsFolder.Start start;
   private final boolean quiet;
   private final String goOn;
-
-  /** What is done with the folder. */
-  enum Start {
-    NEW,
-    OVERWRITE,
-    RESUME
-  }
 
   /**
    * @param goOn the command that takes the run up again once it has been stopped
@@ -44,7 +36,7 @@ final class Assessment {
       Plan plan,
       List<PluginFolder.Jar> plugins,
       Path folder,
-      Start start,
+      ResultsFolder.Start start,
       int threads,
       boolean quiet,
       String goOn) {
@@ -102,9 +94,7 @@ final class Assessment {
                     + goOn);
         return Main.ENVIRONMENT;
       }
-      writer.writeNodes(NodeTable.of(plan));
-      writer.writePredictions(PredictionTable.of(plan));
-      writer.finish(cells.toList(), writer.run().complete(done, surroundings.clock()));
+      writer.complete(plan, cells.toList(), writer.run().complete(done, surroundings.clock()));
       ResultsFolder results = ResultsFolder.open(folder);
       writer.writeReport(Reports.html(results));
       if (!quiet) {
@@ -129,24 +119,15 @@ final class Assessment {
                 plan.trials(),
                 surroundings.clock())
             .withPlugins(plugins);
-    if (start == Start.RESUME) {
-      return ResultsFolder.resume(
-          folder,
-          plan,
-          now,
-          trial -> {
-            cells.add(trial);
-            course.add(trial);
-          });
-    }
-    ResultsWriter writer = ResultsFolder.create(folder, start == Start.OVERWRITE);
-    try {
-      writer.begin(plan.study(), now);
-      return writer;
-    } catch (RuntimeException e) {
-      writer.close();
-      throw e;
-    }
+    return ResultsFolder.open(
+        folder,
+        start,
+        plan,
+        now,
+        trial -> {
+          cells.add(trial);
+          course.add(trial);
+        });
   }
 
   private void sayWhatIsKept(int units) {
