@@ -1,5 +1,6 @@
 package linkworthy.app;
 
+import java.io.PrintWriter;
 import java.nio.file.Path;
 import java.util.List;
 import java.util.concurrent.CountDownLatch;
@@ -98,7 +99,7 @@ final class Assessment {
       ResultsFolder results = ResultsFolder.open(folder);
       writer.writeReport(Reports.html(results));
       if (!quiet) {
-        summarise(results);
+        summarise(results, surroundings.out());
       }
       return Main.DONE;
     }
@@ -168,7 +169,7 @@ final class Assessment {
     }
   }
 
-  private static void release(Thread onSignal) {
+  static void release(Thread onSignal) {
     try {
       Runtime.getRuntime().removeShutdownHook(onSignal);
     } catch (IllegalStateException alreadyStopping) {
@@ -176,14 +177,14 @@ final class Assessment {
     }
   }
 
-  private void summarise(ResultsFolder results) {
-    var out = surroundings.out();
+  /** Prints the answer, the table and where the report is. */
+  static void summarise(ResultsFolder results, PrintWriter out) {
     Reports.answer(results).forEach(out::println);
     Reports.widths(results).ifPresent(out::println);
     out.println();
     for (String line : SummaryTable.of(results.cells())) {
       out.println(line);
     }
-    out.println("report: " + folder.resolve(ResultsFolder.REPORT));
+    out.println("report: " + results.path().resolve(ResultsFolder.REPORT));
   }
 }
