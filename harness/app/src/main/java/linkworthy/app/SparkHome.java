@@ -82,8 +82,10 @@ final class SparkHome {
    * @param java of this process
    */
   ProcessBuilder submit(Path java, String master, Path jar, List<String> arguments) {
+    String given = System.getenv("SPARK_CONF_DIR");
+    Path conf = given == null ? folder.resolve("conf") : Path.of(given);
     String log =
-        Files.exists(folder.resolve("conf/log4j2.properties"))
+        Files.exists(conf.resolve("log4j2.properties")) || Files.exists(conf.resolve("log4j2.xml"))
             ? ""
             : "-Dlog4j2.configurationFile=jar:" + jar.toUri() + "!/linkworthy/cluster/log4j2.xml";
     Path script = folder.resolve("bin/spark-submit");
@@ -98,7 +100,7 @@ final class SparkHome {
       command.addAll(
           List.of(
               "-cp",
-              folder.resolve("conf") + File.pathSeparator + folder.resolve("jars/*"),
+              conf + File.pathSeparator + folder.resolve("jars/*"),
               "org.apache.spark.deploy.SparkSubmit"));
     }
     command.addAll(List.of("--master", master, "--deploy-mode", "client", jar.toString()));
@@ -106,7 +108,7 @@ final class SparkHome {
     ProcessBuilder process = new ProcessBuilder(command);
     process.environment().put("SPARK_HOME", folder.toString());
     if (!log.isEmpty()) {
-      process.environment().merge("SPARK_SUBMIT_OPTS", log, (given, ours) -> given + " " + ours);
+      process.environment().merge("SPARK_SUBMIT_OPTS", log, (before, ours) -> before + " " + ours);
     }
     return process;
   }

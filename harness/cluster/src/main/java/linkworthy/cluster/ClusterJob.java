@@ -46,7 +46,7 @@ public final class ClusterJob implements Callable<Integer> {
   private static final int ENVIRONMENT = 3;
 
   /** How long the master of a standalone cluster may take to let this application in. */
-  private static final int PATIENCE_S = 20;
+  private static final int PATIENCE_S = 15;
 
   @Parameters(arity = "0..1", paramLabel = "STUDY", description = "Study file.")
   private @Nullable Path file;

@@ -25,10 +25,12 @@ final class Workplace {
 
   private final String run;
   private final Plan plan;
+  private volatile Freight freight;
 
-  private Workplace(String run, Plan plan) {
+  private Workplace(String run, Freight freight) {
     this.run = run;
-    this.plan = plan;
+    this.freight = freight;
+    this.plan = unpack();
   }
 
   /**
@@ -40,13 +42,15 @@ final class Workplace {
   static synchronized Plan plan(String run, Freight freight) {
     Workplace known = latest;
     if (known == null || !known.run.equals(run)) {
-      known = new Workplace(run, unpack(run, freight));
+      known = new Workplace(run, freight);
       latest = known;
     }
+    // Equal content, but the pictures of an earlier job may have been let go.
+    known.freight = freight;
     return known.plan;
   }
 
-  private static Plan unpack(String run, Freight freight) {
+  private Plan unpack() {
     String found = freight.checksum();
     if (!found.equals(run)) {
       throw new Unavailable("the study arrived with SHA-256 " + found + "; sent was " + run);
@@ -59,14 +63,14 @@ final class Workplace {
       }
       Path study = folder.resolve("study.yaml");
       write(study, freight.study().getBytes(StandardCharsets.UTF_8));
-      return Plan.unchecked(StudyReader.read(study, families(folder, freight)), pictures(freight));
+      return Plan.unchecked(StudyReader.read(study, families(folder)), pictures());
     } catch (IOException e) {
       throw Unavailable.cannot("unpack the study on an executor", e);
     }
   }
 
   /** The jars stay open as long as the executor lives: its codecs may need more classes. */
-  private static CodecFamilies families(Path folder, Freight freight) throws IOException {
+  private CodecFamilies families(Path folder) throws IOException {
     if (freight.plugins().isEmpty()) {
       return CodecFamilies.installed();
     }
@@ -77,7 +81,7 @@ final class Workplace {
     return CodecFamilies.installed().with(PluginFolder.open(plugins).families());
   }
 
-  private static Manifest pictures(Freight freight) {
+  private Manifest pictures() {
     return Manifest.of(
         "the pictures sent",
         freight.manifest().getBytes(StandardCharsets.UTF_8),
