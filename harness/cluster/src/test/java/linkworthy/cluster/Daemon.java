@@ -19,7 +19,7 @@ import java.util.regex.Pattern;
 
 /** A process of its own whose words are read; waits are for words or the end, with a deadline. */
 final class Daemon implements AutoCloseable {
-  private static final int DEADLINE_S = 90;
+  private static final int DEADLINE_S = 120;
 
   private final Process process;
   private final Queue<String> lines = new ConcurrentLinkedQueue<>();

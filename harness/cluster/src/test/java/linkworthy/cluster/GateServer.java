@@ -15,7 +15,7 @@ import java.util.concurrent.TimeUnit;
 
 /** Lets the codecs of {@link linkworthy.cluster.gate.GateFamily} through, or holds them. */
 final class GateServer implements AutoCloseable {
-  private static final int DEADLINE_S = 60;
+  private static final int DEADLINE_S = 120;
 
   private final ServerSocket server;
   private final BlockingQueue<Long> held = new LinkedBlockingQueue<>();
