@@ -201,6 +201,9 @@ final class Reports {
               "codec " + program.codec(),
               "runs an external program, "
                   + program.program()
+                  + (program.confinement().equals("none")
+                      ? ""
+                      : ", confined by " + program.confinement())
                   + "; the same study may give other numbers on another machine or day"));
     }
     return facts;
