@@ -9,9 +9,6 @@ import java.time.Clock;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.SortedSet;
-import java.util.concurrent.ExecutionException;
-import java.util.concurrent.TimeUnit;
-import java.util.concurrent.TimeoutException;
 import java.util.function.Consumer;
 import linkworthy.codec.PluginFolder;
 import linkworthy.input.BadInput;
@@ -26,10 +23,7 @@ import linkworthy.trial.Estimate;
 import linkworthy.trial.Mishaps;
 import linkworthy.trial.Plan;
 import linkworthy.trial.Stretch;
-import org.apache.spark.api.java.JavaFutureAction;
 import org.apache.spark.api.java.JavaSparkContext;
-import org.apache.spark.broadcast.Broadcast;
-import org.apache.spark.util.SerializableConfiguration;
 import org.jspecify.annotations.Nullable;
 
 /**
@@ -125,8 +119,7 @@ final class ClusterRun {
       PartsFolder parts =
           PartsFolder.at(request.partsAddress(), freight.checksum(), spark.hadoopConfiguration());
       parts.hold(holder());
-      List<Stretch> whole = runWhatIsMissing(spark, freight, parts, course);
-      int units = writer.unitsAtStart() + merge(whole, parts, course, writer, cells);
+      int units = writer.unitsAtStart() + run(spark, freight, parts, course, writer, cells);
       long done = (long) units * plan.study().codecs().size();
       writer.complete(plan, cells.toList(), writer.run().complete(done, clock));
       parts.remove();
@@ -146,14 +139,18 @@ final class ClusterRun {
   }
 
   /**
-   * @return the stretches of the whole plan from the course's place on, in order
+   * Runs what is missing, and takes part after part into the record as soon as it is there.
+   *
+   * @return the number of units taken
    */
-  private List<Stretch> runWhatIsMissing(
-      JavaSparkContext spark, Freight freight, PartsFolder parts, Course course) {
+  private int run(
+      JavaSparkContext spark,
+      Freight freight,
+      PartsFolder parts,
+      Course course,
+      ResultsWriter writer,
+      Cells cells) {
     SortedSet<Stretch> there = parts.whole();
-    if (request.start() != ResultsFolder.Start.RESUME) {
-      there.clear();
-    }
     int partitions =
         request.partitions() > 0 ? request.partitions() : partitions(spark.defaultParallelism());
     List<Stretch> missing = missing(there, course.next(), partitions);
@@ -161,13 +158,17 @@ final class ClusterRun {
       lines.accept(
           "going on with " + there.size() + " parts that are there, " + missing.size() + " to run");
     }
-    if (!missing.isEmpty()) {
-      run(spark, freight, parts, missing);
-    }
     List<Stretch> all = new ArrayList<>(there);
     all.addAll(missing);
     all.sort((a, b) -> Integer.compare(a.first(), b.first()));
-    return all;
+    if (missing.isEmpty()) {
+      return merge(all, parts, stretch -> {}, course, writer, cells);
+    }
+    TaskProgress progress = new TaskProgress(spark, missing.size(), request.quiet(), lines);
+    try (RunningJob job = new RunningJob(spark, freight, parts, missing, progress)) {
+      return merge(
+          all, parts, stretch -> job.await(() -> parts.isThere(stretch)), course, writer, cells);
+    }
   }
 
   /** As many as suit the plan and the cores. */
@@ -209,64 +210,17 @@ final class ClusterRun {
     return gap.split(plan, (int) Math.max(1, share));
   }
 
-  private void run(
-      JavaSparkContext spark, Freight freight, PartsFolder parts, List<Stretch> stretches) {
-    Broadcast<Freight> sent = spark.broadcast(freight);
-    Broadcast<SerializableConfiguration> hadoop =
-        spark.broadcast(new SerializableConfiguration(spark.hadoopConfiguration()));
-    StretchTask task = new StretchTask(freight.checksum(), sent, parts.above(), hadoop);
-    JavaFutureAction<Void> job = spark.parallelize(stretches, stretches.size()).foreachAsync(task);
-    TaskProgress progress = new TaskProgress(spark, stretches.size(), request.quiet(), lines);
-    try {
-      while (!isDone(job)) {
-        progress.look(job.jobIds());
-      }
-    } catch (InterruptedException e) {
-      Thread.currentThread().interrupt();
-      job.cancel(true);
-      throw new Unavailable("told to stop", e);
-    } catch (ExecutionException e) {
-      throw failure(e);
-    } finally {
-      sent.destroy();
-      hadoop.destroy();
-    }
-  }
-
-  private static boolean isDone(JavaFutureAction<Void> job)
-      throws InterruptedException, ExecutionException {
-    try {
-      Object unused = job.get(1, TimeUnit.SECONDS);
-      return true;
-    } catch (TimeoutException e) {
-      return false;
-    }
-  }
-
-  /** What a task said of its failure, if it is one of ours; else what Spark says. */
-  private static RuntimeException failure(ExecutionException e) {
-    for (Throwable cause = e; cause != null; cause = cause.getCause()) {
-      if (cause instanceof BadInput bad) {
-        return bad;
-      }
-      if (cause instanceof Unavailable unavailable) {
-        return unavailable;
-      }
-    }
-    Throwable said = e.getCause() == null ? e : e.getCause();
-    String words = String.valueOf(said.getMessage());
-    return new Unavailable("the Spark job failed: " + words.lines().findFirst().orElse(words), e);
-  }
-
   private int merge(
       List<Stretch> stretches,
       PartsFolder parts,
+      Consumer<Stretch> await,
       Course course,
       ResultsWriter writer,
       Cells cells) {
     Mishaps mishaps = new Mishaps();
     int[] units = {0};
     for (Stretch stretch : stretches) {
+      await.accept(stretch);
       try {
         if (!parts.isWhole(stretch)) {
           throw new Unavailable(

@@ -161,6 +161,19 @@ final class PartsFolder {
     }
   }
 
+  /**
+   * Whether a part is there; it appears in one step.
+   *
+   * @throws Unavailable if the folder cannot be read
+   */
+  boolean isThere(Stretch stretch) {
+    try {
+      return files.exists(path(stretch));
+    } catch (IOException e) {
+      throw Unavailable.cannot("read " + folder, e);
+    }
+  }
+
   /** Whether a stretch is there, whole. */
   boolean isWhole(Stretch stretch) throws IOException {
     try (InputStream in = open(stretch)) {

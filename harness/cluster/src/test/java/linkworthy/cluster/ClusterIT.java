@@ -330,7 +330,7 @@ class ClusterIT {
     assertThat(first.exitCode()).isEqualTo(3);
     assertThat(first.words())
         .contains("the driver ended with exit code 137; go on with: linkworthy assess --resume ");
-    assertThat(trials("resumed").lines().count()).isEqualTo(1);
+    assertThat(expected).startsWith(trials("resumed")).isNotEqualTo(trials("resumed"));
     gate().open();
     Daemon second =
         cluster()
