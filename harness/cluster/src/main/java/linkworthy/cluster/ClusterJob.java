@@ -1,6 +1,7 @@
 package linkworthy.cluster;
 
 import java.io.PrintWriter;
+import java.lang.management.ManagementFactory;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Path;
 import java.time.Clock;
@@ -45,8 +46,11 @@ public final class ClusterJob implements Callable<Integer> {
   private static final int BAD_INPUT = 2;
   private static final int ENVIRONMENT = 3;
 
-  /** How long the master of a standalone cluster may take to let this application in. */
-  private static final int PATIENCE_S = 15;
+  /** From the start of this process until the master of a standalone cluster has let it in. */
+  private static final long PATIENCE_MS = 15_000;
+
+  /** What a master has at least, however long this process took to start. */
+  private static final long LEAST_PATIENCE_MS = 5_000;
 
   @Parameters(arity = "0..1", paramLabel = "STUDY", description = "Study file.")
   private @Nullable Path file;
@@ -220,17 +224,16 @@ public final class ClusterJob implements Callable<Integer> {
 
   private void giveUpAfterAWhile(CountDownLatch connected, String master) {
     try {
-      if (!connected.await(PATIENCE_S, TimeUnit.SECONDS)) {
+      long left = PATIENCE_MS - ManagementFactory.getRuntimeMXBean().getUptime();
+      if (!connected.await(Math.max(LEAST_PATIENCE_MS, left), TimeUnit.MILLISECONDS)) {
         int code =
             say(
                 err,
                 "the Spark master at "
                     + master
-                    + " did not let this application in within "
-                    + PATIENCE_S
-                    + " s (is it a master of Spark "
+                    + " is silent, or does not let this application in; accepted: a master of Spark "
                     + org.apache.spark.package$.MODULE$.SPARK_VERSION()
-                    + ", with the same spark.authenticate.secret?)",
+                    + ", with the same spark.authenticate.secret",
                 ENVIRONMENT);
         Runtime.getRuntime().halt(code);
       }
