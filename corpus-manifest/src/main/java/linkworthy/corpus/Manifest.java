@@ -14,6 +14,7 @@ import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Optional;
 import java.util.Set;
+import java.util.function.Function;
 import linkworthy.input.BadInput;
 import linkworthy.input.Spelling;
 import linkworthy.input.Unavailable;
@@ -102,6 +103,18 @@ public final class Manifest {
     return new Manifest(csv.toString(), store, bytes);
   }
 
+  /**
+   * A manifest whose files are not in a folder.
+   *
+   * @param source names it in messages
+   * @param csv the manifest
+   * @param files the bytes of a file by its path in the manifest, or nothing if there is none such
+   * @throws BadInput if anything in it is not accepted, with line and column
+   */
+  public static Manifest of(String source, byte[] csv, Function<String, Optional<byte[]>> files) {
+    return new Manifest(source, new PictureStore.Handed(source, files), csv);
+  }
+
   /** The manifest's path, or a phrase for the shipped one. */
   public String source() {
     return source;
@@ -164,6 +177,17 @@ public final class Manifest {
    * @throws Unavailable if it is damaged, of an unknown format, or cannot be opened
    */
   public ReadPicture readPicture(ManifestEntry entry) {
+    return PictureReader.read(store.describe(entry.file()), readFile(entry), entry.header());
+  }
+
+  /**
+   * The bytes of a picture's file after checking their length and their SHA-256.
+   *
+   * @throws BadInput if the file is missing, outside the manifest's folder, or not what the
+   *     manifest announces
+   * @throws Unavailable if it cannot be opened
+   */
+  public byte[] readFile(ManifestEntry entry) {
     byte[] bytes = bytes(entry).orElseThrow(() -> new BadInput(missing(entry)));
     if (bytes.length > limit(entry)) {
       throw new BadInput(tooLong(entry));
@@ -172,7 +196,7 @@ public final class Manifest {
     if (!found.equals(entry.sha256())) {
       throw new BadInput(otherChecksum(entry, found));
     }
-    return PictureReader.read(store.describe(entry.file()), bytes, entry.header());
+    return bytes;
   }
 
   /** What is wrong with the pictures, in the manifest's order; empty if all is well. */

@@ -6,7 +6,9 @@ import java.nio.file.Files;
 import java.nio.file.InvalidPathException;
 import java.nio.file.NoSuchFileException;
 import java.nio.file.Path;
+import java.util.Arrays;
 import java.util.Optional;
+import java.util.function.Function;
 import linkworthy.input.BadInput;
 import linkworthy.input.Unavailable;
 
@@ -76,6 +78,26 @@ interface PictureStore {
       } catch (IOException e) {
         throw Unavailable.cannot("read picture " + describe(file), e);
       }
+    }
+  }
+
+  /** Files that somebody hands over. */
+  record Handed(String source, Function<String, Optional<byte[]>> files) implements PictureStore {
+    @Override
+    public Optional<byte[]> read(String file, int limit) {
+      return files
+          .apply(file)
+          .map(bytes -> bytes.length <= limit ? bytes : Arrays.copyOf(bytes, limit));
+    }
+
+    @Override
+    public String describe(String file) {
+      return source + "/" + file;
+    }
+
+    @Override
+    public void requireInside(String file) {
+      // There is no folder to leave.
     }
   }
 

@@ -102,6 +102,24 @@ public final class YamlNode {
     return replace(List.of(dottedPath.split("\\.", -1)), yamlValue, label);
   }
 
+  /**
+   * This document with several values set, one after the other.
+   *
+   * @param settings each {@code key.path=value}
+   * @throws BadInput as the other method, or if a setting is none
+   */
+  public YamlNode with(List<String> settings) {
+    YamlNode root = this;
+    for (String setting : settings) {
+      int equals = setting.indexOf('=');
+      if (equals < 1) {
+        throw new BadInput(OPTION.strip() + " is '" + setting + "'; accepted: key.path=value");
+      }
+      root = root.with(setting.substring(0, equals), setting.substring(equals + 1));
+    }
+    return root;
+  }
+
   private YamlNode replace(List<String> steps, String yamlValue, String label) {
     if (steps.isEmpty()) {
       return new Parser(label, yamlValue).document(path);

@@ -11,6 +11,7 @@ import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Optional;
 import java.util.jar.JarEntry;
 import java.util.jar.JarOutputStream;
 import java.util.stream.Stream;
@@ -415,6 +416,24 @@ class ManifestTest {
     assertThat(read(Manifest.toCsv(entries)).entries()).isEqualTo(entries);
     assertThat(Manifest.toCsv(Manifest.shipped().entries()))
         .isEqualTo(Files.readString(Path.of("manifest.csv")));
+  }
+
+  /** A checksum that does not fit is found however the bytes came. */
+  @Test
+  void filesMayBeHandedOver() {
+    byte[] csv = (HEADER + "\n" + row("one", "a.png") + "\n").getBytes(StandardCharsets.UTF_8);
+    Manifest right = Manifest.of("the parcel", csv, file -> Optional.of(PNG));
+    ManifestEntry one = right.entries().get(0);
+    assertThat(right.readFile(one)).isEqualTo(PNG);
+    assertThat(right.load(one).size()).isEqualTo(13 * 9);
+    byte[] other = PNG.clone();
+    other[other.length - 1] ^= 1;
+    assertThatThrownBy(() -> Manifest.of("the parcel", csv, file -> Optional.of(other)).load(one))
+        .isInstanceOf(BadInput.class)
+        .hasMessageContaining("picture the parcel/a.png has SHA-256 " + Manifest.sha256(other));
+    assertThatThrownBy(() -> Manifest.of("the parcel", csv, file -> Optional.empty()).load(one))
+        .isInstanceOf(BadInput.class)
+        .hasMessage("picture the parcel/a.png does not exist");
   }
 
   private static String row(String id, String file) {

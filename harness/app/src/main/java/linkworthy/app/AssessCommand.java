@@ -1,12 +1,16 @@
 package linkworthy.app;
 
+import java.io.IOException;
+import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Objects;
 import java.util.concurrent.Callable;
 import linkworthy.codec.CodecFamilies;
 import linkworthy.codec.PluginFolder;
 import linkworthy.input.BadInput;
+import linkworthy.input.Unavailable;
 import linkworthy.input.YamlNode;
 import linkworthy.results.ResultsFolder;
 import linkworthy.results.ResultsWriter;
@@ -33,6 +37,7 @@ import picocli.CommandLine.Parameters;
       "  linkworthy assess yard.yaml --dry-run",
       "  linkworthy assess yard.yaml --format json",
       "  linkworthy assess yard.yaml --plugins my-plugins --allow-commands",
+      "  linkworthy assess yard.yaml --on spark://HOST:PORT",
       "  linkworthy assess --resume results/yard/20261201T101500Z-0123abcd"
     })
 final class AssessCommand implements Callable<Integer> {
@@ -59,7 +64,7 @@ final class AssessCommand implements Callable<Integer> {
       names = "--threads",
       paramLabel = "N",
       description = "Worker threads (default: one for each processor).")
-  private int threads = Runtime.getRuntime().availableProcessors();
+  private @Nullable Integer threads;
 
   @Option(
       names = "--set",
@@ -87,6 +92,8 @@ final class AssessCommand implements Callable<Integer> {
 
   @Mixin private final CodecOptions codecs = new CodecOptions();
 
+  @Mixin private final ClusterOptions cluster = new ClusterOptions();
+
   @Option(
       names = "--format",
       paramLabel = "FORMAT",
@@ -104,8 +111,15 @@ final class AssessCommand implements Callable<Integer> {
 
   @Override
   public Integer call() {
-    if (threads < 1 || threads > MAX_THREADS) {
-      throw new BadInput("--threads is " + threads + "; accepted: 1 to " + MAX_THREADS);
+    int number = threads();
+    if (number < 1 || number > MAX_THREADS) {
+      throw new BadInput("--threads is " + number + "; accepted: 1 to " + MAX_THREADS);
+    }
+    String master = cluster.master();
+    if (master != null && threads != null) {
+      throw new BadInput(
+          "--threads is given with --on; accepted: one of the two, as the cluster says how many cores"
+              + " there are");
     }
     if (!new Formats().contains(format)) {
       throw new BadInput("--format is '" + format + "'; accepted: text, json");
@@ -131,6 +145,10 @@ final class AssessCommand implements Callable<Integer> {
     }
   }
 
+  private int threads() {
+    return threads == null ? Runtime.getRuntime().availableProcessors() : threads;
+  }
+
   private int resume(Path folder) {
     refuseBesideResume();
     ResultsFolder stopped = ResultsFolder.openStopped(folder);
@@ -145,14 +163,17 @@ final class AssessCommand implements Callable<Integer> {
         words.println("report: " + folder.resolve(ResultsFolder.REPORT));
       }
       if (asJson) {
-        surroundings.out().print(SummaryJson.of(ResultsFolder.open(folder)));
-        surroundings.out().flush();
+        Ending.JSON.print(ResultsFolder.open(folder), surroundings.out());
       }
       return Main.DONE;
     }
+    String master = cluster.master();
+    if (master != null) {
+      return runOn(master, folder, List.of("--resume", folder.toAbsolutePath().toString()));
+    }
     try (PluginFolder plugins = codecs.open()) {
       Plan plan = Plan.of(stopped.unchangedStudy(codecs.families(plugins)));
-      return run(plan, plugins, folder, Assessment.Start.RESUME);
+      return run(plan, plugins, folder, ResultsFolder.Start.RESUME);
     }
   }
 
@@ -172,31 +193,90 @@ final class AssessCommand implements Callable<Integer> {
     }
   }
 
-  private int run(Plan plan, PluginFolder plugins, Path folder, Assessment.Start start) {
-    String goOn =
-        "linkworthy assess --resume " + CodecOptions.quoted(folder) + codecs.asArguments();
-    Assessment.Ending ending =
-        format.equals(JSON)
-            ? Assessment.Ending.JSON
-            : quiet ? Assessment.Ending.NOTHING : Assessment.Ending.TEXT;
+  private String goOn(Path folder) {
+    return "linkworthy assess --resume "
+        + CodecOptions.quoted(folder)
+        + codecs.asArguments()
+        + cluster.asArguments();
+  }
+
+  private Ending ending() {
+    return format.equals(JSON) ? Ending.JSON : quiet ? Ending.NOTHING : Ending.TEXT;
+  }
+
+  private int run(Plan plan, PluginFolder plugins, Path folder, ResultsFolder.Start start) {
     return new Assessment(
-            surroundings, plan, plugins.jars(), folder, start, threads, quiet, ending, goOn)
+            surroundings,
+            plan,
+            plugins.jars(),
+            folder,
+            start,
+            threads(),
+            quiet,
+            ending(),
+            goOn(folder))
         .run();
   }
 
+  /**
+   * @param what tells the driver which study and which folder
+   */
+  private int runOn(String master, Path folder, List<String> what) {
+    List<String> arguments = new ArrayList<>(what);
+    arguments.addAll(codecs.forDriver());
+    arguments.addAll(cluster.forDriver());
+    if (quiet) {
+      arguments.add("--quiet");
+    }
+    return new ClusterAssessment(surroundings, master)
+        .run(folder, arguments, ending(), goOn(folder));
+  }
+
+  /** The driver reads the study again, and checks the pictures. */
+  private int runOn(String master, Path folder) {
+    try {
+      Path own = file == null ? Files.createTempFile("first-look", ".yaml") : null;
+      try {
+        if (own != null) {
+          Files.writeString(own, Resources.text("studies/" + BUILT_IN));
+        }
+        List<String> what = new ArrayList<>();
+        what.add(String.valueOf(own != null ? own : Objects.requireNonNull(file).toAbsolutePath()));
+        what.addAll(List.of("--out", folder.toAbsolutePath().toString()));
+        settings.forEach(setting -> what.addAll(List.of("--set", setting)));
+        if (overwrite) {
+          what.add("--overwrite");
+        }
+        return runOn(master, folder, what);
+      } finally {
+        if (own != null) {
+          Files.delete(own);
+        }
+      }
+    } catch (IOException e) {
+      throw Unavailable.cannot("write the built-in study for the driver", e);
+    }
+  }
+
   private int assess(Study study, PluginFolder plugins) {
+    String master = cluster.master();
+    if (master != null && !dryRun) {
+      return runOn(master, folder(study));
+    }
     Plan plan = Plan.of(study);
     if (dryRun) {
       printEstimate(plan);
       return Main.DONE;
     }
-    Path folder =
-        out != null
-            ? out
-            : ResultsFolder.defaultPath(
-                surroundings.home().resolve("results"), study, surroundings.clock());
-    Assessment.Start start = overwrite ? Assessment.Start.OVERWRITE : Assessment.Start.NEW;
-    return run(plan, plugins, folder, start);
+    ResultsFolder.Start start = overwrite ? ResultsFolder.Start.OVERWRITE : ResultsFolder.Start.NEW;
+    return run(plan, plugins, folder(study), start);
+  }
+
+  private Path folder(Study study) {
+    return out != null
+        ? out
+        : ResultsFolder.defaultPath(
+            surroundings.home().resolve("results"), study, surroundings.clock());
   }
 
   private Study study(CodecFamilies families) {
@@ -204,19 +284,12 @@ final class AssessCommand implements Callable<Integer> {
         file == null
             ? YamlNode.parse(BUILT_IN, Resources.text("studies/" + BUILT_IN))
             : YamlNode.read(file);
-    for (String setting : settings) {
-      int equals = setting.indexOf('=');
-      if (equals < 1) {
-        throw new BadInput("--set is '" + setting + "'; accepted: key.path=value");
-      }
-      root = root.with(setting.substring(0, equals), setting.substring(equals + 1));
-    }
     Path folder = file == null ? surroundings.home() : file.toAbsolutePath().getParent();
-    return StudyReader.read(root, folder == null ? Path.of("/") : folder, families);
+    return StudyReader.read(root.with(settings), folder == null ? Path.of("/") : folder, families);
   }
 
   private void printEstimate(Plan plan) {
-    Estimate estimate = Estimate.of(plan, threads);
+    Estimate estimate = Estimate.of(plan, threads());
     String upTo = plan.study().earlyStop() == null ? "" : Progress.UP_TO;
     var to = surroundings.out();
     to.println("study:    " + plan.study().name());
@@ -230,7 +303,7 @@ final class AssessCommand implements Callable<Integer> {
             + "about "
             + Progress.duration(Math.round(estimate.seconds()))
             + " on "
-            + threads
+            + threads()
             + " threads (a rough figure, for a processor of about 3 GHz)");
     to.println("memory:   about " + Estimate.mebibytes(estimate.memoryBytes()) + " MiB");
     to.println("disk:     " + upTo + "about " + Estimate.mebibytes(estimate.diskBytes()) + " MiB");

@@ -12,9 +12,8 @@ import linkworthy.results.RunRecord;
 import linkworthy.statistics.Cells;
 import linkworthy.trial.Course;
 import linkworthy.trial.LocalRunner;
-import linkworthy.trial.NodeTable;
+import linkworthy.trial.Mishaps;
 import linkworthy.trial.Plan;
-import linkworthy.trial.PredictionTable;
 
 /** One run of a plan into a results folder. */
 final class Assessment {
@@ -26,24 +25,10 @@ final class Assessment {
   private final List<PluginFolder.Jar> plugins;
   private final Path folder;
   private final int threads;
-  private final Start start;
+  private final ResultsFolder.Start start;
   private final boolean quiet;
   private final Ending ending;
   private final String goOn;
-
-  /** What is printed at the end of a run. */
-  enum Ending {
-    TEXT,
-    JSON,
-    NOTHING
-  }
-
-  /** What is done with the folder. */
-  enum Start {
-    NEW,
-    OVERWRITE,
-    RESUME
-  }
 
   /**
    * @param goOn the command that takes the run up again once it has been stopped
@@ -53,7 +38,7 @@ final class Assessment {
       Plan plan,
       List<PluginFolder.Jar> plugins,
       Path folder,
-      Start start,
+      ResultsFolder.Start start,
       int threads,
       boolean quiet,
       Ending ending,
@@ -116,17 +101,10 @@ final class Assessment {
                     + goOn);
         return Main.ENVIRONMENT;
       }
-      writer.writeNodes(NodeTable.of(plan));
-      writer.writePredictions(PredictionTable.of(plan));
-      writer.finish(cells.toList(), writer.run().complete(done, surroundings.clock()));
+      writer.complete(plan, cells.toList(), writer.run().complete(done, surroundings.clock()));
       ResultsFolder results = ResultsFolder.open(folder);
       writer.writeReport(Reports.html(results));
-      if (ending == Ending.JSON) {
-        surroundings.out().print(SummaryJson.of(results));
-        surroundings.out().flush();
-      } else if (ending == Ending.TEXT) {
-        summarise(results);
-      }
+      ending.print(results, surroundings.out());
       return Main.DONE;
     }
   }
@@ -146,24 +124,15 @@ final class Assessment {
                 plan.trials(),
                 surroundings.clock())
             .withPlugins(plugins);
-    if (start == Start.RESUME) {
-      return ResultsFolder.resume(
-          folder,
-          plan,
-          now,
-          trial -> {
-            cells.add(trial);
-            course.add(trial);
-          });
-    }
-    ResultsWriter writer = ResultsFolder.create(folder, start == Start.OVERWRITE);
-    try {
-      writer.begin(plan.study(), now);
-      return writer;
-    } catch (RuntimeException e) {
-      writer.close();
-      throw e;
-    }
+    return ResultsFolder.open(
+        folder,
+        start,
+        plan,
+        now,
+        trial -> {
+          cells.add(trial);
+          course.add(trial);
+        });
   }
 
   private void sayWhatIsKept(int units) {
@@ -204,22 +173,11 @@ final class Assessment {
     }
   }
 
-  private static void release(Thread onSignal) {
+  static void release(Thread onSignal) {
     try {
       Runtime.getRuntime().removeShutdownHook(onSignal);
     } catch (IllegalStateException alreadyStopping) {
       // The hook is running; it does not wait any longer.
     }
-  }
-
-  private void summarise(ResultsFolder results) {
-    var out = surroundings.out();
-    Reports.answer(results).forEach(out::println);
-    Reports.widths(results).ifPresent(out::println);
-    out.println();
-    for (String line : SummaryTable.of(results.cells())) {
-      out.println(line);
-    }
-    out.println("report: " + folder.resolve(ResultsFolder.REPORT));
   }
 }

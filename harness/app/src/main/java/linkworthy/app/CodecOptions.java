@@ -1,8 +1,10 @@
 package linkworthy.app;
 
 import java.nio.file.Path;
+import java.util.List;
 import linkworthy.codec.CodecFamilies;
 import linkworthy.codec.PluginFolder;
+import linkworthy.input.BadInput;
 import org.jspecify.annotations.Nullable;
 import picocli.CommandLine.Option;
 
@@ -21,6 +23,20 @@ final class CodecOptions {
       description =
           "Let codecs of the kind 'command' run programs of this machine, with all your rights.")
   private boolean allowCommands;
+
+  /**
+   * These options for a driver elsewhere.
+   *
+   * @throws linkworthy.input.BadInput if programs are to be run, which no other machine may have
+   */
+  List<String> forDriver() {
+    if (allowCommands) {
+      throw new BadInput(
+          "--allow-commands is given with --on, and the programs of this machine are not on others;"
+              + " accepted with --on: codecs of this program and of --plugins");
+    }
+    return plugins == null ? List.of() : List.of("--plugins", plugins.toAbsolutePath().toString());
+  }
 
   /** The plugins, to be closed after the study. */
   PluginFolder open() {
@@ -45,7 +61,11 @@ final class CodecOptions {
 
   /** A path as a shell takes it. */
   static String quoted(Path path) {
-    String text = path.toString();
+    return quoted(path.toString());
+  }
+
+  /** A word as a shell takes it. */
+  static String quoted(String text) {
     return text.matches("[\\w./:@%+,-]+") ? text : "'" + text.replace("'", "'\\''") + "'";
   }
 }

@@ -14,7 +14,11 @@ final class LineInput implements AutoCloseable {
   private byte[] rest = new byte[0];
 
   LineInput(Path file) throws IOException {
-    in = new BufferedInputStream(Files.newInputStream(file), 1 << 16);
+    this(Files.newInputStream(file));
+  }
+
+  LineInput(InputStream stream) {
+    in = new BufferedInputStream(stream, 1 << 16);
   }
 
   /** The next line; null if no whole one is left. */

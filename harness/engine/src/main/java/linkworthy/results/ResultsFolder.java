@@ -147,6 +147,40 @@ public final class ResultsFolder {
     return new ResultsFolder(folder, run);
   }
 
+  /** How a run finds its folder. */
+  public enum Start {
+    /** New or empty. */
+    NEW,
+    /** With the record of an earlier run, which is removed. */
+    OVERWRITE,
+    /** With the record of this very run, which was stopped. */
+    RESUME
+  }
+
+  /**
+   * Opens the folder of a run as {@link #create} and {@link #resume} do, and in a new one begins
+   * the record.
+   *
+   * @param now the record of a run that begins now
+   * @param each takes the trials that are kept
+   * @throws BadInput as those do
+   * @throws linkworthy.input.Unavailable as those do
+   */
+  public static ResultsWriter open(
+      Path folder, Start start, Plan plan, RunRecord now, Consumer<? super Trial> each) {
+    if (start == Start.RESUME) {
+      return resume(folder, plan, now, each);
+    }
+    ResultsWriter writer = create(folder, start == Start.OVERWRITE);
+    try {
+      writer.begin(plan.study(), now);
+      return writer;
+    } catch (RuntimeException e) {
+      writer.close();
+      throw e;
+    }
+  }
+
   /** Whether the record says that it is complete and has as many rows and files as it says. */
   public boolean isWhole() {
     Path trials = folder.resolve(TrialsCsv.FILE);

@@ -12,8 +12,10 @@ import linkworthy.statistics.Cell;
 import linkworthy.study.Study;
 import linkworthy.study.StudyWriter;
 import linkworthy.trial.NodeShare;
+import linkworthy.trial.NodeTable;
 import linkworthy.trial.Plan;
 import linkworthy.trial.Prediction;
+import linkworthy.trial.PredictionTable;
 import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 import org.jspecify.annotations.Nullable;
@@ -306,6 +308,18 @@ public final class ResultsWriter implements AutoCloseable {
   public void finish(List<Cell> cells, RunRecord run) {
     write(CellsCsv.FILE, CellsCsv.text(cells));
     write(RunRecord.FILE, run.toJson());
+  }
+
+  /**
+   * Writes all that follows from the rows and the pictures of a complete run, but for the report.
+   *
+   * @param run the record of the run at its end
+   * @throws linkworthy.input.Unavailable if the folder cannot be written
+   */
+  public void complete(Plan plan, List<Cell> cells, RunRecord run) {
+    writeNodes(NodeTable.of(plan));
+    writePredictions(PredictionTable.of(plan));
+    finish(cells, run);
   }
 
   /**

@@ -22,6 +22,7 @@ import linkworthy.study.EarlyStop;
 public final class Course {
   private final Plan plan;
   private final List<NoiseWidth> widths = new ArrayList<>();
+  private final int end;
   private int next;
   private int codec;
 
@@ -30,22 +31,37 @@ public final class Course {
     this(plan, 0);
   }
 
+  /** The course through a part of a plan. */
+  public Course(Plan plan, Stretch stretch) {
+    this(plan, stretch.first(), stretch.end());
+    requireFirst(plan, stretch.end());
+  }
+
   /**
    * @param firstUnit with replicates that end early, one that no replicate precedes
    */
   Course(Plan plan, int firstUnit) {
+    this(plan, firstUnit, plan.units());
+  }
+
+  private Course(Plan plan, int firstUnit, int end) {
     this.plan = plan;
     this.next = firstUnit;
+    this.end = end;
     plan.study().codecs().forEach(choice -> widths.add(new NoiseWidth()));
-    if (plan.study().earlyStop() != null && plan.groupFrom(firstUnit) != firstUnit) {
+    requireFirst(plan, firstUnit);
+  }
+
+  private static void requireFirst(Plan plan, int unit) {
+    if (plan.study().earlyStop() != null && plan.groupFrom(unit) != unit) {
       throw new IllegalArgumentException(
-          "unit " + firstUnit + " has replicates before it; accepted: a first replicate");
+          "unit " + unit + " has replicates before it; accepted: a first replicate");
     }
   }
 
   /** A course of its own that stands where this one does. */
   Course copy() {
-    Course copy = new Course(plan, plan.units());
+    Course copy = new Course(plan, end, end);
     copy.next = next;
     copy.codec = codec;
     copy.widths.clear();
@@ -55,10 +71,15 @@ public final class Course {
 
   /** Whether every trial that the plan comes to has been given. */
   public boolean isAtEnd() {
-    return next >= plan.units();
+    return next >= end;
   }
 
-  /** Place in the plan of the unit of the next trial; {@link Plan#units()} at the end. */
+  /** Place in the plan of the unit behind the last one of this course. */
+  int end() {
+    return end;
+  }
+
+  /** Place in the plan of the unit of the next trial; {@link #end} at the end. */
   public int next() {
     return next;
   }

@@ -86,7 +86,7 @@ public final class LocalRunner {
     int done = 0;
     try {
       while (!course.isAtEnd() && !stopped && !Thread.currentThread().isInterrupted()) {
-        while (next < plan.units() && window.size() < WINDOW * threads) {
+        while (next < course.end() && window.size() < WINDOW * threads) {
           Course own = next == course.next() ? course.copy() : new Course(plan, next);
           next = own.groupEnd();
           window.add(new Group(own, subjects, executor));

@@ -94,7 +94,15 @@ public final class Plan {
    * @throws BadInput if the pictures cannot be selected or codecs cannot be trained on them
    */
   public static Plan unchecked(Study study) {
-    Manifest manifest = study.pictures().open();
+    return unchecked(study, study.pictures().open());
+  }
+
+  /**
+   * The same with the pictures of a manifest that is open already, whatever the study's own is.
+   *
+   * @throws BadInput if the pictures cannot be selected or codecs cannot be trained on them
+   */
+  public static Plan unchecked(Study study, Manifest manifest) {
     List<ManifestEntry> tested = manifest.select(study.pictures().select());
     return new Plan(TrainingSet.of(study, manifest, tested).train(study), manifest, tested);
   }

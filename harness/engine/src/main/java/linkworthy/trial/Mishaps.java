@@ -1,25 +1,24 @@
-package linkworthy.app;
+package linkworthy.trial;
 
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
-import linkworthy.trial.Mishap;
 
 /** Counts the codecs' failures and keeps the first of each kind, for the user to mend. */
-final class Mishaps {
+public final class Mishaps {
   private final Map<Kind, Mishap> first = new LinkedHashMap<>();
   private final Map<Kind, Long> counts = new LinkedHashMap<>();
 
   private record Kind(String codec, String word) {}
 
-  void add(Mishap mishap) {
+  public void add(Mishap mishap) {
     Kind kind = new Kind(mishap.codec(), mishap.failure().word());
     first.putIfAbsent(kind, mishap);
     counts.merge(kind, 1L, Long::sum);
   }
 
   /** A line for each codec and kind of failure. */
-  List<String> lines() {
+  public List<String> lines() {
     return first.entrySet().stream()
         .map(
             entry ->
