@@ -21,6 +21,11 @@ record LinePlot(
     String context,
     List<Line> lines,
     List<Fact> key) {
+  /** The frame of the drawing. */
+  public PlotBox box() {
+    return new PlotBox(LEFT, RIGHT, TOP, BOTTOM);
+  }
+
   static final int WIDTH = 300;
   static final int HEIGHT = 280;
   static final int LEFT = 34;

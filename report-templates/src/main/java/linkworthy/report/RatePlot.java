@@ -17,6 +17,11 @@ record RatePlot(
     List<Curve> curves,
     List<Ring> rings,
     List<Label> labels) {
+  /** The frame of the drawing. */
+  public PlotBox box() {
+    return new PlotBox(LEFT, RIGHT, TOP, BOTTOM);
+  }
+
   static final int WIDTH = 400;
   static final int HEIGHT = 310;
   static final int LEFT = 36;
