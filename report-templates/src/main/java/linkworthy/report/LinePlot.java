@@ -3,6 +3,7 @@ package linkworthy.report;
 import java.util.ArrayList;
 import java.util.Comparator;
 import java.util.List;
+import java.util.function.ToDoubleFunction;
 import java.util.stream.DoubleStream;
 import java.util.stream.Stream;
 
@@ -40,20 +41,29 @@ record LinePlot(
   /** A place on an axis and what is written there. */
   record Tick(String at, String label) {}
 
+  /** Where a figure is drawn, and by which the page finds its row among all figures. */
+  record Spot(String x, String y, String id) {}
+
   /**
    * A codec's line as path data.
    *
+   * @param at the codec's place in the study
    * @param css classes for colour and dash
+   * @param whiskers picture intervals
+   * @param noise noise intervals
    * @param leader from the last point to a label that had to move, or empty
    */
   record Line(
+      int at,
       String css,
       String path,
       String whiskers,
+      String noise,
       String markers,
       String leader,
       String label,
-      String labelAt) {}
+      String labelAt,
+      List<Spot> spots) {}
 
   /** All panels of an impairment; none if nothing can be drawn. */
   static List<LinePlot> of(
@@ -76,7 +86,7 @@ record LinePlot(
             members.subList(members.size() * part / parts, members.size() * (part + 1) / parts);
         String title =
             family.heading() + (parts > 1 ? " (" + (part + 1) + " of " + parts + ")" : "");
-        plots.add(new Panel(scene, family, some).draw(id + "-" + plots.size(), title));
+        plots.add(new Panel(scene, families, family, some).draw(id + "-" + plots.size(), title));
       }
     }
     return plots;
@@ -164,7 +174,11 @@ record LinePlot(
   }
 
   /** The codecs of one panel. */
-  private record Panel(Scene scene, CodecFamily family, List<CodecFamily.Member> members) {
+  private record Panel(
+      Scene scene,
+      List<CodecFamily> families,
+      CodecFamily family,
+      List<CodecFamily.Member> members) {
     LinePlot draw(String id, String title) {
       boolean direct = members.stream().allMatch(m -> m.label().length() <= LONGEST_LABEL);
       List<Fact> key = new ArrayList<>();
@@ -192,9 +206,11 @@ record LinePlot(
 
     private String context() {
       StringBuilder path = new StringBuilder();
-      for (CodecColumn codec : scene.grid().codecs()) {
-        if (members.stream().noneMatch(m -> m.codec().equals(codec))) {
-          path.append(path(codec, 0));
+      for (CodecFamily other : families) {
+        for (CodecFamily.Member member : other.members()) {
+          if (!members.contains(member)) {
+            path.append(path(member.codec(), 0));
+          }
         }
       }
       return path.toString();
@@ -219,7 +235,9 @@ record LinePlot(
       double shift = (i - (members.size() - 1) / 2.0) * 2;
       Axis y = scene.y();
       StringBuilder whiskers = new StringBuilder();
+      StringBuilder noise = new StringBuilder();
       StringBuilder markers = new StringBuilder();
+      List<Spot> spots = new ArrayList<>();
       double endX = RIGHT;
       double endY = Double.NaN;
       for (Condition condition : scene.places()) {
@@ -227,29 +245,45 @@ record LinePlot(
         if (Double.isFinite(psnr)) {
           double x = scene.across(condition) + shift;
           markers.append(Shape.at(member.index(), x, y.at(psnr)));
-          whiskers.append(whisker(condition, member.codec(), x, y));
+          whiskers.append(whisker(condition, member.codec(), x, y, q -> q.pictureHalfWidthDb()));
+          noise.append(whisker(condition, member.codec(), x, y, q -> q.noiseHalfWidthDb()));
+          spots.add(
+              new Spot(
+                  Numbers.coordinate(x),
+                  Numbers.coordinate(y.at(psnr)),
+                  scene.grid().id(condition, member.codec().label())));
           endX = x;
           endY = y.at(psnr);
         }
       }
       String css = "c" + family.index() % 6 + " d" + member.index() % Shape.KINDS;
-      return new Draft(
-          css,
-          path(member.codec(), shift),
-          whiskers.toString(),
-          markers.toString(),
-          label,
-          endX,
-          endY);
+      Line line =
+          new Line(
+              scene.grid().place(member.codec()),
+              css,
+              path(member.codec(), shift),
+              whiskers.toString(),
+              noise.toString(),
+              markers.toString(),
+              "",
+              label,
+              "",
+              List.copyOf(spots));
+      return new Draft(line, endX, endY);
     }
 
-    private String whisker(Condition condition, CodecColumn codec, double x, Axis y) {
+    private String whisker(
+        Condition condition,
+        CodecColumn codec,
+        double x,
+        Axis y,
+        ToDoubleFunction<Figure.Quality> halfWidth) {
       double psnr = scene.grid().psnr(condition, codec);
       double half =
           scene
               .grid()
               .find(condition, codec)
-              .map(f -> f.quality().pictureHalfWidthDb())
+              .map(f -> halfWidth.applyAsDouble(f.quality()))
               .orElse(Double.NaN);
       return Double.isFinite(half)
           ? "M" + point(x, y.at(psnr - half)) + "L" + point(x, y.at(psnr + half))
@@ -273,13 +307,13 @@ record LinePlot(
         Draft draft = drafts.get(i);
         int place = order.indexOf(draft);
         if (place < 0) {
-          lines.add(draft.line("", "", ""));
+          lines.add(draft.placed("", "", ""));
           continue;
         }
         String leader =
             "M" + point(draft.endX() + 5, draft.endY()) + "L" + point(RIGHT + 7, at[place]);
         String sign = Shape.at(members.get(i).index(), RIGHT + 12, at[place]);
-        lines.add(draft.line(leader, sign, Numbers.coordinate(at[place] + 4)));
+        lines.add(draft.placed(leader, sign, Numbers.coordinate(at[place] + 4)));
       }
       return lines;
     }
@@ -313,17 +347,19 @@ record LinePlot(
   }
 
   /** A line whose label has no place yet. */
-  private record Draft(
-      String css,
-      String path,
-      String whiskers,
-      String markers,
-      String label,
-      double endX,
-      double endY) {
-    Line line(String leader, String sign, String labelAt) {
+  private record Draft(Line line, double endX, double endY) {
+    Line placed(String leader, String sign, String labelAt) {
       return new Line(
-          css, path, whiskers, markers + sign, leader, labelAt.isEmpty() ? "" : label, labelAt);
+          line.at(),
+          line.css(),
+          line.path(),
+          line.whiskers(),
+          line.noise(),
+          line.markers() + sign,
+          leader,
+          labelAt.isEmpty() ? "" : line.label(),
+          labelAt,
+          line.spots());
     }
   }
 }
