@@ -109,8 +109,14 @@ final class AssessCommand implements Callable<Integer> {
     if (stopped.isWhole()) {
       surroundings.out().println(folder + " is complete; there is nothing to go on with");
       if (stopped.isUntidy()) {
-        try (ResultsWriter writer = stopped.tidy()) {
-          writer.writeReport(Reports.html(ResultsFolder.open(folder)));
+        try (PluginFolder plugins = codecs.open();
+            ResultsWriter writer = stopped.tidy()) {
+          ResultsFolder results = ResultsFolder.open(folder);
+          writer.writeReport(
+              Reports.html(
+                  results,
+                  () -> Plan.unchecked(results.unchangedStudy(codecs.families(plugins))),
+                  null));
         }
         surroundings.out().println("report: " + folder.resolve(ResultsFolder.REPORT));
       }

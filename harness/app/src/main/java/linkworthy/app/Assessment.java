@@ -106,7 +106,7 @@ final class Assessment {
       writer.writePredictions(PredictionTable.of(plan));
       writer.finish(cells.toList(), writer.run().complete(done, surroundings.clock()));
       ResultsFolder results = ResultsFolder.open(folder);
-      writer.writeReport(Reports.html(results));
+      writer.writeReport(Reports.html(results, () -> plan, null));
       if (!quiet) {
         summarise(results);
       }
