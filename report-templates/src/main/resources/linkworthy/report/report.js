@@ -385,7 +385,8 @@
       .concat(all('img.crop:not(.error)', strip));
     const entries = images.map((image) => {
       const caption = image.closest('figure').querySelector('figcaption');
-      return { image, name: text(caption.querySelector('b') ?? caption).replace(/:.*/, '') };
+      const codec = caption.querySelector('b');
+      return { image, name: codec ? text(codec) : text(caption).replace(/:.*/, '') };
     });
     const [under, over] = [make('img', { alt: '' }), make('img', { alt: '', class: 'over' })];
     const pick = (target, start, label) => {
@@ -446,7 +447,7 @@
       bar.append(filterOf(table));
     }
     bar.append(button('Copy as CSV', () => copy(csvOf(table), 'Table')));
-    table.closest('.scroll').before(bar);
+    table.closest('.scroll').prepend(bar);
   }
   for (const plot of all('svg')) {
     const spots = all('.spot', plot);
