@@ -73,10 +73,19 @@ record LinePlot(
             .filter(c -> c.equivalentNoiseVariance() > 0)
             .filter(c -> Double.isFinite(c.equivalentNoiseVariance()))
             .toList();
-    Scene scene = new Scene(grid, noise, noisy);
-    if (noisy.isEmpty() || scene.values().length == 0) {
+    double[] values = values(grid, noisy);
+    if (noisy.isEmpty() || values.length == 0) {
       return List.of();
     }
+    double[] variances =
+        noisy.stream().mapToDouble(Condition::equivalentNoiseVariance).sorted().toArray();
+    Scene scene =
+        new Scene(
+            grid,
+            noise,
+            noisy,
+            Axis.log(variances[0], variances[variances.length - 1], NOISY_FROM, RIGHT),
+            Axis.linear(values[0], values[values.length - 1], BOTTOM, TOP));
     List<LinePlot> plots = new ArrayList<>();
     for (CodecFamily family : families) {
       List<CodecFamily.Member> members = family.members();
@@ -92,47 +101,36 @@ record LinePlot(
     return plots;
   }
 
+  private static double[] values(FigureGrid grid, List<Condition> noisy) {
+    return Stream.concat(noisy.stream(), grid.clean().stream())
+        .flatMap(c -> grid.codecs().stream().flatMap(codec -> grid.find(c, codec).stream()))
+        .map(Figure::quality)
+        .flatMapToDouble(
+            q ->
+                DoubleStream.of(
+                    q.psnrMeanDb(),
+                    q.psnrMeanDb() - q.pictureHalfWidthDb(),
+                    q.psnrMeanDb() + q.pictureHalfWidthDb()))
+        .filter(Double::isFinite)
+        .sorted()
+        .toArray();
+  }
+
   /** What the panels of an impairment share. */
-  private record Scene(FigureGrid grid, FigureGrid.Noise noise, List<Condition> noisy) {
-    double[] values() {
-      return Stream.concat(noisy.stream(), grid.clean().stream())
-          .flatMap(c -> grid.codecs().stream().flatMap(codec -> grid.find(c, codec).stream()))
-          .map(Figure::quality)
-          .flatMapToDouble(
-              q ->
-                  DoubleStream.of(
-                      q.psnrMeanDb(),
-                      q.psnrMeanDb() - q.pictureHalfWidthDb(),
-                      q.psnrMeanDb() + q.pictureHalfWidthDb()))
-          .filter(Double::isFinite)
-          .sorted()
-          .toArray();
-    }
-
-    Axis y() {
-      double[] values = values();
-      return Axis.linear(values[0], values[values.length - 1], BOTTOM, TOP);
-    }
-
-    Axis x() {
-      double[] variances =
-          noisy.stream().mapToDouble(Condition::equivalentNoiseVariance).sorted().toArray();
-      return Axis.log(variances[0], variances[variances.length - 1], NOISY_FROM, RIGHT);
-    }
-
+  private record Scene(
+      FigureGrid grid, FigureGrid.Noise noise, List<Condition> noisy, Axis x, Axis y) {
     /** The clean condition, then the noisy ones from mild to harsh. */
     List<Condition> places() {
       return Stream.concat(grid.clean().stream(), noisy.stream()).toList();
     }
 
     double across(Condition condition) {
-      return condition.isClean() ? CLEAN_AT : x().at(condition.equivalentNoiseVariance());
+      return condition.isClean() ? CLEAN_AT : x.at(condition.equivalentNoiseVariance());
     }
 
     List<Tick> horizontal() {
       List<Tick> ticks = new ArrayList<>();
       grid.clean().ifPresent(c -> ticks.add(tick(CLEAN_AT, "clean")));
-      Axis x = x();
       x.ticks().forEach(v -> ticks.add(tick(x.at(v), Numbers.typed(v))));
       return spaced(ticks);
     }
@@ -149,7 +147,6 @@ record LinePlot(
     }
 
     List<Tick> vertical() {
-      Axis y = y();
       return y.ticks().stream().map(v -> tick(y.at(v), Numbers.typed(v))).toList();
     }
 

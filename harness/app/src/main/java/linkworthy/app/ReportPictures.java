@@ -30,6 +30,8 @@ final class ReportPictures {
           + " this page was made. Where they are, './linkworthy report FOLDER' makes this page with"
           + " them.";
 
+  private static final int CODECS = 3;
+
   private final ResultsFolder results;
   private final List<Cell> cells;
   private final ReportTrials trials;
@@ -87,13 +89,15 @@ final class ReportPictures {
             + " (the reference, the codec that the answer names) gives them at the middle severity,"
             + " the median one (typical; of an even number the lower), the worst and the best.",
         "Codecs: the one with the best mean PSNR over the noise, the cheapest that no other one"
-            + " dominates there, and the reference. Severities: mildest, middle, harshest. Noise:"
+            + " dominates there, and the reference; where these are fewer than three, the second"
+            + " best too. Severities: mildest, middle, harshest. Noise:"
             + " the first replicate.",
         "Crops: of at most "
             + PictureCrop.SIDE
             + " \u00d7 "
             + PictureCrop.SIDE
-            + " samples, where the clean picture varies most; each sample is drawn as a square,"
+            + " samples, where the clean picture has most detail (squared differences of"
+            + " neighbours); each sample is drawn as a square,"
             + " nothing is smoothed.",
         "Error maps, below each decoded crop: mid-grey (128) is no error, and a grey level of error"
             + " is "
@@ -146,6 +150,13 @@ final class ReportPictures {
         .min(Comparator.comparingDouble(Rank::bits).thenComparing(best))
         .ifPresent(rank -> add(codecs, rank.codec(), "cheapest non-dominated"));
     add(codecs, reference, "reference");
+    if (codecs.size() < CODECS) {
+      ranks.values().stream()
+          .sorted(best)
+          .skip(1)
+          .limit(1)
+          .forEach(rank -> add(codecs, rank.codec(), "second-best mean PSNR"));
+    }
     return new Choice(noise, pictures(noise), codecs);
   }
 
