@@ -1,8 +1,5 @@
 package linkworthy.noise;
 
-import java.util.List;
-import java.util.Map;
-import java.util.Set;
 import linkworthy.input.BadInput;
 import org.apache.commons.rng.UniformRandomProvider;
 
@@ -15,21 +12,17 @@ import org.apache.commons.rng.UniformRandomProvider;
  * V), which is 10^(-SNR/10) where the signal power S is the variance. A rate outside 0 to 1, given
  * or asked for, is refused with a {@link BadInput}.
  */
-public final class NodeOutage implements NoiseProcess {
+public final class NodeOutage extends ShareOfHits {
   /** Probability that a node fails, 0 to 1. */
   public static final String OUTAGE_RATE = "outage-rate";
 
-  private static final Set<String> AXES =
-      SeverityChecks.inOrder(Severity.SNR_DB, Severity.VARIANCE, OUTAGE_RATE);
+  public NodeOutage() {
+    super(OUTAGE_RATE, Site.PACKETS);
+  }
 
   @Override
   public String id() {
     return "node-outage";
-  }
-
-  @Override
-  public int revision() {
-    return 1;
   }
 
   @Override
@@ -39,43 +32,13 @@ public final class NodeOutage implements NoiseProcess {
   }
 
   @Override
-  public List<Site> sites() {
-    return List.of(Site.PACKETS);
+  double perHit(SignalStatistics signal) {
+    return signal.variance();
   }
 
   @Override
-  public Map<String, Double> parameters() {
-    return Map.of();
-  }
-
-  @Override
-  public Set<String> axes() {
-    return AXES;
-  }
-
-  @Override
-  public void check(Severity severity, Map<String, Double> parameters, Site site) {
-    SeverityChecks.common(this, severity, parameters, site);
-    if (severity.axis().equals(OUTAGE_RATE)) {
-      SeverityChecks.inRange(severity.value(), 0, 1, OUTAGE_RATE);
-    }
-  }
-
-  @Override
-  public Impairment at(
-      Severity severity, Map<String, Double> parameters, Site site, SignalStatistics signal) {
-    check(severity, parameters, site);
-    if (severity.axis().equals(OUTAGE_RATE)) {
-      return new Outages(severity.value() * signal.variance(), severity.value());
-    }
-    double variance = SeverityChecks.noiseVariance(severity, signal);
-    double rate = variance == 0 ? 0 : variance / signal.variance();
-    if (!(rate <= 1)) {
-      throw new BadInput(
-          "node-outage at %s %s needs an outage rate of %s on this picture; accepted: 0 to 1"
-              .formatted(severity.axis(), severity.value(), rate));
-    }
-    return new Outages(variance, rate);
+  Impairment hitting(double share, double equivalentNoiseVariance) {
+    return new Outages(equivalentNoiseVariance, share);
   }
 
   private record Outages(double equivalentNoiseVariance, double rate)

@@ -1,10 +1,9 @@
 package linkworthy.noise;
 
-import java.util.Collections;
 import java.util.ServiceLoader;
 import java.util.SortedMap;
-import java.util.TreeMap;
 import linkworthy.input.BadInput;
+import linkworthy.input.ById;
 import linkworthy.input.Spelling;
 import org.jspecify.annotations.Nullable;
 
@@ -42,15 +41,12 @@ public final class NoiseProcesses {
   }
 
   static SortedMap<String, NoiseProcess> index(Iterable<NoiseProcess> processes) {
-    SortedMap<String, NoiseProcess> byId = new TreeMap<>();
-    for (NoiseProcess process : processes) {
-      NoiseProcess other = byId.put(process.id(), process);
-      if (other != null) {
-        throw new IllegalStateException(
-            "noise process id '%s' is used twice: by %s and by %s"
-                .formatted(process.id(), other.getClass().getName(), process.getClass().getName()));
-      }
-    }
-    return Collections.unmodifiableSortedMap(byId);
+    return ById.index(
+        processes,
+        NoiseProcess::id,
+        (one, other) ->
+            new IllegalStateException(
+                "noise process id '%s' is used twice: by %s and by %s"
+                    .formatted(one.id(), one.getClass().getName(), other.getClass().getName())));
   }
 }

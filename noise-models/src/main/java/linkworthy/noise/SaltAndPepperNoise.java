@@ -1,8 +1,5 @@
 package linkworthy.noise;
 
-import java.util.List;
-import java.util.Map;
-import java.util.Set;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
 import org.apache.commons.rng.UniformRandomProvider;
@@ -15,21 +12,17 @@ import org.apache.commons.rng.UniformRandomProvider;
  * <p>Density 0 leaves the picture as it is, density 1 leaves nothing of it. An SNR or a variance
  * that would need a density above 1 is refused with a {@link BadInput}.
  */
-public final class SaltAndPepperNoise implements NoiseProcess {
+public final class SaltAndPepperNoise extends ShareOfHits {
   /** Share of samples hit, 0 to 1. */
   public static final String DENSITY = "density";
 
-  private static final Set<String> AXES =
-      SeverityChecks.inOrder(Severity.SNR_DB, Severity.VARIANCE, DENSITY);
+  public SaltAndPepperNoise() {
+    super(DENSITY, Site.SAMPLES);
+  }
 
   @Override
   public String id() {
     return "salt-and-pepper";
-  }
-
-  @Override
-  public int revision() {
-    return 1;
   }
 
   @Override
@@ -39,46 +32,15 @@ public final class SaltAndPepperNoise implements NoiseProcess {
   }
 
   @Override
-  public List<Site> sites() {
-    return List.of(Site.SAMPLES);
-  }
-
-  @Override
-  public Map<String, Double> parameters() {
-    return Map.of();
-  }
-
-  @Override
-  public Set<String> axes() {
-    return AXES;
-  }
-
-  @Override
-  public void check(Severity severity, Map<String, Double> parameters, Site site) {
-    SeverityChecks.common(this, severity, parameters, site);
-    if (severity.axis().equals(DENSITY)) {
-      SeverityChecks.inRange(severity.value(), 0, 1, DENSITY);
-    }
-  }
-
-  @Override
-  public Impairment at(
-      Severity severity, Map<String, Double> parameters, Site site, SignalStatistics signal) {
-    check(severity, parameters, site);
+  double perHit(SignalStatistics signal) {
     double peak = signal.peak();
-    double perHit =
-        (signal.meanSquare() + (peak * peak - 2 * peak * signal.mean() + signal.meanSquare())) / 2;
-    if (severity.axis().equals(DENSITY)) {
-      return new Impulses(severity.value() * perHit, severity.value());
-    }
-    double variance = SeverityChecks.noiseVariance(severity, signal);
-    double density = variance / perHit;
-    if (!(density <= 1)) {
-      throw new BadInput(
-          "salt-and-pepper at %s %s needs a density of %s on this picture; accepted: a noise variance of 0.0 to %s grey levels squared (density 1)"
-              .formatted(severity.axis(), severity.value(), density, perHit));
-    }
-    return new Impulses(variance, density);
+    return (signal.meanSquare() + (peak * peak - 2 * peak * signal.mean() + signal.meanSquare()))
+        / 2;
+  }
+
+  @Override
+  Impairment hitting(double share, double equivalentNoiseVariance) {
+    return new Impulses(equivalentNoiseVariance, share);
   }
 
   private record Impulses(double equivalentNoiseVariance, double density)

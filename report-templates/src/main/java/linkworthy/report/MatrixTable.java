@@ -68,14 +68,24 @@ record MatrixTable(String part, List<Head> families, List<Column> columns, List<
     return of(grid, families, conditions, figure -> psnrCell(figure, grid.id(figure)));
   }
 
-  /** Outage rates. */
+  /** Outage rates with their intervals. */
   static List<MatrixTable> outages(
       FigureGrid grid, List<CodecFamily> families, List<Condition> conditions) {
     return of(
         grid,
         families,
         conditions,
-        figure -> Cell.plain(Numbers.percent(figure.outageRate()), "", grid.id(figure)));
+        figure ->
+            Cell.plain(Numbers.percent(figure.outageRate()), outageRange(figure), grid.id(figure)));
+  }
+
+  /** Short, as it stands in every column. */
+  private static String outageRange(Figure figure) {
+    Figure.Evidence evidence = figure.evidence();
+    return Double.isNaN(evidence.outageLow())
+        ? ""
+        : Numbers.percent(evidence.outageLow()).replace(" %", "\u2013")
+            + Numbers.percent(evidence.outageHigh()).replace(" %", "");
   }
 
   private static List<MatrixTable> of(

@@ -411,6 +411,7 @@
       image.width = images[0].naturalWidth * factor;
       image.height = images[0].naturalHeight * factor;
     }
+    range.style.width = under.width + 'px';
     open('Compare: ' + title,
       make('div', { class: 'tools' }, pick(under, Math.max(0, last - 1), 'Left'), pick(over, last, 'Right')),
       make('div', { class: 'wipe' }, under, over), range);

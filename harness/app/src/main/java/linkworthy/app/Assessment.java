@@ -4,6 +4,7 @@ import java.nio.file.Path;
 import java.util.List;
 import java.util.concurrent.CountDownLatch;
 import java.util.concurrent.TimeUnit;
+import linkworthy.codec.Confinement;
 import linkworthy.codec.PluginFolder;
 import linkworthy.results.ResultsFolder;
 import linkworthy.results.ResultsWriter;
@@ -81,6 +82,9 @@ final class Assessment {
     Cells cells = new Cells();
     Course course = new Course(plan);
     try (ResultsWriter writer = open(cells, course)) {
+      if (!writer.run().programs().isEmpty() && !quiet) {
+        surroundings.err().println("linkworthy: " + Confinement.ofThisMachine().sentence());
+      }
       int first = writer.unitsAtStart();
       if (first > 0 && !quiet) {
         sayWhatIsKept(first);

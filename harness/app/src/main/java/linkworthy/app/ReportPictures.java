@@ -193,11 +193,12 @@ final class ReportPictures {
         }
       }
     }
-    results.trials(
-        trial ->
-            wanted.computeIfPresent(
-                new Wanted(trial.picture(), ReportTrials.Place.of(trial)),
-                (key, before) -> before.or(() -> Optional.of(trial))));
+    long unused =
+        results.trials(
+            trial ->
+                wanted.computeIfPresent(
+                    new Wanted(trial.picture(), ReportTrials.Place.of(trial)),
+                    (key, before) -> before.or(() -> Optional.of(trial))));
     Map<Wanted, Trial> recorded = new LinkedHashMap<>();
     wanted.forEach((key, trial) -> trial.ifPresent(t -> recorded.put(key, t)));
     return recorded;

@@ -67,18 +67,19 @@ final class ReportTrials {
   static ReportTrials of(ResultsFolder results, List<Cell> cells) {
     ReportTrials trials = new ReportTrials(results, cells);
     List<Measurements.Condition> middles = trials.noises.stream().map(Noise::middle).toList();
-    results.trials(
-        trial -> {
-          Place place = Place.of(trial);
-          trials.typical.computeIfPresent(place, (p, t) -> t.or(trial));
-          if (middles.contains(place.condition())) {
-            trials
-                .pictures
-                .computeIfAbsent(place, p -> new LinkedHashMap<>())
-                .computeIfAbsent(trial.picture(), p -> new Moments())
-                .add(trial.psnrDb());
-          }
-        });
+    long unused =
+        results.trials(
+            trial -> {
+              Place place = Place.of(trial);
+              trials.typical.computeIfPresent(place, (p, t) -> t.or(trial));
+              if (middles.contains(place.condition())) {
+                trials
+                    .pictures
+                    .computeIfAbsent(place, p -> new LinkedHashMap<>())
+                    .computeIfAbsent(trial.picture(), p -> new Moments())
+                    .add(trial.psnrDb());
+              }
+            });
     return trials;
   }
 

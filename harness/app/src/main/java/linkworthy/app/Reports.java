@@ -23,6 +23,7 @@ import linkworthy.report.Standing;
 import linkworthy.results.ResultsFolder;
 import linkworthy.results.RunRecord;
 import linkworthy.statistics.Cell;
+import linkworthy.statistics.ShareInterval;
 import linkworthy.statistics.StudentT;
 import linkworthy.study.EarlyStop;
 import linkworthy.study.ImpairmentChoice;
@@ -82,11 +83,12 @@ final class Reports {
   private static List<String> verified(RunRecord run, ReportPictures.Made pictures) {
     List<String> verified = new ArrayList<>();
     verified.add(
-        "The record says of itself that it is complete: "
+        "The record is complete, "
             + run.trialsDone()
             + " of "
             + run.trialsPlanned()
-            + " trials. Every row of its tables was read for this page.");
+            + " trials; it was read as a whole for this page, and its cells follow from its"
+            + " trials.");
     verified.addAll(pictures.verified());
     return verified;
   }
@@ -178,8 +180,7 @@ final class Reports {
             cell.over(),
             cell.keep() < 0 ? "" : Integer.toString(cell.keep()),
             cell.step()),
-        new Figure.Evidence(
-            cell.pictures(), Math.toIntExact(cell.trials()), Math.toIntExact(cell.failures())),
+        evidence(cell),
         new Figure.Quality(
             cell.psnrMeanDb(),
             cell.psnrNoiseHalfWidthDb(),
@@ -194,6 +195,14 @@ final class Reports {
             cell.behindBestPAdjusted(),
             Standing.of(cell.standing().toString())),
         typicalTrial);
+  }
+
+  private static Figure.Evidence evidence(Cell cell) {
+    int trials = Math.toIntExact(cell.trials());
+    int outages = (int) Math.round(cell.outageRate() * trials);
+    ShareInterval outage = ShareInterval.wilson(outages, trials, StudentT.CONFIDENCE);
+    return new Figure.Evidence(
+        cell.pictures(), trials, Math.toIntExact(cell.failures()), outage.lower(), outage.upper());
   }
 
   private static PictureCredit credit(RunRecord.PictureUsed picture) {
@@ -243,6 +252,9 @@ final class Reports {
               "codec " + program.codec(),
               "runs an external program, "
                   + program.program()
+                  + (program.confinement().equals("none")
+                      ? ""
+                      : ", confined by " + program.confinement())
                   + "; the same study may give other numbers on another machine or day"));
     }
     return facts;

@@ -13,7 +13,6 @@ import linkworthy.decision.Need;
 import linkworthy.decision.Needs;
 import linkworthy.decision.Shortlist;
 import linkworthy.decision.Verdict;
-import linkworthy.input.BadInput;
 import linkworthy.input.YamlNode;
 import linkworthy.report.Answer;
 import linkworthy.report.ShortlistPage;
@@ -33,15 +32,12 @@ final class ShortlistText {
   /**
    * The shortlist of a run by a file of needs.
    *
-   * @throws BadInput if the run was not finished or the file cannot be used
+   * @throws linkworthy.input.BadInput if the run was not finished or the file cannot be used
    */
   static ShortlistText of(ResultsFolder results, Path need) {
-    if (!results.run().complete()) {
-      throw new BadInput(
-          results.path() + " is of a run that was not finished; accepted: a complete run");
-    }
+    results.requireComplete();
     Measurements measured = new Measurements();
-    results.trials(measured::add);
+    long unused = results.trials(measured::add);
     return new ShortlistText(
         Shortlist.of(measured, Needs.read(YamlNode.read(need), measured)), measured);
   }

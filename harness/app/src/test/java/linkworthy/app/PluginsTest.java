@@ -7,10 +7,14 @@ import java.nio.file.Files;
 import java.nio.file.Path;
 import java.security.MessageDigest;
 import java.security.NoSuchAlgorithmException;
+import java.util.ArrayList;
 import java.util.HexFormat;
 import java.util.List;
 import java.util.Map;
+import java.util.stream.Stream;
+import linkworthy.codec.Confinement;
 import linkworthy.results.ResultsFolder;
+import linkworthy.results.RunRecord;
 import linkworthy.statistics.Cell;
 import linkworthy.trial.Trial;
 import org.junit.jupiter.api.Test;
@@ -333,11 +337,103 @@ class PluginsTest {
             assertThat(trial.outage()).isEqualTo(!whole);
           }
         });
-    assertThat(results.run().programs()).hasSize(1);
+    String confinement = Confinement.ofThisMachine().id();
+    assertThat(results.run().programs())
+        .containsExactly(new RunRecord.ProgramUsed("command cp truncate", "cp", confinement));
+    assertThat(run.err().lines().filter(line -> line.startsWith("linkworthy: commands run ")))
+        .containsExactly("linkworthy: " + Confinement.ofThisMachine().sentence());
+    assertThat(Files.readString(home.resolve("out/run.json")))
+        .contains("\"confinement\" : \"" + confinement + "\"");
     assertThat(Files.readString(home.resolve("out/report.html")))
         .contains("codec command cp truncate", "runs an external program, cp");
     assertThat(CommandLineRun.of(home, "report", home.resolve("out").toString()).exitCode())
         .isEqualTo(Main.DONE);
+  }
+
+  private static final String[] COLOUR = {
+    "--set",
+    "pictures.select=fig",
+    "--set",
+    "pictures.planes=all",
+    "--set",
+    "pictures.chroma=\"4:4:4\""
+  };
+
+  private static String[] inColour(String... options) {
+    return Stream.concat(Stream.of(options), Stream.of(COLOUR)).toArray(String[]::new);
+  }
+
+  private List<Trial> trials(String codec) {
+    List<Trial> found = new ArrayList<>();
+    ResultsFolder.open(home.resolve("out"))
+        .trials(
+            trial -> {
+              if (trial.codec().equals(codec)) {
+                found.add(trial);
+              }
+            });
+    return found;
+  }
+
+  /** Each plane is a file of its own to the program; packets have one byte more for its number. */
+  @Test
+  void aCommandCodesAllPlanes() throws IOException {
+    String copy =
+        "command: {encode: [cp, '{input}', '{output}'], decode: [cp, '{input}', '{output}']}";
+    CommandLineRun run = assess(copy, inColour("--allow-commands"));
+    assertThat(run.exitCode()).as(run.err()).isEqualTo(Main.DONE);
+    List<Trial> trials = trials("command cp truncate");
+    assertThat(trials).hasSize(3);
+    Trial clean = trials.get(0);
+    assertThat(clean.psnrDb()).isEqualTo(Double.POSITIVE_INFINITY);
+    int file = "P5\n48 32\n255\n".length() + 48 * 32;
+    int packets = 3 * ((file + 84) / 85);
+    assertThat(clean.packetsSent()).isEqualTo(packets);
+    assertThat(clean.payloadBits()).isEqualTo(8L * (3 * file + 11 * packets));
+    assertThat(clean.bitsPerPixel()).isEqualTo(clean.sentBits() / (48.0 * 32));
+    assertThat(clean.failure()).isEmpty();
+    assertThat(trials.subList(1, 3))
+        .as("part of a PGM file is no picture")
+        .allMatch(trial -> trial.packetsLost() > 0)
+        .allMatch(trial -> trial.failure().equals("decode-unreadable"));
+  }
+
+  @Test
+  void aPluginCodesAllPlanes() throws Exception {
+    Path unused = PluginJars.makeExample(folder());
+    CommandLineRun run = assess("thumbnail: 4", inColour("--plugins", folder().toString()));
+    assertThat(run.exitCode()).as(run.err()).isEqualTo(Main.DONE);
+    List<Trial> colour = trials("thumbnail 4");
+    assertThat(colour).hasSize(3).allMatch(trial -> trial.failure().isEmpty());
+    assertThat(colour.get(0).psnrDb()).isBetween(15.0, 50.0);
+    assertThat(Files.readString(home.resolve("out/report.html"))).contains("thumbnail 4");
+    CommandLineRun luma =
+        assess(
+            "thumbnail: 4",
+            "--overwrite",
+            "--plugins",
+            folder().toString(),
+            "--set",
+            "pictures.select=fig");
+    assertThat(luma.exitCode()).as(luma.err()).isEqualTo(Main.DONE);
+    Trial alone = trials("thumbnail 4").get(0);
+    assertThat(colour.get(0).ssim()).as("of luma").isEqualTo(alone.ssim());
+    assertThat((double) colour.get(0).sentBits() / alone.sentBits()).isBetween(2.8, 3.3);
+  }
+
+  /** A plane whose program fails makes the trial an outage with its reason, not the run. */
+  @Test
+  void aCommandThatFailsOnAPlaneIsAnOutageOfTheTrial() throws IOException {
+    String fails = "[sh, -c, 'exit 1', sh, '{input}', '{output}']";
+    CommandLineRun run =
+        assess(
+            "command: {encode: [cp, '{input}', '{output}'], decode: " + fails + "}",
+            inColour("--allow-commands"));
+    assertThat(run.exitCode()).as(run.err()).isEqualTo(Main.DONE);
+    List<Trial> trials = trials("command cp truncate");
+    assertThat(trials).hasSize(3);
+    assertThat(trials.get(0).failure()).isEqualTo("decode-exit");
+    assertThat(trials.get(0).outage()).isTrue();
   }
 
   @Test

@@ -37,6 +37,13 @@ public class EigenBenchmark {
     }
   }
 
+  /** The directions of a codec that keeps up to 64 components. */
+  @Benchmark
+  public Basis.Directions leading() {
+    return pca.forAtMost(64)
+        .directions(new Arrangement.Rows(), new PictureShape(order, order, 8), centred);
+  }
+
   @Benchmark
   public Basis.Directions directions() {
     return pca.directions(new Arrangement.Rows(), new PictureShape(order, order, 8), centred);

@@ -30,7 +30,7 @@ final class Analysis {
     this.meanRests = meanRests;
     this.identity = identity;
     this.directions = directions;
-    this.coefficients = new double[identity ? centred.length : directions.rows().length][];
+    this.coefficients = new double[identity ? centred.length : directions.count()][];
   }
 
   static Analysis of(Picture picture, Arrangement arrangement, Basis basis) {

@@ -33,6 +33,16 @@ public interface Basis {
    */
   Directions directions(Arrangement arrangement, PictureShape shape, double[][] centred);
 
+  /** The same basis for a codec that uses no more directions, which may be quicker to find. */
+  default Basis forAtMost(int components) {
+    return this;
+  }
+
+  /** Names the directions found, for codecs that share them. */
+  default String work() {
+    return id();
+  }
+
   /** Every basis of the transform codec. */
   static List<Basis> all() {
     return List.of(new MeanBasis(), new DctBasis(), new WalshBasis(), new PcaBasis());
@@ -44,9 +54,10 @@ public interface Basis {
     private final double[] variances;
 
     /**
-     * @param rows up to d directions of d entries each, orthonormal
-     * @param variances variance along each direction in grey levels squared (1/n), or empty if it
-     *     is not known without projecting
+     * @param rows up to d directions of d entries each, orthonormal; fewer than there are for a
+     *     codec that uses no more
+     * @param variances variance along each direction there is in grey levels squared (1/n), or
+     *     empty if it is not known without projecting
      */
     Directions(double[][] rows, double[] variances) {
       this.rows = rows;
@@ -55,6 +66,11 @@ public interface Basis {
 
     double[][] rows() {
       return rows;
+    }
+
+    /** How many there are, those left out included. */
+    int count() {
+      return Math.max(rows.length, variances.length);
     }
 
     double[] variances() {

@@ -1,11 +1,13 @@
 package linkworthy.codec;
 
+import java.util.ArrayList;
 import java.util.Collection;
 import java.util.List;
 import java.util.ServiceLoader;
 import java.util.SortedMap;
 import java.util.TreeMap;
 import linkworthy.input.BadInput;
+import linkworthy.input.ById;
 import linkworthy.input.Spelling;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
@@ -36,20 +38,19 @@ public final class CodecFamilies implements CodecReader {
    * @throws BadInput if two share an id; one line that names both
    */
   public CodecFamilies with(Collection<? extends CodecFamily> more) {
-    SortedMap<String, CodecFamily> all = new TreeMap<>(byId);
-    for (CodecFamily family : more) {
-      CodecFamily other = all.putIfAbsent(family.id(), family);
-      if (other != null) {
-        throw new BadInput(
-            origin(family)
-                + " has the id '"
-                + family.id()
-                + "', which "
-                + origin(other)
-                + " has as well; accepted: an id of its own");
-      }
-    }
-    return new CodecFamilies(all);
+    List<CodecFamily> all = new ArrayList<>(byId.values());
+    all.addAll(more);
+    return new CodecFamilies(ById.index(all, CodecFamily::id, CodecFamilies::twice));
+  }
+
+  private static BadInput twice(CodecFamily one, CodecFamily other) {
+    return new BadInput(
+        origin(other)
+            + " has the id '"
+            + other.id()
+            + "', which "
+            + origin(one)
+            + " has as well; accepted: an id of its own");
   }
 
   private static String origin(CodecFamily family) {

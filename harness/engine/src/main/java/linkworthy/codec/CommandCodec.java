@@ -5,6 +5,8 @@ import java.nio.file.Path;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
+import java.util.function.Supplier;
+import java.util.function.UnaryOperator;
 import java.util.stream.Stream;
 import java.util.zip.CRC32C;
 import linkworthy.corpus.Picture;
@@ -12,6 +14,7 @@ import linkworthy.corpus.PictureHeader;
 import linkworthy.corpus.PictureReader;
 import linkworthy.input.BadInput;
 import linkworthy.input.Unavailable;
+import linkworthy.link.Packet;
 
 /**
  * Two programs as a codec: one turns a PGM file into bytes, the other turns them back. The bytes
@@ -27,10 +30,12 @@ final class CommandCodec implements Codec {
   private final List<String> decode;
   private final OnLoss onLoss;
   private final CommandRun.Limits limits;
+  private final Supplier<Confinement> confinement;
   private final int payloadBytes;
 
   /**
    * @param label empty for the one derived from the parameters
+   * @param confinement asked for when a program is run, not before
    */
   CommandCodec(
       String label,
@@ -38,11 +43,13 @@ final class CommandCodec implements Codec {
       List<String> decode,
       OnLoss onLoss,
       CommandRun.Limits limits,
+      Supplier<Confinement> confinement,
       int payloadBytes) {
     this.encode = List.copyOf(encode);
     this.decode = List.copyOf(decode);
     this.onLoss = onLoss;
     this.limits = limits;
+    this.confinement = confinement;
     this.payloadBytes = payloadBytes;
     this.label =
         label.isEmpty()
@@ -113,19 +120,33 @@ final class CommandCodec implements Codec {
   @Override
   public Encoding encode(Picture picture, Memo memo) {
     PictureShape shape = PictureShape.of(picture);
-    byte[] bytes = CommandRun.encoding(encode, shape, limits(shape)).run(Pgm.write(picture));
-    return new Encoding(stream(shape).cut(bytes), -1);
+    byte[] bytes =
+        CommandRun.encoding(encode, shape, limits(shape), confinement.get())
+            .run(Pgm.write(picture));
+    return new Encoding(packets(shape, bytes), -1);
+  }
+
+  /** The packets that carry an encoder's bytes. */
+  List<Packet> packets(PictureShape shape, byte[] bytes) {
+    return stream(shape).cut(bytes);
   }
 
   @Override
   public Decoding decode(PictureShape shape, List<byte[]> arrived) {
-    CommandRun.Limits inForce = limits(shape);
-    ByteStream.Arrived stream = stream(shape).join(arrived, onLoss, inForce.outputBytes());
+    return decode(
+        shape, arrived, CommandRun.decoding(decode, shape, limits(shape), confinement.get())::run);
+  }
+
+  /**
+   * @param program makes a PGM file of bytes or throws a {@link CodecFailure}
+   */
+  Decoding decode(PictureShape shape, List<byte[]> arrived, UnaryOperator<byte[]> program) {
+    ByteStream.Arrived stream = stream(shape).join(arrived, onLoss, limits(shape).outputBytes());
     if (stream.bytes().length == 0) {
       return Decoding.nothing(shape);
     }
     try {
-      byte[] file = CommandRun.decoding(decode, shape, inForce).run(stream.bytes());
+      byte[] file = program.apply(stream.bytes());
       return new Decoding(
           picture(shape, file),
           stream.complete() ? Decoding.Completeness.COMPLETE : Decoding.Completeness.PARTIAL);

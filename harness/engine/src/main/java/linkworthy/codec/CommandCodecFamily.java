@@ -57,9 +57,11 @@ public final class CommandCodecFamily implements CodecFamily {
         Each call has a folder of its own, deleted afterwards, as its current folder, HOME and
         TMPDIR; of the environment it sees PATH alone, and no input but the file. A call that takes
         too long or writes too much is ended with all its processes. Whatever goes wrong is an
-        outage of that one trial, named in the column failure. This is no sandbox: a program may
-        do all that you may do, write outside its folder and use the network included. Run
-        programs that you trust.
+        outage of that one trial, named in the column failure; so is an output that is a symbolic
+        link. Where bubblewrap (bwrap) is on the PATH and works, a program can write to its own
+        folder alone and has no network. Elsewhere it may do all that you may do, write outside its
+        folder and use the network included; assess says which of the two at its start. Either way
+        run programs that you trust: they can read all that you can read.
         Sent, and counted: every byte that encode writes, and 10 bytes a packet that say where it
         belongs. What it costs at the node is the program's affair.""";
   }
@@ -88,7 +90,14 @@ public final class CommandCodecFamily implements CodecFamily {
             .orElse(OnLoss.TRUNCATE);
     String label = entry.find("label").map(YamlNode::text).orElse("");
     return List.of(
-        new CommandCodec(label, encode, decode, onLoss, limits(entry), link.payloadBytes()));
+        new CommandCodec(
+            label,
+            encode,
+            decode,
+            onLoss,
+            limits(entry),
+            Confinement::ofThisMachine,
+            link.payloadBytes()));
   }
 
   private static CommandRun.Limits limits(YamlNode entry) {

@@ -38,6 +38,7 @@ final class CommandRun {
   private final List<String> command;
   private final PictureShape shape;
   private final Limits limits;
+  private final Confinement confinement;
   private final String inputName;
   private final String outputName;
 
@@ -55,24 +56,30 @@ final class CommandRun {
       List<String> command,
       PictureShape shape,
       Limits limits,
+      Confinement confinement,
       String inputName,
       String outputName) {
     this.phase = phase;
     this.command = command;
     this.shape = shape;
     this.limits = limits;
+    this.confinement = confinement;
     this.inputName = inputName;
     this.outputName = outputName;
   }
 
   /** A call that makes bytes of a PGM file. */
-  static CommandRun encoding(List<String> command, PictureShape shape, Limits limits) {
-    return new CommandRun("encode", command, shape, limits, "picture.pgm", "coded.bin");
+  static CommandRun encoding(
+      List<String> command, PictureShape shape, Limits limits, Confinement confinement) {
+    return new CommandRun(
+        "encode", command, shape, limits, confinement, "picture.pgm", "coded.bin");
   }
 
   /** A call that makes a PGM file of bytes. */
-  static CommandRun decoding(List<String> command, PictureShape shape, Limits limits) {
-    return new CommandRun("decode", command, shape, limits, "coded.bin", "picture.pgm");
+  static CommandRun decoding(
+      List<String> command, PictureShape shape, Limits limits, Confinement confinement) {
+    return new CommandRun(
+        "decode", command, shape, limits, confinement, "coded.bin", "picture.pgm");
   }
 
   /** Where a program is: a name on the PATH, or an absolute path. */
@@ -100,17 +107,17 @@ final class CommandRun {
    * Runs the program on a file's bytes and returns those of the file it writes.
    *
    * @throws CodecFailure if it cannot be started, ends with an exit code other than 0, takes too
-   *     long, writes too much or writes nothing
+   *     long, writes too much, writes nothing, or leaves its output elsewhere
    * @throws Unavailable if this machine has no room for the files
    * @throws CancellationException if the calling thread is interrupted; the program is ended first
    */
   byte[] run(byte[] input) {
     try {
-      Path folder = Files.createTempDirectory("linkworthy-");
+      Path folder = Files.createTempDirectory("linkworthy-").toRealPath();
       try {
         Files.write(folder.resolve(inputName), input);
         watch(folder, start(folder));
-        return output(folder.resolve(outputName));
+        return output(folder);
       } finally {
         CommandFolder.delete(folder);
       }
@@ -131,6 +138,7 @@ final class CommandRun {
             });
     Path program =
         find(command.get(0)).orElseThrow(() -> failure("start", "there is no " + command.get(0)));
+    line.addAll(confinement.before(folder));
     line.add(program.toString());
     command.stream().skip(1).map(argument -> filledIn(argument, folder)).forEach(line::add);
     ProcessBuilder builder = new ProcessBuilder(line).directory(folder.toFile());
@@ -197,7 +205,11 @@ final class CommandRun {
     }
   }
 
-  private byte[] output(Path file) throws IOException {
+  private byte[] output(Path folder) throws IOException {
+    Path file = folder.resolve(outputName);
+    if (Files.isSymbolicLink(folder) || Files.isSymbolicLink(file)) {
+      throw failure("outside", command.get(0) + " put a symbolic link where its output belongs");
+    }
     if (!Files.isRegularFile(file, LinkOption.NOFOLLOW_LINKS) || Files.size(file) == 0) {
       throw failure("empty", command.get(0) + " ended well and wrote no output");
     }

@@ -45,7 +45,7 @@ final class JpegBlocks {
         int y = Math.min(top + i / SIDE, shape.height() - 1);
         samples[i] = picture.samples()[y * shape.width() + x] - LEVEL;
       }
-      transform(samples, transformed, true);
+      transform(samples, transformed);
       for (int i = 0; i < samples.length; i++) {
         coefficients[block * JpegTables.BLOCK + i] = transformed[JpegTables.natural(i)];
       }
@@ -65,24 +65,23 @@ final class JpegBlocks {
     return indices;
   }
 
-  /** The picture that indices stand for. */
+  /** The picture that indices stand for, as {@link JpegInverse} computes it. */
   Picture inverse(int[] indices, int quality) {
     int[] steps = JpegTables.steps(quality);
     int[] picture = new int[shape.size()];
-    double[] coefficients = new double[JpegTables.BLOCK];
-    double[] samples = new double[JpegTables.BLOCK];
+    int[] coefficients = new int[JpegTables.BLOCK];
+    int[] samples = new int[JpegTables.BLOCK];
+    JpegInverse transform = new JpegInverse();
     for (int block = 0; block < count(); block++) {
       int left = block % across() * SIDE;
       int top = block / across() * SIDE;
       for (int i = 0; i < coefficients.length; i++) {
-        coefficients[JpegTables.natural(i)] =
-            (double) indices[block * JpegTables.BLOCK + i] * steps[i];
+        coefficients[JpegTables.natural(i)] = indices[block * JpegTables.BLOCK + i] * steps[i];
       }
-      transform(coefficients, samples, false);
+      transform.apply(coefficients, samples);
       for (int y = top; y < Math.min(top + SIDE, shape.height()); y++) {
         for (int x = left; x < Math.min(left + SIDE, shape.width()); x++) {
-          picture[y * shape.width() + x] =
-              shape.toSample(samples[(y - top) * SIDE + x - left] + LEVEL);
+          picture[y * shape.width() + x] = samples[(y - top) * SIDE + x - left];
         }
       }
     }
@@ -90,21 +89,20 @@ final class JpegBlocks {
   }
 
   /** Rows, then columns: 1024 multiply-accumulates. */
-  private static void transform(double[] from, double[] to, boolean forward) {
+  private static void transform(double[] from, double[] to) {
     double[] rows = new double[from.length];
     for (int i = 0; i < rows.length; i++) {
       int k = i % SIDE;
       double sum = 0;
       for (int j = 0; j < SIDE; j++) {
-        sum += (forward ? DCT[k][j] : DCT[j][k]) * from[i - k + j];
+        sum += DCT[k][j] * from[i - k + j];
       }
       rows[i] = sum;
     }
     for (int i = 0; i < to.length; i++) {
-      int k = i / SIDE;
       double sum = 0;
       for (int j = 0; j < SIDE; j++) {
-        sum += (forward ? DCT[k][j] : DCT[j][k]) * rows[j * SIDE + i % SIDE];
+        sum += DCT[i / SIDE][j] * rows[j * SIDE + i % SIDE];
       }
       to[i] = sum;
     }

@@ -20,9 +20,10 @@ import org.jspecify.annotations.Nullable;
  * is filled as {@link JpegScan.Reader#filled} says, so that the file is a valid one that any
  * decoder shows.
  *
- * <p>The transform is computed here rather than by the Java platform's JPEG plug-in, whose integer
+ * <p>Both transforms are computed here rather than by the Java platform's JPEG plug-in, whose
  * arithmetic belongs to the library that the platform was built with: T.81 leaves it open, and
- * figures must be the same on every machine.
+ * figures must be the same on every machine. The inverse is the usual one in whole numbers ({@link
+ * JpegInverse}), so a file decodes to the very samples that the Java platform shows.
  */
 final class JpegCodec implements Codec {
   private static final int MOST_BLOCKS_PER_INTERVAL = 65_535;

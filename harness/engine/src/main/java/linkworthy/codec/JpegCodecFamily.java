@@ -23,7 +23,8 @@ public final class JpegCodecFamily implements CodecFamily {
         jpeg: baseline (8-bit pictures)
           quality:        1 to 100, by the rule of the library of the Independent JPEG Group; a
                           list means one codec for each
-          bits-per-pixel: instead of quality, the sent bits that the highest quality may reach
+          bits-per-pixel: instead of quality, the sent bits that the highest quality may reach; each
+                          packet counts once, protection's copies, parity and tries come on top
           restart-every:  rows of 8 x 8 blocks in a restart interval (1)
           label:          name in tables (derived from the above)
         Sent, and counted: the Huffman codes of the restart intervals, cut into packets that decode

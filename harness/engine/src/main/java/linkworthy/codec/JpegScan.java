@@ -132,7 +132,7 @@ final class JpegScan {
     }
 
     @Override
-    public byte @Nullable [] take(int room, boolean whole) {
+    public Packetizer.@Nullable Unit take(int room, boolean whole) {
       if (codes.isEmpty()) {
         codes = codesOf(indices, from, to);
       }
@@ -164,7 +164,7 @@ final class JpegScan {
         ended = true;
         codes = List.of();
       }
-      return out.toByteArray();
+      return Packetizer.Unit.of(out.toByteArray());
     }
   }
 

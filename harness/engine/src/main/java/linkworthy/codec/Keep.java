@@ -50,7 +50,9 @@ public sealed interface Keep {
 
   /**
    * The largest K whose sent bits, payload and link overhead, stay within a target for the very
-   * picture; 0, recorded as it is, where even the means alone do not.
+   * picture; 0, recorded as it is, where even the means alone do not. Every packet counts once,
+   * with the bytes that protection takes from it; copies, parity packets, further tries,
+   * acknowledgements and frame checks are not counted here.
    *
    * @param bitsPerPixel target, sent bits per sample of the picture, above 0
    */

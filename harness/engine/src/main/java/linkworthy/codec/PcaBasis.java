@@ -1,7 +1,6 @@
 package linkworthy.codec;
 
-import java.util.Comparator;
-import java.util.stream.IntStream;
+import java.util.Arrays;
 import org.ejml.data.DMatrixRMaj;
 
 /**
@@ -17,6 +16,22 @@ final class PcaBasis implements Basis {
 
   private static final double NEGLIGIBLE = 1e-10;
 
+  /** A codec of no more components is content with so many directions. */
+  private static final int FEW = 64;
+
+  /** Below so many variables, finding all directions is no slower. */
+  private static final int MANY_VARIABLES = 192;
+
+  private final boolean few;
+
+  PcaBasis() {
+    this(false);
+  }
+
+  private PcaBasis(boolean few) {
+    this.few = few;
+  }
+
   @Override
   public String id() {
     return ID;
@@ -28,41 +43,54 @@ final class PcaBasis implements Basis {
   }
 
   @Override
+  public Basis forAtMost(int components) {
+    return new PcaBasis(components <= FEW);
+  }
+
+  @Override
+  public String work() {
+    return few ? ID + " of " + FEW : ID;
+  }
+
+  @Override
   public Directions directions(Arrangement arrangement, PictureShape shape, double[][] centred) {
-    return of(Matrices.covariance(centred));
+    DMatrixRMaj covariance = Matrices.covariance(centred);
+    return few ? leading(covariance) : of(covariance);
   }
 
   /** Principal directions of a covariance, without the negligible ones. */
   static Directions of(DMatrixRMaj covariance) {
-    double total = 0;
-    for (int i = 0; i < covariance.getNumRows(); i++) {
-      total += covariance.get(i, i);
-    }
-    return above(NEGLIGIBLE * total, covariance);
+    return above(negligible(covariance), SymmetricEigen.of(covariance).largestFirst());
+  }
+
+  /** The first 64 of them, with the variances of all. */
+  static Directions leading(DMatrixRMaj covariance) {
+    double floor = negligible(covariance);
+    return covariance.getNumRows() < MANY_VARIABLES
+        ? of(covariance)
+        : above(floor, SymmetricEigen.largest(covariance, FEW, floor));
   }
 
   /** All d principal directions of a covariance. */
   static Directions allOf(DMatrixRMaj covariance) {
-    return above(Double.NEGATIVE_INFINITY, covariance);
+    return above(Double.NEGATIVE_INFINITY, SymmetricEigen.of(covariance).largestFirst());
   }
 
-  private static Directions above(double floor, DMatrixRMaj covariance) {
-    int d = covariance.getNumRows();
-    SymmetricEigen eigen = SymmetricEigen.of(covariance);
-    double[] values = eigen.values();
-    int[] order =
-        IntStream.range(0, d)
-            .boxed()
-            .filter(i -> values[i] > floor)
-            .sorted(Comparator.comparingDouble(i -> -values[i]))
-            .mapToInt(Integer::intValue)
-            .toArray();
-    double[][] rows = new double[order.length][];
-    double[] variances = new double[order.length];
-    for (int k = 0; k < order.length; k++) {
-      rows[k] = withPositivePeak(eigen.vectors()[order[k]]);
-      variances[k] = values[order[k]];
+  private static double negligible(DMatrixRMaj covariance) {
+    double total = 0;
+    for (int i = 0; i < covariance.getNumRows(); i++) {
+      total += covariance.get(i, i);
     }
+    return NEGLIGIBLE * total;
+  }
+
+  private static Directions above(double floor, SymmetricEigen largestFirst) {
+    double[] variances = Arrays.stream(largestFirst.values()).filter(v -> v > floor).toArray();
+    double[][] rows =
+        Arrays.stream(largestFirst.vectors())
+            .limit(variances.length)
+            .map(PcaBasis::withPositivePeak)
+            .toArray(double[][]::new);
     return new Directions(rows, variances);
   }
 

@@ -48,6 +48,15 @@ public record Quantizer(double step) implements Quantization {
     return symbols;
   }
 
+  /** The values that symbols stand for. */
+  double[] values(int[] symbols) {
+    double[] values = new double[symbols.length];
+    for (int i = 0; i < values.length; i++) {
+      values[i] = value(symbols[i]);
+    }
+    return values;
+  }
+
   /** The value that a symbol stands for; 0 where a float is not finite. */
   double value(int symbol) {
     if (!isNone()) {

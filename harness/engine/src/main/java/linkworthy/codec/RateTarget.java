@@ -8,7 +8,8 @@ import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
 
 /**
- * How many bits a codec may send of a picture, packet headers included.
+ * How many bits a codec may send of a picture, packet headers included, before protection: every
+ * packet counts once, with the bytes that protection takes from it.
  *
  * @param bitsPerPixel above 0, up to 64
  */

@@ -29,6 +29,11 @@ final class RiceCoder {
     return Integer.compareUnsigned(upper, ESCAPE) < 0 ? upper + 1 + k : ESCAPE + 32;
   }
 
+  /** How many parameters, from 0, are worth trying where no folded value is larger. */
+  static int parameters(int largest) {
+    return Math.min(MAX_PARAMETER, 32 - Integer.numberOfLeadingZeros(largest)) + 1;
+  }
+
   static void write(BitWriter out, int folded, int k) {
     int upper = folded >>> k;
     if (Integer.compareUnsigned(upper, ESCAPE) < 0) {
@@ -60,7 +65,7 @@ final class RiceCoder {
      * @param largest no folded value to come is larger, which bounds the parameters worth trying
      */
     Cost(int largest) {
-      bits = new long[Math.min(MAX_PARAMETER, 32 - Integer.numberOfLeadingZeros(largest)) + 1];
+      bits = new long[parameters(largest)];
     }
 
     void add(int folded) {

@@ -12,12 +12,16 @@ final class Symbols {
   private final Quantization quantization;
   private final int[] @Nullable [] coefficients;
   private final int[] @Nullable [] directions;
+  private final @Nullable RiceCosts[] coefficientCosts;
+  private final @Nullable RiceCosts[] directionCosts;
 
   Symbols(Analysis analysis, Quantization quantization) {
     this.analysis = analysis;
     this.quantization = quantization;
     this.coefficients = new int[analysis.components()][];
     this.directions = new int[analysis.components()][];
+    this.coefficientCosts = new RiceCosts[analysis.components()];
+    this.directionCosts = new RiceCosts[analysis.components()];
   }
 
   /** Symbols of component k, one for each observation. */
@@ -36,6 +40,26 @@ final class Symbols {
     if (known == null) {
       known = directionQuantizer(k).symbols(analysis.direction(k));
       directions[k] = known;
+    }
+    return known;
+  }
+
+  /** What the symbols of component k cost as Rice codes. */
+  synchronized RiceCosts componentCosts(int k) {
+    RiceCosts known = coefficientCosts[k];
+    if (known == null) {
+      known = new RiceCosts(component(k));
+      coefficientCosts[k] = known;
+    }
+    return known;
+  }
+
+  /** What the symbols of direction k cost as Rice codes. */
+  synchronized RiceCosts directionCosts(int k) {
+    RiceCosts known = directionCosts[k];
+    if (known == null) {
+      known = new RiceCosts(direction(k));
+      directionCosts[k] = known;
     }
     return known;
   }

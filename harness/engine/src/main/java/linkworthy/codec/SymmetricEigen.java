@@ -1,6 +1,8 @@
 package linkworthy.codec;
 
 import java.util.Arrays;
+import java.util.Comparator;
+import java.util.stream.IntStream;
 import org.ejml.data.DMatrixRMaj;
 import org.ejml.dense.row.decomposition.eig.symm.SymmetricQREigenHelper_DDRM;
 import org.ejml.dense.row.decomposition.eig.symm.SymmetricQrAlgorithm_DDRM;
@@ -10,6 +12,9 @@ import org.ejml.dense.row.decomposition.qr.QrHelperFunctions_DDRM;
  * Eigenvalues and eigenvectors of a symmetric matrix: Householder reflections to tridiagonal form,
  * then the implicit QR algorithm, first for the values and then, with these as shifts, for the
  * vectors (Watkins, Fundamentals of Matrix Computations, second edition, pages 349 to 355).
+ *
+ * <p>Where only some of the largest are wanted, their vectors come from {@link InverseIteration} on
+ * the tridiagonal matrix; if one of them does not pass the check there, all are computed.
  *
  * <p>The QR algorithm is EJML's. The three steps that take a multiple of d^3 operations are here,
  * because on one array for each row the virtual machine makes vector instructions of them. Every
@@ -31,28 +36,62 @@ final class SymmetricEigen {
    * @throws IllegalStateException if the iteration does not converge
    */
   static SymmetricEigen of(DMatrixRMaj matrix) {
-    int d = matrix.getNumRows();
     Tridiagonal tridiagonal = new Tridiagonal(matrix);
-    double[] diagonal = tridiagonal.diagonal();
-    double[] beside = tridiagonal.beside();
-    Rotations rotations = new Rotations(tridiagonal.vectors());
-    SymmetricQrAlgorithm_DDRM algorithm = new SymmetricQrAlgorithm_DDRM(rotations);
-    algorithm.setFastEigenvalues(true);
-    boolean found = algorithm.process(d, diagonal.clone(), beside.clone());
-    double[] shifts = rotations.copyEigenvalues(new double[d]);
-    algorithm.setQ(Rotations.ASKED_FOR);
-    if (!found || !algorithm.process(d, diagonal, beside, shifts)) {
-      throw new IllegalStateException("no eigenvalues found of a " + d + " x " + d + " matrix");
-    }
-    return new SymmetricEigen(rotations.copyEigenvalues(new double[d]), rotations.vectors);
+    return new Qr(tridiagonal.vectors()).decompose(tridiagonal);
   }
 
-  /** Eigenvalues, in no order. */
+  /**
+   * The same, of the largest eigenvalues first and with vectors for those above {@code floor}
+   * alone, at most {@code count}.
+   *
+   * @throws IllegalStateException if the iteration does not converge
+   */
+  static SymmetricEigen largest(DMatrixRMaj matrix, int count, double floor) {
+    Tridiagonal tridiagonal = new Tridiagonal(matrix);
+    double[] values = new Qr(new double[0][]).values(tridiagonal);
+    sortDown(values);
+    double[] wanted = Arrays.stream(values).limit(count).filter(v -> v > floor).toArray();
+    double[][] vectors =
+        InverseIteration.vectors(tridiagonal.diagonal(), tridiagonal.beside(), wanted);
+    return vectors.length == wanted.length
+        ? new SymmetricEigen(values, tridiagonal.reflected(vectors))
+        : of(matrix).largestFirst(wanted.length);
+  }
+
+  private static void sortDown(double[] values) {
+    Arrays.sort(values);
+    for (int i = 0, j = values.length - 1; i < j; i++, j--) {
+      double low = values[i];
+      values[i] = values[j];
+      values[j] = low;
+    }
+  }
+
+  /** The same in the order of the eigenvalues, the largest first. */
+  SymmetricEigen largestFirst() {
+    return largestFirst(values.length);
+  }
+
+  private SymmetricEigen largestFirst(int count) {
+    int[] order =
+        IntStream.range(0, values.length)
+            .boxed()
+            .sorted(Comparator.comparingDouble(i -> -values[i]))
+            .mapToInt(Integer::intValue)
+            .toArray();
+    double[] sortedValues = new double[order.length];
+    double[][] sortedVectors = new double[count][];
+    Arrays.setAll(sortedValues, k -> values[order[k]]);
+    Arrays.setAll(sortedVectors, k -> vectors[order[k]]);
+    return new SymmetricEigen(sortedValues, sortedVectors);
+  }
+
+  /** All eigenvalues; {@link #of} has them in no order. */
   double[] values() {
     return values;
   }
 
-  /** The eigenvector of each eigenvalue. */
+  /** The eigenvectors, in the order of the eigenvalues. */
   double[][] vectors() {
     return vectors;
   }
@@ -135,7 +174,34 @@ final class SymmetricEigen {
     }
 
     double[] beside() {
-      return beside;
+      return beside.clone();
+    }
+
+    /** Vectors of the tridiagonal matrix as vectors of the whole one: all reflections in turn. */
+    double[][] reflected(double[][] vectors) {
+      double[][] columns = transposed(vectors, d);
+      double[] sums = new double[vectors.length];
+      for (int k = d - 1; k >= 1; k--) {
+        double[] u = rows[k - 1];
+        Arrays.fill(sums, 0);
+        for (int i = k; i < d; i++) {
+          Matrices.add(sums, 0, u[i], columns[i]);
+        }
+        for (int i = k; i < d; i++) {
+          Matrices.add(columns[i], 0, -gammas[k] * u[i], sums);
+        }
+      }
+      return transposed(columns, vectors.length);
+    }
+
+    private static double[][] transposed(double[][] matrix, int columns) {
+      double[][] transposed = new double[columns][matrix.length];
+      for (int i = 0; i < matrix.length; i++) {
+        for (int j = 0; j < columns; j++) {
+          transposed[j][i] = matrix[i][j];
+        }
+      }
+      return transposed;
     }
 
     /** The product of all reflections, transposed. */
@@ -156,13 +222,44 @@ final class SymmetricEigen {
           Matrices.add(product[i], k, u[i], sums);
         }
       }
-      double[][] transposed = new double[d][d];
-      for (int i = 0; i < d; i++) {
-        for (int j = 0; j < d; j++) {
-          transposed[i][j] = product[j][i];
-        }
+      return transposed(product, d);
+    }
+  }
+
+  /** EJML's QR algorithm on a tridiagonal matrix. */
+  private static final class Qr {
+    private final Rotations rotations;
+    private final SymmetricQrAlgorithm_DDRM algorithm;
+
+    /**
+     * @param vectors to be rotated
+     */
+    Qr(double[][] vectors) {
+      rotations = new Rotations(vectors);
+      algorithm = new SymmetricQrAlgorithm_DDRM(rotations);
+      algorithm.setFastEigenvalues(true);
+    }
+
+    double[] values(Tridiagonal matrix) {
+      int d = matrix.d;
+      if (!algorithm.process(d, matrix.diagonal(), matrix.beside())) {
+        throw notFound(d);
       }
-      return transposed;
+      return rotations.copyEigenvalues(new double[d]);
+    }
+
+    SymmetricEigen decompose(Tridiagonal matrix) {
+      int d = matrix.d;
+      double[] shifts = values(matrix);
+      algorithm.setQ(Rotations.ASKED_FOR);
+      if (!algorithm.process(d, matrix.diagonal(), matrix.beside(), shifts)) {
+        throw notFound(d);
+      }
+      return new SymmetricEigen(rotations.copyEigenvalues(new double[d]), rotations.vectors);
+    }
+
+    private static IllegalStateException notFound(int d) {
+      return new IllegalStateException("no eigenvalues found of a " + d + " x " + d + " matrix");
     }
   }
 

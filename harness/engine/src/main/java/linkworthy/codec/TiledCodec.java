@@ -1,7 +1,6 @@
 package linkworthy.codec;
 
 import java.util.ArrayList;
-import java.util.Arrays;
 import java.util.EnumSet;
 import java.util.LinkedHashMap;
 import java.util.List;
@@ -11,21 +10,19 @@ import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
 import linkworthy.link.Link;
 import linkworthy.link.Packet;
+import linkworthy.link.PartNumber;
 
 /**
  * A picture cut into a grid of tiles, each coded alone over its rows as by one helper node. Tile t,
- * counted row by row from 0, is the work of node t + 1; its packets begin with one byte that holds
- * t.
+ * counted row by row from 0, is the work of node t + 1; its packets begin with t (see {@link
+ * PartNumber}).
  *
  * <p>A tile of which nothing arrives is shown mid-grey. Sides that do not divide evenly give tiles
  * that differ by one sample.
  */
 final class TiledCodec implements Codec {
-  /** Tiles in a grid at most; the number of a tile is one byte. */
-  static final int MOST_TILES = 256;
-
-  /** Bytes of a packet that are taken by the tile's number. */
-  static final int OVERHEAD_BYTES = 1;
+  /** Tiles in a grid at most. */
+  static final int MOST_TILES = PartNumber.MOST;
 
   private final Grid grid;
   private final TransformCodec inner;
@@ -33,7 +30,7 @@ final class TiledCodec implements Codec {
   private final String label;
 
   /**
-   * @param inner the codec of a tile, made for packets {@link #OVERHEAD_BYTES} shorter
+   * @param inner the codec of a tile, made for packets {@link PartNumber#BYTES} shorter
    * @param link the packets of the picture
    * @param label empty for the one derived from the parameters
    */
@@ -177,10 +174,7 @@ final class TiledCodec implements Codec {
       Encoding encoding = inner.encode(work.picture(), work.memo());
       keep = Math.max(keep, encoding.keep());
       for (Packet packet : encoding.packets()) {
-        byte[] numbered = new byte[packet.length() + OVERHEAD_BYTES];
-        numbered[0] = (byte) t;
-        System.arraycopy(packet.payload(), 0, numbered, OVERHEAD_BYTES, packet.length());
-        packets.add(new Packet(numbered, packet.importance(), t + 1));
+        packets.add(PartNumber.before(packet, t, t + 1));
       }
     }
     return new Encoding(packets, keep);
@@ -188,15 +182,7 @@ final class TiledCodec implements Codec {
 
   @Override
   public Decoding decode(PictureShape shape, List<byte[]> arrived) {
-    List<List<byte[]>> byTile = new ArrayList<>();
-    for (int t = 0; t < grid.tiles(); t++) {
-      byTile.add(new ArrayList<>());
-    }
-    for (byte[] packet : arrived) {
-      if (packet.length > 0 && (packet[0] & 0xFF) < grid.tiles()) {
-        byTile.get(packet[0] & 0xFF).add(Arrays.copyOfRange(packet, OVERHEAD_BYTES, packet.length));
-      }
-    }
+    List<List<byte[]>> byTile = PartNumber.sort(arrived, grid.tiles());
     int[] samples = new int[shape.size()];
     Set<Decoding.Completeness> parts = EnumSet.noneOf(Decoding.Completeness.class);
     for (int t = 0; t < grid.tiles(); t++) {

@@ -40,7 +40,7 @@ final class TransformCodec implements Codec {
       Quantization quantization,
       Link link) {
     this.arrangement = arrangement;
-    this.basis = basis;
+    this.basis = keep instanceof Keep.First first ? basis.forAtMost(first.components()) : basis;
     this.keep = keep;
     this.quantization = quantization;
     this.link = link;
@@ -167,12 +167,17 @@ final class TransformCodec implements Codec {
         keep instanceof Keep.Rate rate
             ? largestWithin(rate.bitsPerPixel() * picture.size(), shape, analysis, symbols, memo)
             : analysis.kept(keep);
-    return new Encoding(pack(shape, analysis, symbols, kept), kept);
+    WholePicture whole =
+        memo.once(
+            new WholeKey(arrangement, basis.work(), quantization),
+            WholePicture.class,
+            () -> new WholePicture(shape, arrangement, basis, analysis, symbols, quantization));
+    return new Encoding(pack(shape, analysis, symbols, kept), kept, "", () -> whole.upTo(kept));
   }
 
   Analysis analysis(Picture picture, Memo memo) {
     return memo.once(
-        new AnalysisKey(arrangement, basis.id()),
+        new AnalysisKey(arrangement, basis.work()),
         Analysis.class,
         () -> Analysis.of(picture, arrangement, basis));
   }
@@ -180,7 +185,7 @@ final class TransformCodec implements Codec {
   Symbols symbols(Picture picture, Memo memo) {
     Analysis analysis = analysis(picture, memo);
     return memo.once(
-        new SymbolsKey(arrangement, basis.id(), quantization),
+        new SymbolsKey(arrangement, basis.work(), quantization),
         Symbols.class,
         () -> new Symbols(analysis, quantization));
   }
@@ -204,7 +209,7 @@ final class TransformCodec implements Codec {
         analysis.components(),
         k ->
             memo.once(
-                    new SentBitsKey(arrangement, basis.id(), quantization, link, k),
+                    new SentBitsKey(arrangement, basis.work(), quantization, link, k),
                     Long.class,
                     () -> sentBits(pack(shape, analysis, symbols, k)))
                 <= budget);
@@ -367,6 +372,8 @@ final class TransformCodec implements Codec {
   private record AnalysisKey(Arrangement arrangement, String basis) {}
 
   private record SymbolsKey(Arrangement arrangement, String basis, Quantization quantization) {}
+
+  private record WholeKey(Arrangement arrangement, String basis, Quantization quantization) {}
 
   private record SentBitsKey(
       Arrangement arrangement, String basis, Quantization quantization, Link link, int kept) {}

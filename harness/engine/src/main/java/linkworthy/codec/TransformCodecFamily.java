@@ -8,6 +8,7 @@ import java.util.regex.Matcher;
 import java.util.regex.Pattern;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
+import linkworthy.link.PartNumber;
 
 /** Reads transform codecs from a study: {@code transform: pca}, {@code over: rows} and so on. */
 public final class TransformCodecFamily implements CodecFamily {
@@ -51,7 +52,8 @@ public final class TransformCodecFamily implements CodecFamily {
           side:  side of a block in samples, 2 to 64 (8); wht: a power of two, rows likewise
           keep:  components K; a list means one codec for each. mean takes 0 (means alone) or all
           share: instead of keep, the share of the variance that the components must reach
-          bits-per-pixel: instead of keep, as many components as fit into these sent bits
+          bits-per-pixel: instead of keep, as many components as fit into these sent bits; each
+                 packet counts once, protection's copies, parity and tries come on top
           noise-floor: instead of keep, the standard deviation of the noise in grey levels, or true
                  if it is unknown: the components above it (pca)
           step:  quantiser step in grey levels, or none for 32-bit floats (8)
@@ -78,12 +80,12 @@ public final class TransformCodecFamily implements CodecFamily {
           .get("label")
           .refuse("names several codecs; accepted: one keep and one step with a label");
     }
-    if (grid.isPresent() && link.payloadBytes() < Link.MIN_PAYLOAD + TiledCodec.OVERHEAD_BYTES) {
+    if (grid.isPresent() && link.payloadBytes() < Link.MIN_PAYLOAD + PartNumber.BYTES) {
       throw entry.refuse(
           "numbers its tiles in each packet, and of payload-bytes only "
               + link.payloadBytes()
               + " are left for it; accepted: at least "
-              + (Link.MIN_PAYLOAD + TiledCodec.OVERHEAD_BYTES)
+              + (Link.MIN_PAYLOAD + PartNumber.BYTES)
               + ", so a larger payload-bytes or no tiles");
     }
     List<Codec> codecs = new ArrayList<>();
@@ -94,12 +96,7 @@ public final class TransformCodecFamily implements CodecFamily {
                 ? new TiledCodec(
                     grid.get(),
                     new TransformCodec(
-                        "",
-                        arrangement,
-                        basis,
-                        keep,
-                        quantization,
-                        link.less(TiledCodec.OVERHEAD_BYTES)),
+                        "", arrangement, basis, keep, quantization, link.less(PartNumber.BYTES)),
                     link,
                     label)
                 : new TransformCodec(label, arrangement, basis, keep, quantization, link));

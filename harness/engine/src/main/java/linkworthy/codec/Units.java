@@ -58,32 +58,41 @@ final class Units {
   static final class Run implements Packetizer.Strip {
     private final int code;
     private final int[] symbols;
+    private final @Nullable RiceCosts costs;
     private final int fixedBits;
     private final @Nullable Quantizer step;
     private final Importance importance;
-    private final RiceCoder.Cost cost;
     private int done;
 
+    /**
+     * @param costs of the symbols as Rice codes; null where each takes {@code fixedBits}
+     */
     private Run(
-        int code, int[] symbols, int fixedBits, @Nullable Quantizer step, Importance importance) {
+        int code,
+        int[] symbols,
+        @Nullable RiceCosts costs,
+        int fixedBits,
+        @Nullable Quantizer step,
+        Importance importance) {
       this.importance = importance;
       this.code = code;
       this.symbols = symbols;
+      this.costs = costs;
       this.fixedBits = fixedBits;
       this.step = step;
-      this.cost = new RiceCoder.Cost(fixedBits > 0 ? 0 : largestFolded(symbols));
     }
 
     static Run ofMeans(int[] means, int bitDepth) {
-      return new Run(MEANS, means, bitDepth, null, Importance.HEADER);
+      return new Run(MEANS, means, null, bitDepth, null, Importance.HEADER);
     }
 
     static Run ofDirection(int k, Symbols symbols, Quantizer quantizer) {
       return quantizer.isNone()
-          ? new Run(codeOfDirection(k), symbols.direction(k), 32, null, Importance.BASIS)
+          ? new Run(codeOfDirection(k), symbols.direction(k), null, 32, null, Importance.BASIS)
           : new Run(
               codeOfDirection(k),
               symbols.direction(k),
+              symbols.directionCosts(k),
               0,
               symbols.directionQuantizer(k),
               Importance.BASIS);
@@ -93,13 +102,14 @@ final class Units {
       return new Run(
           codeOfComponent(k),
           symbols.component(k),
+          quantizer.isNone() ? null : symbols.componentCosts(k),
           quantizer.isNone() ? 32 : 0,
           null,
           k < Math.max(1, kept / 4) ? Importance.FIRST : Importance.REST);
     }
 
     static Run ofFloats(int k, int[] bits, Importance importance) {
-      return new Run(codeOfComponent(k), bits, 32, null, importance);
+      return new Run(codeOfComponent(k), bits, null, 32, null, importance);
     }
 
     @Override
@@ -113,60 +123,68 @@ final class Units {
     }
 
     @Override
-    public byte @Nullable [] take(int room, boolean whole) {
+    public Packetizer.@Nullable Unit take(int room, boolean whole) {
       int left = symbols.length - done;
-      int header =
-          BitWriter.varintBytes(code)
-              + BitWriter.varintBytes(done)
-              + BitWriter.varintBytes(left)
-              + (step == null ? 0 : Float.BYTES);
-      int count = fitting(8L * (room - header));
+      int count = fitting(8L * (room - headerBytes(done, left)));
       if (!isSensible(count, left, whole)) {
         return null;
       }
-      BitWriter out = new BitWriter();
-      out.writeVarint(code);
-      out.writeVarint(done);
-      out.writeVarint(count);
-      if (step != null) {
-        out.write(Float.floatToRawIntBits((float) step.step()), 32);
-      }
-      writeValues(out, count);
+      RunUnit unit = new RunUnit(this, done, done + count);
       done += count;
-      return out.toByteArray();
+      return unit;
+    }
+
+    private int headerBytes(int from, int count) {
+      return BitWriter.varintBytes(code)
+          + BitWriter.varintBytes(from)
+          + BitWriter.varintBytes(count)
+          + (step == null ? 0 : Float.BYTES);
     }
 
     private int fitting(long bits) {
-      int left = symbols.length - done;
-      if (fixedBits > 0) {
-        return (int) Math.max(0, Math.min(left, bits / fixedBits));
-      }
-      cost.clear();
-      int count = 0;
-      while (count < left) {
-        int folded = RiceCoder.fold(symbols[done + count]);
-        cost.add(folded);
-        if (PARAMETER_BITS + cost.least() > bits) {
-          cost.remove(folded);
-          break;
-        }
-        count++;
-      }
-      return count;
+      return costs == null
+          ? (int) Math.max(0, Math.min(symbols.length - done, bits / fixedBits))
+          : costs.fitting(done, bits - PARAMETER_BITS);
     }
 
-    private void writeValues(BitWriter out, int count) {
-      int k = cost.parameter();
-      if (fixedBits == 0) {
-        out.write(k, PARAMETER_BITS);
+    private int unitBytes(int from, int to) {
+      long bits =
+          costs == null ? (long) fixedBits * (to - from) : PARAMETER_BITS + costs.least(from, to);
+      return headerBytes(from, to - from) + (int) ((bits + 7) / 8);
+    }
+
+    private byte[] write(int from, int to) {
+      BitWriter out = new BitWriter();
+      out.writeVarint(code);
+      out.writeVarint(from);
+      out.writeVarint(to - from);
+      if (step != null) {
+        out.write(Float.floatToRawIntBits((float) step.step()), 32);
       }
-      for (int i = done; i < done + count; i++) {
-        if (fixedBits > 0) {
+      if (costs == null) {
+        for (int i = from; i < to; i++) {
           out.write(symbols[i], fixedBits);
-        } else {
-          RiceCoder.write(out, RiceCoder.fold(symbols[i]), k);
+        }
+      } else {
+        int parameter = costs.parameter(from, to);
+        out.write(parameter, PARAMETER_BITS);
+        for (int i = from; i < to; i++) {
+          RiceCoder.write(out, RiceCoder.fold(symbols[i]), parameter);
         }
       }
+      return out.toByteArray();
+    }
+  }
+
+  /** Values {@code from} to {@code to} of a run. */
+  private record RunUnit(Run run, int from, int to, int length) implements Packetizer.Unit {
+    RunUnit(Run run, int from, int to) {
+      this(run, from, to, run.unitBytes(from, to));
+    }
+
+    @Override
+    public byte[] bytes() {
+      return run.write(from, to);
     }
   }
 
@@ -196,7 +214,7 @@ final class Units {
     }
 
     @Override
-    public byte @Nullable [] take(int room, boolean whole) {
+    public Packetizer.@Nullable Unit take(int room, boolean whole) {
       int left = symbols.length - done;
       int header =
           BitWriter.varintBytes(code) + BitWriter.varintBytes(done) + BitWriter.varintBytes(left);
@@ -210,7 +228,7 @@ final class Units {
       out.writeVarint(count);
       SparseCoder.write(out, symbols, done, done + count, cost);
       done += count;
-      return out.toByteArray();
+      return Packetizer.Unit.of(out.toByteArray());
     }
 
     /** How many values fit; their cost is what {@link #cost} then holds. */
@@ -265,7 +283,7 @@ final class Units {
     }
 
     @Override
-    public byte @Nullable [] take(int room, boolean whole) {
+    public Packetizer.@Nullable Unit take(int room, boolean whole) {
       int left = symbols[0].length - observation;
       int header =
           BitWriter.varintBytes(REGION)
@@ -277,7 +295,7 @@ final class Units {
       if (component == 0) {
         int count = fittingObservations(bits);
         if (count > 0) {
-          byte[] unit = write(symbols.length, count);
+          Packetizer.Unit unit = write(symbols.length, count);
           observation += count;
           return unit;
         }
@@ -289,7 +307,7 @@ final class Units {
     }
 
     /** Part of one observation that is too large for a packet. */
-    private byte @Nullable [] takeComponents(long bits, boolean whole) {
+    private Packetizer.@Nullable Unit takeComponents(long bits, boolean whole) {
       int left = symbols.length - component;
       int count = 0;
       clear();
@@ -304,7 +322,7 @@ final class Units {
       if (!isSensible(count, left, whole)) {
         return null;
       }
-      byte[] unit = write(count, 1);
+      Packetizer.Unit unit = write(count, 1);
       component += count;
       if (component == symbols.length) {
         component = 0;
@@ -370,7 +388,7 @@ final class Units {
       return bits;
     }
 
-    private byte[] write(int components, int observations) {
+    private Packetizer.Unit write(int components, int observations) {
       boolean one = PARAMETER_BITS + shared.least() <= ownBits(component, components);
       BitWriter out = new BitWriter();
       out.writeVarint(REGION);
@@ -392,7 +410,7 @@ final class Units {
           }
         }
       }
-      return out.toByteArray();
+      return Packetizer.Unit.of(out.toByteArray());
     }
   }
 }

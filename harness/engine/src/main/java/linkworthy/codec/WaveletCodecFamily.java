@@ -28,7 +28,8 @@ public final class WaveletCodecFamily implements CodecFamily {
           step:           quantiser step in grey levels, or none; cdf-5-3 with none or 1 is
                           lossless, cdf-9-7 with none sends 32-bit floats; a list means one codec
                           for each (8)
-          bits-per-pixel: instead of step, the sent bits that the finest step may reach
+          bits-per-pixel: instead of step, the sent bits that the finest step may reach; each packet
+                          counts once, protection's copies, parity and tries come on top
           label:          name in tables (derived from the above)
         Sent, and counted: the coefficients, zeros as their number, Golomb-Rice coded; by component
         the lowest band and then band by band, by region the lowest band and then all others square

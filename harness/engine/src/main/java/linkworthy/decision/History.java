@@ -64,6 +64,7 @@ public final class History {
     for (Path path : recordsBelow(folder)) {
       ResultsFolder found = ResultsFolder.open(path);
       if (found.run().complete()) {
+        long unused = found.trials(trial -> {});
         runs.add(found);
       } else {
         incomplete.add(path);

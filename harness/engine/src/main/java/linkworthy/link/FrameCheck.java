@@ -42,9 +42,10 @@ public final class FrameCheck {
     return frame;
   }
 
-  /** The payload of a frame that arrived. */
+  /** The payload of a frame that arrived; empty where it is shorter than header and sequence. */
   public static byte[] payload(int headerBytes, byte[] frame) {
-    return Arrays.copyOfRange(frame, headerBytes, frame.length - BYTES);
+    int end = Math.max(0, frame.length - BYTES);
+    return Arrays.copyOfRange(frame, Math.min(headerBytes, end), end);
   }
 
   /** Whether a frame agrees with its check sequence. */

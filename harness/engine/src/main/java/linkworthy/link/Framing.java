@@ -60,6 +60,11 @@ final class Framing {
     }
   }
 
+  /** Whether packets go out as they are, once each. */
+  boolean isTransparent() {
+    return protection.isNone();
+  }
+
   /** Takes packets in sending order. */
   interface Sender {
     /**

@@ -15,6 +15,7 @@ import linkworthy.input.BadInput;
 import linkworthy.input.Require;
 import linkworthy.input.Spelling;
 import linkworthy.input.YamlNode;
+import org.jspecify.annotations.Nullable;
 
 /**
  * What a node's work costs it: the energy of computing, sending and receiving, and what it has of
@@ -29,6 +30,7 @@ import linkworthy.input.YamlNode;
  * @param kilobitsPerSecond bit rate on the air, in kbit/s
  * @param batteryJoules usable energy of the battery, in joules
  * @param source where the numbers come from
+ * @param radio the model that the energy to send a bit follows from; null where it is given itself
  */
 public record NodeProfile(
     String id,
@@ -39,7 +41,8 @@ public record NodeProfile(
     double ramKib,
     double kilobitsPerSecond,
     double batteryJoules,
-    String source) {
+    String source,
+    @Nullable Radio radio) {
   private static final String ID = "[a-z][a-z0-9-]{0,63}";
   private static final String FOLDER = "/linkworthy/noise/library/nodes/";
   private static final Set<String> KEYS =
@@ -58,7 +61,7 @@ public record NodeProfile(
 
   /**
    * @throws IllegalArgumentException if a figure is negative or not finite, or the memory, bit rate
-   *     or battery is 0
+   *     or battery is 0, or the energy to send a bit is not that of the radio
    */
   public NodeProfile {
     Require.notNegative(sentNanojoules, "sent-nj-per-bit (nJ)");
@@ -68,6 +71,92 @@ public record NodeProfile(
     Require.positive(ramKib, "ram-kib (KiB)");
     Require.positive(kilobitsPerSecond, "kbit-per-second (kbit/s)");
     Require.positive(batteryJoules, "battery-j (J)");
+    if (radio != null && radio.sentNanojoules() != sentNanojoules) {
+      throw new IllegalArgumentException(
+          "sent-nj-per-bit is " + sentNanojoules + " and the radio's " + radio.sentNanojoules());
+    }
+  }
+
+  /** A profile that gives the energy to send a bit itself. */
+  public NodeProfile(
+      String id,
+      double sentNanojoules,
+      double receivedNanojoules,
+      double macNanojoules,
+      double sleepMilliwatts,
+      double ramKib,
+      double kilobitsPerSecond,
+      double batteryJoules,
+      String source) {
+    this(
+        id,
+        sentNanojoules,
+        receivedNanojoules,
+        macNanojoules,
+        sleepMilliwatts,
+        ramKib,
+        kilobitsPerSecond,
+        batteryJoules,
+        source,
+        null);
+  }
+
+  /**
+   * A radio whose amplifier has two regimes: a bit over d metres costs {@code electronics + near
+   * d^2} up to {@code d0 = sqrt(near / far)}, where the two meet, and {@code electronics + far d^4}
+   * beyond (Heinzelman, Chandrakasan and Balakrishnan, IEEE Transactions on Wireless Communications
+   * 1(4), 2002, from memory: free space, then two-ray ground propagation).
+   *
+   * @param electronicsNanojoules nanojoules a bit, from 0
+   * @param nearPicojoules picojoules a bit and square metre, above 0
+   * @param farPicojoules picojoules a bit and metre to the fourth, above 0
+   * @param metres distance, from 0
+   */
+  public record Radio(
+      double electronicsNanojoules, double nearPicojoules, double farPicojoules, double metres) {
+    private static final Set<String> KEYS =
+        new LinkedHashSet<>(
+            List.of("electronics-nj", "near-pj-per-m2", "far-pj-per-m4", "distance-m"));
+
+    public Radio {
+      Require.notNegative(electronicsNanojoules, "electronics-nj (nJ)");
+      Require.positive(nearPicojoules, "near-pj-per-m2 (pJ/m^2)");
+      Require.positive(farPicojoules, "far-pj-per-m4 (pJ/m^4)");
+      Require.notNegative(metres, "distance-m (m)");
+    }
+
+    private static Radio parse(YamlNode group) {
+      group.onlyKeys(KEYS);
+      return new Radio(
+          number(group, "electronics-nj", false),
+          number(group, "near-pj-per-m2", true),
+          number(group, "far-pj-per-m4", true),
+          number(group, "distance-m", false));
+    }
+
+    private Map<String, Object> settings() {
+      Map<String, Object> settings = new LinkedHashMap<>();
+      settings.put("electronics-nj", electronicsNanojoules);
+      settings.put("near-pj-per-m2", nearPicojoules);
+      settings.put("far-pj-per-m4", farPicojoules);
+      settings.put("distance-m", metres);
+      return settings;
+    }
+
+    /** The distance d0 at which the regimes meet, in metres. */
+    public double crossoverMetres() {
+      return Math.sqrt(nearPicojoules / farPicojoules);
+    }
+
+    /** Energy to send a bit, in nanojoules. */
+    public double sentNanojoules() {
+      double squared = metres * metres;
+      return electronicsNanojoules
+          + (metres <= crossoverMetres()
+                  ? nearPicojoules * squared
+                  : farPicojoules * squared * squared)
+              / 1000;
+    }
   }
 
   /** Ids of the shipped profiles. */
@@ -107,16 +196,19 @@ public record NodeProfile(
     if (!id.matches(ID)) {
       throw root.get("id").bad("lower-case letters, digits and hyphens, a letter first");
     }
+    YamlNode sent = root.get("sent-nj-per-bit");
+    Radio radio = sent.isMapping() ? Radio.parse(sent) : null;
     return new NodeProfile(
         id,
-        number(root, "sent-nj-per-bit", false),
+        radio == null ? number(root, "sent-nj-per-bit", false) : radio.sentNanojoules(),
         number(root, "received-nj-per-bit", false),
         number(root, "mac-nj", false),
         number(root, "sleep-mw", false),
         number(root, "ram-kib", true),
         number(root, "kbit-per-second", true),
         number(root, "battery-j", true),
-        root.get("source").text());
+        root.get("source").text(),
+        radio);
   }
 
   private static double number(YamlNode root, String key, boolean positive) {
@@ -133,7 +225,7 @@ public record NodeProfile(
   public Map<String, Object> settings() {
     Map<String, Object> settings = new LinkedHashMap<>();
     settings.put("id", id);
-    settings.put("sent-nj-per-bit", sentNanojoules);
+    settings.put("sent-nj-per-bit", radio == null ? sentNanojoules : radio.settings());
     settings.put("received-nj-per-bit", receivedNanojoules);
     settings.put("mac-nj", macNanojoules);
     settings.put("sleep-mw", sleepMilliwatts);

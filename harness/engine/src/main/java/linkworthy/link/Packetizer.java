@@ -24,7 +24,31 @@ public final class Packetizer {
      * The next unit, at most {@code room} bytes long; null if not even the smallest sensible unit
      * fits. Never null when {@code whole} says that the room is a whole packet's.
      */
-    byte @Nullable [] take(int room, boolean whole);
+    @Nullable Unit take(int room, boolean whole);
+  }
+
+  /** A part of a packet whose length is known before it is written. */
+  public interface Unit {
+    /** In bytes. */
+    int length();
+
+    /** The unit, {@link #length} bytes long and the same every time. */
+    byte[] bytes();
+
+    /** A unit that is written already. */
+    static Unit of(byte[] bytes) {
+      return new Unit() {
+        @Override
+        public int length() {
+          return bytes.length;
+        }
+
+        @Override
+        public byte[] bytes() {
+          return bytes;
+        }
+      };
+    }
   }
 
   /**
@@ -36,7 +60,7 @@ public final class Packetizer {
     Filling filling = new Filling(preamble, payloadBytes);
     for (Strip strip : strips) {
       while (!strip.isDone()) {
-        byte[] unit = strip.take(filling.room(), filling.isFresh());
+        Unit unit = strip.take(filling.room(), filling.isFresh());
         if (unit == null) {
           filling.send();
         } else {
@@ -54,36 +78,50 @@ public final class Packetizer {
   private static final class Filling {
     private final List<Packet> packets = new ArrayList<>();
     private final byte[] preamble;
-    private final byte[] bytes;
+    private final int payloadBytes;
+    private List<Unit> units = new ArrayList<>();
     private Importance importance = Importance.REST;
     private int used;
 
     Filling(byte[] preamble, int payloadBytes) {
       this.preamble = preamble;
-      this.bytes = Arrays.copyOf(preamble, payloadBytes);
+      this.payloadBytes = payloadBytes;
       this.used = preamble.length;
     }
 
     int room() {
-      return bytes.length - used;
+      return payloadBytes - used;
     }
 
     boolean isFresh() {
-      return used == preamble.length;
+      return units.isEmpty();
     }
 
-    void add(byte[] unit, Importance unitImportance) {
-      System.arraycopy(unit, 0, bytes, used, unit.length);
-      used += unit.length;
+    void add(Unit unit, Importance unitImportance) {
+      units.add(unit);
+      used += unit.length();
       if (unitImportance.compareTo(importance) < 0) {
         importance = unitImportance;
       }
     }
 
     void send() {
-      packets.add(new Packet(Arrays.copyOf(bytes, used), importance));
+      int length = used;
+      List<Unit> content = units;
+      packets.add(new Packet(length, () -> write(length, content), importance, 0));
+      units = new ArrayList<>();
       used = preamble.length;
       importance = Importance.REST;
+    }
+
+    private byte[] write(int length, List<Unit> content) {
+      byte[] bytes = Arrays.copyOf(preamble, length);
+      int at = preamble.length;
+      for (Unit unit : content) {
+        System.arraycopy(unit.bytes(), 0, bytes, at, unit.length());
+        at += unit.length();
+      }
+      return bytes;
     }
   }
 }

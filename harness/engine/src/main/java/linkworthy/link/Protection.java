@@ -51,18 +51,24 @@ public record Protection(List<Rule> rules) {
   }
 
   /**
-   * One way to protect some classes of packets. The three parts combine: parity packets are
-   * repeated and retransmitted like any other.
+   * One way to protect some classes of packets. The parts combine: parity packets are coded on
+   * their bits, repeated and retransmitted like any other.
    *
    * @param only classes it protects, at least one
    * @param repeat copies of each packet in all, 1 to {@link #MAX_REPEAT}
    * @param code parity packets; null for none
+   * @param hamming a code on the bits of each transmission; null for none
    * @param retransmit further tries for a packet of which no copy arrived, 0 to {@link
    *     #MAX_RETRANSMIT}; with 0 nothing is acknowledged
    * @param ackBytes length of an acknowledgement with all its headers, in bytes
    */
   public record Rule(
-      Set<Importance> only, int repeat, @Nullable ErasureCode code, int retransmit, int ackBytes) {
+      Set<Importance> only,
+      int repeat,
+      @Nullable ErasureCode code,
+      @Nullable HammingCode hamming,
+      int retransmit,
+      int ackBytes) {
     /**
      * @throws IllegalArgumentException if a number is outside its range or no class is named
      */
@@ -74,19 +80,32 @@ public record Protection(List<Rule> rules) {
       only = Set.copyOf(only);
     }
 
+    /** A rule without a code on bits. */
+    public Rule(
+        Set<Importance> only,
+        int repeat,
+        @Nullable ErasureCode code,
+        int retransmit,
+        int ackBytes) {
+      this(only, repeat, code, null, retransmit, ackBytes);
+    }
+
     /** The classes, most important first. */
     public List<Importance> classes() {
       return only.stream().sorted().toList();
     }
 
     private boolean isIdle() {
-      return repeat == 1 && code == null && retransmit == 0;
+      return repeat == 1 && code == null && hamming == null && retransmit == 0;
     }
 
     private String label() {
       List<String> words = new ArrayList<>();
       if (code != null) {
         words.add("rs" + code.n() + "-" + code.k() + "x" + code.depth());
+      }
+      if (hamming != null) {
+        words.add("hamming7-4x" + hamming.depth());
       }
       if (repeat > 1) {
         words.add("repeat" + repeat);
@@ -104,6 +123,9 @@ public record Protection(List<Rule> rules) {
       Map<String, Object> settings = new LinkedHashMap<>();
       settings.put("repeat", repeat);
       settings.put("reed-solomon", code == null ? NONE_ID : code.settings());
+      if (hamming != null) {
+        settings.put("hamming", hamming.settings());
+      }
       settings.put("retransmit", retransmit);
       if (retransmit > 0) {
         settings.put("ack-bytes", ackBytes);
@@ -146,16 +168,37 @@ public record Protection(List<Rule> rules) {
     return rules.stream().anyMatch(rule -> rule.code() != null);
   }
 
-  /** Bytes of each payload that a codec must leave free: the longest header and length. */
-  public int overheadBytes() {
+  private int framingBytes() {
     return isFramed() ? Framing.MAX_OVERHEAD : 0;
   }
 
+  private boolean codesBits() {
+    return rules.stream().anyMatch(rule -> rule.hamming() != null);
+  }
+
   /**
-   * What goes after a codec's label: {@code rs12-8x4} (n, k, depth), {@code repeat2}, {@code
-   * retry3}, joined by a plus sign where they combine; then, unless all classes are protected, a
-   * colon and the classes. An acknowledgement of other than 5 bytes stands with its length, as in
-   * {@code retry3ack11}. Rules are separated by blanks; empty for no protection.
+   * Bytes of each payload that a codec must leave free: the longest header and length of an erasure
+   * code, and what a code on bits adds.
+   *
+   * @param payloadBytes largest payload of a transmission
+   */
+  public int overheadBytes(int payloadBytes) {
+    int coded = codesBits() ? HammingCode.room(payloadBytes) : payloadBytes;
+    return payloadBytes - coded + framingBytes();
+  }
+
+  /** The smallest payload of a transmission that leaves a codec so many bytes. */
+  public int leastPayload(int codecBytes) {
+    int framed = codecBytes + framingBytes();
+    return codesBits() ? HammingCode.coded(framed) : framed;
+  }
+
+  /**
+   * What goes after a codec's label: {@code rs12-8x4} (n, k, depth), {@code hamming7-4x8} (depth),
+   * {@code repeat2}, {@code retry3}, joined by a plus sign where they combine; then, unless all
+   * classes are protected, a colon and the classes. An acknowledgement of other than 5 bytes stands
+   * with its length, as in {@code retry3ack11}. Rules are separated by blanks; empty for no
+   * protection.
    */
   public String label() {
     return rules.stream().map(Rule::label).collect(Collectors.joining(" "));

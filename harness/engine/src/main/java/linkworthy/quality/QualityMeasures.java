@@ -3,10 +3,9 @@ package linkworthy.quality;
 import java.util.List;
 import java.util.ServiceLoader;
 import java.util.SortedMap;
-import java.util.TreeMap;
 import linkworthy.input.BadInput;
+import linkworthy.input.ById;
 import linkworthy.input.Spelling;
-import org.jspecify.annotations.Nullable;
 
 /** The measures there are, by id. */
 public final class QualityMeasures {
@@ -41,26 +40,25 @@ public final class QualityMeasures {
   }
 
   static SortedMap<String, QualityMeasure> byId(Iterable<QualityMeasure> measures) {
-    SortedMap<String, QualityMeasure> byId = new TreeMap<>();
-    SortedMap<String, QualityMeasure> byColumn = new TreeMap<>();
-    for (QualityMeasure measure : measures) {
-      requireAlone(byId.putIfAbsent(measure.id(), measure), measure, "id '" + measure.id());
-      requireAlone(
-          byColumn.putIfAbsent(measure.column(), measure), measure, "column '" + measure.column());
-    }
+    SortedMap<String, QualityMeasure> byId =
+        ById.index(
+            measures, QualityMeasure::id, (one, other) -> twice("id '" + one.id(), one, other));
+    SortedMap<String, QualityMeasure> unused =
+        ById.index(
+            measures,
+            QualityMeasure::column,
+            (one, other) -> twice("column '" + one.column(), one, other));
     return byId;
   }
 
-  private static void requireAlone(
-      @Nullable QualityMeasure other, QualityMeasure measure, String what) {
-    if (other != null) {
-      throw new IllegalStateException(
-          "two quality measures have the "
-              + what
-              + "': "
-              + other.getClass().getName()
-              + " and "
-              + measure.getClass().getName());
-    }
+  private static IllegalStateException twice(
+      String what, QualityMeasure one, QualityMeasure other) {
+    return new IllegalStateException(
+        "two quality measures have the "
+            + what
+            + "': "
+            + one.getClass().getName()
+            + " and "
+            + other.getClass().getName());
   }
 }

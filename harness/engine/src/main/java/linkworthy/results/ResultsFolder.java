@@ -277,13 +277,48 @@ public final class ResultsFolder {
   }
 
   /**
-   * Reads the trials one by one, in the order of the plan.
+   * Reads the trials one by one, in the order of the plan, and holds the record against itself.
+   *
+   * @return the number of trials
+   * @throws BadInput if the file is cut off or no table of trials, has a row twice or in the wrong
+   *     place, or if a complete run has not as many rows as it says or cells that do not follow
+   *     from them
+   */
+  public long trials(Consumer<? super Trial> each) {
+    RecordCheck check = new RecordCheck(this);
+    long rows =
+        rows(
+            trial -> {
+              check.require(trial);
+              each.accept(trial);
+            });
+    check.requireEnd();
+    return rows;
+  }
+
+  /**
+   * Reads the trials one by one, whatever else the record says.
    *
    * @return the number of trials
    * @throws BadInput if the file is cut off or no table of trials
    */
-  public long trials(Consumer<? super Trial> each) {
+  public long rows(Consumer<? super Trial> each) {
     return TrialsCsv.read(folder.resolve(TrialsCsv.FILE), each);
+  }
+
+  /**
+   * @throws BadInput if the run is not complete
+   */
+  public void requireComplete() {
+    if (!run.complete()) {
+      throw new BadInput(
+          folder
+              + " is the record of a run that is not complete ("
+              + run.trialsDone()
+              + " of "
+              + run.trialsPlanned()
+              + " trials); accepted: a complete run");
+    }
   }
 
   /**

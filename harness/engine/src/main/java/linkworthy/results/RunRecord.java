@@ -7,6 +7,7 @@ import java.time.temporal.ChronoUnit;
 import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Set;
+import linkworthy.codec.Confinement;
 import linkworthy.codec.PluginFolder;
 import linkworthy.corpus.ManifestEntry;
 import linkworthy.input.BadInput;
@@ -101,8 +102,12 @@ public record RunRecord(
   /** A jar with codecs of the user's own, or a library of theirs. */
   public record PluginUsed(String jar, String sha256) {}
 
-  /** A program that a codec runs, as the study names it. */
-  public record ProgramUsed(String codec, String program) {}
+  /**
+   * A program that a codec runs, as the study names it.
+   *
+   * @param confinement {@link Confinement#id}
+   */
+  public record ProgramUsed(String codec, String program, String confinement) {}
 
   /** A picture used, as its manifest announces it. */
   public record PictureUsed(
@@ -188,7 +193,11 @@ public record RunRecord(
         study.codecs().stream()
             .flatMap(
                 codec ->
-                    codec.codec().programs().stream().map(p -> new ProgramUsed(codec.label(), p)))
+                    codec.codec().programs().stream()
+                        .map(
+                            p ->
+                                new ProgramUsed(
+                                    codec.label(), p, Confinement.ofThisMachine().id())))
             .toList());
   }
 

@@ -7,6 +7,7 @@ import java.util.List;
 import java.util.Locale;
 import java.util.Set;
 import linkworthy.input.YamlNode;
+import linkworthy.link.HammingCode;
 import linkworthy.link.Importance;
 import linkworthy.link.Link;
 import linkworthy.link.Protection;
@@ -14,9 +15,10 @@ import org.jspecify.annotations.Nullable;
 
 /** Reads the value of {@code protect}. */
 final class ProtectionReader {
-  private static final List<String> PARTS = List.of("repeat", "reed-solomon", "retransmit");
+  private static final List<String> PARTS =
+      List.of("repeat", "reed-solomon", "hamming", "retransmit");
   private static final List<String> KEYS =
-      List.of("repeat", "reed-solomon", "retransmit", "ack-bytes", "only");
+      List.of("repeat", "reed-solomon", "hamming", "retransmit", "ack-bytes", "only");
   private static final List<String> CODE_KEYS = List.of("n", "k", "depth");
   private static final List<String> CLASSES =
       List.of(Importance.values()).stream().map(Importance::id).toList();
@@ -46,14 +48,14 @@ final class ProtectionReader {
       rules.add(rule(group, taken));
     }
     Protection protection = new Protection(rules);
-    int least = Link.MIN_PAYLOAD + protection.overheadBytes();
+    int least = protection.leastPayload(Link.MIN_PAYLOAD);
     if (link.payloadBytes() < least) {
       throw node.refuse(
           "takes up to "
-              + protection.overheadBytes()
+              + protection.overheadBytes(link.payloadBytes())
               + " bytes of a payload, and payload-bytes is "
               + link.payloadBytes()
-              + "; accepted: no reed-solomon, or payload-bytes of at least "
+              + "; accepted: no reed-solomon and no hamming, or payload-bytes of at least "
               + least);
     }
     return protection;
@@ -74,6 +76,7 @@ final class ProtectionReader {
         classes(group, taken),
         whole(group, "repeat", 1, Protection.MAX_REPEAT),
         code(given(group, "reed-solomon")),
+        hamming(given(group, "hamming")),
         retransmit,
         whole(group, "ack-bytes", 0, Link.MAX_PAYLOAD));
   }
@@ -116,5 +119,16 @@ final class ProtectionReader {
       throw node.get("k").refuse("is " + k + "; accepted: 1 to " + (n - 1) + ", below n");
     }
     return new Protection.ErasureCode(n, k, whole(node, "depth", 1, Protection.MAX_DEPTH));
+  }
+
+  private @Nullable HammingCode hamming(YamlNode node) {
+    if (!node.isMapping()) {
+      if (!node.isSequence() && node.text().equals(Protection.NONE_ID)) {
+        return null;
+      }
+      throw node.bad("none, or a group with depth");
+    }
+    node.onlyKeys(Set.of("depth"));
+    return new HammingCode(whole(node, "depth", 1, Protection.MAX_DEPTH));
   }
 }

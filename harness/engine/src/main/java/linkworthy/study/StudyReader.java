@@ -21,6 +21,7 @@ import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
+import linkworthy.link.PartNumber;
 import linkworthy.link.Protection;
 import linkworthy.noise.Site;
 import linkworthy.quality.QualityMeasure;
@@ -258,10 +259,11 @@ public final class StudyReader {
     Protection usual = protections.read(given(root, DEFAULTS, PROTECT));
     List<CodecChoice> all = new ArrayList<>();
     Set<String> labels = new HashSet<>();
-    Link free = pictures.hasAllPlanes() ? link.less(1) : link;
+    Link free = pictures.hasAllPlanes() ? link.less(PartNumber.BYTES) : link;
     for (YamlNode entry : root.get("codecs").items()) {
       Protection protection = entry.find(PROTECT).map(protections::read).orElse(usual);
-      int left = free.payloadBytes() - protection.overheadBytes();
+      int overhead = protection.overheadBytes(link.payloadBytes());
+      int left = free.payloadBytes() - overhead;
       if (left < Link.MIN_PAYLOAD) {
         throw entry.refuse(
             "has only "
@@ -270,11 +272,11 @@ public final class StudyReader {
                 + " accepted: at least "
                 + Link.MIN_PAYLOAD
                 + ", so payload-bytes of at least "
-                + (link.payloadBytes() + Link.MIN_PAYLOAD - left));
+                + protection.leastPayload(
+                    Link.MIN_PAYLOAD + link.payloadBytes() - free.payloadBytes()));
       }
       boolean named = entry.find("label").isPresent();
-      for (Codec codec :
-          reader.read(entry.without(PROTECT), free.less(protection.overheadBytes()))) {
+      for (Codec codec : reader.read(entry.without(PROTECT), free.less(overhead))) {
         CodecChoice choice =
             named
                 ? new CodecChoice(codec.label(), codec, protection)
@@ -285,7 +287,7 @@ public final class StudyReader {
                   + choice.label()
                   + "' a second time; remove it, or add label: to tell the two apart");
         }
-        if (pictures.hasAllPlanes() && codec.settings().containsKey("bits-per-pixel")) {
+        if (pictures.hasAllPlanes() && entry.find("bits-per-pixel").isPresent()) {
           throw entry.refuse(
               "aims at bits-per-pixel, which several planes share; accepted with 'planes: luma'");
         }

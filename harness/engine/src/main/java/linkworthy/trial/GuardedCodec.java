@@ -2,6 +2,7 @@ package linkworthy.trial;
 
 import java.util.List;
 import java.util.concurrent.CancellationException;
+import java.util.function.Supplier;
 import linkworthy.codec.Codec;
 import linkworthy.codec.CodecFailure;
 import linkworthy.codec.Decoding;
@@ -77,9 +78,25 @@ final class GuardedCodec {
         arrived);
   }
 
+  /** Decodes all that was sent, undamaged. */
+  PlaneCoding.Decoded decodeAll(List<PictureShape> shapes, Sent sent) {
+    Supplier<Picture> whole = sent.encoding().whole();
+    return whole == null
+        ? decode(shapes, sent, sent.encoding().payloads())
+        : coding.decode(
+            (shape, packets) ->
+                guarded(shape, () -> new Decoding(whole.get(), Decoding.Completeness.COMPLETE)),
+            shapes,
+            List.of());
+  }
+
   private Decoding decode(PictureShape shape, List<byte[]> arrived) {
+    return guarded(shape, () -> codec.decode(shape, arrived));
+  }
+
+  private static Decoding guarded(PictureShape shape, Supplier<Decoding> work) {
     try {
-      Decoding decoding = codec.decode(shape, arrived);
+      Decoding decoding = work.get();
       Failure failure = failure(decoding, shape);
       return failure == null ? decoding : Decoding.failed(shape, failure);
     } catch (Throwable thrown) {

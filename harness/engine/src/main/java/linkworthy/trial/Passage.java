@@ -22,6 +22,11 @@ interface Passage {
     return () ->
         new Crossing() {
           @Override
+          public boolean isClear() {
+            return true;
+          }
+
+          @Override
           public byte[] carry(int index, int node, byte[] payload) {
             return payload;
           }

@@ -14,13 +14,14 @@ import linkworthy.codec.Workload;
 import linkworthy.corpus.AreaAverage;
 import linkworthy.corpus.Picture;
 import linkworthy.link.Packet;
+import linkworthy.link.PartNumber;
 import linkworthy.study.PictureChoice;
 import org.jspecify.annotations.Nullable;
 
 /**
  * How the planes of a picture go through a codec that knows one plane. With {@code planes: luma}
  * the codec's own packets are sent. With {@code planes: all} every plane is coded alone, luma
- * first, and each packet begins with a byte that says which plane it is of (0 Y, 1 Cb, 2 Cr).
+ * first, and each packet begins with its plane's {@link PartNumber} (0 Y, 1 Cb, 2 Cr).
  *
  * <p>With chroma 4:2:0 the colour planes are halved in both directions by area average, their sides
  * rounded up, before coding; at the receiver each of their samples is shown over the area that it
@@ -79,10 +80,7 @@ final class PlaneCoding {
       Encoding encoding = codec.encode(coded.get(plane), memos.get(plane));
       keep = plane == 0 ? encoding.keep() : keep;
       for (Packet packet : encoding.packets()) {
-        byte[] payload = new byte[packet.length() + 1];
-        payload[0] = (byte) plane;
-        System.arraycopy(packet.payload(), 0, payload, 1, packet.length());
-        packets.add(new Packet(payload, packet.importance(), packet.node()));
+        packets.add(PartNumber.before(packet, plane, packet.node()));
       }
     }
     return new Encoding(packets, keep);
@@ -98,11 +96,12 @@ final class PlaneCoding {
       Decoding decoding = decoder.decode(coded.get(0), arrived);
       return new Decoded(List.of(decoding.picture()), decoding.completeness(), decoding.failure());
     }
+    List<List<byte[]>> byPlane = PartNumber.sort(arrived, coded.size());
     List<Picture> planes = new ArrayList<>();
     Set<Decoding.Completeness> parts = EnumSet.noneOf(Decoding.Completeness.class);
     Failure failure = null;
     for (int plane = 0; plane < coded.size(); plane++) {
-      Decoding decoding = decoder.decode(coded.get(plane), ofPlane(plane, arrived));
+      Decoding decoding = decoder.decode(coded.get(plane), byPlane.get(plane));
       parts.add(decoding.completeness());
       failure = failure == null ? decoding.failure() : failure;
       planes.add(stretched(decoding.picture(), coded.get(0)));
@@ -125,16 +124,6 @@ final class PlaneCoding {
       nodes = sums;
     }
     return nodes;
-  }
-
-  private static List<byte[]> ofPlane(int plane, List<byte[]> arrived) {
-    List<byte[]> payloads = new ArrayList<>();
-    for (byte[] packet : arrived) {
-      if (packet.length > 0 && packet[0] == plane) {
-        payloads.add(java.util.Arrays.copyOfRange(packet, 1, packet.length));
-      }
-    }
-    return payloads;
   }
 
   private static Picture stretched(Picture plane, PictureShape shape) {

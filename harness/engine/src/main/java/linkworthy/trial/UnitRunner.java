@@ -157,9 +157,7 @@ final class UnitRunner {
     for (CodecChoice choice : codecs) {
       GuardedCodec codec =
           new GuardedCodec(
-              choice.codec(),
-              study.link().less(choice.protection().overheadBytes()),
-              subject.coding());
+              choice.codec(), study.link().less(overheadBytes(choice)), subject.coding());
       long start = System.nanoTime();
       Seen seen = choice.codec().hasHelpers() ? afterRawHop : circumstances.seen();
       GuardedCodec.Sent sent = encode(choice, codec, seen);
@@ -167,7 +165,11 @@ final class UnitRunner {
       Passage.Crossing crossing = circumstances.passage().open();
       Channel.Outcome outcome =
           new Channel(study.link(), choice.protection()).send(sent.encoding().packets(), crossing);
-      Judged judged = judge(choice, codec, seen, sent, outcome.payloads());
+      boolean intact = crossing.isClear() || isIntact(sent.encoding(), outcome.payloads());
+      Judged judged =
+          intact
+              ? judgeIntact(choice, codec, seen, sent)
+              : judge(codec.decode(subject.shapes(), sent, outcome.payloads()));
       long decoded = System.nanoTime();
       trials.add(
           trial(
@@ -202,29 +204,23 @@ final class UnitRunner {
     return seen.memos()
         .get(0)
         .once(
-            EncodingKey.of(choice),
+            encodingKey(choice),
             GuardedCodec.Sent.class,
             () -> codec.encode(seen.planes(), seen.memos()));
   }
 
   /**
-   * Decodes and judges; what arrives as it was sent gives the same figures every time, so that is
-   * done once for each encoding.
+   * Decodes and judges all that was sent, as it was sent: that gives the same figures every time,
+   * so it is done once for each encoding.
    */
-  private Judged judge(
-      CodecChoice choice,
-      GuardedCodec codec,
-      Seen seen,
-      GuardedCodec.Sent sent,
-      List<byte[]> arrived) {
-    return isIntact(sent.encoding(), arrived)
-        ? seen.memos()
-            .get(0)
-            .once(
-                new IntactKey(EncodingKey.of(choice)),
-                Judged.class,
-                () -> judge(codec.decode(subject.shapes(), sent, arrived)))
-        : judge(codec.decode(subject.shapes(), sent, arrived));
+  private Judged judgeIntact(
+      CodecChoice choice, GuardedCodec codec, Seen seen, GuardedCodec.Sent sent) {
+    return seen.memos()
+        .get(0)
+        .once(
+            new IntactKey(encodingKey(choice)),
+            Judged.class,
+            () -> judge(codec.decodeAll(subject.shapes(), sent)));
   }
 
   private static boolean isIntact(Encoding encoding, List<byte[]> arrived) {
@@ -319,13 +315,18 @@ final class UnitRunner {
     return figures;
   }
 
-  private record EncodingKey(Map<String, Object> settings, int overheadBytes) {
-    static EncodingKey of(CodecChoice choice) {
-      Map<String, Object> settings = new HashMap<>(choice.codec().settings());
-      settings.remove("label");
-      return new EncodingKey(settings, choice.protection().overheadBytes());
-    }
+  /** Bytes of each payload that protection takes from the codec. */
+  private int overheadBytes(CodecChoice choice) {
+    return choice.protection().overheadBytes(study.link().payloadBytes());
   }
+
+  private EncodingKey encodingKey(CodecChoice choice) {
+    Map<String, Object> settings = new HashMap<>(choice.codec().settings());
+    settings.remove("label");
+    return new EncodingKey(settings, overheadBytes(choice));
+  }
+
+  private record EncodingKey(Map<String, Object> settings, int overheadBytes) {}
 
   private record IntactKey(EncodingKey encoding) {}
 }

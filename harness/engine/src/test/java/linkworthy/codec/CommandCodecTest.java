@@ -24,6 +24,7 @@ import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
+import org.junit.jupiter.params.provider.ValueSource;
 
 class CommandCodecTest {
   private static final Link LINK = new Link(96, 23, Link.Order.BY_COMPONENT);
@@ -219,7 +220,6 @@ class CommandCodecTest {
   @Test
   void noOutputIsAFailure() {
     assertThat(encodeFailure("true", "").word()).isEqualTo("encode-empty");
-    assertThat(encodeFailure("ln -s /etc/passwd $2", "").word()).isEqualTo("encode-empty");
     assertThat(encodeFailure("mkfifo $2", "").word()).isEqualTo("encode-empty");
     assertThat(encodeFailure("rm -rf $HOME", "").word()).isEqualTo("encode-empty");
   }
@@ -271,14 +271,42 @@ class CommandCodecTest {
     assertThat(Path.of(own)).doesNotExist();
   }
 
-  /** Nothing stops a program that writes elsewhere; the call and its cleaning work all the same. */
+  /** A link to a file of the user's, to the very output elsewhere, or to another folder. */
+  @ParameterizedTest
+  @ValueSource(
+      strings = {
+        "ln -s /etc/passwd $2",
+        "cp $1 OUTSIDE; ln -s OUTSIDE $2",
+        "ln -s nowhere $2",
+        "mv $HOME OUTSIDE; ln -s OUTSIDE $HOME; cp OUTSIDE/picture.pgm $2"
+      })
+  void anOutputOverALinkIsRefused(String script) throws IOException {
+    long before = foldersLeft();
+    Path outside = folder.resolve("outside");
+    Failure failure = encodeFailure(script.replace("OUTSIDE", outside.toString()), "");
+    assertThat(failure.word()).isIn("encode-outside", confined("encode-exit"));
+    assertThat(foldersLeft()).isEqualTo(before);
+    Decoding decoding = decoded("cp $1 " + outside + "x; ln -s " + outside + "x $2", "");
+    assertThat(word(decoding)).isEqualTo("decode-outside");
+    assertThat(decoding.completeness()).isEqualTo(Decoding.Completeness.NOTHING);
+  }
+
+  /** A word that is right as well where programs are confined. */
+  private static String confined(String word) {
+    return Confinement.ofThisMachine().isOn() ? word : "";
+  }
+
+  /**
+   * A program that writes elsewhere: the file is there only where nothing confines it. The call and
+   * its cleaning work all the same.
+   */
   @Test
-  void aFileOutsideTheFolderIsLeftAlone() throws IOException {
+  void aFileOutsideTheFolderDoesNotHinderTheCall() throws IOException {
     long before = foldersLeft();
     Path outside = folder.resolve("outside");
     Decoding decoding = decoded("cp $1 " + outside + "; mkdir -p a/b; chmod 0 a; cp $1 $2", "");
     assertThat(decoding.failure()).isNull();
-    assertThat(outside).exists();
+    assertThat(Files.exists(outside)).isEqualTo(!Confinement.ofThisMachine().isOn());
     assertThat(foldersLeft()).isEqualTo(before);
   }
 

@@ -19,7 +19,14 @@ class CommandContractTest extends CodecContractTest {
 
   @Override
   protected List<String> entries() {
-    return List.of(COPY + "on-loss: drop-picture", COPY + "label: copy");
+    return List.of(
+        COPY + "on-loss: drop-picture", COPY + "label: copy", COPY + "on-loss: zero-fill");
+  }
+
+  /** Each damage starts a program; {@link CommandStreamTest} has the large numbers without. */
+  @Override
+  protected int damages() {
+    return Math.min(400, super.damages());
   }
 
   @Override

@@ -8,7 +8,6 @@ import static org.junit.jupiter.api.Assertions.assertTimeoutPreemptively;
 import java.time.Duration;
 import java.util.ArrayList;
 import java.util.Arrays;
-import java.util.Collections;
 import java.util.EnumSet;
 import java.util.List;
 import java.util.Random;
@@ -51,6 +50,8 @@ class ChannelTest {
         all(1, code(255, 223, 1), 0),
         all(1, code(5, 1, 3), 0),
         all(2, code(10, 8, 2), 1),
+        new Protection(
+            List.of(new Protection.Rule(ALL, 2, code(12, 8, 2), new HammingCode(8), 1, 5))),
         new Protection(
             List.of(
                 rule(EnumSet.of(Importance.HEADER), 3, null, 0),
@@ -118,6 +119,31 @@ class ChannelTest {
     assertThat(outcome.packetsLost()).isEqualTo(7);
   }
 
+  /** Clear air is an outcome like any other, reached without looking at a payload. */
+  @ParameterizedTest
+  @MethodSource("protections")
+  void clearAirIsCountedLikeAirThatLosesNothing(Protection protection) {
+    Channel.Air clear =
+        new Channel.Air() {
+          @Override
+          public byte[] carry(int index, int node, byte[] payload) {
+            return payload;
+          }
+
+          @Override
+          public boolean isClear() {
+            return true;
+          }
+        };
+    for (Protection each : List.of(protection, Protection.NONE)) {
+      List<Packet> packets = packets(70, 3);
+      Channel.Outcome expected = new Channel(LINK, each).send(packets, new Recorder(t -> false));
+      Channel.Outcome found = new Channel(LINK, each).send(packets, clear);
+      assertThat(found).usingRecursiveComparison().ignoringFields("payloads").isEqualTo(expected);
+      assertSameBytes(found.payloads(), expected.payloads());
+    }
+  }
+
   /** The bits counted are the bits that were produced, whatever the protection and the losses. */
   @ParameterizedTest
   @MethodSource("protections")
@@ -155,8 +181,7 @@ class ChannelTest {
       Channel.Outcome outcome = new Channel(LINK, protection).send(packets, air);
       assertSameBytes(outcome.payloads(), payloads(packets));
       assertThat(air.sent)
-          .allSatisfy(
-              p -> assertThat(p.length).isLessThanOrEqualTo(88 + protection.overheadBytes()));
+          .allSatisfy(p -> assertThat(p.length).isLessThanOrEqualTo(protection.leastPayload(88)));
     }
   }
 
@@ -246,57 +271,59 @@ class ChannelTest {
     assertSameBytes(air.sent.subList(8, 46), payloads(packets).subList(2, 40));
   }
 
-  private static int fuzzRounds() {
-    return Integer.getInteger("linkworthy.fuzz", 400);
-  }
-
   /**
-   * Packets that are damaged, cut, doubled, out of order or foreign: the far end never throws,
-   * takes bounded time, returns no more payloads than there is room for, and loses nothing that
-   * arrived whole under its own number.
+   * Packets that are damaged, cut, lost, doubled, out of order, of another picture or random: the
+   * far end never throws, takes bounded time and at most 1 MiB and 1000 bytes for each byte that
+   * arrived (a parity symbol may restore 254 others), and returns no more payloads than there is
+   * room for.
    */
   @ParameterizedTest
   @MethodSource("protections")
   void damageIsOrdinaryInput(Protection protection) {
-    int rounds = Math.max(1, fuzzRounds() / 11);
     Framing framing = new Framing(protection);
-    for (int round = 0; round < rounds; round++) {
-      Random random = new Random(1000L + round);
-      Recorder air = new Recorder(t -> random.nextInt(10) == 0);
-      new Channel(LINK, protection).send(packets(1 + random.nextInt(60), round), air);
-      List<byte[]> input = damaged(air.arrived, random);
+    Recorder foreign = new Recorder(t -> false);
+    new Channel(LINK, protection).send(packets(40, 77), foreign);
+    for (int round = 0; round < Damages.rounds(); round++) {
+      Random random = new Random(round);
+      int percent = random.nextInt(30);
+      Recorder air = new Recorder(t -> random.nextInt(100) < percent);
+      new Channel(LINK, protection).send(packets(1 + random.nextInt(30), round), air);
+      List<byte[]> input = Damages.of(air.arrived, foreign.sent, random);
+      long bytes = input.stream().mapToLong(p -> p.length).sum();
       List<byte[]> found =
-          assertTimeoutPreemptively(
-              Duration.ofSeconds(20), () -> framing.payloads(input), "seed " + (1000L + round));
+          Damages.bounded(
+              (1 << 20) + 1000 * bytes,
+              protection.label() + ", damage " + round,
+              () -> framing.payloads(input));
       assertThat(found.size()).as("round %d", round).isLessThanOrEqualTo(255 * input.size());
       assertThat(found).allSatisfy(p -> assertThat(p.length).isLessThanOrEqualTo(300));
     }
   }
 
-  private static List<byte[]> damaged(List<byte[]> packets, Random random) {
-    List<byte[]> all = new ArrayList<>();
-    for (byte[] packet : packets) {
-      byte[] copy = packet.clone();
-      switch (random.nextInt(8)) {
-        case 0 -> copy = Arrays.copyOf(copy, random.nextInt(copy.length + 1));
-        case 1 -> copy = Arrays.copyOf(copy, copy.length + random.nextInt(9));
-        case 2 -> flip(copy, random, 6 * 8);
-        case 3 -> flip(copy, random, 8 * copy.length);
-        case 4 -> all.add(packet);
-        case 5 -> random.nextBytes(copy);
-        default -> {}
+  /** Random bytes alone, half of them with the tag of a rule that exists. */
+  @ParameterizedTest
+  @MethodSource("protections")
+  void randomBytesAreOrdinaryInput(Protection protection) {
+    Framing framing = new Framing(protection);
+    for (int round = 0; round < Damages.rounds(); round++) {
+      Random random = new Random(round);
+      List<byte[]> input = new ArrayList<>();
+      for (int i = random.nextInt(12); i >= 0; i--) {
+        byte[] bytes = Damages.bytes(random, 200);
+        if (bytes.length > 3 && random.nextBoolean()) {
+          bytes[0] = (byte) (random.nextInt(3) << 5);
+          bytes[1] = 0;
+          bytes[2] = (byte) random.nextInt(2);
+        }
+        input.add(bytes);
       }
-      all.add(copy);
-    }
-    all.add(new byte[0]);
-    Collections.shuffle(all, random);
-    return all;
-  }
-
-  private static void flip(byte[] bytes, Random random, int among) {
-    for (int i = 0; i <= random.nextInt(4) && bytes.length > 0; i++) {
-      int bit = random.nextInt(Math.min(among, 8 * bytes.length));
-      bytes[bit / 8] ^= (byte) (1 << (bit % 8));
+      long bytes = input.stream().mapToLong(p -> p.length).sum();
+      List<byte[]> found =
+          Damages.bounded(
+              (1 << 20) + 1000 * bytes,
+              protection.label() + ", bytes " + round,
+              () -> framing.payloads(input));
+      assertThat(found.size()).as("round %d", round).isLessThanOrEqualTo(255 * input.size());
     }
   }
 
@@ -348,6 +375,7 @@ class ChannelTest {
             "rs255-223x1",
             "rs5-1x3",
             "rs10-8x2+repeat2+retry1",
+            "rs12-8x2+hamming7-4x8+repeat2+retry1",
             "repeat3:header rs12-8x2:basis+first",
             "rs6-2x1+retry1:header rs9-8x3:rest");
     assertThat(new Protection(List.of(new Protection.Rule(ALL, 1, null, 3, 11))).label())

@@ -5,6 +5,7 @@ import static org.assertj.core.api.Assertions.assertThat;
 import java.nio.charset.StandardCharsets;
 import java.util.Arrays;
 import java.util.HexFormat;
+import java.util.Random;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.ValueSource;
@@ -67,5 +68,23 @@ class FrameCheckTest {
     }
     assertThat(FrameCheck.passes(damaged)).isTrue();
     assertThat(Arrays.equals(frame, damaged)).isFalse();
+  }
+
+  /**
+   * Frames of any length and content, those shorter than header and sequence included. One in 140
+   * has a single byte, which passes if it is 0; one in 65536 of the others passes.
+   */
+  @Test
+  void randomBytesGiveAPayloadThatFits() {
+    int unnoticed = 0;
+    for (int round = 0; round < Damages.rounds(); round++) {
+      Random random = new Random(round);
+      byte[] frame = Damages.bytes(random, 140);
+      int headerBytes = random.nextInt(30);
+      unnoticed += FrameCheck.passes(frame) && frame.length > 0 ? 1 : 0;
+      assertThat(FrameCheck.payload(headerBytes, frame))
+          .hasSize(Math.max(0, frame.length - headerBytes - FrameCheck.BYTES));
+    }
+    assertThat((double) unnoticed / Damages.rounds()).isLessThan(0.02);
   }
 }

@@ -1,6 +1,7 @@
 package linkworthy.link;
 
 import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.assertThatIllegalArgumentException;
 import static org.assertj.core.api.Assertions.assertThatThrownBy;
 import static org.assertj.core.api.Assertions.within;
 
@@ -11,6 +12,7 @@ import org.jspecify.annotations.Nullable;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
+import tools.jackson.dataformat.yaml.YAMLMapper;
 
 /**
  * The first-order radio model of Heinzelman, Chandrakasan and Balakrishnan (HICSS 2000, from
@@ -38,6 +40,67 @@ class NodeProfileTest {
   void aPictureAndPartsOfItOverFiftyMetres(long bits, double millijoules) {
     assertThat(NodeProfile.find("first-order-radio").millijoules(0, bits, 0))
         .isCloseTo(millijoules, within(1e-9));
+  }
+
+  /**
+   * The two regimes of Heinzelman, Chandrakasan and Balakrishnan (2002, from memory): 10 pJ/bit/m^2
+   * and 0.0013 pJ/bit/m^4 meet at sqrt(10/0.0013) m and cost 126.9230769 nJ/bit there with 50 nJ of
+   * electronics; recomputed independently in Python.
+   */
+  @Test
+  void theRegimesOfAnAmplifierMeet() {
+    NodeProfile.Radio radio = new NodeProfile.Radio(50, 10, 0.0013, 0);
+    double meet = radio.crossoverMetres();
+    assertThat(meet).isCloseTo(87.70580193, within(1e-8));
+    assertThat(radio.sentNanojoules()).isEqualTo(50);
+    assertThat(over(meet)).isCloseTo(126.9230769, within(1e-7));
+    assertThat(over(Math.nextUp(meet))).isCloseTo(126.9230769, within(1e-7));
+  }
+
+  private static double over(double metres) {
+    return new NodeProfile.Radio(50, 10, 0.0013, metres).sentNanojoules();
+  }
+
+  /** 50 + 0.01 d^2 and 50 + 1.3e-6 d^4 nJ/bit, worked by hand. */
+  @ParameterizedTest
+  @CsvSource({"10, 51", "50, 75", "120, 319.568", "200, 2130"})
+  void nearAndFarCostWhatTheirRegimeSays(double metres, double nanojoules) {
+    assertThat(over(metres)).isCloseTo(nanojoules, within(1e-9));
+  }
+
+  @Test
+  void theShippedProfileOfTheTwoRegimesKeepsItsRadio() {
+    NodeProfile profile = NodeProfile.find("two-regime-radio");
+    assertThat(profile.sentNanojoules()).isCloseTo(319.568, within(1e-9));
+    assertThat(profile.millijoules(0, 1_000_000, 0)).isCloseTo(319.568, within(1e-9));
+    String text = new YAMLMapper().writeValueAsString(profile.settings());
+    assertThat(NodeProfile.parse(YamlNode.parse("node.yaml", text))).isEqualTo(profile);
+    assertThatIllegalArgumentException()
+        .isThrownBy(() -> new NodeProfile("n", 1, 1, 1, 1, 1, 1, 1, "x", profile.radio()))
+        .withMessageContaining("sent-nj-per-bit is 1.0 and the radio's 319.5");
+  }
+
+  @ParameterizedTest
+  @CsvSource(
+      delimiter = '|',
+      value = {
+        "electronics-nj: -1, near-pj-per-m2: 1, far-pj-per-m4: 1, distance-m: 1 | at least 0",
+        "electronics-nj: 1, near-pj-per-m2: 0, far-pj-per-m4: 1, distance-m: 1 | above 0",
+        "electronics-nj: 1, near-pj-per-m2: 1, far-pj-per-m4: 0, distance-m: 1 | above 0",
+        "electronics-nj: 1, near-pj-per-m2: 1, far-pj-per-m4: 1, distance-m: .nan | at least 0",
+        "electronics-nj: 1, near-pj-per-m2: 1, far-pj-per-m4: 1 | missing key 'distance-m'",
+        "electronics-nj: 1, near-pj-per-m2: 1, far-pj-per-m4: 1, distance: 1 | 'distance-m'"
+      })
+  void wrongRadiosAreRefused(String radio, String complaint) {
+    String text =
+        "id: n\nsent-nj-per-bit: {"
+            + radio
+            + "}\nreceived-nj-per-bit: 1\nmac-nj: 5\nsleep-mw: 0\nram-kib: 64\n"
+            + "kbit-per-second: 250\nbattery-j: 9\nsource: a test\n";
+    assertThatThrownBy(() -> NodeProfile.parse(YamlNode.parse("node.yaml", text)))
+        .isInstanceOf(BadInput.class)
+        .hasMessageStartingWith("node.yaml, line 2: ")
+        .hasMessageContaining(complaint);
   }
 
   @Test
@@ -72,13 +135,13 @@ class NodeProfileTest {
           }
 
           @Override
-          public byte @Nullable [] take(int room, boolean whole) {
+          public Packetizer.@Nullable Unit take(int room, boolean whole) {
             int count = Math.min(room, left);
             if (count == 0) {
               return null;
             }
             left -= count;
-            return new byte[count];
+            return Packetizer.Unit.of(new byte[count]);
           }
         };
     assertThat(Packetizer.pack(new byte[0], List.of(strip), payload)).hasSize(packets);

@@ -7,6 +7,7 @@ import java.util.EnumSet;
 import java.util.List;
 import java.util.Set;
 import linkworthy.input.BadInput;
+import linkworthy.link.HammingCode;
 import linkworthy.link.Importance;
 import linkworthy.link.Protection;
 import org.junit.jupiter.api.Test;
@@ -37,20 +38,25 @@ class ProtectionReaderTest {
         .containsExactly(new Protection.Rule(ALL, 1, new Protection.ErasureCode(12, 8, 1), 0, 5));
     assertThat(protection("{retransmit: 3}").rules())
         .containsExactly(new Protection.Rule(ALL, 1, null, 3, 5));
+    assertThat(protection("{hamming: {}}").rules())
+        .containsExactly(new Protection.Rule(ALL, 1, null, new HammingCode(1), 0, 5));
+    assertThat(protection("{hamming: none, repeat: 2}").rules())
+        .containsExactly(new Protection.Rule(ALL, 2, null, 0, 5));
   }
 
   @Test
   void everyKeyIsRead() {
     assertThat(
             protection(
-                    "{repeat: 2, reed-solomon: {n: 12, k: 8, depth: 4}, retransmit: 3, ack-bytes:"
-                        + " 11, only: [first, header]}")
+                    "{repeat: 2, reed-solomon: {n: 12, k: 8, depth: 4}, hamming: {depth: 56},"
+                        + " retransmit: 3, ack-bytes: 11, only: [first, header]}")
                 .rules())
         .containsExactly(
             new Protection.Rule(
                 EnumSet.of(Importance.HEADER, Importance.FIRST),
                 2,
                 new Protection.ErasureCode(12, 8, 4),
+                new HammingCode(56),
                 3,
                 11));
     assertThat(
@@ -71,6 +77,7 @@ class ProtectionReaderTest {
         - {transform: dct, keep: [2, 4]}
         - {transform: dct, keep: [2, 4], protect: none}
         - {transform: dct, keep: 2, protect: {repeat: 2}}
+        - {transform: dct, keep: 2, protect: {hamming: {depth: 8}}}
         - {transform: dct, keep: 2, protect: {retransmit: 3}, label: patient}
         - {transform: dct, keep: 2, protect: [{repeat: 3, only: header}, {retransmit: 1, only: rest}]}
       """;
@@ -85,6 +92,7 @@ class ProtectionReaderTest {
             "dct blocks8 K2 step8",
             "dct blocks8 K4 step8",
             "dct blocks8 K2 step8 repeat2",
+            "dct blocks8 K2 step8 hamming7-4x8",
             "patient",
             "dct blocks8 K2 step8 repeat3:header retry1:rest");
   }
@@ -151,6 +159,7 @@ class ProtectionReaderTest {
         "{reed-solomon: {n: 13, k: 8}}",
         "{reed-solomon: {n: 12, k: 7}}",
         "{reed-solomon: {n: 12, k: 8, depth: 2}}",
+        "{hamming: {}}",
         "{retransmit: 2}",
         "{repeat: 2, only: header}",
         "{retransmit: 1, ack-bytes: 6}"
@@ -188,6 +197,9 @@ class ProtectionReaderTest {
         "{reed-solomon: {n: 256, k: 8}} | 'protect.reed-solomon.n' | 2 to 255",
         "{reed-solomon: {n: 12, k: 8, depth: 0}} | 'protect.reed-solomon.depth' | 1 to 4096",
         "{reed-solomon: {n: 12, k: 8, dept: 2}} | unknown key 'dept' | did you mean 'depth'",
+        "{hamming: 8} | 'protect.hamming' | none, or a group with depth",
+        "{hamming: {depth: 0}} | 'protect.hamming.depth' | 1 to 4096",
+        "{hamming: {dept: 2}} | unknown key 'dept' | did you mean 'depth'",
         "{repeat: 2, only: [haeder]} | 'protect.only[0]' | did you mean 'header'",
         "{repeat: 2, only: [rest, rest]} | 'protect.only[1]' | 'rest' a second time",
         "{repeat: 2, only: []} | 'protect.only' | an empty list",
@@ -232,6 +244,23 @@ class ProtectionReaderTest {
         .isInstanceOf(BadInput.class)
         .hasMessageStartingWith("study.yaml, line 2: 'protect' takes up to 7 bytes")
         .hasMessageContaining("at least 39");
+  }
+
+  /** 4/7 of the payload are left beside a code on bits: 32 of 56, and 33 of 58 with planes. */
+  @Test
+  void aCodeOnBitsNeedsRoom() {
+    String coded = "link: {payload-bytes: 55}\nprotect: {hamming: {}}\n" + StudyReaderTest.SHORT;
+    assertThatThrownBy(() -> StudyReaderTest.read(coded))
+        .isInstanceOf(BadInput.class)
+        .hasMessageStartingWith("study.yaml, line 2: 'protect' takes up to 24 bytes")
+        .hasMessageContaining("at least 56");
+    assertThat(StudyReaderTest.read(coded.replace("55", "56")).codecs()).hasSize(1);
+    String planes = "pictures: {planes: all}\n" + coded.replace("55", "57");
+    assertThatThrownBy(() -> StudyReaderTest.read(planes))
+        .isInstanceOf(BadInput.class)
+        .hasMessageContaining("has only 31 bytes of payload-bytes left")
+        .hasMessageContaining("payload-bytes of at least 58");
+    assertThat(StudyReaderTest.read(planes.replace("57", "58")).codecs()).hasSize(1);
   }
 
   /** One byte each for the number of a tile and of a plane, beside the 32 of the codec. */

@@ -207,8 +207,9 @@ class LocalRunnerTest {
 
   /**
    * What could be done once for a work unit is done once: the encoders' work on one noisy picture
-   * is one analysis for each basis and arrangement, one set of symbols for each of their steps, and
-   * for each codec one encoding and one look at the picture that arrives whole.
+   * is one analysis for each basis and arrangement, one set of symbols and one growing picture for
+   * each of their steps, and for each codec one encoding and one look at the picture that arrives
+   * whole.
    */
   @Test
   void workIsDoneOncePerUnit() {
@@ -221,7 +222,7 @@ class LocalRunnerTest {
     }
     assertThat(subject.memo().computed())
         .as("every unit that loses packets of the clean picture shares the same work")
-        .isEqualTo(analyses + analyses + encodings + encodings);
+        .isEqualTo(analyses + analyses + analyses + encodings + encodings);
   }
 
   /** A picture that arrives whole is looked at once; the row is that of looking again. */
