@@ -9,9 +9,19 @@ import java.util.List;
  * @param confidence what it rests on, and how sure it is
  * @param exceptions where it does not hold, a sentence each
  * @param reasons why, a sentence each
+ * @param codec label of the codec that it names, or empty
  */
 public record Answer(
-    String sentence, String confidence, List<String> exceptions, List<String> reasons) {
+    String sentence,
+    String confidence,
+    List<String> exceptions,
+    List<String> reasons,
+    String codec) {
+  /** An answer that names no codec. */
+  public Answer(String sentence, String confidence, List<String> exceptions, List<String> reasons) {
+    this(sentence, confidence, exceptions, reasons, "");
+  }
+
   public Answer {
     exceptions = List.copyOf(exceptions);
     reasons = List.copyOf(reasons);

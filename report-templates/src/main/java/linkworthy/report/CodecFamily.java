@@ -26,6 +26,15 @@ record CodecFamily(int index, String name, String common, List<Member> members) 
    */
   record Member(CodecColumn codec, int index, String label) {}
 
+  /** The family with some of its members alone, each under its own index and label. */
+  CodecFamily only(Set<String> labels) {
+    return new CodecFamily(
+        index,
+        name,
+        common,
+        members.stream().filter(m -> labels.contains(m.codec().label())).toList());
+  }
+
   /** Name and common words. */
   String heading() {
     return common.isEmpty() ? name : name + ", " + common;

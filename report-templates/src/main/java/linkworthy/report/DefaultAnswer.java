@@ -52,7 +52,11 @@ final class DefaultAnswer {
     Score best = best(scores);
     Score chosen = cheapestNear(best, scores);
     return new Answer(
-        sentence(scores, best, chosen), confidence(chosen), exceptions(chosen), reasons(scores));
+        sentence(scores, best, chosen),
+        confidence(chosen),
+        exceptions(chosen),
+        reasons(scores),
+        chosen.label());
   }
 
   private List<Score> scores(List<Condition> over) {

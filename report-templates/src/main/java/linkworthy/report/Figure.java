@@ -3,6 +3,8 @@ package linkworthy.report;
 /**
  * What was measured of one codec in one condition: a cell of a table. NaN means not available, and
  * a PSNR of positive infinity that every decoded picture equals its original.
+ *
+ * @param typicalTrial id of the trial that stands for the cell, or empty
  */
 public record Figure(
     Condition condition,
@@ -11,7 +13,19 @@ public record Figure(
     Quality quality,
     double bitsPerPixel,
     double outageRate,
-    Comparison comparison) {
+    Comparison comparison,
+    String typicalTrial) {
+  /** A figure without a trial that stands for it. */
+  public Figure(
+      Condition condition,
+      CodecColumn codec,
+      Evidence evidence,
+      Quality quality,
+      double bitsPerPixel,
+      double outageRate,
+      Comparison comparison) {
+    this(condition, codec, evidence, quality, bitsPerPixel, outageRate, comparison, "");
+  }
 
   /**
    * What a figure rests on.

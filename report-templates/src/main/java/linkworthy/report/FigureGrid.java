@@ -12,6 +12,8 @@ final class FigureGrid {
   private final Map<String, CodecColumn> codecs = new LinkedHashMap<>();
   private final Map<Condition.Key, Condition> conditions = new LinkedHashMap<>();
   private final Map<Place, Figure> figures = new LinkedHashMap<>();
+  private final Map<Place, String> ids = new LinkedHashMap<>();
+  private final Map<String, Integer> places = new LinkedHashMap<>();
 
   /**
    * @throws IllegalArgumentException if two figures are of one codec in one condition
@@ -19,18 +21,40 @@ final class FigureGrid {
   FigureGrid(List<Figure> rows) {
     for (Figure figure : rows) {
       codecs.putIfAbsent(figure.codec().label(), figure.codec());
+      places.putIfAbsent(figure.codec().label(), places.size());
       conditions.putIfAbsent(figure.condition().key(), figure.condition());
       Place place = new Place(figure.condition().key(), figure.codec().label());
       if (figures.put(place, figure) != null) {
         throw new IllegalArgumentException(
             "two figures of codec '" + place.codec + "' in condition " + place.condition);
       }
+      ids.put(place, "f" + ids.size());
     }
   }
 
   /** Codecs in the order of their first figure. */
   List<CodecColumn> codecs() {
     return List.copyOf(codecs.values());
+  }
+
+  /** The codec's place in the order of the first figures, from 0. */
+  int place(CodecColumn codec) {
+    return place(codec.label());
+  }
+
+  /** The same by label. */
+  int place(String codec) {
+    return places.getOrDefault(codec, -1);
+  }
+
+  /** What a page calls the row of a figure. */
+  String id(Figure figure) {
+    return id(figure.condition(), figure.codec().label());
+  }
+
+  /** The same by codec label; empty where there is no figure. */
+  String id(Condition condition, String codec) {
+    return ids.getOrDefault(new Place(condition.key(), codec), "");
   }
 
   /** The condition without impairment, if it was run. */

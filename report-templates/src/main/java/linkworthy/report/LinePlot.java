@@ -3,6 +3,7 @@ package linkworthy.report;
 import java.util.ArrayList;
 import java.util.Comparator;
 import java.util.List;
+import java.util.function.ToDoubleFunction;
 import java.util.stream.DoubleStream;
 import java.util.stream.Stream;
 
@@ -21,6 +22,11 @@ record LinePlot(
     String context,
     List<Line> lines,
     List<Fact> key) {
+  /** The frame of the drawing. */
+  public PlotBox box() {
+    return new PlotBox(LEFT, RIGHT, TOP, BOTTOM);
+  }
+
   static final int WIDTH = 300;
   static final int HEIGHT = 280;
   static final int LEFT = 34;
@@ -35,20 +41,29 @@ record LinePlot(
   /** A place on an axis and what is written there. */
   record Tick(String at, String label) {}
 
+  /** Where a figure is drawn, and by which the page finds its row among all figures. */
+  record Spot(String x, String y, String id) {}
+
   /**
    * A codec's line as path data.
    *
+   * @param at the codec's place in the study
    * @param css classes for colour and dash
+   * @param whiskers picture intervals
+   * @param noise noise intervals
    * @param leader from the last point to a label that had to move, or empty
    */
   record Line(
+      int at,
       String css,
       String path,
       String whiskers,
+      String noise,
       String markers,
       String leader,
       String label,
-      String labelAt) {}
+      String labelAt,
+      List<Spot> spots) {}
 
   /** All panels of an impairment; none if nothing can be drawn. */
   static List<LinePlot> of(
@@ -58,10 +73,19 @@ record LinePlot(
             .filter(c -> c.equivalentNoiseVariance() > 0)
             .filter(c -> Double.isFinite(c.equivalentNoiseVariance()))
             .toList();
-    Scene scene = new Scene(grid, noise, noisy);
-    if (noisy.isEmpty() || scene.values().length == 0) {
+    double[] values = values(grid, noisy);
+    if (noisy.isEmpty() || values.length == 0) {
       return List.of();
     }
+    double[] variances =
+        noisy.stream().mapToDouble(Condition::equivalentNoiseVariance).sorted().toArray();
+    Scene scene =
+        new Scene(
+            grid,
+            noise,
+            noisy,
+            Axis.log(variances[0], variances[variances.length - 1], NOISY_FROM, RIGHT),
+            Axis.linear(values[0], values[values.length - 1], BOTTOM, TOP));
     List<LinePlot> plots = new ArrayList<>();
     for (CodecFamily family : families) {
       List<CodecFamily.Member> members = family.members();
@@ -71,53 +95,42 @@ record LinePlot(
             members.subList(members.size() * part / parts, members.size() * (part + 1) / parts);
         String title =
             family.heading() + (parts > 1 ? " (" + (part + 1) + " of " + parts + ")" : "");
-        plots.add(new Panel(scene, family, some).draw(id + "-" + plots.size(), title));
+        plots.add(new Panel(scene, families, family, some).draw(id + "-" + plots.size(), title));
       }
     }
     return plots;
   }
 
+  private static double[] values(FigureGrid grid, List<Condition> noisy) {
+    return Stream.concat(noisy.stream(), grid.clean().stream())
+        .flatMap(c -> grid.codecs().stream().flatMap(codec -> grid.find(c, codec).stream()))
+        .map(Figure::quality)
+        .flatMapToDouble(
+            q ->
+                DoubleStream.of(
+                    q.psnrMeanDb(),
+                    q.psnrMeanDb() - q.pictureHalfWidthDb(),
+                    q.psnrMeanDb() + q.pictureHalfWidthDb()))
+        .filter(Double::isFinite)
+        .sorted()
+        .toArray();
+  }
+
   /** What the panels of an impairment share. */
-  private record Scene(FigureGrid grid, FigureGrid.Noise noise, List<Condition> noisy) {
-    double[] values() {
-      return Stream.concat(noisy.stream(), grid.clean().stream())
-          .flatMap(c -> grid.codecs().stream().flatMap(codec -> grid.find(c, codec).stream()))
-          .map(Figure::quality)
-          .flatMapToDouble(
-              q ->
-                  DoubleStream.of(
-                      q.psnrMeanDb(),
-                      q.psnrMeanDb() - q.pictureHalfWidthDb(),
-                      q.psnrMeanDb() + q.pictureHalfWidthDb()))
-          .filter(Double::isFinite)
-          .sorted()
-          .toArray();
-    }
-
-    Axis y() {
-      double[] values = values();
-      return Axis.linear(values[0], values[values.length - 1], BOTTOM, TOP);
-    }
-
-    Axis x() {
-      double[] variances =
-          noisy.stream().mapToDouble(Condition::equivalentNoiseVariance).sorted().toArray();
-      return Axis.log(variances[0], variances[variances.length - 1], NOISY_FROM, RIGHT);
-    }
-
+  private record Scene(
+      FigureGrid grid, FigureGrid.Noise noise, List<Condition> noisy, Axis x, Axis y) {
     /** The clean condition, then the noisy ones from mild to harsh. */
     List<Condition> places() {
       return Stream.concat(grid.clean().stream(), noisy.stream()).toList();
     }
 
     double across(Condition condition) {
-      return condition.isClean() ? CLEAN_AT : x().at(condition.equivalentNoiseVariance());
+      return condition.isClean() ? CLEAN_AT : x.at(condition.equivalentNoiseVariance());
     }
 
     List<Tick> horizontal() {
       List<Tick> ticks = new ArrayList<>();
       grid.clean().ifPresent(c -> ticks.add(tick(CLEAN_AT, "clean")));
-      Axis x = x();
       x.ticks().forEach(v -> ticks.add(tick(x.at(v), Numbers.typed(v))));
       return spaced(ticks);
     }
@@ -134,7 +147,6 @@ record LinePlot(
     }
 
     List<Tick> vertical() {
-      Axis y = y();
       return y.ticks().stream().map(v -> tick(y.at(v), Numbers.typed(v))).toList();
     }
 
@@ -159,7 +171,11 @@ record LinePlot(
   }
 
   /** The codecs of one panel. */
-  private record Panel(Scene scene, CodecFamily family, List<CodecFamily.Member> members) {
+  private record Panel(
+      Scene scene,
+      List<CodecFamily> families,
+      CodecFamily family,
+      List<CodecFamily.Member> members) {
     LinePlot draw(String id, String title) {
       boolean direct = members.stream().allMatch(m -> m.label().length() <= LONGEST_LABEL);
       List<Fact> key = new ArrayList<>();
@@ -187,9 +203,11 @@ record LinePlot(
 
     private String context() {
       StringBuilder path = new StringBuilder();
-      for (CodecColumn codec : scene.grid().codecs()) {
-        if (members.stream().noneMatch(m -> m.codec().equals(codec))) {
-          path.append(path(codec, 0));
+      for (CodecFamily other : families) {
+        for (CodecFamily.Member member : other.members()) {
+          if (!members.contains(member)) {
+            path.append(path(member.codec(), 0));
+          }
         }
       }
       return path.toString();
@@ -214,7 +232,9 @@ record LinePlot(
       double shift = (i - (members.size() - 1) / 2.0) * 2;
       Axis y = scene.y();
       StringBuilder whiskers = new StringBuilder();
+      StringBuilder noise = new StringBuilder();
       StringBuilder markers = new StringBuilder();
+      List<Spot> spots = new ArrayList<>();
       double endX = RIGHT;
       double endY = Double.NaN;
       for (Condition condition : scene.places()) {
@@ -222,29 +242,45 @@ record LinePlot(
         if (Double.isFinite(psnr)) {
           double x = scene.across(condition) + shift;
           markers.append(Shape.at(member.index(), x, y.at(psnr)));
-          whiskers.append(whisker(condition, member.codec(), x, y));
+          whiskers.append(whisker(condition, member.codec(), x, y, q -> q.pictureHalfWidthDb()));
+          noise.append(whisker(condition, member.codec(), x, y, q -> q.noiseHalfWidthDb()));
+          spots.add(
+              new Spot(
+                  Numbers.coordinate(x),
+                  Numbers.coordinate(y.at(psnr)),
+                  scene.grid().id(condition, member.codec().label())));
           endX = x;
           endY = y.at(psnr);
         }
       }
       String css = "c" + family.index() % 6 + " d" + member.index() % Shape.KINDS;
-      return new Draft(
-          css,
-          path(member.codec(), shift),
-          whiskers.toString(),
-          markers.toString(),
-          label,
-          endX,
-          endY);
+      Line line =
+          new Line(
+              scene.grid().place(member.codec()),
+              css,
+              path(member.codec(), shift),
+              whiskers.toString(),
+              noise.toString(),
+              markers.toString(),
+              "",
+              label,
+              "",
+              List.copyOf(spots));
+      return new Draft(line, endX, endY);
     }
 
-    private String whisker(Condition condition, CodecColumn codec, double x, Axis y) {
+    private String whisker(
+        Condition condition,
+        CodecColumn codec,
+        double x,
+        Axis y,
+        ToDoubleFunction<Figure.Quality> halfWidth) {
       double psnr = scene.grid().psnr(condition, codec);
       double half =
           scene
               .grid()
               .find(condition, codec)
-              .map(f -> f.quality().pictureHalfWidthDb())
+              .map(f -> halfWidth.applyAsDouble(f.quality()))
               .orElse(Double.NaN);
       return Double.isFinite(half)
           ? "M" + point(x, y.at(psnr - half)) + "L" + point(x, y.at(psnr + half))
@@ -268,13 +304,13 @@ record LinePlot(
         Draft draft = drafts.get(i);
         int place = order.indexOf(draft);
         if (place < 0) {
-          lines.add(draft.line("", "", ""));
+          lines.add(draft.placed("", "", ""));
           continue;
         }
         String leader =
             "M" + point(draft.endX() + 5, draft.endY()) + "L" + point(RIGHT + 7, at[place]);
         String sign = Shape.at(members.get(i).index(), RIGHT + 12, at[place]);
-        lines.add(draft.line(leader, sign, Numbers.coordinate(at[place] + 4)));
+        lines.add(draft.placed(leader, sign, Numbers.coordinate(at[place] + 4)));
       }
       return lines;
     }
@@ -308,17 +344,19 @@ record LinePlot(
   }
 
   /** A line whose label has no place yet. */
-  private record Draft(
-      String css,
-      String path,
-      String whiskers,
-      String markers,
-      String label,
-      double endX,
-      double endY) {
-    Line line(String leader, String sign, String labelAt) {
+  private record Draft(Line line, double endX, double endY) {
+    Line placed(String leader, String sign, String labelAt) {
       return new Line(
-          css, path, whiskers, markers + sign, leader, labelAt.isEmpty() ? "" : label, labelAt);
+          line.at(),
+          line.css(),
+          line.path(),
+          line.whiskers(),
+          line.noise(),
+          line.markers() + sign,
+          leader,
+          labelAt.isEmpty() ? "" : line.label(),
+          labelAt,
+          line.spots());
     }
   }
 }

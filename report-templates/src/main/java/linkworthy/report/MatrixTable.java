@@ -2,6 +2,7 @@ package linkworthy.report;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Locale;
 import java.util.Optional;
 import java.util.function.Function;
 
@@ -17,19 +18,54 @@ record MatrixTable(String part, List<Head> families, List<Column> columns, List<
   /** A heading over the columns of one family. */
   record Head(String name, String common, int span) {}
 
-  /** A codec; {@code first} of its family's columns in this table. */
-  record Column(CodecFamily family, CodecFamily.Member member, boolean first, String rate) {}
+  /**
+   * A codec; {@code first} of its family's columns in this table, {@code at} its place in the
+   * study.
+   */
+  record Column(
+      CodecFamily family, CodecFamily.Member member, boolean first, String rate, int at) {}
 
   /** A condition: how it was given, and what that means on the common axis. */
   record Row(String given, String meaning, List<Cell> cells) {}
 
-  /** A figure: its main number, a smaller line, its style, its mark and the mark in words. */
-  record Cell(String main, String sub, String css, String mark, String spoken) {}
+  /**
+   * A figure.
+   *
+   * @param main its main number
+   * @param picture half its picture interval, or empty
+   * @param noise half its noise interval, or empty
+   * @param css its style
+   * @param mark how it stands
+   * @param spoken the same in words
+   * @param others its other measures, in the order of {@link #MEASURES} from the second on
+   * @param id by which the page finds its row among all figures, or empty
+   */
+  record Cell(
+      String main,
+      String picture,
+      String noise,
+      String css,
+      String mark,
+      String spoken,
+      String others,
+      String id) {
+    static Cell plain(String main, String sub, String id) {
+      return new Cell(main, sub, "", "", "", "", "", id);
+    }
+
+    private Cell styled(String css) {
+      return new Cell(main, picture, noise, css, mark, spoken, others, id);
+    }
+  }
+
+  /** What a matrix can show in place of the mean PSNR. */
+  static final List<String> MEASURES =
+      List.of("PSNR", "SSIM", "PSNR of mean MSE", "5th percentile");
 
   /** Mean PSNR with both intervals. */
   static List<MatrixTable> psnr(
       FigureGrid grid, List<CodecFamily> families, List<Condition> conditions) {
-    return of(grid, families, conditions, MatrixTable::psnrCell);
+    return of(grid, families, conditions, figure -> psnrCell(figure, grid.id(figure)));
   }
 
   /** Outage rates with their intervals. */
@@ -39,7 +75,8 @@ record MatrixTable(String part, List<Head> families, List<Column> columns, List<
         grid,
         families,
         conditions,
-        figure -> new Cell(Numbers.percent(figure.outageRate()), outageRange(figure), "", "", ""));
+        figure ->
+            Cell.plain(Numbers.percent(figure.outageRate()), outageRange(figure), grid.id(figure)));
   }
 
   /** Short, as it stands in every column. */
@@ -59,7 +96,8 @@ record MatrixTable(String part, List<Head> families, List<Column> columns, List<
     List<Column> all = new ArrayList<>();
     for (CodecFamily family : families) {
       for (CodecFamily.Member member : family.members()) {
-        all.add(new Column(family, member, false, rate(grid, member.codec(), conditions)));
+        String rate = rate(grid, member.codec(), conditions);
+        all.add(new Column(family, member, false, rate, grid.place(member.codec())));
       }
     }
     int parts = Math.max(1, (all.size() + MOST_COLUMNS - 1) / MOST_COLUMNS);
@@ -82,7 +120,7 @@ record MatrixTable(String part, List<Head> families, List<Column> columns, List<
     for (int i = 0; i < columns.size(); i++) {
       Column column = columns.get(i);
       boolean first = i == 0 || columns.get(i - 1).family().index() != column.family().index();
-      marked.add(new Column(column.family(), column.member(), first, column.rate()));
+      marked.add(new Column(column.family(), column.member(), first, column.rate(), column.at()));
     }
     return marked;
   }
@@ -117,10 +155,9 @@ record MatrixTable(String part, List<Head> families, List<Column> columns, List<
     List<Cell> cells = new ArrayList<>();
     for (Column column : columns) {
       Optional<Figure> figure = grid.find(condition, column.member().codec());
-      Cell bare =
-          figure.map(cell).orElse(new Cell(Numbers.db(Double.NaN), "not measured", "", "", ""));
+      Cell bare = figure.map(cell).orElse(Cell.plain(Numbers.db(Double.NaN), "not measured", ""));
       String css = (bare.css() + (column.first() ? " first" : "")).strip();
-      cells.add(new Cell(bare.main(), bare.sub(), css, bare.mark(), bare.spoken()));
+      cells.add(bare.styled(css));
     }
     return new Row(given(condition), meaning(condition), cells);
   }
@@ -130,12 +167,17 @@ record MatrixTable(String part, List<Head> families, List<Column> columns, List<
     if (condition.isClean()) {
       return "clean";
     }
-    return switch (condition.axis()) {
-      case "snr-db" -> "SNR " + Numbers.typed(condition.severity()) + " dB";
-      case "eb-n0-db" -> "Eb/N0 " + Numbers.typed(condition.severity()) + " dB";
-      default ->
-          (condition.axis().replace('-', ' ') + " " + Numbers.typed(condition.severity())).strip();
-    };
+    String axis = condition.axis();
+    String value = Numbers.typed(condition.severity());
+    if (axis.equals("eb-n0-db")) {
+      return "Eb/N0 " + value + " dB";
+    }
+    if (axis.equals("snr-db") || axis.equals("sinr-db")) {
+      return axis.substring(0, axis.length() - 3).toUpperCase(Locale.ROOT) + " " + value + " dB";
+    }
+    return axis.endsWith("-db")
+        ? axis.substring(0, axis.length() - 3).replace('-', ' ') + " " + value + " dB"
+        : (axis.replace('-', ' ') + " " + value).strip();
   }
 
   private static String meaning(Condition condition) {
@@ -145,20 +187,28 @@ record MatrixTable(String part, List<Head> families, List<Column> columns, List<
         : Numbers.typed(Math.rint(condition.snrDb() * 10) / 10) + " dB, " + variance;
   }
 
-  private static Cell psnrCell(Figure figure) {
+  private static Cell psnrCell(Figure figure, String id) {
     Figure.Quality quality = figure.quality();
-    String intervals =
-        "\u00b1"
-            + Numbers.db(quality.pictureHalfWidthDb())
-            + " ("
-            + Numbers.db(quality.noiseHalfWidthDb())
-            + ")";
     Standing standing = figure.comparison().standing();
     return new Cell(
         Numbers.db(quality.psnrMeanDb()),
-        intervals,
+        plusMinus(quality.pictureHalfWidthDb()),
+        Double.isNaN(quality.noiseHalfWidthDb())
+            ? ""
+            : "(" + Numbers.db(quality.noiseHalfWidthDb()) + ")",
         standing.id(),
         standing.mark(),
-        standing.spoken());
+        standing.spoken(),
+        String.join(
+            " ",
+            Numbers.index(quality.ssimMean()),
+            Numbers.db(quality.psnrOfMeanMseDb()),
+            Numbers.db(quality.psnrP05Db())),
+        id);
+  }
+
+  /** Half an interval with its sign, or nothing where there is too little evidence for one. */
+  static String plusMinus(double halfWidth) {
+    return Double.isNaN(halfWidth) ? "" : "\u00b1" + Numbers.db(halfWidth);
   }
 }

@@ -15,8 +15,12 @@ record RatePlot(
     List<LinePlot.Tick> horizontal,
     List<LinePlot.Tick> vertical,
     List<Curve> curves,
-    List<Ring> rings,
     List<Label> labels) {
+  /** The frame of the drawing. */
+  public PlotBox box() {
+    return new PlotBox(LEFT, RIGHT, TOP, BOTTOM);
+  }
+
   static final int WIDTH = 400;
   static final int HEIGHT = 310;
   static final int LEFT = 36;
@@ -24,17 +28,23 @@ record RatePlot(
   static final int TOP = 28;
   static final int BOTTOM = 266;
 
-  /** A family: its line and its markers as path data. */
-  record Curve(String css, String path, String markers) {}
+  /** A family: its line as path data, and its codecs. */
+  record Curve(String css, String path, List<Marker> markers) {}
 
-  /** Centre of a ring. */
-  record Ring(String x, String y) {}
+  /** A codec: its place in the study, its marker as path data, and whether it has a ring. */
+  record Marker(int at, String path, LinePlot.Spot spot, boolean ring) {}
 
   /** The name of a codec beside its marker. */
-  record Label(String x, String y, String anchor, String text, boolean strong) {}
+  record Label(int at, String x, String y, String text, boolean strong) {}
 
   private record Point(
-      CodecFamily family, CodecFamily.Member member, double bits, double psnr, boolean front) {}
+      CodecFamily family,
+      CodecFamily.Member member,
+      double bits,
+      double psnr,
+      boolean front,
+      int at,
+      String id) {}
 
   /** The plot, or nothing where no codec has both numbers. */
   static List<RatePlot> of(
@@ -47,14 +57,6 @@ record RatePlot(
     double[] psnr = points.stream().mapToDouble(Point::psnr).sorted().toArray();
     Axis x = Axis.log(bits[0], bits[bits.length - 1], LEFT + 8, RIGHT - 20);
     Axis y = Axis.linear(psnr[0], psnr[psnr.length - 1], BOTTOM - 6, TOP + 12);
-    List<Ring> rings =
-        points.stream()
-            .filter(Point::front)
-            .map(
-                p ->
-                    new Ring(
-                        Numbers.coordinate(x.at(p.bits())), Numbers.coordinate(y.at(p.psnr()))))
-            .toList();
     return List.of(
         new RatePlot(
             id,
@@ -65,7 +67,6 @@ record RatePlot(
             ticks(x),
             ticks(y),
             curves(families, points, x, y),
-            rings,
             labels(points, x, y)));
   }
 
@@ -95,7 +96,15 @@ record RatePlot(
         double bits = grid.bits(condition, member.codec());
         double psnr = grid.psnr(condition, member.codec());
         if (bits > 0 && Double.isFinite(bits) && Double.isFinite(psnr)) {
-          points.add(new Point(family, member, bits, psnr, front.contains(member.codec())));
+          points.add(
+              new Point(
+                  family,
+                  member,
+                  bits,
+                  psnr,
+                  front.contains(member.codec()),
+                  grid.place(member.codec()),
+                  grid.id(condition, member.codec().label())));
         }
       }
     }
@@ -113,20 +122,24 @@ record RatePlot(
     List<Curve> curves = new ArrayList<>();
     for (CodecFamily family : families) {
       StringBuilder path = new StringBuilder();
-      StringBuilder markers = new StringBuilder();
+      List<Marker> markers = new ArrayList<>();
       points.stream()
           .filter(p -> p.family().index() == family.index())
           .sorted(Comparator.comparingDouble(Point::bits))
           .forEach(
               p -> {
-                path.append(path.isEmpty() ? 'M' : 'L')
-                    .append(Numbers.coordinate(x.at(p.bits())))
-                    .append(' ')
-                    .append(Numbers.coordinate(y.at(p.psnr())));
-                markers.append(Shape.at(p.member().index(), x.at(p.bits()), y.at(p.psnr())));
+                String across = Numbers.coordinate(x.at(p.bits()));
+                String up = Numbers.coordinate(y.at(p.psnr()));
+                path.append(path.isEmpty() ? 'M' : 'L').append(across).append(' ').append(up);
+                markers.add(
+                    new Marker(
+                        p.at(),
+                        Shape.at(p.member().index(), x.at(p.bits()), y.at(p.psnr())),
+                        new LinePlot.Spot(across, up, p.id()),
+                        p.front()));
               });
       String css = "c" + family.index() % 6 + " d" + family.index() % Shape.KINDS;
-      curves.add(new Curve(css, path.toString(), markers.toString()));
+      curves.add(new Curve(css, path.toString(), markers));
     }
     return curves;
   }
@@ -164,9 +177,9 @@ record RatePlot(
         taken.add(box);
         labels.add(
             new Label(
+                point.at(),
                 Numbers.coordinate(box[0] + width / 2),
                 Numbers.coordinate(box[1] + 10),
-                "middle",
                 text,
                 point.front()));
         return;

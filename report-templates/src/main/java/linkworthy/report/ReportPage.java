@@ -15,6 +15,7 @@ import org.jspecify.annotations.Nullable;
  * @param costs of the nodes, or null where none were asked for
  * @param comparisons what was derived from the figures, or {@link Comparisons#NONE}
  * @param predictions by formula, beside the measured figures; may be empty
+ * @param particulars what is shown beyond the figures, or {@link Particulars#NONE}
  */
 public record ReportPage(
     String title,
@@ -26,7 +27,8 @@ public record ReportPage(
     Provenance provenance,
     @Nullable Costs costs,
     Comparisons comparisons,
-    List<Predicted> predictions) {
+    List<Predicted> predictions,
+    Particulars particulars) {
   /**
    * @throws IllegalArgumentException if the confidence level is out of range
    */
@@ -38,6 +40,32 @@ public record ReportPage(
     figures = List.copyOf(figures);
     pictures = List.copyOf(pictures);
     predictions = List.copyOf(predictions);
+  }
+
+  /** A page of figures and predictions alone. */
+  public ReportPage(
+      String title,
+      String question,
+      Answer answer,
+      List<Figure> figures,
+      double confidenceLevel,
+      List<PictureCredit> pictures,
+      Provenance provenance,
+      @Nullable Costs costs,
+      Comparisons comparisons,
+      List<Predicted> predictions) {
+    this(
+        title,
+        question,
+        answer,
+        figures,
+        confidenceLevel,
+        pictures,
+        provenance,
+        costs,
+        comparisons,
+        predictions,
+        Particulars.NONE);
   }
 
   /** A page without predictions. */

@@ -16,11 +16,14 @@ import org.thymeleaf.templateresolver.ClassLoaderTemplateResolver;
 
 /**
  * Renders a page model as one self-contained HTML file, which is also well-formed XML. The file
- * loads nothing and runs nothing: its content security policy admits only its own style sheet, by
- * hash. The same model gives the same text under every locale. May be used by several threads.
+ * loads nothing: its content security policy admits only its own style sheet and its own script, by
+ * hash, and pictures that stand in it. It says all that it says without its script. The same model
+ * gives the same text under every locale. May be used by several threads.
  */
 public final class ReportRenderer {
   private static final String FOLDER = "linkworthy/report/";
+
+  private static final int LONGEST_HEAD = 80;
 
   private static final Pattern REFERENCE = Pattern.compile("&#(x[0-9a-f]{1,6}|[0-9]{1,7});");
 
@@ -28,6 +31,9 @@ public final class ReportRenderer {
 
   private final TemplateEngine engine = new TemplateEngine();
   private final String style = resource("report.css").replace("\r", "");
+
+  /** A page is XML as well, where less-than signs need a fence. */
+  private final String script = "//<![CDATA[\n" + resource("report.js").replace("\r", "") + "//]]>";
 
   public ReportRenderer() {
     ClassLoaderTemplateResolver resolver =
@@ -39,13 +45,13 @@ public final class ReportRenderer {
   }
 
   /**
-   * The page as HTML text, to be written as UTF-8. Characters that no HTML file may hold are
-   * replaced by U+FFFD.
+   * The page as HTML text, to be written as UTF-8. Characters that no HTML file may hold, and those
+   * that turn the direction of the text after them, are replaced by U+FFFD.
    *
    * @throws IllegalArgumentException if two figures are of one codec in one condition
    */
   public String render(ReportPage page) {
-    Context context = context();
+    Context context = context(page.title());
     context.setVariable("page", page);
     context.setVariable("view", ReportView.of(page));
     return process("report.html", context);
@@ -53,7 +59,7 @@ public final class ReportRenderer {
 
   /** A comparison of runs as HTML text, under the same rules. */
   public String render(ComparisonPage page) {
-    Context context = context();
+    Context context = context(page.title());
     context.setVariable("page", page);
     context.setVariable("plots", TrendPlot.of(page.trends()));
     return process("comparison.html", context);
@@ -61,7 +67,7 @@ public final class ReportRenderer {
 
   /** A shortlist as HTML text, in the manner of the report. */
   public String render(ShortlistPage page) {
-    Context context = context();
+    Context context = context(page.title());
     context.setVariable("page", page);
     return process("shortlist.html", context);
   }
@@ -97,15 +103,37 @@ public final class ReportRenderer {
     return printable(engine.process(template, context));
   }
 
-  private Context context() {
+  private Context context(String title) {
     Context context = new Context(Locale.ROOT);
+    String style = this.style + pageHeads(title);
     context.setVariable("style", style);
+    context.setVariable("script", script);
     context.setVariable(
         "policy",
         "default-src 'none'; style-src '"
             + hash(style)
+            + "'; script-src '"
+            + hash(script)
             + "'; img-src data:; base-uri 'none'; form-action 'none'");
     return context;
+  }
+
+  /** What stands in the margins of a printed page: the title, and the page of how many. */
+  private static String pageHeads(String title) {
+    StringBuilder text = new StringBuilder();
+    title
+        .codePoints()
+        .limit(LONGEST_HEAD)
+        .map(c -> isPrintable(c) ? c : 0xFFFD)
+        .forEach(
+            c ->
+                text.append(
+                    Character.isLetterOrDigit(c) && c < 0x80
+                        ? Character.toString(c)
+                        : "\\" + Integer.toHexString(c) + " "));
+    return "@page { @top-left { content: \""
+        + text
+        + "\"; } @top-right { content: counter(page) \" / \" counter(pages); } }\n";
   }
 
   /** The template engine writes some characters as references, so those are looked through too. */
@@ -130,8 +158,9 @@ public final class ReportRenderer {
 
   private static boolean isPrintable(int c) {
     boolean control = (c < 0x20 && c != '\t' && c != '\n' && c != '\r') || (c >= 0x7F && c <= 0x9F);
+    boolean override = (c >= 0x202A && c <= 0x202E) || (c >= 0x2066 && c <= 0x2069);
     boolean surrogate = c >= 0xD800 && c <= 0xDFFF;
-    return !control && !surrogate && (c & 0xFFFE) != 0xFFFE;
+    return !control && !override && !surrogate && (c & 0xFFFE) != 0xFFFE;
   }
 
   private static String hash(String text) {

@@ -23,7 +23,16 @@ record ReportView(
     List<Fact> provenance,
     @Nullable CostView costs,
     ComparisonView comparisons,
-    PredictionView predictions) {
+    PredictionView predictions,
+    String drawn,
+    HeatMap heat,
+    List<SpreadPlot> spreads,
+    List<FigureTable> figures,
+    GalleryView gallery) {
+  /** Headings of the numbers among every figure. */
+  public List<String> numbers() {
+    return FigureTable.NUMBERS;
+  }
 
   /** An impairment with its tables and its panels. */
   record Section(String id, String title, List<MatrixTable> tables, List<LinePlot> plots) {}
@@ -39,6 +48,7 @@ record ReportView(
 
   /** A codec in one condition. */
   record RateRow(
+      int at,
       String codec,
       String bits,
       String psnr,
@@ -52,6 +62,7 @@ record ReportView(
 
   /** How a codec fares when it goes badly. */
   record LossRow(
+      int at,
       String codec,
       String psnr,
       String fall,
@@ -71,14 +82,15 @@ record ReportView(
     List<CodecFamily> families = CodecFamily.of(grid.codecs());
     List<FigureGrid.Noise> noises = grid.noises();
     List<OutageTable> outages = outageTables(grid, families, noises);
+    Leading leading = Leading.of(grid, families);
     return new ReportView(
         summary(page, grid),
         Numbers.typed(page.confidenceLevel() * 100) + " %",
         Numbers.typed((1 - page.confidenceLevel()) * 100) + " %",
         families,
-        sections(grid, families, noises),
-        ratePlots(grid, families, noises),
-        rateKey(families),
+        sections(grid, families, leading.families(), noises),
+        ratePlots(grid, leading.families(), noises),
+        rateKey(leading.families()),
         rateTables(grid, noises),
         lossTables(grid, noises),
         outages,
@@ -88,7 +100,12 @@ record ReportView(
         provenance(page.provenance()),
         page.costs() == null ? null : CostView.of(page.costs()),
         ComparisonView.of(page.comparisons()),
-        PredictionView.of(page.predictions()));
+        PredictionView.of(page.predictions()),
+        leading.sentence(),
+        HeatMap.of(grid),
+        spreads(page, grid, leading.families(), noises),
+        FigureTable.of(grid),
+        GalleryView.of(page.particulars().gallery(), grid));
   }
 
   private static String summary(ReportPage page, FigureGrid grid) {
@@ -100,8 +117,21 @@ record ReportView(
         Numbers.count(page.provenance().run().recorded(), "trial", "trials"));
   }
 
+  private static List<SpreadPlot> spreads(
+      ReportPage page, FigureGrid grid, List<CodecFamily> drawn, List<FigureGrid.Noise> noises) {
+    List<SpreadPlot> plots = new ArrayList<>();
+    for (FigureGrid.Noise noise : noises) {
+      String id = "spread-" + (plots.size() + 1);
+      plots.addAll(SpreadPlot.of(grid, drawn, noise, page.particulars().spreads(), id));
+    }
+    return plots;
+  }
+
   private static List<Section> sections(
-      FigureGrid grid, List<CodecFamily> families, List<FigureGrid.Noise> noises) {
+      FigureGrid grid,
+      List<CodecFamily> families,
+      List<CodecFamily> drawn,
+      List<FigureGrid.Noise> noises) {
     List<Section> sections = new ArrayList<>();
     for (FigureGrid.Noise noise : noises) {
       String id = "noise-" + (sections.size() + 1);
@@ -112,7 +142,7 @@ record ReportView(
               id,
               noise.title(),
               MatrixTable.psnr(grid, families, rows),
-              LinePlot.of(grid, families, noise, id)));
+              LinePlot.of(grid, drawn, noise, id)));
     }
     if (noises.isEmpty() && grid.clean().isPresent()) {
       List<Condition> rows = grid.clean().stream().toList();
@@ -158,20 +188,24 @@ record ReportView(
           grid.codecs().stream()
               .flatMap(codec -> grid.find(middle, codec).stream())
               .sorted((a, b) -> Double.compare(a.bitsPerPixel(), b.bitsPerPixel()))
-              .map(figure -> rateRow(figure, front))
+              .map(figure -> rateRow(grid, figure, front))
               .toList();
       tables.add(new RateTable(at(noise, middle), rows));
     }
     return tables;
   }
 
-  private static RateRow rateRow(Figure figure, List<CodecColumn> front) {
+  private static RateRow rateRow(FigureGrid grid, Figure figure, List<CodecColumn> front) {
     Figure.Quality quality = figure.quality();
     Standing standing = figure.comparison().standing();
     return new RateRow(
+        grid.place(figure.codec()),
         figure.codec().label(),
         Numbers.significant(figure.bitsPerPixel()),
-        Numbers.db(quality.psnrMeanDb()) + " \u00b1" + Numbers.db(quality.pictureHalfWidthDb()),
+        (Numbers.db(quality.psnrMeanDb())
+                + " "
+                + MatrixTable.plusMinus(quality.pictureHalfWidthDb()))
+            .strip(),
         Numbers.db(figure.comparison().behindBestDb()),
         (standing.mark() + " " + standing.id().replace('-', ' ')).strip(),
         Numbers.index(quality.ssimMean()),
@@ -198,6 +232,7 @@ record ReportView(
     double clean = grid.clean().map(c -> grid.psnr(c, figure.codec())).orElse(Double.NaN);
     double fall = clean == quality.psnrMeanDb() ? 0 : clean - quality.psnrMeanDb();
     return new LossRow(
+        grid.place(figure.codec()),
         figure.codec().label(),
         Numbers.db(quality.psnrMeanDb()),
         Numbers.db(fall),

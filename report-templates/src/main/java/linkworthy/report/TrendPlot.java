@@ -16,6 +16,11 @@ record TrendPlot(
     List<LinePlot.Tick> horizontal,
     List<LinePlot.Tick> vertical,
     List<Line> lines) {
+  /** The frame of the drawing. */
+  public PlotBox box() {
+    return new PlotBox(LEFT, RIGHT, TOP, BOTTOM);
+  }
+
   private static final int LEFT = 36;
   private static final int RIGHT = 384;
   private static final int TOP = 28;

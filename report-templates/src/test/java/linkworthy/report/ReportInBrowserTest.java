@@ -2,14 +2,11 @@ package linkworthy.report;
 
 import static org.assertj.core.api.Assertions.assertThat;
 
-import java.io.File;
 import java.io.IOException;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.List;
-import java.util.Map;
-import java.util.logging.Level;
 import org.junit.jupiter.api.AfterAll;
 import org.junit.jupiter.api.BeforeAll;
 import org.junit.jupiter.api.Test;
@@ -17,47 +14,23 @@ import org.junit.jupiter.api.io.TempDir;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.ValueSource;
 import org.openqa.selenium.By;
-import org.openqa.selenium.chrome.ChromeDriver;
-import org.openqa.selenium.chrome.ChromeDriverService;
-import org.openqa.selenium.chrome.ChromeOptions;
 import org.openqa.selenium.logging.LogType;
-import org.openqa.selenium.logging.LoggingPreferences;
 
 /** The pages as a browser lays them out. */
 class ReportInBrowserTest {
   @TempDir private static Path folder;
-  private static ChromeDriver browser;
+  private static TestBrowser browser;
 
   @BeforeAll
   static void open() throws IOException {
-    Files.writeString(folder.resolve("full.html"), new ReportRenderer().render(SamplePages.full()));
+    Files.writeString(folder.resolve("full.html"), new ReportRenderer().render(SamplePages.rich()));
     Files.writeString(folder.resolve("wide.html"), new ReportRenderer().render(wide()));
-    LoggingPreferences logs = new LoggingPreferences();
-    logs.enable(LogType.BROWSER, Level.ALL);
-    logs.enable(LogType.PERFORMANCE, Level.ALL);
-    ChromeOptions options = new ChromeOptions();
-    options.setBinary("/usr/bin/chromium");
-    options.setCapability("goog:loggingPrefs", logs);
-    options.addArguments(
-        "--headless",
-        "--no-sandbox",
-        "--disable-gpu",
-        "--disable-quic",
-        "--no-first-run",
-        "--disable-background-networking",
-        "--disable-component-update",
-        "--disable-sync",
-        "--user-data-dir=" + folder.resolve("profile"));
-    ChromeDriverService service =
-        new ChromeDriverService.Builder()
-            .usingDriverExecutable(new File("/usr/bin/chromedriver"))
-            .build();
-    browser = new ChromeDriver(service, options);
+    browser = new TestBrowser(folder);
   }
 
   @AfterAll
   static void close() {
-    browser.quit();
+    browser.close();
   }
 
   /** Forty codecs, long labels and long texts. */
@@ -75,27 +48,13 @@ class ReportInBrowserTest {
     return SamplePages.page(figures);
   }
 
-  private static void show(String name, int width) {
-    browser.executeCdpCommand(
-        "Emulation.setDeviceMetricsOverride",
-        Map.of("width", width, "height", 800, "deviceScaleFactor", 1, "mobile", false));
-    browser.get(folder.resolve(name).toUri().toString());
-  }
-
-  private static long number(String script) {
-    if (browser.executeScript("return Math.ceil(" + script + ")") instanceof Number number) {
-      return number.longValue();
-    }
-    throw new AssertionError(script + " is no number");
-  }
-
   @ParameterizedTest
   @ValueSource(ints = {320, 390, 768, 1024, 1280, 1920})
   void theBodyNeverScrollsSideways(int width) {
     for (String name : List.of("full.html", "wide.html")) {
-      show(name, width);
-      assertThat(number("innerWidth")).isEqualTo(width);
-      assertThat(number("document.documentElement.scrollWidth"))
+      browser.show(name, width);
+      assertThat(browser.number("innerWidth")).isEqualTo(width);
+      assertThat(browser.number("document.documentElement.scrollWidth"))
           .describedAs("%s at %d", name, width)
           .isLessThanOrEqualTo(width);
     }
@@ -103,9 +62,9 @@ class ReportInBrowserTest {
 
   @Test
   void fourteenCodecsFitALaptop() {
-    show("full.html", 1280);
+    browser.show("full.html", 1280);
     assertThat(
-            number(
+            browser.number(
                 "Math.max(...[...document.querySelectorAll('.scroll')]"
                     + ".map(e => e.scrollWidth - e.clientWidth))"))
         .isLessThanOrEqualTo(0);
@@ -113,31 +72,32 @@ class ReportInBrowserTest {
 
   @Test
   void theFirstScreenOfALaptopHoldsTheAnswerAndTheFirstTable() {
-    show("full.html", 1280);
-    assertThat(number("document.querySelector('table.matrix').getBoundingClientRect().bottom"))
+    browser.show("full.html", 1280);
+    assertThat(
+            browser.number("document.querySelector('table.matrix').getBoundingClientRect().bottom"))
         .isLessThanOrEqualTo(800);
   }
 
   @Test
   void theFirstColumnStaysWhileATableScrollsOnAPhone() {
-    show("full.html", 390);
+    browser.show("full.html", 390);
     String region = "document.querySelector('.scroll')";
-    assertThat(number(region + ".scrollWidth - " + region + ".clientWidth")).isPositive();
+    assertThat(browser.number(region + ".scrollWidth - " + region + ".clientWidth")).isPositive();
     String left = region + ".querySelector('tbody th').getBoundingClientRect().left";
-    long before = number(left);
-    browser.executeScript(region + ".scrollLeft = 300");
-    assertThat(number(region + ".scrollLeft")).isEqualTo(300);
-    assertThat(number(left)).isEqualTo(before);
-    assertThat(browser.findElement(By.cssSelector(".scroll")).getDomAttribute("tabindex"))
+    long before = browser.number(left);
+    browser.driver().executeScript(region + ".scrollLeft = 300");
+    assertThat(browser.number(region + ".scrollLeft")).isEqualTo(300);
+    assertThat(browser.number(left)).isEqualTo(before);
+    assertThat(browser.driver().findElement(By.cssSelector(".scroll")).getDomAttribute("tabindex"))
         .isEqualTo("0");
   }
 
   @Test
   void labelsOfThePlotsStayInsideTheirDrawing() {
     for (String name : List.of("full.html", "wide.html")) {
-      show(name, 1280);
+      browser.show(name, 1280);
       assertThat(
-              number(
+              browser.number(
                   "[...document.querySelectorAll('figure svg')].flatMap(s =>"
                       + " [...s.querySelectorAll('text')].filter(t => { const b = t.getBBox();"
                       + " return b.x < -1 || b.x + b.width > s.viewBox.baseVal.width + 1"
@@ -149,21 +109,21 @@ class ReportInBrowserTest {
 
   @Test
   void thePageAsksForNothingAndComplainsOfNothing() {
-    browser.get("about:blank");
-    browser.manage().logs().get(LogType.PERFORMANCE);
-    browser.manage().logs().get(LogType.BROWSER);
-    show("full.html", 1280);
+    browser.driver().get("about:blank");
+    browser.driver().manage().logs().get(LogType.PERFORMANCE);
+    browser.driver().manage().logs().get(LogType.BROWSER);
+    browser.show("full.html", 1280);
     List<String> requests =
-        browser.manage().logs().get(LogType.PERFORMANCE).getAll().stream()
+        browser.driver().manage().logs().get(LogType.PERFORMANCE).getAll().stream()
             .map(entry -> entry.getMessage())
             .filter(message -> message.contains("\"Network.requestWillBeSent\""))
             .filter(message -> message.contains("\"documentURL\":\"file:"))
-            .filter(message -> !message.contains("\"url\":\"data:,\""))
+            .filter(message -> !message.contains("\"url\":\"data:"))
             .toList();
     assertThat(requests).singleElement().asString().contains("full.html");
-    assertThat(browser.manage().logs().get(LogType.BROWSER).getAll()).isEmpty();
-    assertThat(browser.getTitle()).isEqualTo("yard-cameras - Linkworthy report");
-    assertThat(browser.findElement(By.tagName("body")).getCssValue("margin-left"))
+    assertThat(browser.driver().manage().logs().get(LogType.BROWSER).getAll()).isEmpty();
+    assertThat(browser.driver().getTitle()).isEqualTo("yard-cameras - Linkworthy report");
+    assertThat(browser.driver().findElement(By.tagName("body")).getCssValue("margin-left"))
         .describedAs("the policy admits the style sheet")
         .isEqualTo("0px");
   }

@@ -6,12 +6,14 @@ import static org.assertj.core.api.Assertions.assertThatThrownBy;
 
 import java.nio.charset.StandardCharsets;
 import java.security.MessageDigest;
+import java.security.NoSuchAlgorithmException;
 import java.util.ArrayList;
 import java.util.Base64;
 import java.util.List;
 import java.util.Locale;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
+import org.junit.jupiter.params.provider.CsvSource;
 import org.junit.jupiter.params.provider.ValueSource;
 
 class ReportRendererTest {
@@ -38,7 +40,7 @@ class ReportRendererTest {
             intervals.add(
                 "\u00b1"
                     + Numbers.db(quality.pictureHalfWidthDb())
-                    + (" (" + Numbers.db(quality.noiseHalfWidthDb()) + ")"));
+                    + (row.isClean() ? "" : " (" + Numbers.db(quality.noiseHalfWidthDb()) + ")"));
           }
         }
       }
@@ -190,6 +192,67 @@ class ReportRendererTest {
         .isNotEmpty();
   }
 
+  /** Each of these would be more than text somewhere, or fill the page. */
+  @ParameterizedTest
+  @ValueSource(
+      strings = {
+        "<script>x</script>",
+        "a\"b'c",
+        "{{x}}",
+        "th:utext=\"x\"",
+        "[[${page}]] [(${page})] ${page} *{page} #{page} @{page} ~{page} __${page}__",
+        "]]> <![CDATA[ <!-- --> </style></script>",
+        "&lt; &amp; &#x202e;"
+      })
+  void hostileTextIsPlainTextInEveryPlace(String text) {
+    RenderedPage shown = RenderedPage.of(SamplePages.hostile(text));
+    assertThat(shown.text("//h1")).isEqualTo(text);
+    assertThat(shown.texts("//table[@class='list figures']/tbody/tr/*[1]")).containsExactly(text);
+    assertThat(shown.texts("//pre")).containsExactly(text);
+    for (String section :
+        List.of(
+            "tables",
+            "heat",
+            "codecs",
+            "rate",
+            "curves",
+            "spread",
+            "losses",
+            "pictures",
+            "predictions",
+            "costs",
+            "figures",
+            "provenance",
+            "verify")) {
+      assertThat(shown.text("//section[@id='" + section + "']"))
+          .describedAs(section)
+          .contains(text);
+    }
+    assertThat(shown.texts("//script")).hasSize(1);
+    assertThat(shown.texts("//style")).hasSize(1);
+    assertThat(shown.texts("//@onload")).isEmpty();
+  }
+
+  @Test
+  void tenThousandCharactersAndTurnedTextStayText() {
+    String text = "\u202e" + "wide ".repeat(2000);
+    RenderedPage shown = RenderedPage.of(SamplePages.hostile(text));
+    String plain = text.replace('\u202e', '\ufffd').strip();
+    assertThat(shown.text("//h1")).isEqualTo(plain);
+    assertThat(shown.texts("//table[@class='list figures']/tbody/tr/*[1]")).containsExactly(plain);
+    assertThat(shown.text("//style").codePoints().filter(c -> c == 0x202E)).isEmpty();
+    assertThat(shown.text("//style")).hasSizeLessThan(30_000);
+  }
+
+  /** What stands in the margins of a printed page comes from outside and cannot end its string. */
+  @Test
+  void thePageHeadOnPaperIsAStringOfTheStyleSheet() {
+    ReportPage page = SamplePages.hostile("a\"; } body { display: none } \\</style>");
+    assertThat(RenderedPage.of(page).text("//style"))
+        .contains("@top-left { content: \"a\\22 \\3b \\20 \\7d \\20 body\\20 \\7b ")
+        .doesNotContain("display: none } \\");
+  }
+
   @Test
   void textIsEscapedWhereverItComesFrom() {
     CodecColumn codec = new CodecColumn(HOSTILE, HOSTILE, HOSTILE, HOSTILE, HOSTILE);
@@ -211,7 +274,8 @@ class ReportRendererTest {
                 new Provenance.Run(HOSTILE, HOSTILE, 1, 1),
                 List.of(fact)));
     String html = new ReportRenderer().render(page);
-    assertThat(html).doesNotContain("<script").contains("&lt;script&gt;");
+    assertThat(html.split("<script", -1)).describedAs("the page's own").hasSize(2);
+    assertThat(html).contains("&lt;script&gt;");
     RenderedPage shown = new RenderedPage(html);
     assertThat(shown.text("//h1")).isEqualTo(HOSTILE);
     assertThat(shown.texts("//@onload")).isEmpty();
@@ -341,7 +405,7 @@ class ReportRendererTest {
     assertThat(shown.texts("//section[@class='noise']//tbody//td//b"))
         .containsExactly("inf", "40.00", "n/a", "n/a");
     assertThat(shown.texts("//section[@class='noise']//tbody//td/small"))
-        .containsExactly("\u00b1n/a (n/a)", "\u00b1n/a (n/a)", "\u00b1n/a (n/a)", "not measured");
+        .containsExactly("not measured");
     assertThat(shown.texts("//section[@id='losses']//tbody//td"))
         .containsExactly("n/a", "n/a", "n/a", "n/a", "n/a");
   }
@@ -390,23 +454,30 @@ class ReportRendererTest {
   }
 
   @Test
-  void thePolicyAdmitsTheStyleSheetAndNothingElse() throws Exception {
+  void thePolicyAdmitsTheStyleSheetAndTheScriptAndNothingElse() throws Exception {
     RenderedPage shown = RenderedPage.of(SamplePages.full());
     String html = new ReportRenderer().render(SamplePages.full());
     String style = html.substring(html.indexOf("<style>") + 7, html.indexOf("</style>"));
-    String hash =
-        Base64.getEncoder()
-            .encodeToString(
-                MessageDigest.getInstance("SHA-256")
-                    .digest(style.getBytes(StandardCharsets.UTF_8)));
+    String script = html.substring(html.indexOf("<script>") + 8, html.indexOf("</script>"));
     assertThat(shown.text("//meta[@http-equiv='Content-Security-Policy']/@content"))
         .isEqualTo(
             "default-src 'none'; style-src 'sha256-"
-                + (hash + "'; img-src data:; base-uri 'none'; form-action 'none'"));
-    assertThat(shown.texts("//@style | //@src | //script | //iframe | //object | //form"))
+                + (sha256(style) + "'; script-src 'sha256-" + sha256(script))
+                + "'; img-src data:; base-uri 'none'; form-action 'none'");
+    assertThat(shown.texts("//@style | //@src | //iframe | //object | //form")).isEmpty();
+    assertThat(shown.texts("//@*[starts-with(name(), 'on')]")).isEmpty();
+    assertThat(shown.texts("//*[local-name()='button' or local-name()='input']"))
+        .describedAs("controls are made by the script")
         .isEmpty();
+    assertThat(script).doesNotContain("fetch(", "XMLHttpRequest", "import(", "eval(", "innerHTML");
     assertThat(style).doesNotContain("url(", "@import");
     assertThat(html).doesNotContain(" th:", "\r");
+  }
+
+  private static String sha256(String text) throws NoSuchAlgorithmException {
+    return Base64.getEncoder()
+        .encodeToString(
+            MessageDigest.getInstance("SHA-256").digest(text.getBytes(StandardCharsets.UTF_8)));
   }
 
   @Test
@@ -496,5 +567,85 @@ class ReportRendererTest {
           .isInstanceOf(IllegalArgumentException.class)
           .hasMessageContaining("confidence level");
     }
+  }
+
+  @ParameterizedTest
+  @CsvSource({
+    "snr-db, 20, SNR 20 dB",
+    "sinr-db, 2, SINR 2 dB",
+    "eb-n0-db, 7.5, Eb/N0 7.5 dB",
+    "own-measure-db, 3, own measure 3 dB",
+    "loss-rate, 0.05, loss rate 0.05",
+  })
+  void severitiesAreNamedAsPeopleSayThem(String axis, double severity, String named) {
+    assertThat(MatrixTable.given(SamplePages.condition("x", "samples", axis, severity, 1)))
+        .isEqualTo(named);
+  }
+
+  /** Means over the severities of a noise; distances from the best of its column. */
+  @Test
+  void theHeatMapHasTheMeansOfTheTables() {
+    ReportPage page = SamplePages.full();
+    RenderedPage shown = RenderedPage.of(page);
+    FigureGrid grid = new FigureGrid(page.figures());
+    List<String> means = new ArrayList<>();
+    for (CodecColumn codec : grid.codecs()) {
+      for (FigureGrid.Noise noise : grid.noises()) {
+        means.add(
+            Numbers.db(
+                noise.conditions().stream()
+                    .mapToDouble(c -> grid.psnr(c, codec))
+                    .average()
+                    .orElseThrow()));
+      }
+    }
+    assertThat(shown.texts("//section[@id='heat']//td/b")).hasSize(3 * 14).isEqualTo(means);
+    assertThat(shown.texts("//section[@id='heat']//td[contains(@class, 'h0')]/small"))
+        .containsExactly("best", "best", "best");
+  }
+
+  @Test
+  void theShadesOfTheHeatMapFollowTheDistance() {
+    List<Figure> figures = new ArrayList<>();
+    double[] psnr = {30, 29.6, 29.1, 28.2, 25.5, 20};
+    for (int i = 0; i < psnr.length; i++) {
+      figures.add(
+          SamplePages.bare(GAUSSIAN, SamplePages.codec("dct", "rows", "K" + i), psnr[i], 1));
+    }
+    assertThat(RenderedPage.of(SamplePages.page(figures)).texts("//section[@id='heat']//td/@class"))
+        .containsExactly("n h0", "n h1", "n h2", "n h3", "n h4", "n h5");
+  }
+
+  @Test
+  void everyPictureIsADot() {
+    RenderedPage shown = RenderedPage.of(SamplePages.rich());
+    assertThat(shown.texts("//section[@id='spread']//*[@class='dots']/@d"))
+        .hasSize(3 * 14)
+        .allMatch(d -> d.split("M", -1).length == 1 + 12);
+    // the means of twelve values half a dB to either side, 5.5 below and 5.5 above
+    Figure middle =
+        SamplePages.rich().figures().stream()
+            .filter(f -> f.condition().impairment().equals("gaussian"))
+            .filter(f -> f.condition().severity() == 20)
+            .findFirst()
+            .orElseThrow();
+    double mean = middle.quality().psnrMeanDb();
+    assertThat(shown.text("(//section[@id='spread']//*[local-name()='svg'])[1]"))
+        .contains(Numbers.db(mean - 5.5) + " to " + Numbers.db(mean + 5.5));
+  }
+
+  @Test
+  void picturesCarryTheirCaptionsAndStandInThePage() {
+    RenderedPage shown = RenderedPage.of(SamplePages.rich());
+    assertThat(shown.texts("//section[@id='pictures']//*[local-name()='figcaption']"))
+        .contains(
+            "dct blocks8 K4 step8 reference0.500 bits per pixel, PSNR 28.00 dB, SSIM 0.800"
+                + "trial 0123456789abcdef");
+    assertThat(shown.texts("//img/@src | //*[local-name()='image']/@href"))
+        .hasSize(7)
+        .allMatch(address -> address.startsWith("data:image/png;base64,"));
+    assertThat(shown.texts("//img/@alt")).hasSize(6).noneMatch(String::isEmpty);
+    // 32 samples, each drawn as 2 by 2
+    assertThat(shown.texts("//img/@width")).containsOnly("64");
   }
 }

@@ -9,6 +9,6 @@ final class SampleFile {
   private SampleFile() {}
 
   public static void main(String[] arguments) throws IOException {
-    Files.writeString(Path.of(arguments[0]), new ReportRenderer().render(SamplePages.full()));
+    Files.writeString(Path.of(arguments[0]), new ReportRenderer().render(SamplePages.rich()));
   }
 }

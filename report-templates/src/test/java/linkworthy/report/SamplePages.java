@@ -1,8 +1,16 @@
 package linkworthy.report;
 
+import static java.lang.Double.NaN;
+
+import java.awt.image.BufferedImage;
+import java.io.ByteArrayOutputStream;
+import java.io.IOException;
+import java.io.UncheckedIOException;
 import java.util.ArrayList;
+import java.util.Base64;
 import java.util.List;
 import java.util.Locale;
+import javax.imageio.ImageIO;
 
 /** Made-up pages of a realistic size; no number in them was measured. */
 final class SamplePages {
@@ -61,6 +69,237 @@ final class SamplePages {
       figures.addAll(row(condition, fourteen()));
     }
     return page(figures);
+  }
+
+  /** The full page with every section there is. */
+  static ReportPage rich() {
+    ReportPage full = full();
+    Condition noise = condition("gaussian", "samples", "snr-db", 20, 20);
+    String label = "dct blocks8 K4 step8";
+    ReportPage page =
+        new ReportPage(
+            full.title(),
+            full.question(),
+            full.answer(),
+            full.figures().stream().map(SamplePages::withTrial).toList(),
+            full.confidenceLevel(),
+            full.pictures(),
+            full.provenance(),
+            new Costs(
+                "Node 'mote': 230 nJ to send a bit. Source: made up",
+                64,
+                List.of(new Costs.CodecCost(label, 1_234_567, 63.99, 1.5, 1.5, 20, 4321.9)),
+                List.of(new Costs.NodeShare(label, "helper 1", 716_000, 0, 31_044, 5788.4, 9.235))),
+            new Comparisons(
+                List.of(
+                    new Comparisons.CurveGap(
+                        noise,
+                        "pca rows, step8",
+                        "dct blocks8, step8",
+                        new Comparisons.Delta(2.5, -40, true),
+                        new Comparisons.Delta(2.4, -39, true),
+                        "")),
+                List.of(new Comparisons.Crossing(noise, label, "mean rows step16", 17, 15, 19))),
+            List.of(
+                new Predicted(noise, label, 30, 30.09, 0.01, ""),
+                new Predicted(noise, "pca rows K4 step8", NaN, 30, 0.2, "found in the picture")),
+            new Particulars(
+                spreads(full),
+                gallery(noise, label),
+                shortlist(label),
+                "name: yard-cameras\nseed: 7\n",
+                List.of("The record is complete.")));
+    return page;
+  }
+
+  /** The rich page with few codecs and noises: every kind of thing, not many of each. */
+  static ReportPage sketch() {
+    ReportPage rich = rich();
+    List<Figure> few =
+        rich.figures().stream()
+            .filter(f -> f.condition().isClean() || f.condition().impairment().startsWith("b"))
+            .filter(f -> f.codec().label().matches("dct blocks8 K(4|8) .*|mean rows step16"))
+            .toList();
+    return around(rich, few, rich.particulars());
+  }
+
+  /** A page with another spread over pictures. */
+  static ReportPage with(ReportPage page, List<Particulars.Spread> spreads) {
+    return around(
+        page, page.figures(), new Particulars(spreads, Gallery.NONE, null, "", List.of()));
+  }
+
+  private static ReportPage around(ReportPage page, List<Figure> figures, Particulars particulars) {
+    return new ReportPage(
+        page.title(),
+        page.question(),
+        page.answer(),
+        figures,
+        page.confidenceLevel(),
+        page.pictures(),
+        page.provenance(),
+        page.costs(),
+        page.comparisons(),
+        page.predictions(),
+        particulars);
+  }
+
+  /** A page on which every text that comes from outside is this one. */
+  static ReportPage hostile(String text) {
+    CodecColumn codec = new CodecColumn(text, text, text, text, text);
+    Condition condition = new Condition(text, text, text, 1, 9, 9, 20);
+    Figure bare = bare(condition, codec, 30, 1);
+    Gallery gallery = gallery(condition, text);
+    Gallery.Subject subject = gallery.noises().get(0).subjects().get(0);
+    return new ReportPage(
+        text,
+        text,
+        new Answer(text, text, List.of(text), List.of(text), text),
+        List.of(
+            new Figure(
+                condition,
+                codec,
+                bare.evidence(),
+                bare.quality(),
+                1,
+                0.5,
+                bare.comparison(),
+                text)),
+        0.95,
+        List.of(new PictureCredit(text, 1, 1, text, text, "https://x/\"onload=\"a", text)),
+        new Provenance(
+            new Provenance.Program(text, text, text),
+            new Provenance.Fingerprints(text, text),
+            List.of(new Provenance.NoiseModel(text, text, text)),
+            1,
+            new Provenance.Run(text, text, 1, 1),
+            List.of(new Fact(text, text))),
+        new Costs(
+            text,
+            64,
+            List.of(new Costs.CodecCost(text, 1, 2, 3, 4, 5, 6)),
+            List.of(new Costs.NodeShare(text, text, 1, 2, 3, 4, 5))),
+        new Comparisons(
+            List.of(
+                new Comparisons.CurveGap(
+                    condition, text, text, Comparisons.Delta.NONE, Comparisons.Delta.NONE, text)),
+            List.of(new Comparisons.Crossing(condition, text, text, 1, 1, 1))),
+        List.of(
+            new Predicted(condition, text, 30, 30, 0.1, ""),
+            new Predicted(condition, text, NaN, 30, 0.1, text)),
+        new Particulars(
+            List.of(new Particulars.Spread(condition, text, List.of(29.0, 31.0))),
+            new Gallery(
+                List.of(text),
+                text,
+                List.of(
+                    new Gallery.Shown(
+                        condition,
+                        List.of(
+                            new Gallery.Subject(
+                                text,
+                                text,
+                                subject.whole(),
+                                subject.crop(),
+                                subject.clean(),
+                                subject.scenes()))))),
+            shortlist(text),
+            text,
+            List.of(text)));
+  }
+
+  private static Figure withTrial(Figure f) {
+    return new Figure(
+        f.condition(),
+        f.codec(),
+        f.evidence(),
+        f.quality(),
+        f.bitsPerPixel(),
+        f.outageRate(),
+        f.comparison(),
+        "0123456789abcdef");
+  }
+
+  private static List<Particulars.Spread> spreads(ReportPage page) {
+    List<Particulars.Spread> spreads = new ArrayList<>();
+    for (Figure figure : page.figures()) {
+      List<Double> pictures = new ArrayList<>();
+      for (int i = 0; i < 12; i++) {
+        pictures.add(figure.quality().psnrMeanDb() + i - 5.5);
+      }
+      spreads.add(new Particulars.Spread(figure.condition(), figure.codec().label(), pictures));
+    }
+    return spreads;
+  }
+
+  static ShortlistPage shortlist(String label) {
+    return new ShortlistPage(
+        "yard-cameras",
+        "Choose a codec",
+        label + " is the cheapest codec shown to meet all needs.",
+        "Each word is wrong with a chance of at most 0.01.",
+        List.of("mean psnr-db at least 28"),
+        List.of(
+            new ShortlistPage.Row(
+                label,
+                "0.190",
+                "26.20",
+                false,
+                List.of(new ShortlistPage.Entry("meets", "28.4", "bound 28.1, clean")),
+                "meets"),
+            new ShortlistPage.Row(
+                "mean rows step16",
+                "3.310",
+                "34.60",
+                true,
+                List.of(new ShortlistPage.Entry("undecided", "27.9", "bound 28.9, clean")),
+                "undecided")),
+        List.of("mean rows step16: need 1 is on the wrong side, about 40 pictures"),
+        List.of("A need must hold in each of its conditions."),
+        "0.1.0");
+  }
+
+  /** One noise, one picture, one severity, two codecs. */
+  static Gallery gallery(Condition noise, String label) {
+    Gallery.Image image = image();
+    return new Gallery(
+        List.of("Pictures: the typical one."),
+        "",
+        List.of(
+            new Gallery.Shown(
+                noise,
+                List.of(
+                    new Gallery.Subject(
+                        "typical",
+                        "field-1",
+                        image,
+                        new Gallery.Crop(2, 2, 8, 8),
+                        image,
+                        List.of(
+                            new Gallery.Scene(
+                                noise,
+                                image,
+                                List.of(
+                                    decoded(label, image),
+                                    decoded("mean rows step16", image)))))))));
+  }
+
+  private static Gallery.Decoded decoded(String codec, Gallery.Image image) {
+    return new Gallery.Decoded(codec, "reference", image, image, 0.5, 28, 0.8, "0123456789abcdef");
+  }
+
+  private static Gallery.Image image() {
+    BufferedImage grey = new BufferedImage(32, 32, BufferedImage.TYPE_BYTE_GRAY);
+    for (int i = 0; i < 32 * 32; i++) {
+      grey.getRaster().setSample(i % 32, i / 32, 0, i * 37 % 256);
+    }
+    ByteArrayOutputStream bytes = new ByteArrayOutputStream();
+    try {
+      ImageIO.write(grey, "png", bytes);
+    } catch (IOException e) {
+      throw new UncheckedIOException(e);
+    }
+    return new Gallery.Image(Base64.getEncoder().encodeToString(bytes.toByteArray()), 32, 32);
   }
 
   private static List<Figure> row(Condition condition, List<Made> codecs) {

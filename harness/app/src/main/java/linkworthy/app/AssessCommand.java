@@ -157,8 +157,14 @@ final class AssessCommand implements Callable<Integer> {
       var words = asJson ? surroundings.err() : surroundings.out();
       words.println(folder + " is complete; there is nothing to go on with");
       if (stopped.isUntidy()) {
-        try (ResultsWriter writer = stopped.tidy()) {
-          writer.writeReport(Reports.html(ResultsFolder.open(folder)));
+        try (PluginFolder plugins = codecs.open();
+            ResultsWriter writer = stopped.tidy()) {
+          ResultsFolder results = ResultsFolder.open(folder);
+          writer.writeReport(
+              Reports.html(
+                  results,
+                  () -> Plan.unchecked(results.unchangedStudy(codecs.families(plugins))),
+                  null));
         }
         words.println("report: " + folder.resolve(ResultsFolder.REPORT));
       }
@@ -228,7 +234,7 @@ final class AssessCommand implements Callable<Integer> {
     if (quiet) {
       arguments.add("--quiet");
     }
-    return new ClusterAssessment(surroundings, master)
+    return new ClusterAssessment(surroundings, master, codecs)
         .run(folder, arguments, ending(), goOn(folder));
   }
 

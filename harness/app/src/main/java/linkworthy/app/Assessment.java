@@ -103,7 +103,7 @@ final class Assessment {
       }
       writer.complete(plan, cells.toList(), writer.run().complete(done, surroundings.clock()));
       ResultsFolder results = ResultsFolder.open(folder);
-      writer.writeReport(Reports.html(results));
+      writer.writeReport(Reports.html(results, () -> plan, null));
       ending.print(results, surroundings.out());
       return Main.DONE;
     }

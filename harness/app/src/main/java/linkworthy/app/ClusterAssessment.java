@@ -14,10 +14,12 @@ import java.nio.file.Path;
 import java.util.List;
 import java.util.Objects;
 import java.util.concurrent.TimeUnit;
+import linkworthy.codec.PluginFolder;
 import linkworthy.input.BadInput;
 import linkworthy.input.Unavailable;
 import linkworthy.results.ResultsFolder;
 import linkworthy.results.ResultsWriter;
+import linkworthy.trial.Plan;
 
 /**
  * One run of a study on Apache Spark: the driver is a process of its own, the report is made here.
@@ -31,18 +33,20 @@ final class ClusterAssessment {
 
   private final Surroundings surroundings;
   private final String master;
+  private final CodecOptions codecs;
 
   /**
    * @param master as spark-submit takes it
    * @throws BadInput if it is none
    */
-  ClusterAssessment(Surroundings surroundings, String master) {
+  ClusterAssessment(Surroundings surroundings, String master, CodecOptions codecs) {
     if (!master.matches(MASTERS)) {
       throw new BadInput(
           "--on is '" + master + "'; accepted: spark://HOST:PORT, local[N], yarn, k8s://...");
     }
     this.surroundings = surroundings;
     this.master = master;
+    this.codecs = codecs;
   }
 
   /**
@@ -65,10 +69,16 @@ final class ClusterAssessment {
           .println("linkworthy: the driver ended with exit code " + code + "; go on with: " + goOn);
       return Main.ENVIRONMENT;
     }
-    try (ResultsWriter writer = ResultsFolder.openStopped(folder).tidy()) {
-      writer.writeReport(Reports.html(ResultsFolder.open(folder)));
+    try (ResultsWriter writer = ResultsFolder.openStopped(folder).tidy();
+        PluginFolder plugins = codecs.open()) {
+      ResultsFolder results = ResultsFolder.open(folder);
+      writer.writeReport(
+          Reports.html(
+              results,
+              () -> Plan.unchecked(results.unchangedStudy(codecs.families(plugins))),
+              null));
+      ending.print(results, surroundings.out());
     }
-    ending.print(ResultsFolder.open(folder), surroundings.out());
     return Main.DONE;
   }
 

@@ -20,6 +20,11 @@ final class Pngs {
     return png(picture.width(), picture.height(), picture.bitDepth(), picture.samples());
   }
 
+  /** Samples of 8 bits. */
+  static byte[] grey(int width, int height, int[] samples) {
+    return png(width, height, BYTE, samples);
+  }
+
   /** Where {@link #error} shows no error: 128, or 32768 in 16 bits. */
   static int middle(int bitDepth) {
     return bitDepth <= BYTE ? 1 << 7 : 1 << 15;

@@ -1,9 +1,11 @@
 package linkworthy.app;
 
+import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.Iterator;
 import java.util.List;
 import java.util.Optional;
+import java.util.function.Supplier;
 import linkworthy.input.Decimal;
 import linkworthy.link.NodeProfile;
 import linkworthy.report.Answer;
@@ -12,6 +14,7 @@ import linkworthy.report.Condition;
 import linkworthy.report.Costs;
 import linkworthy.report.Fact;
 import linkworthy.report.Figure;
+import linkworthy.report.Particulars;
 import linkworthy.report.PictureCredit;
 import linkworthy.report.Provenance;
 import linkworthy.report.ReportPage;
@@ -27,29 +30,67 @@ import linkworthy.study.ImpairmentChoice;
 import linkworthy.study.NodeChoice;
 import linkworthy.study.Study;
 import linkworthy.trial.NodeShare;
+import linkworthy.trial.Plan;
 import org.jspecify.annotations.Nullable;
 
-/** Makes the report of a results folder from its recorded cells and trials alone. */
+/**
+ * Makes the report of a results folder: every figure from its recorded cells and trials alone,
+ * pictures by repeating the trials that they are of.
+ */
 final class Reports {
   private Reports() {}
 
-  /** The whole page as HTML. */
-  static String html(ResultsFolder results) {
-    List<Figure> figures = figures(results);
+  /**
+   * The whole page as HTML.
+   *
+   * @param plan of the run, if its pictures and codecs are at hand; asked for by {@link
+   *     ReportPictures} alone
+   * @param need file of needs that the answer is to be about, or null
+   */
+  static String html(ResultsFolder results, Supplier<Plan> plan, @Nullable Path need) {
+    List<Cell> cells = results.cells();
+    ReportTrials trials = ReportTrials.of(results, cells);
+    List<Figure> figures = cells.stream().map(cell -> figure(cell, trials.typical(cell))).toList();
     RunRecord run = results.run();
+    Answer plain = Answer.from(figures);
+    ShortlistText needs = need == null ? null : ShortlistText.of(results, need);
+    Answer answer = needs == null ? plain : needs.reportAnswer();
+    ReportPictures.Made pictures =
+        new ReportPictures(
+                results, cells, trials, answer.codec().isEmpty() ? plain.codec() : answer.codec())
+            .make(plan);
     return new ReportRenderer()
         .render(
             new ReportPage(
                 run.study(),
                 run.purpose(),
-                Answer.from(figures),
+                answer,
                 figures,
                 StudentT.CONFIDENCE,
                 run.pictures().stream().map(Reports::credit).toList(),
                 provenance(results),
                 costs(results),
                 ReportComparisons.of(results),
-                ReportPredictions.of(results)));
+                ReportPredictions.of(results),
+                new Particulars(
+                    trials.spreads(),
+                    pictures.gallery(),
+                    needs == null ? null : needs.page(run),
+                    results.studyText(),
+                    verified(run, pictures))));
+  }
+
+  private static List<String> verified(RunRecord run, ReportPictures.Made pictures) {
+    List<String> verified = new ArrayList<>();
+    verified.add(
+        "The record is complete, "
+            + run.trialsDone()
+            + " of "
+            + run.trialsPlanned()
+            + " trials; it was read as a whole for this page, and its cells follow from its"
+            + " trials.");
+    verified.addAll(pictures.verified());
+    return verified;
   }
 
   /** What the nodes bear, from the clean cells; null where the study names no node. */
@@ -63,21 +104,21 @@ final class Reports {
         "Node '"
             + profile.id()
             + "': "
-            + Decimal.shortest(profile.sentNanojoules())
+            + typed(profile.sentNanojoules())
             + " nJ to send a bit, "
-            + Decimal.shortest(profile.receivedNanojoules())
+            + typed(profile.receivedNanojoules())
             + " nJ to receive one, "
-            + Decimal.shortest(profile.macNanojoules())
+            + typed(profile.macNanojoules())
             + " nJ a multiply-accumulate, "
-            + Decimal.shortest(profile.ramKib())
+            + typed(profile.ramKib())
             + " KiB of memory, "
-            + Decimal.shortest(profile.kilobitsPerSecond())
+            + typed(profile.kilobitsPerSecond())
             + " kbit/s, a battery of "
-            + Decimal.shortest(profile.batteryJoules())
+            + typed(profile.batteryJoules())
             + " J, a picture every "
-            + Decimal.shortest(node.intervalSeconds())
+            + typed(node.intervalSeconds())
             + " s at "
-            + Decimal.shortest(profile.sleepMilliwatts())
+            + typed(profile.sleepMilliwatts())
             + " mW of sleep. Source: "
             + profile.source(),
         profile.ramKib(),
@@ -120,10 +161,10 @@ final class Reports {
   }
 
   private static List<Figure> figures(ResultsFolder results) {
-    return results.cells().stream().map(Reports::figure).toList();
+    return results.cells().stream().map(cell -> figure(cell, "")).toList();
   }
 
-  private static Figure figure(Cell cell) {
+  private static Figure figure(Cell cell, String typicalTrial) {
     return new Figure(
         new Condition(
             cell.impairment(),
@@ -152,7 +193,8 @@ final class Reports {
         new Figure.Comparison(
             cell.behindBestDb(),
             cell.behindBestPAdjusted(),
-            Standing.of(cell.standing().toString())));
+            Standing.of(cell.standing().toString())),
+        typicalTrial);
   }
 
   private static Figure.Evidence evidence(Cell cell) {
@@ -170,7 +212,8 @@ final class Reports {
         picture.height(),
         picture.licence(),
         picture.attribution(),
-        picture.source());
+        picture.source(),
+        picture.sha256());
   }
 
   private static Provenance provenance(ResultsFolder results) {
@@ -215,6 +258,12 @@ final class Reports {
                   + "; the same study may give other numbers on another machine or day"));
     }
     return facts;
+  }
+
+  /** A number as a person types it: whole ones without a decimal point. */
+  private static String typed(double number) {
+    String text = Decimal.shortest(number);
+    return text.endsWith(".0") ? text.substring(0, text.length() - 2) : text;
   }
 
   private static String replicates(Study study) {

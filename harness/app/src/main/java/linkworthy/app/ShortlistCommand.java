@@ -3,11 +3,7 @@ package linkworthy.app;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.concurrent.Callable;
-import linkworthy.decision.Measurements;
-import linkworthy.decision.Needs;
-import linkworthy.decision.Shortlist;
 import linkworthy.input.BadInput;
-import linkworthy.input.YamlNode;
 import linkworthy.report.ReportRenderer;
 import linkworthy.results.FolderFiles;
 import linkworthy.results.ResultsFolder;
@@ -67,16 +63,12 @@ final class ShortlistCommand implements Callable<Integer> {
       throw new BadInput("--html is the folder " + html + "; accepted: a file");
     }
     ResultsFolder results = ResultsFolder.open(folder);
-    results.requireComplete();
-    Measurements measured = new Measurements();
-    long unused = results.trials(measured::add);
-    Shortlist shortlist = Shortlist.of(measured, Needs.read(YamlNode.read(need), measured));
-    ShortlistText text = new ShortlistText(shortlist, measured);
+    ShortlistText text = ShortlistText.of(results, need);
     text.lines().forEach(surroundings.out()::println);
     if (html != null) {
       FolderFiles.replace(html, new ReportRenderer().render(text.page(results.run())));
       surroundings.out().println("page: " + html);
     }
-    return shortlist.cheapest().isPresent() ? Main.DONE : Main.NO;
+    return text.hasAnswer() ? Main.DONE : Main.NO;
   }
 }

@@ -3,15 +3,20 @@ package linkworthy.app;
 import java.math.BigDecimal;
 import java.math.MathContext;
 import java.math.RoundingMode;
+import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Locale;
 import linkworthy.decision.Judgement;
 import linkworthy.decision.Measurements;
 import linkworthy.decision.Need;
+import linkworthy.decision.Needs;
 import linkworthy.decision.Shortlist;
 import linkworthy.decision.Verdict;
+import linkworthy.input.YamlNode;
+import linkworthy.report.Answer;
 import linkworthy.report.ShortlistPage;
+import linkworthy.results.ResultsFolder;
 import linkworthy.results.RunRecord;
 
 /** A shortlist in words: lines for the console, and a page. */
@@ -22,6 +27,24 @@ final class ShortlistText {
   ShortlistText(Shortlist shortlist, Measurements measured) {
     this.shortlist = shortlist;
     this.measured = measured;
+  }
+
+  /**
+   * The shortlist of a run by a file of needs.
+   *
+   * @throws linkworthy.input.BadInput if the run was not finished or the file cannot be used
+   */
+  static ShortlistText of(ResultsFolder results, Path need) {
+    results.requireComplete();
+    Measurements measured = new Measurements();
+    long unused = results.trials(measured::add);
+    return new ShortlistText(
+        Shortlist.of(measured, Needs.read(YamlNode.read(need), measured)), measured);
+  }
+
+  /** Whether a codec is shown to meet all needs. */
+  boolean hasAnswer() {
+    return shortlist.cheapest().isPresent();
   }
 
   /** The table for the console, what would decide what is open, and the answer last. */
@@ -94,6 +117,36 @@ final class ShortlistText {
       lines.add(line.toString().stripTrailing());
     }
     return lines;
+  }
+
+  /** The answer for the report of the run: what is recommended, how surely, by what margin. */
+  Answer reportAnswer() {
+    return new Answer(
+        answer(),
+        confidence(),
+        List.of(),
+        shortlist.cheapest().isEmpty() ? needs() : margins(shortlist.cheapest().get()),
+        shortlist.cheapest().map(Shortlist.Candidate::codec).orElse(""));
+  }
+
+  private List<String> margins(Shortlist.Candidate chosen) {
+    List<String> margins = new ArrayList<>();
+    for (int i = 0; i < chosen.judgements().size(); i++) {
+      Need need = shortlist.needs().needs().get(i);
+      Judgement judgement = chosen.judgements().get(i);
+      margins.add(
+          needs().get(i)
+              + ": "
+              + judgement.verdict()
+              + " with "
+              + figure(need, judgement.estimate())
+              + ", margin "
+              + figure(need, judgement.margin())
+              + bound(need, judgement).replace("(", "(bound ")
+              + ", nearest to missing it under "
+              + judgement.condition().text());
+    }
+    return margins;
   }
 
   private static String bound(Need need, Judgement judgement) {

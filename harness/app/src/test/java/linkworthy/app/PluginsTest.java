@@ -135,8 +135,13 @@ class PluginsTest {
     Path unused = PluginJars.makeExample(folder());
     assertThat(assess("thumbnail: 4", "--plugins", folder().toString()).exitCode()).isZero();
     String before = Files.readString(home.resolve("out/report.html"));
-    CommandLineRun again = CommandLineRun.of(home, "report", home.resolve("out").toString());
-    assertThat(again.exitCode()).as(again.err()).isEqualTo(Main.DONE);
+    String out = home.resolve("out").toString();
+    CommandLineRun without = CommandLineRun.of(home, "report", out);
+    assertThat(without.exitCode()).as(without.err()).isEqualTo(Main.DONE);
+    assertThat(Files.readString(home.resolve("out/report.html")))
+        .contains("No picture is shown:", "thumbnail");
+    CommandLineRun with = CommandLineRun.of(home, "report", out, "--plugins", folder().toString());
+    assertThat(with.exitCode()).as(with.err()).isEqualTo(Main.DONE);
     assertThat(Files.readString(home.resolve("out/report.html"))).isEqualTo(before);
   }
 

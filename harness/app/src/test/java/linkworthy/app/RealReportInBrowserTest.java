@@ -84,7 +84,7 @@ class RealReportInBrowserTest {
         .map(entry -> entry.getMessage())
         .filter(message -> message.contains("\"Network.requestWillBeSent\""))
         .filter(message -> message.contains("\"documentURL\":\"file:"))
-        .filter(message -> !message.contains("\"url\":\"data:,\""))
+        .filter(message -> !message.contains("\"url\":\"data:"))
         .toList();
   }
 }

@@ -77,8 +77,8 @@ class ShortlistCommandTest {
     assertThat(Files.readString(page))
         .contains("What does a small study show?")
         .contains("Need 2")
-        .contains("Method")
+        .contains("How needs are judged")
         .contains("Content-Security-Policy")
-        .doesNotContain("<script");
+        .doesNotContain("<button");
   }
 }

@@ -261,6 +261,23 @@ public final class ResultsFolder {
   }
 
   /**
+   * The text of the study as run, every default written out.
+   *
+   * @throws BadInput if the file is not UTF-8 text
+   * @throws linkworthy.input.Unavailable if it cannot be read
+   */
+  public String studyText() {
+    Path file = folder.resolve(STUDY);
+    try {
+      return Files.readString(file);
+    } catch (CharacterCodingException e) {
+      throw new BadInput(file + " is not UTF-8 text; accepted: a study", e);
+    } catch (IOException e) {
+      throw FolderFiles.unavailable("read", file, e);
+    }
+  }
+
+  /**
    * The study as run, ready to be repeated: a manifest of the user's own is looked for where it was
    * at the time of the run.
    *
