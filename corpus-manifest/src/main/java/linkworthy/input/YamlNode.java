@@ -177,6 +177,11 @@ public final class YamlNode {
     return value instanceof Sequence;
   }
 
+  /** Whether the key has no value at all. */
+  public boolean isEmpty() {
+    return value instanceof Scalar scalar && (scalar.isNull || scalar.text.isBlank());
+  }
+
   /** The file or option the node came from. */
   public String source() {
     return source;

@@ -8,6 +8,8 @@ import java.util.Set;
 import java.util.TreeMap;
 import java.util.function.IntFunction;
 import linkworthy.input.BadInput;
+import linkworthy.input.Key;
+import linkworthy.input.Kind;
 import org.apache.commons.rng.UniformRandomProvider;
 import org.jspecify.annotations.Nullable;
 
@@ -107,6 +109,31 @@ public record BitErrors(@Nullable ErrorCurve curve) implements NoiseProcess {
   public NoiseProcess with(Map<String, String> settings) {
     String id = settings.get(CURVE);
     return new BitErrors(id == null ? null : ErrorCurve.find(id));
+  }
+
+  @Override
+  public List<Key> keys() {
+    return List.of(
+        SeverityChecks.parameter(
+            MEAN_BURST, 1, MAX_MEAN_BURST, "mean stay in the bad state, in bits; 1 with fading"),
+        SeverityChecks.parameter(
+            ERRORS_BAD, MIN_ERRORS_BAD, 1, "chance of an error in the bad state"),
+        Key.optional(
+            FRAME_CHECK,
+            new Kind.Flag(),
+            "the model's",
+            "whether frames are checked, and dropped when damaged"),
+        SeverityChecks.axis(
+            BIT_ERROR_RATE, 0, MAX_RATE, "share of bits; up to what the burst allows"),
+        SeverityChecks.decibelAxis(
+            ErrorCurve.Ratio.EB_N0.axis(), "energy of a bit over the noise density, in dB"),
+        SeverityChecks.decibelAxis(
+            ErrorCurve.Ratio.SINR.axis(), "signal over interference and noise, in dB"),
+        Key.optional(
+            CURVE,
+            new Kind.Words(ErrorCurve.ids()),
+            "no curve",
+            "published bit-error rate of a radio"));
   }
 
   @Override

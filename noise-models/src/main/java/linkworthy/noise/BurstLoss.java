@@ -7,6 +7,7 @@ import java.util.Set;
 import java.util.TreeMap;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
+import linkworthy.input.Key;
 import org.apache.commons.rng.UniformRandomProvider;
 
 /**
@@ -65,6 +66,21 @@ public final class BurstLoss implements NoiseProcess {
   @Override
   public Map<String, Double> parameters() {
     return PARAMETERS;
+  }
+
+  @Override
+  public List<Key> keys() {
+    return List.of(
+        SeverityChecks.parameter(
+            MEAN_BURST,
+            1,
+            MarkovLoss.MAX_MEAN_BURST,
+            "mean stay in the bad state, packets or samples"),
+        SeverityChecks.parameter(
+            DELIVERY_GOOD, 0, 1, "chance of delivery in the good state, above delivery-bad"),
+        SeverityChecks.parameter(
+            DELIVERY_BAD, 0, 1, "chance of delivery in the bad state, below delivery-good"),
+        SeverityChecks.axis(LOSS_RATE, 0, 1, "share lost; up to what the burst allows"));
   }
 
   @Override

@@ -124,13 +124,18 @@ public enum ErrorCurve {
     return fading;
   }
 
+  /** The ids of all curves. */
+  static List<String> ids() {
+    return Arrays.stream(values()).map(ErrorCurve::id).toList();
+  }
+
   /**
    * The curve with an id.
    *
    * @throws BadInput if there is none; it lists what exists and the nearest spelling
    */
   public static ErrorCurve find(String id) {
-    List<String> ids = Arrays.stream(values()).map(ErrorCurve::id).toList();
+    List<String> ids = ids();
     int at = ids.indexOf(id);
     if (at < 0) {
       throw new BadInput("no curve '" + id + "'; " + Spelling.hint(id, ids));

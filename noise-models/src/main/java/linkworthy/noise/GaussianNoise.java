@@ -5,6 +5,7 @@ import java.util.Map;
 import java.util.Set;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
+import linkworthy.input.Key;
 import org.apache.commons.rng.UniformRandomProvider;
 
 /**
@@ -44,6 +45,11 @@ public final class GaussianNoise implements NoiseProcess {
   @Override
   public Map<String, Double> parameters() {
     return Map.of();
+  }
+
+  @Override
+  public List<Key> keys() {
+    return List.of();
   }
 
   @Override

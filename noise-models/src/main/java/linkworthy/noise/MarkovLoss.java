@@ -19,7 +19,7 @@ import org.apache.commons.rng.UniformRandomProvider;
  * @param h probability of delivery in the bad state
  */
 public record MarkovLoss(double p, double r, double k, double h) {
-  private static final double MAX_MEAN_BURST = 1e9;
+  static final double MAX_MEAN_BURST = 1e9;
 
   /** Room for the rounding of a limit that was itself computed. */
   private static final double ROUNDING = 1e-12;

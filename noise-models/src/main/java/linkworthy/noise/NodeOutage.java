@@ -17,7 +17,7 @@ public final class NodeOutage extends ShareOfHits {
   public static final String OUTAGE_RATE = "outage-rate";
 
   public NodeOutage() {
-    super(OUTAGE_RATE, Site.PACKETS);
+    super(OUTAGE_RATE, "share of nodes that fail", Site.PACKETS);
   }
 
   @Override

@@ -7,15 +7,17 @@ import java.util.Collection;
 import java.util.Collections;
 import java.util.Comparator;
 import java.util.HexFormat;
-import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Map;
-import java.util.Set;
 import java.util.TreeMap;
 import java.util.function.UnaryOperator;
 import java.util.regex.Pattern;
 import java.util.stream.Collectors;
 import linkworthy.input.BadInput;
+import linkworthy.input.Decimal;
+import linkworthy.input.Key;
+import linkworthy.input.KeyGroup;
+import linkworthy.input.Kind;
 import linkworthy.input.Require;
 import linkworthy.input.Spelling;
 import linkworthy.input.YamlNode;
@@ -47,8 +49,15 @@ public record NoiseModel(
   private static final String ID_ACCEPTED =
       "lower-case letters, digits and hyphens, starting with a letter, at most 64";
   private static final int MAX_VERSION = 1_000_000;
-  private static final List<String> KEYS =
-      List.of("id", "version", "process", "acts-on", "parameters", "severity", "source", "notes");
+  private static final Kind.Whole VERSION = new Kind.Whole(1, MAX_VERSION);
+  private static final Kind.Text TEXT = Kind.Text.any();
+  private static final Kind.Choice KIND =
+      new Kind.Choice(
+          NoiseProcesses.all().values().stream().map(NoiseModel::group).toList(),
+          node -> {
+            List<String> ids = List.copyOf(NoiseProcesses.all().keySet());
+            return group(NoiseProcesses.find(node.get("process").oneOf(ids)));
+          });
 
   /**
    * @throws BadInput if the process does not allow a site, an axis or a parameter, or a parameter
@@ -125,23 +134,10 @@ public record NoiseModel(
    * @param files content of a file by its name relative to the model
    */
   static NoiseModel parse(YamlNode node, UnaryOperator<String> files) {
-    Set<String> keys = new LinkedHashSet<>(KEYS);
-    node.find("process")
-        .filter(process -> !process.isMapping() && !process.isSequence())
-        .map(process -> NoiseProcesses.all().get(process.text()))
-        .ifPresent(process -> keys.addAll(process.settingKeys()));
-    node.onlyKeys(keys);
+    KIND.check(node);
     YamlNode id = node.get("id");
-    if (!ID.matcher(id.text()).matches()) {
-      throw id.bad(ID_ACCEPTED);
-    }
-    int version = (int) node.get("version").integer(1, MAX_VERSION);
-    NoiseProcess process =
-        setUp(
-            node,
-            NoiseProcesses.find(
-                node.get("process").oneOf(List.copyOf(NoiseProcesses.all().keySet()))),
-            files);
+    int version = VERSION.read(node.get("version"));
+    NoiseProcess process = setUp(node, NoiseProcesses.find(node.get("process").text()), files);
     List<Site> actsOn = sites(node.get("acts-on"), process);
     List<String> axes = distinct(node.get("severity"), process.axes());
     Map<String, Double> parameters =
@@ -153,6 +149,86 @@ public record NoiseModel(
     } catch (BadInput e) {
       throw node.find("parameters").orElse(node).refuse("cannot be used: " + e.getMessage());
     }
+  }
+
+  /** What a model file may hold: a group of keys for each process. */
+  public static Kind.Choice kind() {
+    return KIND;
+  }
+
+  /** What a model file of a process may hold. */
+  public static KeyGroup group(NoiseProcess process) {
+    List<Key> keys =
+        new ArrayList<>(
+            List.of(
+                Key.required(
+                    "id", new Kind.Text(ID.pattern(), ID_ACCEPTED), "name in studies and results"),
+                Key.required("version", VERSION, "counts up when the model changes"),
+                Key.required("process", Kind.Words.of(process.id()), "noise process that draws it"),
+                Key.required(
+                    "acts-on",
+                    words(process.sites().stream().map(Site::id).toList()),
+                    "where it hurts, the usual place first"),
+                Key.optional(
+                    "parameters",
+                    new KeyGroup(
+                        process.id() + "-parameters", parameterKeys(process), List.of(), ""),
+                    "the process's defaults",
+                    "parameters of the process"),
+                Key.required(
+                    "severity",
+                    words(axisKeys(process).stream().map(Key::name).toList()),
+                    "keys by which a study may give the severity"),
+                Key.required("source", TEXT, "where the numbers come from"),
+                Key.optional("notes", TEXT, "none", "what else a reader should know")));
+    process.keys().stream()
+        .filter(key -> process.settingKeys().contains(key.name()))
+        .forEach(keys::add);
+    return new KeyGroup(process.id(), keys, List.of(), "");
+  }
+
+  private static Kind words(List<String> accepted) {
+    return new Kind.OneOrMore(new Kind.Words(accepted));
+  }
+
+  /** The keys by which severities of a process are given, whatever its settings. */
+  public static List<Key> axisKeys(NoiseProcess process) {
+    List<Key> keys = new ArrayList<>();
+    if (process.axes().contains(Severity.VARIANCE)) {
+      keys.addAll(SeverityChecks.COMMON_AXES);
+    }
+    process.keys().stream()
+        .filter(key -> !process.parameters().containsKey(key.name()))
+        .filter(key -> !process.settingKeys().contains(key.name()))
+        .forEach(keys::add);
+    return keys;
+  }
+
+  /** The keys of the parameters of a process. */
+  public static List<Key> parameterKeys(NoiseProcess process) {
+    return process.keys().stream()
+        .filter(key -> process.parameters().containsKey(key.name()))
+        .toList();
+  }
+
+  /** What a study may write for each parameter of this model, with the model's own values. */
+  public List<Key> parameterKeys() {
+    return implementation.keys().stream()
+        .filter(key -> parameters.containsKey(key.name()))
+        .map(key -> Key.optional(key.name(), key.kind(), written(key.name()), key.what()))
+        .toList();
+  }
+
+  private String written(String parameter) {
+    double value = parameters.getOrDefault(parameter, Double.NaN);
+    return implementation.flags().contains(parameter)
+        ? Boolean.toString(value != 0)
+        : value == Math.rint(value) ? Long.toString((long) value) : Decimal.shortest(value);
+  }
+
+  /** What a study may write for each severity axis of this model. */
+  public List<Key> axisKeys() {
+    return axisKeys(implementation).stream().filter(key -> axes.contains(key.name())).toList();
   }
 
   private static NoiseProcess setUp(
@@ -197,10 +273,6 @@ public record NoiseModel(
   }
 
   private static Map<String, Double> parameters(YamlNode node, NoiseProcess process) {
-    if (process.parameters().isEmpty() && !node.keys().isEmpty()) {
-      throw node.refuse("has keys, but " + process.id() + " has no parameters; accepted: no keys");
-    }
-    node.onlyKeys(process.parameters().keySet());
     Map<String, Double> values = new TreeMap<>();
     for (String name : node.keys()) {
       YamlNode value = node.get(name);

@@ -4,6 +4,7 @@ import java.util.List;
 import java.util.Map;
 import java.util.Set;
 import linkworthy.input.BadInput;
+import linkworthy.input.Key;
 
 /**
  * A kind of noise, found by its id through {@link java.util.ServiceLoader}. A process has no state;
@@ -27,6 +28,12 @@ public interface NoiseProcess {
    * Parameters by name with their defaults; a study or a model file may set these and no others.
    */
   Map<String, Double> parameters();
+
+  /**
+   * What may be written for each parameter, each setting and each severity axis of the process's
+   * own.
+   */
+  List<Key> keys();
 
   /** Parameters that are on or off: {@code true} or {@code false} in files, 1 or 0 here. */
   default Set<String> flags() {

@@ -8,6 +8,8 @@ import java.util.Objects;
 import java.util.Set;
 import java.util.stream.IntStream;
 import linkworthy.input.BadInput;
+import linkworthy.input.Key;
+import linkworthy.input.Kind;
 import org.apache.commons.rng.UniformRandomProvider;
 import org.jspecify.annotations.Nullable;
 
@@ -118,6 +120,17 @@ public final class RecordedTrace implements NoiseProcess {
   public NoiseProcess with(Map<String, String> settings) {
     String given = settings.get(TRACE);
     return given == null ? new RecordedTrace() : new RecordedTrace(given.replace("\r\n", "\n"));
+  }
+
+  @Override
+  public List<Key> keys() {
+    return List.of(
+        SeverityChecks.axis(AS_RECORDED, 1, 1, "the record as it is"),
+        Key.optional(
+            TRACE,
+            Kind.Text.any("the name of a file beside the model"),
+            "no record",
+            "a line for each packet, 1 lost, 0 delivered"));
   }
 
   @Override

@@ -17,7 +17,7 @@ public final class SaltAndPepperNoise extends ShareOfHits {
   public static final String DENSITY = "density";
 
   public SaltAndPepperNoise() {
-    super(DENSITY, Site.SAMPLES);
+    super(DENSITY, "share of samples", Site.SAMPLES);
   }
 
   @Override

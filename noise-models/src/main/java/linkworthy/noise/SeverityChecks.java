@@ -7,6 +7,9 @@ import java.util.List;
 import java.util.Map;
 import java.util.Set;
 import linkworthy.input.BadInput;
+import linkworthy.input.Decimal;
+import linkworthy.input.Key;
+import linkworthy.input.Kind;
 import linkworthy.input.Spelling;
 
 /** What every process checks alike. Each complaint is one line: the value and its range. */
@@ -14,7 +17,55 @@ final class SeverityChecks {
   /** The farthest SNR from 0 dB that is accepted; beyond it powers leave the range of a double. */
   private static final double MAX_SNR_DB = 300;
 
+  private static final String GIVEN_ALONE = "one severity must be given";
+
+  /** The axes that every process has, unless it has but one severity. */
+  static final List<Key> COMMON_AXES =
+      List.of(
+          axis(
+              Severity.SNR_DB,
+              -MAX_SNR_DB,
+              MAX_SNR_DB,
+              "signal over noise in dB; what the model can reach on the picture"),
+          axis(
+              Severity.VARIANCE,
+              0,
+              Double.MAX_VALUE,
+              "grey levels squared; what the model can reach on the picture"));
+
   private SeverityChecks() {}
+
+  /** A key by which a severity, or a list of them, is given. */
+  static Key axis(String name, double min, double max, String what) {
+    return Key.optional(name, new Kind.OneOrMore(number(min, max)), GIVEN_ALONE, what);
+  }
+
+  /** A key by which a severity in dB is given. */
+  static Key decibelAxis(String name, String what) {
+    return axis(name, -MAX_SNR_DB, MAX_SNR_DB, what);
+  }
+
+  /** A key for a parameter. */
+  static Key parameter(String name, double min, double max, String what) {
+    return Key.optional(name, number(min, max), "the model's", what);
+  }
+
+  private static Kind.Real number(double min, double max) {
+    return Kind.Real.from(
+        min,
+        max,
+        min == max
+            ? "the number " + plain(min)
+            : max == Double.MAX_VALUE
+                ? "a number from " + plain(min)
+                : "a number from " + plain(min) + " to " + plain(max));
+  }
+
+  private static String plain(double value) {
+    return value == Math.rint(value) && Math.abs(value) < 1e15
+        ? Long.toString((long) value)
+        : Decimal.shortest(value);
+  }
 
   /** A set that keeps the order it was written in. */
   static Set<String> inOrder(String... words) {

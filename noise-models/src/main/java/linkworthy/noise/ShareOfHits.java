@@ -4,6 +4,7 @@ import java.util.List;
 import java.util.Map;
 import java.util.Set;
 import linkworthy.input.BadInput;
+import linkworthy.input.Key;
 
 /**
  * Noise that hits a share of the samples or nodes, 0 to 1, each with the same probability and
@@ -13,14 +14,17 @@ import linkworthy.input.BadInput;
  */
 abstract class ShareOfHits implements NoiseProcess {
   private final String axis;
+  private final String what;
   private final Set<String> axes;
   private final Site site;
 
   /**
    * @param axis key by which a study gives the share itself
+   * @param what the share is of, for readers
    */
-  ShareOfHits(String axis, Site site) {
+  ShareOfHits(String axis, String what, Site site) {
     this.axis = axis;
+    this.what = what;
     this.axes = SeverityChecks.inOrder(Severity.SNR_DB, Severity.VARIANCE, axis);
     this.site = site;
   }
@@ -44,6 +48,11 @@ abstract class ShareOfHits implements NoiseProcess {
   @Override
   public Map<String, Double> parameters() {
     return Map.of();
+  }
+
+  @Override
+  public List<Key> keys() {
+    return List.of(SeverityChecks.axis(axis, 0, 1, what));
   }
 
   @Override

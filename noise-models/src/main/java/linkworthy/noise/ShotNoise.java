@@ -5,6 +5,7 @@ import java.util.Map;
 import java.util.Set;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
+import linkworthy.input.Key;
 import org.apache.commons.rng.UniformRandomProvider;
 
 /**
@@ -58,6 +59,14 @@ public final class ShotNoise implements NoiseProcess {
   @Override
   public Map<String, Double> parameters() {
     return PARAMETERS;
+  }
+
+  @Override
+  public List<Key> keys() {
+    return List.of(
+        SeverityChecks.parameter(
+            READ_NOISE, 0, MAX_LEVELS, "noise without light, standard deviation in grey levels"),
+        SeverityChecks.axis(GAIN, 0, MAX_LEVELS, "grey levels for each photon"));
   }
 
   @Override

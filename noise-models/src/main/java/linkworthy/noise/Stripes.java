@@ -4,6 +4,8 @@ import java.util.List;
 import java.util.Map;
 import java.util.Set;
 import linkworthy.corpus.Picture;
+import linkworthy.input.Key;
+import linkworthy.input.Kind;
 import org.apache.commons.rng.UniformRandomProvider;
 
 /**
@@ -52,6 +54,13 @@ public final class Stripes implements NoiseProcess {
   @Override
   public Set<String> flags() {
     return Set.of(COLUMNS);
+  }
+
+  @Override
+  public List<Key> keys() {
+    return List.of(
+        Key.optional(
+            COLUMNS, new Kind.Flag(), "the model's", "whether columns are shifted, not rows"));
   }
 
   @Override

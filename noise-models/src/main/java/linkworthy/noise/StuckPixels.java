@@ -17,7 +17,7 @@ public final class StuckPixels extends ShareOfHits {
   public static final String DENSITY = "density";
 
   public StuckPixels() {
-    super(DENSITY, Site.SAMPLES);
+    super(DENSITY, "share of samples", Site.SAMPLES);
   }
 
   @Override

@@ -207,7 +207,7 @@ class BitErrorsTest extends NoiseProcessContractTest {
         .isNotEqualTo(
             NoiseModel.parse(YamlNode.parse("m.yaml", text.replace("dbpsk", "bpsk")))
                 .fingerprint());
-    assertRefused(text.replace("dbpsk", "dbspk"), "line 5: 'curve' cannot be used: no curve 'dbsp");
+    assertRefused(text.replace("dbpsk", "dbspk"), "'curve' is 'dbspk'; did you mean 'dbpsk'?");
     assertRefused(text.replace("curve: dbpsk\n", ""), "'severity[0]' is 'eb-n0-db'; accepted: snr");
     assertRefused(text.replace("eb-n0-db", "sinr-db"), "'severity[0]' is 'sinr-db'; ");
     assertRefused(text.replace("true", "1"), "'parameters.frame-check' is '1'; accepted: true or");

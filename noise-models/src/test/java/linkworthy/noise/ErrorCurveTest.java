@@ -76,13 +76,34 @@ class ErrorCurveTest {
     assertRate("oqpsk-2450", decibels, expected, 1e-9);
   }
 
+  /** 1 - (1 - b)^(8 n) for frames of 20 and 127 octets; recomputed independently in Python. */
+  @ParameterizedTest
+  @CsvSource({
+    "-6, 1, 1",
+    "-4, 0.998325359, 1",
+    "-3, 0.9292630193, 0.9999999504",
+    "-2, 0.5655559671, 0.9949779635",
+    "-1, 0.1680115174, 0.6890110587",
+    "0, 0.02551519967, 0.15136353",
+    "1, 0.002063779413, 0.01303286781",
+    "2, 8.209892418e-05, 0.0005212136909",
+    "3, 1.375549664e-06, 8.734708225e-06"
+  })
+  void framesOfTheStandardsOqpskThatAreHit(double decibels, double shorter, double longer) {
+    assertThat(framesHit(decibels, 20)).isCloseTo(shorter, within(1e-9 * shorter));
+    assertThat(framesHit(decibels, 127)).isCloseTo(longer, within(1e-9 * longer));
+  }
+
+  private static double framesHit(double decibels, int octets) {
+    double rate = ErrorCurve.OQPSK_2450.meanRate(ratio(decibels));
+    return -StrictMath.expm1(8 * octets * StrictMath.log1p(-rate));
+  }
+
   /** 1 - (1 - b)^(8 n): one frame in a hundred of 20 octets, the standard's sensitivity point. */
   @ParameterizedTest
   @CsvSource({"20, 0.4034989", "127, 1.0923863"})
   void sinrOfOneFrameInAHundred(int octets, double decibels) {
-    double rate = ErrorCurve.OQPSK_2450.meanRate(ratio(decibels));
-    double frames = -StrictMath.expm1(8 * octets * StrictMath.log1p(-rate));
-    assertThat(frames).isCloseTo(0.01, within(0.01 * 2e-6));
+    assertThat(framesHit(decibels, octets)).isCloseTo(0.01, within(0.01 * 2e-6));
   }
 
   @ParameterizedTest

@@ -1,6 +1,7 @@
 package linkworthy.noise;
 
 import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.assertThatExceptionOfType;
 import static org.assertj.core.api.Assertions.assertThatThrownBy;
 import static org.assertj.core.api.Assertions.within;
 
@@ -11,9 +12,14 @@ import java.util.HashMap;
 import java.util.List;
 import java.util.Map;
 import java.util.Optional;
+import java.util.Set;
+import java.util.TreeMap;
+import java.util.TreeSet;
 import java.util.stream.IntStream;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
+import linkworthy.input.Key;
+import linkworthy.input.Kind;
 import org.apache.commons.rng.UniformRandomProvider;
 import org.assertj.core.api.ThrowableAssert.ThrowingCallable;
 import org.junit.jupiter.api.Test;
@@ -124,6 +130,42 @@ public abstract class NoiseProcessContractTest {
     assertThatThrownBy(call)
         .isInstanceOf(BadInput.class)
         .satisfies(e -> assertThat(e.getMessage()).contains(named).doesNotContain("\n"));
+  }
+
+  @Test
+  void describesEveryKeyOfItsOwn() {
+    NoiseProcess process = NoiseProcesses.find(id());
+    Set<String> described = new TreeSet<>();
+    process.keys().forEach(key -> described.add(key.name()));
+    Set<String> own = new TreeSet<>(process.axes());
+    own.addAll(process().axes());
+    own.removeAll(Set.of(Severity.SNR_DB, Severity.VARIANCE));
+    own.addAll(process.parameters().keySet());
+    own.addAll(process.settingKeys());
+    assertThat(described).containsAll(own);
+    described.removeAll(own);
+    assertThat(described).as("axes that settings add").allMatch(name -> name.endsWith("-db"));
+  }
+
+  @Test
+  void refusesParametersOutsideTheirDescription() {
+    NoiseProcess process = process();
+    for (Key key : process.keys()) {
+      if (process.parameters().containsKey(key.name())) {
+        assertThat(key.kind() instanceof Kind.Flag)
+            .as(key.name())
+            .isEqualTo(process.flags().contains(key.name()));
+        if (key.kind() instanceof Kind.Real range) {
+          for (double value : new double[] {Math.nextDown(range.min()), Math.nextUp(range.max())}) {
+            Map<String, Double> parameters = new TreeMap<>(process.parameters());
+            parameters.put(key.name(), value);
+            assertThatExceptionOfType(BadInput.class)
+                .as("%s %s", key.name(), value)
+                .isThrownBy(() -> process.checkParameters(parameters, process.sites().get(0)));
+          }
+        }
+      }
+    }
   }
 
   @Test

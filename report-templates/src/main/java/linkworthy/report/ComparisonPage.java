@@ -3,15 +3,15 @@ package linkworthy.report;
 import java.util.List;
 
 /**
- * A page that compares runs: a question, its answer, tables and trends. Texts are shown as given,
- * escaped.
+ * A page that compares runs or fits: a question, its answer, tables and trends. Texts are shown as
+ * given, escaped.
  *
  * @param title of the page
  * @param question its first line
  * @param answer in a sentence
  * @param remarks to the answer
  * @param tables in order
- * @param trends figures over runs, drawn as lines
+ * @param trends figures in a row, drawn as lines
  * @param definitions what the words of the tables mean
  * @param version of the program
  */
@@ -57,17 +57,58 @@ public record ComparisonPage(
     }
   }
 
+  /** What a trend shows, and over what. */
+  public enum Kind {
+    /** Mean PSNR over runs, on a linear scale. */
+    RUNS("Mean PSNR over the runs", "mean PSNR, dB", "run, oldest on the left"),
+    /**
+     * Numbers of bursts of each length, on a logarithmic scale; what is not above 0 is left out.
+     */
+    BURSTS("Packets lost in a row", "how often", "packets lost in a row");
+
+    private final String heading;
+    private final String upwards;
+    private final String across;
+
+    Kind(String heading, String upwards, String across) {
+      this.heading = heading;
+      this.upwards = upwards;
+      this.across = across;
+    }
+
+    /** Over all plots of the kind. */
+    public String heading() {
+      return heading;
+    }
+
+    /** At the vertical axis. */
+    public String upwards() {
+      return upwards;
+    }
+
+    /** At the horizontal axis. */
+    public String across() {
+      return across;
+    }
+  }
+
   /**
-   * Mean PSNR over runs, a line for each series.
+   * Figures in a row, a line for each series.
    *
+   * @param kind of figures; all trends of a page are of one
    * @param heading what the series have in common
-   * @param runs labels of the runs, oldest first
+   * @param runs labels of the runs, oldest first, or of the lengths
    * @param series in the order of their first values
    */
-  public record Trend(String heading, List<String> runs, List<Series> series) {
+  public record Trend(Kind kind, String heading, List<String> runs, List<Series> series) {
     public Trend {
       runs = List.copyOf(runs);
       series = List.copyOf(series);
+    }
+
+    /** Mean PSNR over runs. */
+    public Trend(String heading, List<String> runs, List<Series> series) {
+      this(Kind.RUNS, heading, runs, series);
     }
   }
 
@@ -75,11 +116,11 @@ public record ComparisonPage(
    * A line.
    *
    * @param name of it
-   * @param psnrDb a value for each run, in dB; NaN where there is none
+   * @param values one for each run or length; NaN where there is none
    */
-  public record Series(String name, List<Double> psnrDb) {
+  public record Series(String name, List<Double> values) {
     public Series {
-      psnrDb = List.copyOf(psnrDb);
+      values = List.copyOf(values);
     }
   }
 }

@@ -19,8 +19,11 @@ public record Figure(
    * @param pictures number of pictures
    * @param trials number of trials on all of them
    * @param failures number of trials in which the codec itself failed
+   * @param outageLow lower end of the outage rate's interval, or NaN
+   * @param outageHigh upper end of it, or NaN
    */
-  public record Evidence(int pictures, int trials, int failures) {
+  public record Evidence(
+      int pictures, int trials, int failures, double outageLow, double outageHigh) {
     /**
      * @throws IllegalArgumentException if a number is negative, or failures are more than trials
      */
@@ -38,6 +41,11 @@ public record Figure(
         throw new IllegalArgumentException(
             failures + " failures; accepted: up to the number of trials, " + trials);
       }
+    }
+
+    /** Trials without an interval of the outage rate. */
+    public Evidence(int pictures, int trials, int failures) {
+      this(pictures, trials, failures, Double.NaN, Double.NaN);
     }
 
     /** Trials without failure. */

@@ -32,14 +32,23 @@ record MatrixTable(String part, List<Head> families, List<Column> columns, List<
     return of(grid, families, conditions, MatrixTable::psnrCell);
   }
 
-  /** Outage rates. */
+  /** Outage rates with their intervals. */
   static List<MatrixTable> outages(
       FigureGrid grid, List<CodecFamily> families, List<Condition> conditions) {
     return of(
         grid,
         families,
         conditions,
-        figure -> new Cell(Numbers.percent(figure.outageRate()), "", "", "", ""));
+        figure -> new Cell(Numbers.percent(figure.outageRate()), outageRange(figure), "", "", ""));
+  }
+
+  /** Short, as it stands in every column. */
+  private static String outageRange(Figure figure) {
+    Figure.Evidence evidence = figure.evidence();
+    return Double.isNaN(evidence.outageLow())
+        ? ""
+        : Numbers.percent(evidence.outageLow()).replace(" %", "\u2013")
+            + Numbers.percent(evidence.outageHigh()).replace(" %", "");
   }
 
   private static List<MatrixTable> of(

@@ -24,6 +24,8 @@ public final class ReportRenderer {
 
   private static final Pattern REFERENCE = Pattern.compile("&#(x[0-9a-f]{1,6}|[0-9]{1,7});");
 
+  private final String further = resource("pages.css").replace("\r", "");
+
   private final TemplateEngine engine = new TemplateEngine();
   private final String style = resource("report.css").replace("\r", "");
 
@@ -62,6 +64,33 @@ public final class ReportRenderer {
     Context context = context();
     context.setVariable("page", page);
     return process("shortlist.html", context);
+  }
+
+  /** A start page over runs as HTML text, under the same rules. */
+  public String render(IndexPage page) {
+    Context context = furtherContext();
+    context.setVariable("page", page);
+    return process("index.html", context);
+  }
+
+  /** A page of the handbook as HTML text; its content is taken as it is. */
+  public String render(HandbookPage page) {
+    Context context = furtherContext();
+    context.setVariable("page", page);
+    return process("handbook.html", context);
+  }
+
+  /** For pages with more style than reports have, and without any script. */
+  private Context furtherContext() {
+    String both = style + further;
+    Context context = new Context(Locale.ROOT);
+    context.setVariable("style", both);
+    context.setVariable(
+        "policy",
+        "default-src 'none'; style-src '"
+            + hash(both)
+            + "'; img-src data:; base-uri 'none'; form-action 'none'");
+    return context;
   }
 
   private String process(String template, Context context) {

@@ -5,10 +5,11 @@ import java.util.List;
 import java.util.stream.DoubleStream;
 
 /**
- * Mean PSNR over runs: one panel for at most six series. All panels of a trend share their axes.
- * Infinite values are not drawn.
+ * Figures in a row: one panel for at most six series. All panels of a trend share their axes. What
+ * is infinite, or not above 0 on a logarithmic scale, is not drawn.
  */
 record TrendPlot(
+    ComparisonPage.Kind kind,
     String id,
     String title,
     String description,
@@ -30,12 +31,16 @@ record TrendPlot(
     for (ComparisonPage.Trend trend : trends) {
       double[] values =
           trend.series().stream()
-              .flatMapToDouble(s -> s.psnrDb().stream().flatMapToDouble(DoubleStream::of))
-              .filter(Double::isFinite)
+              .flatMapToDouble(s -> s.values().stream().flatMapToDouble(DoubleStream::of))
+              .filter(value -> isDrawn(trend, value))
               .sorted()
               .toArray();
       if (values.length > 0) {
-        Axis y = Axis.linear(values[0], values[values.length - 1], BOTTOM, TOP);
+        double most = values[values.length - 1];
+        Axis y =
+            isLinear(trend)
+                ? Axis.linear(values[0], most, BOTTOM, TOP)
+                : Axis.log(values[0], most, BOTTOM, TOP);
         int parts = (trend.series().size() + Shape.KINDS - 1) / Shape.KINDS;
         for (int part = 0; part < parts; part++) {
           plots.add(panel(trend, part, parts, y, "trend-" + plots.size()));
@@ -43,6 +48,14 @@ record TrendPlot(
       }
     }
     return plots;
+  }
+
+  private static boolean isLinear(ComparisonPage.Trend trend) {
+    return trend.kind() == ComparisonPage.Kind.RUNS;
+  }
+
+  private static boolean isDrawn(ComparisonPage.Trend trend, double value) {
+    return Double.isFinite(value) && (isLinear(trend) || value > 0);
   }
 
   private static TrendPlot panel(
@@ -61,9 +74,10 @@ record TrendPlot(
       lines.add(line(trend, some.get(i), i, y));
     }
     return new TrendPlot(
+        trend.kind(),
         id,
         title,
-        "Mean PSNR of each run, oldest on the left; the numbers are in the tables.",
+        trend.kind().heading() + ", a line for each series; the numbers are in the tables.",
         horizontal,
         y.ticks().stream()
             .map(v -> new LinePlot.Tick(Numbers.coordinate(y.at(v)), Numbers.typed(v)))
@@ -81,16 +95,16 @@ record TrendPlot(
     StringBuilder path = new StringBuilder();
     StringBuilder markers = new StringBuilder();
     boolean pen = false;
-    for (int run = 0; run < series.psnrDb().size(); run++) {
-      double psnr = series.psnrDb().get(run);
-      boolean drawn = Double.isFinite(psnr);
+    for (int run = 0; run < series.values().size(); run++) {
+      double value = series.values().get(run);
+      boolean drawn = isDrawn(trend, value);
       if (drawn) {
         double across = x(trend, run);
         path.append(pen ? 'L' : 'M')
             .append(Numbers.coordinate(across))
             .append(' ')
-            .append(Numbers.coordinate(y.at(psnr)));
-        markers.append(Shape.at(index, across, y.at(psnr)));
+            .append(Numbers.coordinate(y.at(value)));
+        markers.append(Shape.at(index, across, y.at(value)));
       }
       pen = drawn;
     }

@@ -472,6 +472,8 @@ class ReportRendererTest {
     assertThat(shown.texts("//section[@id='losses']//table[@class='matrix']/caption"))
         .hasSize(1)
         .allMatch(caption -> caption.startsWith("Outage rate under burst-loss on packets"));
+    assertThat(shown.texts("//section[@id='losses']//table[@class='matrix']//td/small"))
+        .contains("1.0\u20138.3");
     Figure none = SamplePages.bare(GAUSSIAN, SamplePages.codec("dct", "rows", "K4"), 30, 1);
     assertThat(RenderedPage.of(SamplePages.page(List.of(none))).text("//section[@id='losses']/p"))
         .startsWith("No outage was seen in 1 trial;");

@@ -79,7 +79,7 @@ final class SamplePages {
           new Figure(
               condition,
               codecs.get(i).codec(),
-              new Figure.Evidence(12, clean ? 12 : 120),
+              new Figure.Evidence(12, clean ? 12 : 120, 0, 0.01, 0.083),
               new Figure.Quality(
                   means.get(i),
                   clean ? Double.NaN : 0.03 + 0.02 * (i % 4),

@@ -35,6 +35,7 @@ import picocli.CommandLine.Parameters;
       "  linkworthy assess",
       "  linkworthy assess yard.yaml --set replicates=20 --set codecs.0.step=4",
       "  linkworthy assess yard.yaml --dry-run",
+      "  linkworthy assess yard.yaml --format json",
       "  linkworthy assess yard.yaml --plugins my-plugins --allow-commands",
       "  linkworthy assess yard.yaml --on spark://HOST:PORT",
       "  linkworthy assess --resume results/yard/20261201T101500Z-0123abcd"
@@ -42,6 +43,8 @@ import picocli.CommandLine.Parameters;
 final class AssessCommand implements Callable<Integer> {
   private static final String BUILT_IN = "first-look.yaml";
   static final int MAX_THREADS = 1024;
+  private static final String TEXT = "text";
+  private static final String JSON = "json";
 
   private final Surroundings surroundings;
 
@@ -91,7 +94,15 @@ final class AssessCommand implements Callable<Integer> {
 
   @Mixin private final ClusterOptions cluster = new ClusterOptions();
 
-  @Option(names = "--quiet", description = "Show no progress and no summary.")
+  @Option(
+      names = "--format",
+      paramLabel = "FORMAT",
+      completionCandidates = Formats.class,
+      description =
+          "What is printed at the end: text, or json: one document for scripts and nothing else.")
+  private String format = TEXT;
+
+  @Option(names = "--quiet", description = "Show no progress and no summary in words.")
   private boolean quiet;
 
   AssessCommand(Surroundings surroundings) {
@@ -110,6 +121,13 @@ final class AssessCommand implements Callable<Integer> {
           "--threads is given with --on; accepted: one of the two, as the cluster says how many cores"
               + " there are");
     }
+    if (!new Formats().contains(format)) {
+      throw new BadInput("--format is '" + format + "'; accepted: text, json");
+    }
+    if (dryRun && format.equals(JSON)) {
+      throw new BadInput(
+          "--format json is given together with --dry-run; accepted: one of the two");
+    }
     if (resume != null) {
       return resume(resume);
     }
@@ -122,16 +140,31 @@ final class AssessCommand implements Callable<Integer> {
     return threads == null ? Runtime.getRuntime().availableProcessors() : threads;
   }
 
+  /** What {@code --format} accepts. */
+  static final class Formats extends ArrayList<String> {
+    private static final long serialVersionUID = 1;
+
+    Formats() {
+      super(List.of(TEXT, JSON));
+    }
+  }
+
   private int resume(Path folder) {
     refuseBesideResume();
     ResultsFolder stopped = ResultsFolder.openStopped(folder);
     if (stopped.isWhole()) {
-      surroundings.out().println(folder + " is complete; there is nothing to go on with");
+      boolean asJson = format.equals(JSON);
+      var words = asJson ? surroundings.err() : surroundings.out();
+      words.println(folder + " is complete; there is nothing to go on with");
       if (stopped.isUntidy()) {
         try (ResultsWriter writer = stopped.tidy()) {
           writer.writeReport(Reports.html(ResultsFolder.open(folder)));
         }
-        surroundings.out().println("report: " + folder.resolve(ResultsFolder.REPORT));
+        words.println("report: " + folder.resolve(ResultsFolder.REPORT));
+      }
+      if (asJson) {
+        surroundings.out().print(SummaryJson.of(ResultsFolder.open(folder)));
+        surroundings.out().flush();
       }
       return Main.DONE;
     }
@@ -168,9 +201,23 @@ final class AssessCommand implements Callable<Integer> {
         + cluster.asArguments();
   }
 
+  private Assessment.Ending ending() {
+    return format.equals(JSON)
+        ? Assessment.Ending.JSON
+        : quiet ? Assessment.Ending.NOTHING : Assessment.Ending.TEXT;
+  }
+
   private int run(Plan plan, PluginFolder plugins, Path folder, ResultsFolder.Start start) {
     return new Assessment(
-            surroundings, plan, plugins.jars(), folder, start, threads(), quiet, goOn(folder))
+            surroundings,
+            plan,
+            plugins.jars(),
+            folder,
+            start,
+            threads(),
+            quiet,
+            ending(),
+            goOn(folder))
         .run();
   }
 
@@ -184,7 +231,8 @@ final class AssessCommand implements Callable<Integer> {
     if (quiet) {
       arguments.add("--quiet");
     }
-    return new ClusterAssessment(surroundings, master).run(folder, arguments, quiet, goOn(folder));
+    return new ClusterAssessment(surroundings, master)
+        .run(folder, arguments, ending(), goOn(folder));
   }
 
   /** The driver reads the study again, and checks the pictures. */

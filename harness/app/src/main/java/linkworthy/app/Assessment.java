@@ -28,7 +28,15 @@ final class Assessment {
   private final int threads;
   private final ResultsFolder.Start start;
   private final boolean quiet;
+  private final Ending ending;
   private final String goOn;
+
+  /** What is printed at the end of a run. */
+  enum Ending {
+    TEXT,
+    JSON,
+    NOTHING
+  }
 
   /**
    * @param goOn the command that takes the run up again once it has been stopped
@@ -41,6 +49,7 @@ final class Assessment {
       ResultsFolder.Start start,
       int threads,
       boolean quiet,
+      Ending ending,
       String goOn) {
     this.surroundings = surroundings;
     this.plan = plan;
@@ -49,6 +58,7 @@ final class Assessment {
     this.threads = threads;
     this.start = start;
     this.quiet = quiet;
+    this.ending = ending;
     this.goOn = goOn;
   }
 
@@ -102,9 +112,7 @@ final class Assessment {
       writer.complete(plan, cells.toList(), writer.run().complete(done, surroundings.clock()));
       ResultsFolder results = ResultsFolder.open(folder);
       writer.writeReport(Reports.html(results));
-      if (!quiet) {
-        summarise(results, surroundings.out());
-      }
+      print(results, ending, surroundings.out());
       return Main.DONE;
     }
   }
@@ -181,8 +189,18 @@ final class Assessment {
     }
   }
 
+  /** Prints what is wanted at the end of a run. */
+  static void print(ResultsFolder results, Ending ending, PrintWriter out) {
+    if (ending == Ending.JSON) {
+      out.print(SummaryJson.of(results));
+      out.flush();
+    } else if (ending == Ending.TEXT) {
+      summarise(results, out);
+    }
+  }
+
   /** Prints the answer, the table and where the report is. */
-  static void summarise(ResultsFolder results, PrintWriter out) {
+  private static void summarise(ResultsFolder results, PrintWriter out) {
     Reports.answer(results).forEach(out::println);
     Reports.widths(results).ifPresent(out::println);
     out.println();

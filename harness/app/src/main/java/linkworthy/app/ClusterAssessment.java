@@ -49,11 +49,12 @@ final class ClusterAssessment {
    * Runs it, then writes the report and prints the summary.
    *
    * @param arguments of the driver
+   * @param ending what is printed at the end
    * @param goOn the command that takes the run up again once it has been stopped
    * @return the exit code
    * @throws Unavailable if there is no Spark, or no driver for it
    */
-  int run(Path folder, List<String> arguments, boolean quiet, String goOn) {
+  int run(Path folder, List<String> arguments, Assessment.Ending ending, String goOn) {
     SparkHome spark = SparkHome.of(System.getenv("SPARK_HOME"));
     int code = execute(spark.submit(java(), master, jar(), arguments));
     if (code == Main.BAD_INPUT || code == Main.ENVIRONMENT) {
@@ -68,9 +69,7 @@ final class ClusterAssessment {
     try (ResultsWriter writer = ResultsFolder.openStopped(folder).tidy()) {
       writer.writeReport(Reports.html(ResultsFolder.open(folder)));
     }
-    if (!quiet) {
-      Assessment.summarise(ResultsFolder.open(folder), surroundings.out());
-    }
+    Assessment.print(ResultsFolder.open(folder), ending, surroundings.out());
     return Main.DONE;
   }
 

@@ -24,7 +24,10 @@ import picocli.CommandLine.Spec;
       CorpusCommand.class,
       NoiseCommand.class,
       CodecsCommand.class,
-      BeginCommand.class
+      BeginCommand.class,
+      SchemaCommand.class,
+      HandbookCommand.class,
+      CompletionCommand.class
     },
     mixinStandardHelpOptions = true,
     versionProvider = Version.class,

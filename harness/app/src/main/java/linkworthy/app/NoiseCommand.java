@@ -1,5 +1,6 @@
 package linkworthy.app;
 
+import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.Locale;
 import java.util.Objects;
@@ -15,6 +16,8 @@ import linkworthy.noise.fit.LossTrace;
 import linkworthy.noise.fit.ModelFile;
 import linkworthy.noise.fit.PicturesFit;
 import linkworthy.noise.fit.PicturesFit.Kind;
+import linkworthy.report.ReportRenderer;
+import linkworthy.results.FolderFiles;
 import org.jspecify.annotations.Nullable;
 import picocli.CommandLine.ArgGroup;
 import picocli.CommandLine.Command;
@@ -92,6 +95,7 @@ final class NoiseCommand {
         "Exit code 1 if the measurements do not suffice for a model.",
         "Examples:",
         "  linkworthy noise fit trace.csv --column lost --out my-link.yaml",
+        "  linkworthy noise fit trace.csv --html fit.html",
         "  linkworthy noise fit --pictures frames --out my-sensor.yaml"
       })
   int fit(
@@ -110,7 +114,12 @@ final class NoiseCommand {
               names = "--out",
               paramLabel = "FILE",
               description = "Model file to write; must not exist.")
-          @Nullable Path out) {
+          @Nullable Path out,
+      @Option(
+              names = "--html",
+              paramLabel = "FILE",
+              description = "Write a page as well, with a plot of the trace's losses in a row.")
+          @Nullable Path html) {
     if (repeated && single) {
       throw new BadInput("--repeated and --single are both given; accepted: one of them");
     }
@@ -120,6 +129,12 @@ final class NoiseCommand {
     if (measured.pictures != null && column != null) {
       throw new BadInput("--column is for a trace, not for --pictures");
     }
+    if (measured.pictures != null && html != null) {
+      throw new BadInput("--html is for a trace, not for --pictures");
+    }
+    if (html != null && Files.isDirectory(html)) {
+      throw new BadInput("--html is the folder " + html + "; accepted: a file");
+    }
     if (out != null) {
       ModelFile.requireNew(out);
     }
@@ -128,7 +143,7 @@ final class NoiseCommand {
       fitPictures(measured.pictures, kind, out);
       return Main.DONE;
     }
-    return fitTrace(Objects.requireNonNull(measured.trace), column, out);
+    return fitTrace(Objects.requireNonNull(measured.trace), column, out, html);
   }
 
   private void fitPictures(Path folder, Kind kind, @Nullable Path out) {
@@ -140,7 +155,8 @@ final class NoiseCommand {
     }
   }
 
-  private int fitTrace(Path trace, @Nullable String column, @Nullable Path out) {
+  private int fitTrace(
+      Path trace, @Nullable String column, @Nullable Path out, @Nullable Path html) {
     LossTrace read = LossTrace.read(trace, Optional.ofNullable(column));
     Optional<String> obstacle = LossFit.obstacle(read);
     if (obstacle.isPresent()) {
@@ -154,6 +170,10 @@ final class NoiseCommand {
       surroundings
           .out()
           .println("wrote " + out + "; in a study: noise: " + out + " with loss-rate: [...]");
+    }
+    if (html != null) {
+      FolderFiles.replace(html, new ReportRenderer().render(FitPage.of(fit)));
+      surroundings.out().println("page: " + html);
     }
     return Main.DONE;
   }

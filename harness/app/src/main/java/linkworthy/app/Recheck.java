@@ -20,17 +20,22 @@ import linkworthy.corpus.Manifest;
 import linkworthy.corpus.ManifestEntry;
 import linkworthy.input.BadInput;
 import linkworthy.input.Unavailable;
-import linkworthy.results.CellsCsv;
+import linkworthy.results.NodesCsv;
+import linkworthy.results.PredictionsCsv;
+import linkworthy.results.RecordCheck;
 import linkworthy.results.ResultsFolder;
 import linkworthy.results.RunRecord;
 import linkworthy.results.TrialsCsv;
-import linkworthy.statistics.Cells;
 import linkworthy.statistics.RowSample;
 import linkworthy.study.CodecChoice;
 import linkworthy.study.Study;
 import linkworthy.study.StudyWriter;
 import linkworthy.trial.Course;
+import linkworthy.trial.NodeShare;
+import linkworthy.trial.NodeTable;
 import linkworthy.trial.Plan;
+import linkworthy.trial.Prediction;
+import linkworthy.trial.PredictionTable;
 import linkworthy.trial.Repetition;
 import linkworthy.trial.Trial;
 import org.jspecify.annotations.Nullable;
@@ -225,6 +230,7 @@ final class Recheck {
 
   private void checkRows(Plan plan) {
     long rows = checkKeysAndCells(plan);
+    checkFormulas(plan);
     long sampled = Math.min(extent.sample(), Math.min(rows, plan.trials()));
     long before = mismatched;
     repeat(plan, RowSample.draw(Math.min(rows, plan.trials()), sampled, extent.seed()));
@@ -239,6 +245,9 @@ final class Recheck {
     }
     if (sampled < rows) {
       notVerified.add("rows: the figures of the other " + (rows - sampled) + " trials");
+      notVerified.add(
+          "if 1 row was altered, the chance to have missed it is "
+              + chance(RowSample.chanceMissed(rows, 1, sampled)));
       for (double share : SHARES) {
         long altered = RowSample.rowsOf(share, rows);
         notVerified.add(
@@ -263,73 +272,77 @@ final class Recheck {
   /** Reads all rows: each must be the trial that the plan has at its place. */
   private long checkKeysAndCells(Plan plan) {
     long before = mismatched;
-    Cells cells = new Cells();
+    RecordCheck check = new RecordCheck(results);
     Course course = new Course(plan);
-    long[] row = {0};
-    boolean[] countable = {true};
     long rows =
-        results.trials(
+        results.rows(
             trial -> {
-              long index = row[0]++;
+              check.add(trial);
               String expected = course.isAtEnd() ? "none" : course.trialId();
               if (!trial.trial().equals(expected)) {
                 mismatch(
                     "row "
-                        + (index + 1)
+                        + check.rows()
                         + ": trial recorded "
                         + trial.trial()
                         + ", by the plan "
                         + expected);
               }
-              try {
-                cells.add(trial);
-              } catch (IllegalArgumentException e) {
-                countable[0] = false;
-                mismatch("row " + row[0] + " of trials.csv: " + e.getMessage());
-              }
               if (!course.isAtEnd()) {
                 course.add(trial);
               }
             });
-    RunRecord run = results.run();
-    long planned = plan.study().earlyStop() == null ? plan.trials() : run.trialsPlanned();
-    if (run.complete() && (rows != planned || !course.isAtEnd())) {
-      mismatch("run.json says complete; trials.csv has " + rows + " of " + planned + " rows");
+    check.ofRows().forEach(this::mismatch);
+    if (results.run().complete()) {
+      check.ofNumber().forEach(this::mismatch);
+      if (!course.isAtEnd()) {
+        mismatch("run.json says complete; the plan has trials behind the last row");
+      }
     }
     if (before == mismatched) {
       verified.add("order: each of the " + rows + " rows has the id that the plan has there");
     }
-    if (countable[0]) {
-      checkCells(cells);
-    } else {
-      notVerified.add("cells: the rows of trials.csv do not add up to any");
-    }
+    checkCells(check);
     return rows;
   }
 
-  private void checkCells(Cells cells) {
-    Path file = results.path().resolve(CellsCsv.FILE);
-    if (!Files.exists(file)) {
+  private void checkCells(RecordCheck check) {
+    if (!results.run().complete()) {
       notVerified.add("cells: there are none, as the run is not complete");
-      return;
-    }
-    long before = mismatched;
-    List<String> expected = CellsCsv.text(cells.toList()).lines().toList();
-    List<String> found;
-    try {
-      found = Files.readString(file).lines().toList();
-    } catch (IOException e) {
-      throw Unavailable.cannot("read " + file, e);
-    }
-    for (int i = 0; i < Math.max(expected.size(), found.size()); i++) {
-      String recorded = i < found.size() ? found.get(i) : "nothing";
-      String again = i < expected.size() ? expected.get(i) : "nothing";
-      if (!recorded.equals(again)) {
-        mismatch("cells.csv, line " + (i + 1) + ": recorded " + recorded + ", computed " + again);
+    } else if (!check.ofRows().isEmpty()) {
+      notVerified.add("cells: the rows of trials.csv do not add up to any");
+    } else {
+      List<String> complaints = check.ofCells(true);
+      complaints.forEach(this::mismatch);
+      if (complaints.isEmpty()) {
+        verified.add("cells: cells.csv computed again from trials.csv, the same bytes");
       }
     }
-    if (before == mismatched) {
-      verified.add("cells: cells.csv computed again from trials.csv, the same bytes");
+  }
+
+  /** The tables that follow from the study and its clean pictures. */
+  private void checkFormulas(Plan plan) {
+    if (!results.run().complete()) {
+      notVerified.add("nodes and predictions: there are none, as the run is not complete");
+      return;
+    }
+    List<NodeShare> nodes = NodeTable.of(plan);
+    checkFormula(NodesCsv.FILE, nodes.isEmpty() ? "" : NodesCsv.text(nodes));
+    List<Prediction> predictions = PredictionTable.of(plan);
+    boolean any = predictions.stream().anyMatch(Prediction::isMade);
+    checkFormula(PredictionsCsv.FILE, any ? PredictionsCsv.text(predictions) : "");
+  }
+
+  private void checkFormula(String name, String expected) {
+    boolean there = Files.exists(results.path().resolve(name));
+    if (expected.isEmpty() && there) {
+      mismatch(name + " is there; by the study there is nothing in it");
+    } else if (!expected.isEmpty()) {
+      long before = mismatched;
+      sameText(name, expected);
+      if (before == mismatched) {
+        verified.add(name + ": computed again from the study and its pictures, the same bytes");
+      }
     }
   }
 
@@ -343,7 +356,7 @@ final class Recheck {
     try (Progress progress =
         new Progress(surroundings, "recheck", "", sample.size(), extent.quiet())) {
       long unused =
-          results.trials(
+          results.rows(
               trial -> {
                 long index = row[0]++;
                 if (course.isAtEnd()) {

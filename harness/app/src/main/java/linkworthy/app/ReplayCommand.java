@@ -77,7 +77,7 @@ final class ReplayCommand implements Callable<Integer> {
   private Trial find(ResultsFolder results) {
     List<Trial> found = new ArrayList<>();
     long trials =
-        results.trials(
+        results.rows(
             trial -> {
               if (trial.trial().equals(id)) {
                 found.add(trial);

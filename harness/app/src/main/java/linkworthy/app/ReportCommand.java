@@ -15,7 +15,12 @@ import picocli.CommandLine.Parameters;
     name = "report",
     description = "Render the report of a results folder again, from its recorded data alone.",
     mixinStandardHelpOptions = true,
-    footer = {"", "Example: linkworthy report results/first-look/20261201T101500Z-0123abcd"})
+    footer = {
+      "",
+      "Examples:",
+      "  linkworthy report results/first-look/20261201T101500Z-0123abcd",
+      "  linkworthy report --index results"
+    })
 final class ReportCommand implements Runnable {
   private final Surroundings surroundings;
 
@@ -23,10 +28,13 @@ final class ReportCommand implements Runnable {
   @SuppressWarnings("NullAway.Init")
   private Path folder;
 
+  @Option(names = "--index", description = "Make a start page over all runs below RESULTS instead.")
+  private boolean index;
+
   @Option(
       names = "--out",
       paramLabel = "FILE",
-      description = "File to write (default: report.html in the folder).")
+      description = "File to write (default: report.html, or index.html, in the folder).")
   private @Nullable Path out;
 
   ReportCommand(Surroundings surroundings) {
@@ -35,11 +43,26 @@ final class ReportCommand implements Runnable {
 
   @Override
   public void run() {
+    if (index) {
+      writeIndex();
+      return;
+    }
     Path file = out == null ? folder.resolve(ResultsFolder.REPORT) : out;
+    requireNoFolder(file);
+    FolderFiles.replace(file, Reports.html(ResultsFolder.open(folder)));
+    surroundings.out().println("report: " + file);
+  }
+
+  private void writeIndex() {
+    Path file = out == null ? folder.resolve(RunsIndex.FILE) : out;
+    requireNoFolder(file);
+    FolderFiles.replace(file, RunsIndex.html(folder, file));
+    surroundings.out().println("page: " + file);
+  }
+
+  private static void requireNoFolder(Path file) {
     if (Files.isDirectory(file)) {
       throw new BadInput("--out is the folder " + file + "; accepted: a file");
     }
-    FolderFiles.replace(file, Reports.html(ResultsFolder.open(folder)));
-    surroundings.out().println("report: " + file);
   }
 }

@@ -20,6 +20,7 @@ import linkworthy.report.Standing;
 import linkworthy.results.ResultsFolder;
 import linkworthy.results.RunRecord;
 import linkworthy.statistics.Cell;
+import linkworthy.statistics.ShareInterval;
 import linkworthy.statistics.StudentT;
 import linkworthy.study.EarlyStop;
 import linkworthy.study.ImpairmentChoice;
@@ -138,8 +139,7 @@ final class Reports {
             cell.over(),
             cell.keep() < 0 ? "" : Integer.toString(cell.keep()),
             cell.step()),
-        new Figure.Evidence(
-            cell.pictures(), Math.toIntExact(cell.trials()), Math.toIntExact(cell.failures())),
+        evidence(cell),
         new Figure.Quality(
             cell.psnrMeanDb(),
             cell.psnrNoiseHalfWidthDb(),
@@ -153,6 +153,14 @@ final class Reports {
             cell.behindBestDb(),
             cell.behindBestPAdjusted(),
             Standing.of(cell.standing().toString())));
+  }
+
+  private static Figure.Evidence evidence(Cell cell) {
+    int trials = Math.toIntExact(cell.trials());
+    int outages = (int) Math.round(cell.outageRate() * trials);
+    ShareInterval outage = ShareInterval.wilson(outages, trials, StudentT.CONFIDENCE);
+    return new Figure.Evidence(
+        cell.pictures(), trials, Math.toIntExact(cell.failures()), outage.lower(), outage.upper());
   }
 
   private static PictureCredit credit(RunRecord.PictureUsed picture) {

@@ -6,13 +6,17 @@ import java.io.UncheckedIOException;
 import java.nio.charset.StandardCharsets;
 import java.util.Objects;
 
-/** Text files in the program's own jar, beside this class. */
+/** Files in the program's own jar, beside this class. */
 final class Resources {
   private Resources() {}
 
   static String text(String name) {
+    return new String(bytes(name), StandardCharsets.UTF_8);
+  }
+
+  static byte[] bytes(String name) {
     try (InputStream in = Resources.class.getResourceAsStream(name)) {
-      return new String(Objects.requireNonNull(in, name).readAllBytes(), StandardCharsets.UTF_8);
+      return Objects.requireNonNull(in, name).readAllBytes();
     } catch (IOException e) {
       throw new UncheckedIOException(e);
     }

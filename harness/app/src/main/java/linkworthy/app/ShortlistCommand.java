@@ -67,11 +67,9 @@ final class ShortlistCommand implements Callable<Integer> {
       throw new BadInput("--html is the folder " + html + "; accepted: a file");
     }
     ResultsFolder results = ResultsFolder.open(folder);
-    if (!results.run().complete()) {
-      throw new BadInput(folder + " is of a run that was not finished; accepted: a complete run");
-    }
+    results.requireComplete();
     Measurements measured = new Measurements();
-    results.trials(measured::add);
+    long unused = results.trials(measured::add);
     Shortlist shortlist = Shortlist.of(measured, Needs.read(YamlNode.read(need), measured));
     ShortlistText text = new ShortlistText(shortlist, measured);
     text.lines().forEach(surroundings.out()::println);

@@ -58,8 +58,8 @@ class BadInputTest {
         arguments("seed: 7", "seed: 99999999999999999999", List.of("line 3", "9007199254740991")),
         arguments("name: small", "name: ../small", List.of("line 1", "'../small'")),
         arguments("name: small", "name: &a [*a, *a, *a]", List.of("line 1", "anchors")),
-        arguments("snr-db: [20, 10]", "variance: -3", List.of("line 7", "-3", "at least 0")),
-        arguments("[20, 10]", "[.nan]", List.of("line 7", "'.nan'", "a finite number")),
+        arguments("snr-db: [20, 10]", "variance: -3", List.of("line 7", "-3", "a number from 0")),
+        arguments("[20, 10]", "[.nan]", List.of("line 7", "'.nan'", "a number from -300")),
         arguments("[20, 10]", "[]", List.of("line 7", "an empty list")),
         arguments("[20, 10]", "[20, 20]", List.of("line 7", "a second time", "label:")),
         // A mean burst of 4 packets admits loss rates up to 4 / (4 + 1): every gap has one packet.

@@ -107,4 +107,22 @@ class CorpusChangesTest {
       server.stop(0);
     }
   }
+
+  @Test
+  void addressesOfThisMachinesFilesAreRefused() throws IOException {
+    Path manifest = folder.resolve("manifest.csv");
+    Files.writeString(
+        manifest,
+        String.join(",", Manifest.COLUMNS)
+            + ",address\na,own,day/a.pgm,24,20,1,8,yard,CC0-1.0,me,,"
+            + "0".repeat(64)
+            + ",,file:///etc/hostname\n");
+    Outcome outcome = Program.run(folder, "corpus", "fetch", "--manifest", manifest.toString());
+    assertThat(outcome.errors())
+        .singleElement()
+        .asString()
+        .contains("manifest.csv", "line 2", "'file:///etc/hostname'", "begins with");
+    assertThat(outcome.code()).isEqualTo(2);
+    assertThat(folder.resolve("day")).doesNotExist();
+  }
 }

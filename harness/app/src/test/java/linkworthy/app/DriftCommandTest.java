@@ -14,6 +14,9 @@ import java.util.Locale;
 import java.util.Map;
 import java.util.function.UnaryOperator;
 import javax.xml.parsers.DocumentBuilderFactory;
+import linkworthy.results.CellsCsv;
+import linkworthy.results.TrialsCsv;
+import linkworthy.statistics.Cells;
 import org.junit.jupiter.api.BeforeAll;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
@@ -57,7 +60,7 @@ class DriftCommandTest {
     return Program.run(folder, arguments.toArray(new String[0]));
   }
 
-  /** A copy of the first run in which every row of trials.csv went through an edit. */
+  /** A copy of the first run in which every row went through an edit; cells follow from them. */
   private Path edited(String name, UnaryOperator<List<String>> row) throws IOException {
     Path copy = Files.createDirectories(folder.resolve(name));
     for (String file : List.of("study.yaml", "run.json", "cells.csv", "trials.csv")) {
@@ -69,7 +72,10 @@ class DriftCommandTest {
       List<String> fields = new ArrayList<>(List.of(line.split(",", -1)));
       text.append(String.join(",", row.apply(fields))).append('\n');
     }
-    Files.writeString(copy.resolve("trials.csv"), text);
+    Path trials = Files.writeString(copy.resolve("trials.csv"), text);
+    Cells cells = new Cells();
+    assertThat(TrialsCsv.read(trials, cells::add)).isPositive();
+    Files.writeString(copy.resolve("cells.csv"), CellsCsv.text(cells.toList()));
     return copy;
   }
 
@@ -173,16 +179,7 @@ class DriftCommandTest {
     Path html = folder.resolve("drift.html");
     Outcome outcome = drift(first, now, "--html", html.toString());
     assertThat(outcome.err()).isEmpty();
-    List<String> changes =
-        outcome
-            .out()
-            .lines()
-            .dropWhile(line -> !line.equals("What changed in between"))
-            .skip(2)
-            .takeWhile(line -> !line.isEmpty())
-            .map(line -> line.strip().replaceAll("  +", "|"))
-            .toList();
-    assertThat(changes)
+    assertThat(changes(outcome.out().lines().toList()))
         .contains(
             "program version|development|<b>2</b>",
             "pictures.select|canyon, cat|canyon, gravel",
@@ -204,6 +201,61 @@ class DriftCommandTest {
         .doesNotContain("<b>2</b>", "<script");
     assertThat(xml(page.replace("<!DOCTYPE html>", "")).getElementsByTagName("table").getLength())
         .isEqualTo(4);
+  }
+
+  private static final String BUMPED =
+      """
+      name: bumped
+      seed: 7
+      pictures: {select: [field], longest-side: 48}
+      impairments:
+        - {noise: gaussian, snr-db: [20]}
+        - {noise: burst-loss.yaml, loss-rate: [0.3]}
+      codecs: [{transform: mean, step: [16, 24]}]
+      link: {payload-bytes: 32, header-bytes: 4}
+      replicates: 40
+      """;
+
+  /** The library's model, copied, and run again with another version and mean burst. */
+  @Test
+  void aNewVersionOfAModelIsTheCauseOfWhatItMoved() throws IOException {
+    Path model = shared.resolve("burst-loss.yaml");
+    String text = Files.readString(Path.of("../../noise-models/library/burst-loss.yaml"));
+    Files.writeString(model, text);
+    Path old = assess(folder.resolve("old"), BUMPED);
+    String bumped =
+        text.replace("version: 1", "version: 2").replace("mean-burst: 4 ", "mean-burst: 64 ");
+    assertThat(bumped).contains("version: 2", "mean-burst: 64 ");
+    Files.writeString(model, bumped);
+    Outcome outcome = drift(old, assess(folder.resolve("new"), BUMPED), "--all");
+    assertThat(outcome.err()).isEmpty();
+    List<String> lines = outcome.out().lines().toList();
+    assertThat(lines.get(0)).startsWith("6 cells: 2 moved ");
+    assertThat(changes(lines))
+        .satisfiesExactly(
+            line ->
+                assertThat(line)
+                    .matches(
+                        "noise model burst-loss\\|version 1, [0-9a-f]{12}\\|version 2,"
+                            + " [0-9a-f]{12}"),
+            line ->
+                assertThat(line)
+                    .isEqualTo("noise burst-loss on packets by loss-rate: mean-burst|4.0|64.0"));
+    assertThat(lines)
+        .filteredOn(line -> line.contains(" moved: "))
+        .hasSize(2)
+        .allMatch(line -> line.startsWith("  burst-loss on packets"));
+    assertThat(lines).filteredOn(line -> line.contains("same (identical)")).hasSize(4);
+  }
+
+  /** The table of what changed, columns parted by bars. */
+  private static List<String> changes(List<String> lines) {
+    return lines.stream()
+        .dropWhile(line -> !line.equals("What changed in between"))
+        .skip(2)
+        .takeWhile(line -> !line.isEmpty())
+        .map(line -> line.strip().replaceAll("  +", "|"))
+        .toList();
   }
 
   @ParameterizedTest
@@ -310,16 +362,16 @@ class DriftCommandTest {
     List<String> lines = Files.readAllLines(trials);
     Files.write(trials, lines.subList(0, 80));
     assertRefused(
-        2,
-        List.of("has 79 trials", "90, as its run.json"),
-        "drift",
-        first.toString(),
-        cut.toString());
+        2, List.of("has 79 rows", "90, as run.json"), "drift", first.toString(), cut.toString());
     List<String> twice = new ArrayList<>(lines.subList(0, 90));
     twice.add(lines.get(1));
     Files.write(trials, twice);
     assertRefused(
-        2, List.of("replicate 0 of a cell twice"), "drift", first.toString(), cut.toString());
+        2,
+        List.of("trials.csv, line 91", "each replicate once"),
+        "drift",
+        first.toString(),
+        cut.toString());
   }
 
   @Test
@@ -330,7 +382,13 @@ class DriftCommandTest {
             SmallStudy.TEXT
                 .replace("name: small", "name: other")
                 .replaceAll("(?s)codecs:.*", "codecs: [{transform: mean, step: 9}]"));
-    assertRefused(2, List.of("no cell in common"), "drift", first.toString(), other.toString());
+    assertRefused(
+        2,
+        List.of(
+            "no cell in common", "study 'small', 'other'; ", "codec pca rows K2", " and 4 more"),
+        "drift",
+        first.toString(),
+        other.toString());
     assertRefused(2, List.of("several studies (other, small)"), "drift", "--over", shared + "");
   }
 

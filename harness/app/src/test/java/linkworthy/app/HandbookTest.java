@@ -28,24 +28,31 @@ import linkworthy.results.TrialsCsv;
 import linkworthy.study.Study;
 import linkworthy.study.StudyReader;
 import linkworthy.trial.Plan;
+import org.junit.jupiter.api.DynamicTest;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.TestFactory;
 import org.junit.jupiter.api.io.TempDir;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.MethodSource;
 import org.junit.jupiter.params.provider.ValueSource;
 import picocli.CommandLine;
 
-/** What the README, the contributor guide and the example studies show can be done. */
+/**
+ * What the README, the contributor guide, the handbook and the example studies show can be done.
+ */
 class HandbookTest {
   private static final Path ROOT = Path.of("../..");
+  private static final String HANDBOOK = "harness/handbook/";
   private static final String COMMAND = "./linkworthy ";
   private static final Pattern BLOCK =
       Pattern.compile("^```(\\w+)\\n(.*?)^```", Pattern.MULTILINE | Pattern.DOTALL);
 
-  /** A file of the example in the README: its path in backquotes, then its text in a block. */
+  /**
+   * A file of an example: its path in backquotes, then a colon or a full stop, its text in a block.
+   */
   private static final Pattern EXAMPLE_FILE =
       Pattern.compile(
-          "`\\.\\./yard/([a-z-]+\\.(?:csv|yaml))`:\\n\\n```\\w+\\n(.*?)```", Pattern.DOTALL);
+          "`(yard/[a-z-]+\\.(?:csv|yaml))`[^`]*?:\\n\\n```\\w+\\n(.*?)```", Pattern.DOTALL);
 
   private static String text(String file) throws IOException {
     return Files.readString(ROOT.resolve(file));
@@ -77,7 +84,12 @@ class HandbookTest {
     Matcher block = BLOCK.matcher(text(file));
     while (block.find()) {
       if (block.group(1).equals("sh")) {
-        block.group(2).lines().filter(line -> line.startsWith(COMMAND)).forEach(commands::add);
+        block
+            .group(2)
+            .lines()
+            .filter(line -> line.startsWith(COMMAND))
+            .map(line -> line.replaceFirst(" [>#].*", ""))
+            .forEach(commands::add);
       }
     }
     assertThat(commands).isNotEmpty();
@@ -94,35 +106,22 @@ class HandbookTest {
     return new CommandLine(new Linkworthy(), new Commands(surroundings));
   }
 
-  @Test
-  void theExampleOfTheReadmePlansAsItStands(@TempDir Path yard) throws IOException {
-    List<String> written = new ArrayList<>();
-    Matcher example = EXAMPLE_FILE.matcher(text("README.md"));
-    while (example.find()) {
-      Files.writeString(yard.resolve(example.group(1)), example.group(2));
-      written.add(example.group(1));
+  /** Links between the pages and the picture of the README. */
+  static List<String> pages() throws IOException {
+    List<String> pages =
+        new ArrayList<>(List.of("README.md", "DEVELOPERS.md", "results/README.md"));
+    try (Stream<Path> files = Files.list(ROOT.resolve(HANDBOOK))) {
+      files
+          .map(file -> HANDBOOK + file.getFileName())
+          .filter(file -> file.endsWith(".md"))
+          .sorted()
+          .forEach(pages::add);
     }
-    assertThat(written).containsExactly("manifest.csv", "study.yaml", "yard-radio.yaml");
-    Files.createDirectories(yard.resolve("pictures"));
-    Files.copy(
-        ROOT.resolve("corpus-manifest/pictures/field/gravel.png"),
-        yard.resolve("pictures/logs.png"));
-    assertThat(Plan.of(StudyReader.read(yard.resolve("study.yaml"))).trials()).isEqualTo(84);
+    return pages;
   }
 
-  /** Links between the pages and the picture of the README. */
   @ParameterizedTest
-  @ValueSource(
-      strings = {
-        "README.md",
-        "DEVELOPERS.md",
-        "results/README.md",
-        "harness/handbook/README.md",
-        "harness/handbook/decisions.md",
-        "harness/handbook/methods.md",
-        "harness/handbook/results.md",
-        "harness/handbook/studies.md"
-      })
+  @MethodSource("pages")
   void everyLinkLeadsToAFile(String file) throws IOException {
     Matcher link = Pattern.compile("\\]\\(([^)#:]+)(#[^)]*)?\\)").matcher(text(file));
     Path folder = ROOT.resolve(file).resolveSibling("");
@@ -133,6 +132,90 @@ class HandbookTest {
       }
     }
     assertThat(broken).isEmpty();
+  }
+
+  /** The pages in the order of the start page, which links all of them. */
+  private static List<String> handbook() throws IOException {
+    List<String> pages = new ArrayList<>();
+    Matcher link = Pattern.compile("\\(([a-z-]+\\.md)\\)").matcher(text(HANDBOOK + "README.md"));
+    while (link.find()) {
+      pages.add(HANDBOOK + link.group(1));
+    }
+    assertThat(pages)
+        .hasSizeGreaterThan(8)
+        .containsAll(
+            pages().stream()
+                .filter(p -> p.startsWith(HANDBOOK) && !p.endsWith("README.md"))
+                .toList());
+    return pages;
+  }
+
+  /**
+   * Every file that the handbook shows is written, and every command that it shows is run, page by
+   * page in one folder. Only what builds the project's own jars is left to another test.
+   */
+  @TestFactory
+  List<DynamicTest> everyPageDoesWhatItShows(@TempDir Path yard) throws IOException {
+    Files.createDirectories(yard.resolve("yard"));
+    Files.createDirectories(yard.resolve("my-plugins"));
+    Path unused = PluginJars.makeExample(yard.resolve("my-plugins"));
+    List<DynamicTest> tests = new ArrayList<>();
+    int commands = 0;
+    for (String page : handbook()) {
+      Matcher example = EXAMPLE_FILE.matcher(text(page));
+      int files = 0;
+      while (example.find()) {
+        Files.writeString(yard.resolve(example.group(1)), example.group(2));
+        files++;
+      }
+      Matcher block = BLOCK.matcher(text(page));
+      int yaml = 0;
+      while (block.find()) {
+        yaml += block.group(1).equals("yaml") || block.group(1).equals("csv") ? 1 : 0;
+        if (block.group(1).equals("sh")) {
+          for (String line : block.group(2).lines().toList()) {
+            commands++;
+            tests.add(DynamicTest.dynamicTest(page + ": " + line, () -> run(yard, line)));
+          }
+        }
+      }
+      assertThat(files).as("files named on %s", page).isEqualTo(yaml);
+    }
+    assertThat(commands).isGreaterThan(30);
+    return tests;
+  }
+
+  /** Runs a command of a page with its files in a folder. */
+  private static void run(Path folder, String line) throws IOException {
+    List<String> words = List.of(line.replaceFirst(" +#.*", "").split(" +"));
+    if (words.get(0).equals("mkdir")) {
+      Files.createDirectories(folder.resolve(words.get(2)));
+    } else if (words.get(0).equals("cp")) {
+      Path to = folder.resolve(words.get(2));
+      if (!words.get(1).contains("/target/")) {
+        Files.copy(ROOT.resolve(words.get(1)), to);
+      }
+      assertThat(to.resolveSibling("")).isDirectory();
+    } else if (words.get(0).equals("mvn")) {
+      assertThat(words).contains("-q");
+    } else {
+      assertThat(words.get(0)).isEqualTo("./linkworthy");
+      Outcome outcome =
+          Program.run(
+              folder,
+              words.stream().skip(1).map(word -> placed(folder, word)).toArray(String[]::new));
+      assertThat(outcome.code())
+          .as("%s\n%s%s", line, outcome.out(), outcome.err())
+          .isEqualTo(line.contains("# exit code 1") ? Main.NO : Main.DONE);
+    }
+  }
+
+  /** A word of a command; what is a path leads into the folder, or to what the project ships. */
+  private static String placed(Path folder, String word) {
+    if (!word.matches("(yard|results|harness|noise-models|my-plugins)(/.*)?")) {
+      return word;
+    }
+    return (word.startsWith("harness") ? ROOT : folder).resolve(word).toString();
   }
 
   @Test
@@ -179,7 +262,7 @@ class HandbookTest {
   @ParameterizedTest
   @MethodSource("misspelt")
   void theStudiesPageNamesEveryKey(String study) throws IOException {
-    String page = text("harness/handbook/studies.md");
+    String page = text("harness/handbook/keys.md");
     String refusal =
         assertThatExceptionOfType(BadInput.class)
             .isThrownBy(() -> StudyReader.read(YamlNode.parse("a.yaml", study), Path.of("")))
@@ -192,17 +275,8 @@ class HandbookTest {
 
   @Test
   void theStudiesPageKnowsEveryFamily() throws IOException {
-    String page = text("harness/handbook/studies.md");
+    String page = text("harness/handbook/keys.md");
     assertThat(CodecFamilies.installed().all())
         .allMatch(family -> page.contains("\n### " + family.id() + "\n"));
-  }
-
-  @Test
-  void theExampleOfTheStudiesPagePlans(@TempDir Path folder) throws IOException {
-    Matcher block = BLOCK.matcher(text("harness/handbook/studies.md"));
-    assertThat(block.find()).isTrue();
-    Path file = Files.writeString(folder.resolve("study.yaml"), block.group(2));
-    // 2 pictures, 6 codecs; clean once and 5 severities 3 times
-    assertThat(Plan.of(StudyReader.read(file)).trials()).isEqualTo(2 * 6 * (1 + 5 * 3));
   }
 }

@@ -66,6 +66,29 @@ class NoiseFitTest {
   }
 
   @Test
+  void aPageShowsTheBurstsBesideThoseOfEachForm() throws IOException {
+    Path page = folder.resolve("fit.html");
+    Outcome fit =
+        Program.run(folder, "noise", "fit", trace(5000).toString(), "--html", page.toString());
+    assertThat(fit.err()).isEmpty();
+    assertThat(fit.out()).endsWith("page: " + page + "\n");
+    assertThat(Files.readString(page))
+        .contains(
+            "What kind of losses does this link have?",
+            "simple two-state chain (chosen)",
+            "Observed and fitted",
+            "how often",
+            "packets lost in a row",
+            ">&gt;12</th>")
+        .doesNotContain("Mean PSNR", "NaN");
+    List<String> wrong =
+        List.of("noise", "fit", folder + "/trace.csv", "--html", folder.toString());
+    Outcome refused = Program.run(folder, wrong.toArray(new String[0]));
+    assertThat(refused.errors()).singleElement().asString().contains("accepted: a file");
+    assertThat(refused.code()).isEqualTo(2);
+  }
+
+  @Test
   void aTraceWithoutLossesIsTheAnswerNo() throws IOException {
     Path trace = Files.writeString(folder.resolve("t.csv"), "0\n".repeat(300));
     Path out = folder.resolve("m.yaml");
@@ -137,6 +160,7 @@ class NoiseFitTest {
             List.of("noise", "fit"),
             List.of("noise", "fit", trace, "--pictures", folder.toString()),
             List.of("noise", "fit", trace, "--single"),
+            List.of("noise", "fit", "--pictures", folder.toString(), "--html", "x.html"),
             List.of("noise", "fit", "--pictures", folder.toString(), "--column", "x"),
             List.of("noise", "fit", "--pictures", folder.toString(), "--single", "--repeated"),
             List.of("noise", "fit", "--pictures", folder + "/nowhere"))) {

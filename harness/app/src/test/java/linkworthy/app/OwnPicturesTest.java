@@ -68,7 +68,7 @@ class OwnPicturesTest {
         .contains("&lt;img src=x", "&lt;i&gt;x", "&lt;u&gt;sensor")
         .doesNotContain("<img", "<i>x", "<u>");
     assertThat(Files.readAllLines(out.resolve("trials.csv")))
-        .anyMatch(row -> row.contains(",\"=1+1,\"\"<i>x</i>\"\"\",mean,"))
+        .anyMatch(row -> row.contains(",\"'=1+1,\"\"<i>x</i>\"\"\",mean,"))
         .anyMatch(row -> row.contains(",\"<u>sensor</u>, dark\",samples,snr-db,"));
     assertThat(Program.run(folder, "report", out.toString()).code()).isZero();
   }

@@ -177,7 +177,7 @@ class PluginsTest {
     Path example = PluginJars.example();
     Path classes = PluginJars.compile(home.resolve("c"), PluginJars.javaFiles(example));
     assertThat(classes.resolve("example/thumbnail/ThumbnailTest.class")).exists();
-    assertThat(Files.readString(example.resolve("README.md")))
+    assertThat(Files.readString(example.resolveSibling("adding-a-codec.md")))
         .contains("--plugins", "CodecContractTest");
     assertThat(Files.readString(example.resolve("pom.xml"))).contains("<type>test-jar</type>");
   }

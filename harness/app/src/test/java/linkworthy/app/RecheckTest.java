@@ -105,6 +105,7 @@ class RecheckTest {
         .contains(
             "rows: 30 of 90 trials repeated, equal bit for bit (seed 5)",
             "the figures of the other 60 trials",
+            "if 1 row was altered, the chance to have missed it is 0.6667",
             "if 1 % of the rows were altered (1), the chance to have missed all of them is 0.6667",
             "if 5 % of the rows were altered (5), the chance to have missed all of them is 0.1243");
     assertThat(recheck(copy(), "--sample", "30", "--seed", "5")).isEqualTo(outcome);
@@ -145,13 +146,84 @@ class RecheckTest {
             4 * Math.sqrt(seeds * chance * (1 - chance)));
   }
 
+  /** One picture, clean and 31 replicates of 4 conditions, 8 codecs: 125 x 8 rows. */
+  private static final String THOUSAND =
+      """
+      name: thousand
+      seed: 7
+      pictures: {select: [canyon], longest-side: 32}
+      impairments: [{noise: gaussian, snr-db: [30, 20, 10, 0]}]
+      codecs: [{transform: mean, step: [4, 6, 8, 12, 16, 24, 32, 48]}]
+      replicates: 31
+      """;
+
+  /**
+   * One digit of one row in 1000, of a figure on which no cell depends. 'missed' of 4000 samples
+   * has the standard deviation sqrt(4000 * 0.9 * 0.1) = 19; the limit is 4 of them, which a correct
+   * program exceeds with about 1 set of seeds in 16 000.
+   */
+  @Test
+  void aDigitInOneRowOfAThousandIsFoundAsOftenAsStated() throws IOException {
+    Path out = folder.resolve("thousand");
+    Path study = SmallStudy.write(folder, THOUSAND);
+    assertThat(Program.run(folder, "assess", study + "", "--quiet", "--out", out + "").code())
+        .isZero();
+    long row = 613;
+    change(
+        out.resolve("trials.csv"),
+        text -> {
+          List<String> lines = new ArrayList<>(text.lines().toList());
+          assertThat(lines).hasSize(1001);
+          List<String> fields = new ArrayList<>(List.of(lines.get((int) row + 1).split(",", -1)));
+          // The last digit of the payload's bits.
+          String bits = fields.get(18);
+          fields.set(18, bits.substring(0, bits.length() - 1) + (bits.endsWith("1") ? 2 : 1));
+          lines.set((int) row + 1, String.join(",", fields));
+          return String.join("\n", lines) + "\n";
+        });
+    Outcome all = recheck(out, "--all");
+    assertThat(all.code()).isEqualTo(1);
+    assertThat(all.out())
+        .contains("trials.csv, line " + (row + 2), "payload_bits recorded ")
+        .endsWith("mismatches: 1\n");
+    for (long seed = 0; seed < 12; seed++) {
+      boolean drawn = RowSample.draw(1000, 100, seed).contains(row);
+      Outcome outcome = recheck(out, "--sample", "100", "--seed", "" + seed);
+      assertThat(outcome.code()).isEqualTo(drawn ? 1 : 0);
+      assertThat(outcome.out())
+          .contains("if 1 row was altered, the chance to have missed it is 0.9000");
+    }
+    int missed = 0;
+    for (long seed = 0; seed < 4000; seed++) {
+      missed += RowSample.draw(1000, 100, seed).contains(row) ? 0 : 1;
+    }
+    assertThat(missed).isBetween(3600 - 4 * 19, 3600 + 4 * 19);
+  }
+
   @Test
   void cellsThatDoNotFollowFromTheRowsAreFound() throws IOException {
     Path results = copy();
     change(results.resolve("cells.csv"), text -> text.replaceFirst(",below,", ",best,"));
     Outcome outcome = recheck(results, "--sample", "1");
     assertThat(outcome.code()).isEqualTo(1);
-    assertThat(outcome.out()).contains("MISMATCH      cells.csv, line ");
+    assertThat(outcome.out())
+        .containsPattern("MISMATCH .*cells.csv, line 2: standing is 'best'; accepted: 'below'");
+  }
+
+  /** Predictions follow from the study, as the figures of nodes do. */
+  @Test
+  void anAlteredPredictionIsFound() throws IOException {
+    Path results = copy();
+    assertThat(recheck(results, "--sample", "1").out())
+        .contains("verified      predictions.csv: computed again");
+    change(
+        results.resolve("predictions.csv"),
+        text -> text.replaceFirst("(\\.\\d)(\\d)", "$1" + "0$2"));
+    assertMismatch(results, "MISMATCH      predictions.csv is not what the program writes");
+    Files.delete(results.resolve("predictions.csv"));
+    assertMismatch(results, "MISMATCH      predictions.csv is not what the program writes");
+    Files.writeString(results.resolve("nodes.csv"), "codec,node\n");
+    assertMismatch(results, "MISMATCH      nodes.csv is there");
   }
 
   @Test

@@ -27,7 +27,10 @@ import org.junit.jupiter.params.provider.ValueSource;
 
 /** A run that was stopped is completed to the bytes of an undisturbed one. */
 class ResumeTest {
-  private static final List<String> SAME = List.of("trials.csv", "cells.csv", "study.yaml");
+  private static final List<String> SAME =
+      List.of("trials.csv", "cells.csv", "predictions.csv", "study.yaml");
+  private static final List<String> LAST =
+      List.of("predictions.csv.part", "cells.csv.part", "cells.csv");
   private static final int ROWS = 90;
   private static final int KILLS = Integer.getInteger("linkworthy.kills", 5);
   private static final long KILL_SEED = Long.getLong("linkworthy.seed", 20261201);
@@ -287,7 +290,10 @@ class ResumeTest {
     return Program.command(Program.thisJava(), List.of(), folder, arguments.toArray(new String[0]));
   }
 
-  /** Killed and taken up again until it is complete; -Dlinkworthy.kills=N kills N times. */
+  /**
+   * Killed and taken up again until it is complete; -Dlinkworthy.kills=N kills N times. Every third
+   * time it is killed while the last files are written.
+   */
   @Test
   void killedAtAnyInstant() throws IOException, InterruptedException {
     Path study = SmallStudy.write(folder, LONGER);
@@ -304,9 +310,13 @@ class ResumeTest {
           begun ? command(out, "--resume") : command(out, study.toString(), "--overwrite", "--out");
       Path err = folder.resolve("err.txt");
       Process process = new ProcessBuilder(command).redirectError(err.toFile()).start();
-      boolean ended = process.waitFor(random.nextLong(took), TimeUnit.MILLISECONDS);
+      boolean late = kill % 3 == 2;
+      boolean ended =
+          late
+              ? endsBeforeItsLastFiles(process, out, random)
+              : process.waitFor(random.nextLong(took), TimeUnit.MILLISECONDS);
       process.destroyForcibly().waitFor();
-      endings.merge(ended ? "ended" : "killed", 1, Integer::sum);
+      endings.merge(ended ? "ended" : late ? "killed late" : "killed", 1, Integer::sum);
       assertThat(Files.readString(err)).isEmpty();
       if (ended) {
         assertThat(process.exitValue()).isZero();
@@ -316,7 +326,7 @@ class ResumeTest {
             .forEach(name -> assertThat(out.resolve(name).toFile().delete()).isTrue());
       }
     }
-    assertThat(endings).containsKey("killed");
+    assertThat(endings).containsKeys("killed", "killed late");
     boolean begun = Files.exists(out.resolve("study.yaml"));
     Outcome last =
         Program.execute(
@@ -326,6 +336,16 @@ class ResumeTest {
     assertThat(last.err()).isEmpty();
     assertThat(last.code()).isZero();
     assertSameRows(out, expected);
+  }
+
+  /** Waits until the last files are begun, and then up to a twentieth of a second. */
+  private static boolean endsBeforeItsLastFiles(Process process, Path out, SplittableRandom random)
+      throws InterruptedException {
+    boolean ended = false;
+    while (!ended && LAST.stream().noneMatch(name -> Files.exists(out.resolve(name)))) {
+      ended = process.waitFor(1, TimeUnit.MILLISECONDS);
+    }
+    return ended || process.waitFor(random.nextLong(50), TimeUnit.MILLISECONDS);
   }
 
   private static void assertSameRows(Path out, Path expected) {

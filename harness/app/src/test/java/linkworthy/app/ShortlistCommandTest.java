@@ -65,17 +65,6 @@ class ShortlistCommandTest {
         .contains("did you mean 'psnr-db'?");
   }
 
-  /** The needs of the handbook, on a run that has all they name. */
-  @Test
-  void theExampleOfTheHandbookReads() throws IOException {
-    String page = Files.readString(Path.of("../handbook/decisions.md"));
-    String needs = page.substring(page.indexOf("```yaml\n") + 8);
-    Outcome outcome = shortlist(needs.substring(0, needs.indexOf("```")).replace("0.05", "0.1"));
-    assertThat(outcome.err()).isEmpty();
-    assertThat(outcome.code()).isEqualTo(Main.NO);
-    assertThat(outcome.out()).contains("need 4: mean bits-per-pixel at most 1.5");
-  }
-
   @Test
   void thePageIsWrittenAndComplete() throws IOException {
     Path page = folder.resolve("shortlist.html");

@@ -4,6 +4,8 @@ import java.util.List;
 import java.util.Map;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
+import linkworthy.input.Key;
+import linkworthy.input.Kind;
 
 /**
  * One option compared: all its parameters are fixed. A codec has no state and may be used by
@@ -12,6 +14,11 @@ import linkworthy.input.BadInput;
 public interface Codec {
   /** The longest label a study may give, in characters. */
   int MAX_LABEL = 64;
+
+  /** The key {@code label}, which every family takes. */
+  Key LABEL =
+      Key.optional(
+          "label", Kind.Text.line(MAX_LABEL), "made from the parameters", "name in tables");
 
   /** How the codec is named in tables; derived from its parameters unless the study gives one. */
   String label();

@@ -1,9 +1,12 @@
 package linkworthy.codec;
 
 import java.nio.file.Path;
-import java.util.LinkedHashSet;
+import java.util.Arrays;
 import java.util.List;
-import java.util.Set;
+import java.util.Optional;
+import linkworthy.input.Key;
+import linkworthy.input.KeyGroup;
+import linkworthy.input.Kind;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
 
@@ -14,8 +17,47 @@ import linkworthy.link.Link;
 public final class CommandCodecFamily implements CodecFamily {
   private static final String ID = "command";
   private static final String AUTO = "auto";
-  private static final Set<String> KEYS =
-      new LinkedHashSet<>(List.of(ID, "on-loss", "seconds", "output-bytes", "memory-mib", "label"));
+  private static final int DEFAULT_SECONDS = 30;
+  private static final int DEFAULT_MEMORY = 1024;
+  private static final Kind.Words ON_LOSS =
+      new Kind.Words(Arrays.stream(OnLoss.values()).map(OnLoss::id).toList());
+  private static final Kind.Whole SECONDS = new Kind.Whole(1, 3600);
+  private static final Kind.Whole MEMORY = new Kind.Whole(1, 1 << 20);
+  private static final Kind.Whole BYTES = new Kind.Whole(1, 1 << 30);
+  private static final Kind.WordOr OUTPUT =
+      new Kind.WordOr(
+          AUTO,
+          BYTES,
+          "a whole number from 1 to "
+              + BYTES.max()
+              + ", or auto: 4 times the raw picture and 1 MiB");
+  private static final Kind ARGUMENTS = new Kind.Items(Kind.Text.any("a word"));
+  private static final String PROGRAM =
+      "program (a name on the PATH or an absolute path) and arguments, `{input}` and `{output}`"
+          + " among them";
+  private static final KeyGroup PROGRAMS =
+      KeyGroup.of(
+          "programs",
+          Key.required("encode", ARGUMENTS, PROGRAM),
+          Key.required("decode", ARGUMENTS, PROGRAM));
+  private static final KeyGroup KEYS =
+      KeyGroup.of(
+          ID,
+          Key.required(ID, PROGRAMS, "the two programs"),
+          Key.optional(
+              "on-loss",
+              ON_LOSS,
+              "`" + OnLoss.TRUNCATE.id() + "`",
+              "what is decoded where bytes are missing"),
+          Key.optional(
+              "seconds", SECONDS, Integer.toString(DEFAULT_SECONDS), "longest time for a call"),
+          Key.optional("output-bytes", OUTPUT, "`" + AUTO + "`", "most that a call may write"),
+          Key.optional(
+              "memory-mib",
+              MEMORY,
+              Integer.toString(DEFAULT_MEMORY),
+              "address space of each process, MiB"),
+          Codec.LABEL);
 
   private final boolean allowed;
 
@@ -34,6 +76,11 @@ public final class CommandCodecFamily implements CodecFamily {
   @Override
   public String id() {
     return ID;
+  }
+
+  @Override
+  public Optional<KeyGroup> keys() {
+    return Optional.of(KEYS);
   }
 
   @Override
@@ -68,9 +115,8 @@ public final class CommandCodecFamily implements CodecFamily {
 
   @Override
   public List<Codec> read(YamlNode entry, Link link) {
-    entry.onlyKeys(KEYS);
+    KEYS.check(entry);
     YamlNode command = entry.get(ID);
-    command.onlyKeys(new LinkedHashSet<>(List.of("encode", "decode")));
     List<String> encode = arguments(command.get("encode"));
     List<String> decode = arguments(command.get("decode"));
     if (!allowed) {
@@ -81,14 +127,14 @@ public final class CommandCodecFamily implements CodecFamily {
               + decode.get(0)
               + "); accepted: only with --allow-commands");
     }
-    List<OnLoss> ways = List.of(OnLoss.values());
-    List<String> words = ways.stream().map(OnLoss::id).toList();
     OnLoss onLoss =
         entry
             .find("on-loss")
-            .map(node -> ways.get(words.indexOf(node.oneOf(words))))
+            .map(
+                node ->
+                    List.of(OnLoss.values()).get(ON_LOSS.accepted().indexOf(ON_LOSS.read(node))))
             .orElse(OnLoss.TRUNCATE);
-    String label = entry.find("label").map(YamlNode::text).orElse("");
+    String label = entry.find("label").map(node -> node.line(Codec.MAX_LABEL)).orElse("");
     return List.of(
         new CommandCodec(
             label,
@@ -102,15 +148,13 @@ public final class CommandCodecFamily implements CodecFamily {
 
   private static CommandRun.Limits limits(YamlNode entry) {
     return new CommandRun.Limits(
-        entry.find("seconds").map(node -> (int) node.integer(1, 3600)).orElse(30),
+        entry.find("seconds").map(SECONDS::read).orElse(DEFAULT_SECONDS),
         entry.find("output-bytes").map(CommandCodecFamily::outputBytes).orElse(0L),
-        entry.find("memory-mib").map(node -> (int) node.integer(1, 1 << 20)).orElse(1024));
+        entry.find("memory-mib").map(MEMORY::read).orElse(DEFAULT_MEMORY));
   }
 
   private static long outputBytes(YamlNode node) {
-    return !node.isMapping() && !node.isSequence() && node.text().equals(AUTO)
-        ? 0
-        : node.integer(1, 1 << 30);
+    return OUTPUT.isWord(node) ? 0 : BYTES.readLong(node);
   }
 
   private static List<String> arguments(YamlNode list) {

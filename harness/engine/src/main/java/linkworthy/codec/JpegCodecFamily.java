@@ -1,20 +1,43 @@
 package linkworthy.codec;
 
-import java.util.LinkedHashSet;
 import java.util.List;
-import java.util.Set;
+import java.util.Optional;
+import linkworthy.input.Key;
+import linkworthy.input.KeyGroup;
+import linkworthy.input.Kind;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
 
 /** Reads JPEG codecs from a study: {@code jpeg: baseline} and so on. */
 public final class JpegCodecFamily implements CodecFamily {
-  private static final Set<String> KEYS =
-      new LinkedHashSet<>(List.of("jpeg", "quality", "bits-per-pixel", "restart-every", "label"));
-  private static final int LARGEST_RESTART = 2048;
+  private static final int DEFAULT_RESTART = 1;
+  private static final Kind.Whole QUALITY = new Kind.Whole(1, 100);
+  private static final Kind.Whole RESTART = new Kind.Whole(1, 2048);
+  private static final KeyGroup KEYS =
+      KeyGroup.of(
+          "jpeg",
+          Key.required("jpeg", Kind.Words.of("baseline"), "8-bit pictures"),
+          Key.optional(
+              "quality",
+              new Kind.OneOrMore(QUALITY),
+              "one of this and the next must be given",
+              "coarse to fine"),
+          RateTarget.KEY,
+          Key.optional(
+              "restart-every",
+              RESTART,
+              Integer.toString(DEFAULT_RESTART),
+              "rows of blocks in a restart interval"),
+          Codec.LABEL);
 
   @Override
   public String id() {
     return "jpeg";
+  }
+
+  @Override
+  public Optional<KeyGroup> keys() {
+    return Optional.of(KEYS);
   }
 
   @Override
@@ -37,16 +60,14 @@ public final class JpegCodecFamily implements CodecFamily {
 
   @Override
   public List<Codec> read(YamlNode entry, Link link) {
-    entry.onlyKeys(KEYS);
-    entry.get("jpeg").oneOf(List.of("baseline"));
-    int restart =
-        entry.find("restart-every").map(node -> (int) node.integer(1, LARGEST_RESTART)).orElse(1);
+    KEYS.check(entry);
+    int restart = entry.find("restart-every").map(RESTART::read).orElse(DEFAULT_RESTART);
     String label = entry.find("label").map(node -> node.line(Codec.MAX_LABEL)).orElse("");
     List<Codec> codecs =
         RateTarget.readEither(
             entry,
             "quality",
-            node -> JpegCodec.of(label, (int) node.integer(1, 100), restart, link),
+            node -> JpegCodec.of(label, QUALITY.read(node), restart, link),
             rate -> JpegCodec.of(label, rate, restart, link));
     if (codecs.isEmpty()) {
       throw entry.refuse("has neither 'quality' nor 'bits-per-pixel'; accepted: one of the two");

@@ -3,6 +3,8 @@ package linkworthy.codec;
 import java.util.List;
 import java.util.Optional;
 import java.util.function.Function;
+import linkworthy.input.Key;
+import linkworthy.input.Kind;
 import linkworthy.input.YamlNode;
 
 /** Reads how many components a transform codec keeps: one of four keys, each with a list. */
@@ -11,6 +13,40 @@ final class KeepReader {
   static final List<String> KEYS = List.of("keep", "share", "bits-per-pixel", "noise-floor");
 
   private static final int MOST = 1 << 20;
+  private static final Kind.Whole COUNT = new Kind.Whole(0, MOST);
+  private static final Kind.Real SHARE = Kind.Real.above(0, 1, "a share above 0, up to 1");
+  private static final Kind.Real RATE =
+      Kind.Real.above(0, Keep.Rate.MOST, "sent bits per pixel above 0, up to " + Keep.Rate.MOST);
+  private static final Kind.Real DEVIATION =
+      Kind.Real.from(0.001, 65_536, "a standard deviation in grey levels from 0.001 to 65536");
+  private static final Kind.WordOr NOISE_FLOOR =
+      new Kind.WordOr(
+          "true",
+          DEVIATION,
+          "true, or the noise's standard deviation in grey levels from 0.001 to 65536");
+  private static final String OTHERS = "another of the four must be given";
+
+  /** The four keys. */
+  static List<Key> keys() {
+    return List.of(
+        Key.optional(
+            "keep",
+            new Kind.OneOrMore(COUNT),
+            OTHERS + "; mean: all",
+            "components; mean takes 0 or no key at all"),
+        Key.optional(
+            "share", new Kind.OneOrMore(SHARE), OTHERS, "share of the variance to be reached"),
+        Key.optional(
+            "bits-per-pixel",
+            new Kind.OneOrMore(RATE),
+            OTHERS,
+            "sent bits over samples, [before protection](methods.md#which-k), with `planes: luma`"),
+        Key.optional(
+            "noise-floor",
+            new Kind.OneOrMore(NOISE_FLOOR),
+            OTHERS,
+            "noise in the picture, true if unknown; pca with its own basis"));
+  }
 
   private KeepReader() {}
 
@@ -29,7 +65,7 @@ final class KeepReader {
       throw entry.refuse("has none of " + String.join(", ", KEYS) + "; accepted: one of them");
     }
     return switch (given.get(0)) {
-      case "keep" -> each(node.get(), item -> new Keep.First((int) item.integer(0, MOST)));
+      case "keep" -> each(node.get(), item -> new Keep.First(COUNT.read(item)));
       case "share" -> each(node.get(), KeepReader::share);
       case "bits-per-pixel" -> each(node.get(), KeepReader::rate);
       default -> noiseFloors(node.get(), basis);
@@ -44,7 +80,7 @@ final class KeepReader {
       throw node.get().refuse("does not go with 'transform: mean'; accepted: keep: 0, or nothing");
     }
     List<YamlNode> items = node.get().oneOrMore();
-    if (items.size() == 1 && items.get(0).integer(0, MOST) == 0) {
+    if (items.size() == 1 && COUNT.read(items.get(0)) == 0) {
       return List.of(new Keep.First(0));
     }
     throw node.get().bad("0 (the means alone), or no 'keep' for all, with 'transform: mean'");
@@ -55,21 +91,11 @@ final class KeepReader {
   }
 
   private static Keep share(YamlNode node) {
-    String accepted = "a share above 0, up to 1";
-    double share = node.number(accepted);
-    if (!(share > 0 && share <= 1)) {
-      throw node.bad(accepted);
-    }
-    return new Keep.Share(share);
+    return new Keep.Share(SHARE.read(node));
   }
 
   private static Keep rate(YamlNode node) {
-    String accepted = "sent bits per pixel above 0, up to " + Keep.Rate.MOST;
-    double rate = node.number(accepted);
-    if (!(rate > 0 && rate <= Keep.Rate.MOST)) {
-      throw node.bad(accepted);
-    }
-    return new Keep.Rate(rate);
+    return new Keep.Rate(RATE.read(node));
   }
 
   private static List<Keep> noiseFloors(YamlNode node, Basis basis) {
@@ -82,14 +108,9 @@ final class KeepReader {
   }
 
   private static Keep noiseFloor(YamlNode node) {
-    String accepted = "true, or the noise's standard deviation in grey levels from 0.001 to 65536";
-    if (!node.isMapping() && !node.isSequence() && node.text().equals("true")) {
-      return Keep.NoiseFloor.UNKNOWN;
-    }
-    double deviation = node.number(accepted);
-    if (!(deviation >= 0.001 && deviation <= 65_536)) {
-      throw node.bad(accepted);
-    }
-    return new Keep.NoiseFloor(deviation);
+    NOISE_FLOOR.check(node);
+    return NOISE_FLOOR.isWord(node)
+        ? Keep.NoiseFloor.UNKNOWN
+        : new Keep.NoiseFloor(DEVIATION.read(node));
   }
 }

@@ -2,7 +2,9 @@ package linkworthy.codec;
 
 import java.util.List;
 import java.util.Objects;
+import java.util.Optional;
 import linkworthy.input.BadInput;
+import linkworthy.input.KeyGroup;
 import linkworthy.input.Unavailable;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
@@ -36,6 +38,11 @@ final class PluginFamily implements CodecFamily {
   @Override
   public String id() {
     return id;
+  }
+
+  @Override
+  public Optional<KeyGroup> keys() {
+    return guarded("keys()", family::keys);
   }
 
   @Override

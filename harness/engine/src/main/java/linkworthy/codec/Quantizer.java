@@ -1,6 +1,7 @@
 package linkworthy.codec;
 
 import linkworthy.input.Decimal;
+import linkworthy.input.Kind;
 import linkworthy.input.Require;
 import linkworthy.input.YamlNode;
 
@@ -13,6 +14,12 @@ import linkworthy.input.YamlNode;
 public record Quantizer(double step) implements Quantization {
   /** No quantisation: values travel as 32-bit floats. */
   public static final Quantizer NONE = new Quantizer(Double.POSITIVE_INFINITY);
+
+  private static final Kind.Real STEP =
+      Kind.Real.from(0.001, 65_536, "a step in grey levels from 0.001 to 65536");
+
+  /** What a study may write for a step. */
+  static final Kind.WordOr KIND = new Kind.WordOr("none", STEP, STEP.accepted() + ", or none");
 
   private static final int LARGEST = 1 << 29;
 
@@ -85,14 +92,7 @@ public record Quantizer(double step) implements Quantization {
 
   /** Reads a step, or the word for no quantisation. */
   static Quantizer read(YamlNode node) {
-    String accepted = "a step in grey levels from 0.001 to 65536, or none";
-    if (!node.isMapping() && !node.isSequence() && node.text().equals("none")) {
-      return NONE;
-    }
-    double step = node.number(accepted);
-    if (!(step >= 0.001 && step <= 65_536)) {
-      throw node.bad(accepted);
-    }
-    return new Quantizer(step);
+    KIND.check(node);
+    return KIND.isWord(node) ? NONE : new Quantizer(STEP.read(node));
   }
 }

@@ -3,6 +3,8 @@ package linkworthy.codec;
 import java.util.List;
 import java.util.function.Function;
 import java.util.function.IntFunction;
+import linkworthy.input.Key;
+import linkworthy.input.Kind;
 import linkworthy.input.Require;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
@@ -15,18 +17,23 @@ import linkworthy.link.Link;
  */
 record RateTarget(double bitsPerPixel) {
   private static final double LARGEST = 64;
+  private static final Kind.Real KIND =
+      Kind.Real.above(0, LARGEST, "bits per pixel above 0, up to 64");
+
+  /** What a study may write. */
+  static final Key KEY =
+      Key.optional(
+          "bits-per-pixel",
+          new Kind.OneOrMore(KIND),
+          "none",
+          "in place of the key above: sent bits over samples, [before protection](methods.md#which-k), with `planes: luma`");
 
   RateTarget {
     Require.inRange(bitsPerPixel, Double.MIN_VALUE, LARGEST, "bits-per-pixel (bits)");
   }
 
   static RateTarget read(YamlNode node) {
-    String accepted = "bits per pixel above 0, up to 64";
-    double value = node.number(accepted);
-    if (!(value > 0 && value <= LARGEST)) {
-      throw node.bad(accepted);
-    }
-    return new RateTarget(value);
+    return new RateTarget(KIND.read(node));
   }
 
   /**

@@ -4,38 +4,77 @@ import java.util.ArrayList;
 import java.util.List;
 import java.util.Optional;
 import java.util.Set;
-import java.util.regex.Matcher;
-import java.util.regex.Pattern;
+import linkworthy.input.Key;
+import linkworthy.input.KeyGroup;
+import linkworthy.input.Kind;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
 import linkworthy.link.PartNumber;
 
 /** Reads transform codecs from a study: {@code transform: pca}, {@code over: rows} and so on. */
 public final class TransformCodecFamily implements CodecFamily {
-  private static final Set<String> KEYS =
-      new java.util.LinkedHashSet<>(
-          List.of(
-              "transform",
-              "basis",
-              "over",
-              "side",
-              "grid",
-              "keep",
-              "share",
-              "bits-per-pixel",
-              "noise-floor",
-              "step",
-              "weights",
-              "quality",
-              "label"));
   private static final List<String> ARRANGEMENTS = List.of("rows", "blocks", "tiles");
-  private static final Pattern GRID = Pattern.compile("(\\d{1,3})x(\\d{1,3})");
   private static final int DEFAULT_SIDE = 8;
   private static final double DEFAULT_STEP = 8;
+  private static final Kind.Words BASES = Kind.Words.of("own", "shared");
+  private static final Kind.Words OVER = new Kind.Words(ARRANGEMENTS);
+  private static final Kind.Whole SIDE = new Kind.Whole(2, 64);
+  private static final Kind.Whole QUALITY = new Kind.Whole(1, 100);
+  private static final Kind.Text TILES =
+      new Kind.Text(
+          "[0-9]{1,3}x[0-9]{1,3}",
+          "columns x rows, from 1x1 up to " + TiledCodec.MOST_TILES + " tiles, as 4x4");
+  private static final KeyGroup KEYS = group();
+
+  private static KeyGroup group() {
+    List<Key> keys =
+        new ArrayList<>(
+            List.of(
+                Key.required(
+                    "transform", new Kind.Words(Basis.all().stream().map(Basis::id).toList()), ""),
+                Key.optional(
+                    "basis",
+                    BASES,
+                    "`own`",
+                    "pca: sent, or learnt from `pictures.train` and not sent; not over tiles"),
+                Key.optional("over", OVER, "`rows` for mean and pca, `blocks` for dct and wht", ""),
+                Key.optional(
+                    "side",
+                    SIDE,
+                    Integer.toString(DEFAULT_SIDE),
+                    "of a block, in samples; wht: a power of two"),
+                Key.optional("grid", TILES, "must be given with tiles", "")));
+    keys.addAll(KeepReader.keys());
+    keys.add(
+        Key.optional(
+            "step",
+            new Kind.OneOrMore(Quantizer.KIND),
+            Quantizer.plain(DEFAULT_STEP),
+            "width of a quantiser step"));
+    keys.add(
+        Key.optional(
+            "weights",
+            Kind.Words.of(LuminanceSteps.ID),
+            "none",
+            "in place of step, with dct over blocks of side 8"));
+    keys.add(
+        Key.optional(
+            "quality",
+            new Kind.OneOrMore(QUALITY),
+            "must be given with weights",
+            "coarse to fine"));
+    keys.add(Codec.LABEL);
+    return new KeyGroup("transform", keys, List.of(), "");
+  }
 
   @Override
   public String id() {
     return "transform";
+  }
+
+  @Override
+  public Optional<KeyGroup> keys() {
+    return Optional.of(KEYS);
   }
 
   @Override
@@ -68,7 +107,7 @@ public final class TransformCodecFamily implements CodecFamily {
 
   @Override
   public List<Codec> read(YamlNode entry, Link link) {
-    entry.onlyKeys(KEYS);
+    KEYS.check(entry);
     Basis basis = basis(entry);
     Optional<TiledCodec.Grid> grid = grid(entry, basis);
     Arrangement arrangement = grid.isPresent() ? new Arrangement.Rows() : arrangement(entry, basis);
@@ -106,13 +145,13 @@ public final class TransformCodecFamily implements CodecFamily {
   }
 
   private static Basis basis(YamlNode entry) {
-    String id = entry.get("transform").oneOf(Basis.all().stream().map(Basis::id).toList());
+    String id = entry.get("transform").text();
     var basis = entry.find("basis");
     if (basis.isPresent()) {
       if (!id.equals(PcaBasis.ID)) {
         throw basis.get().refuse("does not go with 'transform: " + id + "'; accepted with pca");
       }
-      if (basis.get().oneOf(List.of("own", "shared")).equals("shared")) {
+      if (BASES.read(basis.get()).equals("shared")) {
         return new SharedPcaBasis(null);
       }
     }
@@ -120,8 +159,7 @@ public final class TransformCodecFamily implements CodecFamily {
   }
 
   private static Optional<TiledCodec.Grid> grid(YamlNode entry, Basis basis) {
-    boolean tiles =
-        entry.find("over").map(node -> node.oneOf(ARRANGEMENTS).equals("tiles")).orElse(false);
+    boolean tiles = entry.find("over").map(node -> OVER.read(node).equals("tiles")).orElse(false);
     if (!tiles) {
       entry
           .find("grid")
@@ -141,17 +179,12 @@ public final class TransformCodecFamily implements CodecFamily {
               throw node.refuse("belongs to 'over: blocks'; accepted: no side over tiles");
             });
     YamlNode node = entry.get("grid");
-    String accepted = "columns x rows, from 1x1 up to " + TiledCodec.MOST_TILES + " tiles, as 4x4";
-    Matcher matcher = GRID.matcher(node.text());
-    if (!matcher.matches()) {
-      throw node.bad(accepted);
-    }
+    List<String> sides = List.of(TILES.read(node).split("x", 2));
     try {
       return Optional.of(
-          new TiledCodec.Grid(
-              Integer.parseInt(matcher.group(1)), Integer.parseInt(matcher.group(2))));
+          new TiledCodec.Grid(Integer.parseInt(sides.get(0)), Integer.parseInt(sides.get(1))));
     } catch (IllegalArgumentException e) {
-      throw node.bad(accepted);
+      throw node.bad(TILES.accepted());
     }
   }
 
@@ -159,7 +192,7 @@ public final class TransformCodecFamily implements CodecFamily {
     boolean blocks =
         entry
             .find("over")
-            .map(node -> node.oneOf(ARRANGEMENTS).equals("blocks"))
+            .map(node -> OVER.read(node).equals("blocks"))
             .orElse(Set.of("dct", "wht").contains(basis.id()));
     if (blocks) {
       return new Arrangement.Blocks(
@@ -175,7 +208,7 @@ public final class TransformCodecFamily implements CodecFamily {
   }
 
   private static int side(YamlNode node, Basis basis) {
-    int side = (int) node.integer(2, 64);
+    int side = SIDE.read(node);
     if (basis instanceof WalshBasis && !WalshBasis.isPowerOfTwo(side)) {
       throw node.bad("2, 4, 8, 16, 32 or 64 with 'transform: wht'");
     }
@@ -202,7 +235,6 @@ public final class TransformCodecFamily implements CodecFamily {
   private static List<LuminanceSteps> luminanceSteps(
       YamlNode entry, Basis basis, Arrangement arrangement) {
     YamlNode weights = entry.get("weights");
-    String unused = weights.oneOf(List.of(LuminanceSteps.ID));
     if (!basis.id().equals("dct")
         || !arrangement.equals(new Arrangement.Blocks(LuminanceSteps.SIDE))) {
       throw weights.refuse("is for blocks of 8 x 8; accepted with 'transform: dct', side 8");
@@ -211,7 +243,7 @@ public final class TransformCodecFamily implements CodecFamily {
       throw entry.get("step").refuse("stands beside 'weights'; accepted: one of the two");
     }
     return entry.get("quality").oneOrMore().stream()
-        .map(node -> new LuminanceSteps((int) node.integer(1, 100)))
+        .map(node -> new LuminanceSteps(QUALITY.read(node)))
         .toList();
   }
 }

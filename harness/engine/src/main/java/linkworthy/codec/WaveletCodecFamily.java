@@ -1,23 +1,47 @@
 package linkworthy.codec;
 
 import java.util.Arrays;
-import java.util.LinkedHashSet;
 import java.util.List;
-import java.util.Set;
+import java.util.Optional;
+import linkworthy.input.Key;
+import linkworthy.input.KeyGroup;
+import linkworthy.input.Kind;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
 
 /** Reads wavelet codecs from a study: {@code wavelet: cdf-9-7} and so on. */
 public final class WaveletCodecFamily implements CodecFamily {
-  private static final Set<String> KEYS =
-      new LinkedHashSet<>(List.of("wavelet", "levels", "step", "bits-per-pixel", "label"));
   private static final int DEFAULT_LEVELS = 5;
-  private static final int MOST_LEVELS = 10;
   private static final double DEFAULT_STEP = 8;
+  private static final Kind.Whole LEVELS = new Kind.Whole(1, 10);
+  private static final KeyGroup KEYS =
+      KeyGroup.of(
+          "wavelet",
+          Key.required(
+              "wavelet",
+              new Kind.Words(Arrays.stream(Wavelet.values()).map(Wavelet::id).toList()),
+              ""),
+          Key.optional(
+              "levels",
+              LEVELS,
+              Integer.toString(DEFAULT_LEVELS),
+              "times the lowest band is split again"),
+          Key.optional(
+              "step",
+              new Kind.OneOrMore(Quantizer.KIND),
+              Quantizer.plain(DEFAULT_STEP),
+              "width of a quantiser step"),
+          RateTarget.KEY,
+          Codec.LABEL);
 
   @Override
   public String id() {
     return "wavelet";
+  }
+
+  @Override
+  public Optional<KeyGroup> keys() {
+    return Optional.of(KEYS);
   }
 
   @Override
@@ -41,13 +65,11 @@ public final class WaveletCodecFamily implements CodecFamily {
 
   @Override
   public List<Codec> read(YamlNode entry, Link link) {
-    entry.onlyKeys(KEYS);
-    String id =
-        entry.get("wavelet").oneOf(Arrays.stream(Wavelet.values()).map(Wavelet::id).toList());
+    KEYS.check(entry);
+    String id = entry.get("wavelet").text();
     Wavelet wavelet =
         Arrays.stream(Wavelet.values()).filter(w -> w.id().equals(id)).findFirst().orElseThrow();
-    int levels =
-        entry.find("levels").map(node -> (int) node.integer(1, MOST_LEVELS)).orElse(DEFAULT_LEVELS);
+    int levels = entry.find("levels").map(LEVELS::read).orElse(DEFAULT_LEVELS);
     String label = entry.find("label").map(node -> node.line(Codec.MAX_LABEL)).orElse("");
     List<Codec> codecs =
         RateTarget.readEither(

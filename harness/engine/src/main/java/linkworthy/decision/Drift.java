@@ -8,12 +8,14 @@ import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Set;
 import java.util.function.Predicate;
+import java.util.stream.Collectors;
 import linkworthy.input.BadInput;
 import linkworthy.input.Require;
 import linkworthy.input.Unavailable;
 import linkworthy.results.ResultsFolder;
 import linkworthy.results.TrialsCsv;
 import linkworthy.statistics.Holm;
+import linkworthy.trial.Trial;
 
 /**
  * Two runs compared cell by cell: what moved, what stayed the same within a tolerance, and what the
@@ -43,6 +45,7 @@ public final class Drift {
   public static final double ALPHA = 0.05;
 
   private static final double MAX_TOLERANCE_DB = 100;
+  private static final int CHANGES_TOLD = 4;
 
   private final List<Change> changes;
   private final List<CellDrift> cells;
@@ -67,13 +70,14 @@ public final class Drift {
    * Compares two records.
    *
    * @param toleranceDb smallest difference of mean PSNR that matters, 0 to 100 dB
-   * @throws BadInput if a run is not complete, a file cannot be used, or no cell is in both
+   * @throws BadInput if a run is not complete, contradicts itself or cannot be read, or no cell is
+   *     in both
    * @throws Unavailable if a file cannot be read
    * @throws IllegalArgumentException if the tolerance is outside its range
    */
   public static Drift between(ResultsFolder old, ResultsFolder now, double toleranceDb) {
-    RunFigures.requireComplete(old);
-    RunFigures.requireComplete(now);
+    old.requireComplete();
+    now.requireComplete();
     Circumstances before = Circumstances.of(old);
     Circumstances after = Circumstances.of(now);
     Drift drift =
@@ -83,15 +87,32 @@ public final class Drift {
             after.unchangedPictures(before),
             cell -> after.hasNoiseOf(before, cell),
             toleranceDb);
+    List<Change> changes = after.since(before);
     if (drift.cells.isEmpty()) {
       throw new BadInput(
           now.path()
               + " has no cell in common with "
               + old.path()
+              + ": "
+              + words(changes)
               + "; accepted: two runs that share an impairment at a severity and a codec");
     }
-    return new Drift(
-        after.since(before), drift.cells, drift.onlyOld, drift.onlyNew, sameBytes(old, now));
+    return new Drift(changes, drift.cells, drift.onlyOld, drift.onlyNew, sameBytes(old, now));
+  }
+
+  private static String words(List<Change> changes) {
+    String first =
+        changes.stream()
+            .limit(CHANGES_TOLD)
+            .map(
+                change -> change.what() + " " + said(change.before()) + ", " + said(change.after()))
+            .collect(Collectors.joining("; "));
+    int more = changes.size() - CHANGES_TOLD;
+    return "they differ in " + first + (more > 0 ? " and " + more + " more" : "");
+  }
+
+  private static String said(String setting) {
+    return setting.isEmpty() ? "absent" : "'" + setting + "'";
   }
 
   private static boolean sameBytes(ResultsFolder old, ResultsFolder now) {
@@ -101,6 +122,25 @@ public final class Drift {
     } catch (IOException e) {
       throw Unavailable.cannot("read " + file, e);
     }
+  }
+
+  /**
+   * Compares the trials of two runs, of which nothing else is known.
+   *
+   * @param unchangedPictures ids of the pictures that are the same in both
+   * @param sameNoise whether equal replicates of these pictures met the same noise in a cell
+   * @param toleranceDb smallest difference of mean PSNR that matters, 0 to 100 dB
+   * @throws IllegalArgumentException if the tolerance is outside its range, or a picture has a
+   *     replicate of a cell twice
+   */
+  public static Drift between(
+      Iterable<Trial> old,
+      Iterable<Trial> now,
+      Set<String> unchangedPictures,
+      Predicate<CellKey> sameNoise,
+      double toleranceDb) {
+    return between(
+        RunFigures.of(old), RunFigures.of(now), unchangedPictures, sameNoise, toleranceDb);
   }
 
   static Drift between(

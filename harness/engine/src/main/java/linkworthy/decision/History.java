@@ -1,7 +1,5 @@
 package linkworthy.decision;
 
-import java.io.IOException;
-import java.io.UncheckedIOException;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.ArrayList;
@@ -10,12 +8,9 @@ import java.util.Comparator;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
-import java.util.Objects;
 import java.util.Set;
 import java.util.TreeSet;
-import java.util.stream.Stream;
 import linkworthy.input.BadInput;
-import linkworthy.input.Unavailable;
 import linkworthy.results.ResultsFolder;
 import linkworthy.results.RunRecord;
 import linkworthy.statistics.Cell;
@@ -50,20 +45,18 @@ public final class History {
    *
    * @throws BadInput if there is no such folder, no complete run in it, runs of several studies, or
    *     a record that cannot be used
-   * @throws Unavailable if a folder cannot be read
+   * @throws linkworthy.input.Unavailable if a folder cannot be read
    */
   public static History over(Path folder) {
-    if (!Files.isDirectory(folder)) {
-      throw new BadInput(
-          folder
-              + (Files.exists(folder) ? " is no folder" : " does not exist")
-              + "; accepted: a folder with results folders in it");
-    }
     List<ResultsFolder> runs = new ArrayList<>();
     List<Path> incomplete = new ArrayList<>();
-    for (Path path : recordsBelow(folder)) {
+    for (Path path : ResultsFolder.below(folder)) {
+      if (!Files.exists(path.resolve(RunRecord.FILE))) {
+        continue;
+      }
       ResultsFolder found = ResultsFolder.open(path);
       if (found.run().complete()) {
+        long unused = found.trials(trial -> {});
         runs.add(found);
       } else {
         incomplete.add(path);
@@ -85,20 +78,6 @@ public final class History {
         Comparator.comparing((ResultsFolder run) -> run.run().start())
             .thenComparing(run -> run.path().toString()));
     return new History(runs, incomplete);
-  }
-
-  private static List<Path> recordsBelow(Path folder) {
-    try (Stream<Path> paths = Files.walk(folder)) {
-      return paths
-          .filter(path -> path.endsWith(RunRecord.FILE) && Files.isRegularFile(path))
-          .map(path -> path.resolveSibling(""))
-          .sorted()
-          .toList();
-    } catch (UncheckedIOException e) {
-      throw Unavailable.cannot("read " + folder, Objects.requireNonNull(e.getCause()));
-    } catch (IOException e) {
-      throw Unavailable.cannot("read " + folder, e);
-    }
   }
 
   /** The complete runs, oldest first. */

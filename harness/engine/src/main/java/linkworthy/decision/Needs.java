@@ -1,10 +1,11 @@
 package linkworthy.decision;
 
 import java.util.ArrayList;
-import java.util.LinkedHashSet;
 import java.util.List;
-import java.util.Set;
 import linkworthy.input.BadInput;
+import linkworthy.input.Key;
+import linkworthy.input.KeyGroup;
+import linkworthy.input.Kind;
 import linkworthy.input.YamlNode;
 
 /**
@@ -20,6 +21,62 @@ public record Needs(double confidence, List<Need> needs) {
 
   private static final List<String> LEVELS =
       List.of("at-least", "at-most", "mean-at-least", "mean-at-most");
+  private static final Kind.Real LEVEL = Kind.Real.any("a number, in the unit of the measure");
+  private static final Kind.Real SHARE =
+      new Kind.Real(
+          0,
+          true,
+          1,
+          true,
+          "a share above 0 and below 1 (no sample shows that every picture does)");
+  private static final Kind.Real LIKELY =
+      new Kind.Real(0.5, true, 1, true, "a number above 0.5 and below 1, such as 0.95");
+
+  private static final KeyGroup NEED =
+      KeyGroup.of(
+              "need",
+              Key.required(
+                  "measure",
+                  Kind.Text.any(
+                      "a column of numbers in `trials.csv`, with dashes for underscores, or"
+                          + " `outage-rate`"),
+                  "what is to be good enough"),
+              level("at-least", "lowest accepted"),
+              level("at-most", "highest accepted"),
+              level("mean-at-least", "lowest accepted mean over pictures"),
+              level("mean-at-most", "highest accepted mean over pictures"),
+              Key.optional(
+                  "for",
+                  SHARE,
+                  "the mean must reach the level",
+                  "share of pictures that must reach the level, with at-least or at-most; a"
+                      + " picture's figure is the mean over its replicates"),
+              Key.optional(
+                  "where",
+                  new Kind.AnyKeys(
+                      new Kind.OneOrMore(
+                          Kind.Text.any(
+                              "a word, a number, a comparison such as `\"<= 0.05\"`, or a range"
+                                  + " such as `\"10 to 20\"`"))),
+                  "every noisy condition",
+                  "conditions in which the need must hold, in each of them: `impairment`, `acts-on`"
+                      + " and any key by which the study gave a severity"))
+          .exactlyOne("level", LEVELS);
+
+  /** What a file of needs holds. */
+  public static final KeyGroup KEYS =
+      KeyGroup.of(
+          "needs",
+          Key.optional(
+              "confidence",
+              LIKELY,
+              Plain.number(CONFIDENCE),
+              "with which every statement together shall be right"),
+          Key.required("needs", new Kind.Items(NEED), "all of which must be met"));
+
+  private static Key level(String name, String what) {
+    return Key.optional(name, LEVEL, "one of the four must be given", what);
+  }
 
   /**
    * @throws IllegalArgumentException if the confidence is out of range or there is no need
@@ -42,12 +99,8 @@ public record Needs(double confidence, List<Need> needs) {
    *     picks nothing
    */
   public static Needs read(YamlNode root, Measurements measured) {
-    root.onlyKeys(inOrder("confidence", "needs"));
-    YamlNode confidence = root.find("confidence").orElse(null);
-    double level =
-        confidence == null
-            ? CONFIDENCE
-            : between(confidence, 0.5, "a number above 0.5 and below 1, such as 0.95");
+    KEYS.check(root);
+    double level = root.find("confidence").map(LIKELY::read).orElse(CONFIDENCE);
     List<Need> needs = new ArrayList<>();
     for (YamlNode need : root.get("needs").items()) {
       needs.add(need(need, measured));
@@ -55,19 +108,13 @@ public record Needs(double confidence, List<Need> needs) {
     return new Needs(level, needs);
   }
 
-  private static Set<String> inOrder(String... keys) {
-    return new LinkedHashSet<>(List.of(keys));
-  }
-
   private static Need need(YamlNode node, Measurements measured) {
-    node.onlyKeys(
-        inOrder("measure", "at-least", "at-most", "mean-at-least", "mean-at-most", "for", "where"));
     YamlNode measure = node.get("measure");
     if (!measured.measures().contains(measure.text())) {
       throw Where.unknownMeasure(measure, measured.measures());
     }
-    String key = level(node);
-    double level = node.get(key).number("a number, in the unit of the measure");
+    String key = LEVELS.stream().filter(k -> node.find(k).isPresent()).findFirst().orElseThrow();
+    double level = LEVEL.read(node.get(key));
     boolean atLeast = key.endsWith("at-least");
     double share = share(node, key, measure.text());
     YamlNode where = node.find("where").filter(w -> !w.keys().isEmpty()).orElse(null);
@@ -85,18 +132,6 @@ public record Needs(double confidence, List<Need> needs) {
             + (where == null ? "" : ", where " + Where.text(where)));
   }
 
-  private static String level(YamlNode node) {
-    List<String> given = LEVELS.stream().filter(key -> node.find(key).isPresent()).toList();
-    if (given.size() != 1) {
-      throw node.refuse(
-          "has "
-              + (given.isEmpty() ? "no level" : String.join(" and ", given))
-              + "; accepted: one of "
-              + String.join(", ", LEVELS));
-    }
-    return given.get(0);
-  }
-
   private static double share(YamlNode node, String key, String measure) {
     YamlNode share = node.find("for").orElse(null);
     if (share == null) {
@@ -108,15 +143,6 @@ public record Needs(double confidence, List<Need> needs) {
     if (measure.equals(Measurements.OUTAGE_RATE)) {
       throw share.refuse("stands with outage-rate; accepted: with measures of a picture only");
     }
-    return between(
-        share, 0, "a share above 0 and below 1 (no sample shows that every picture does)");
-  }
-
-  private static double between(YamlNode node, double low, String accepted) {
-    double value = node.number(accepted);
-    if (!(value > low && value < 1)) {
-      throw node.bad(accepted);
-    }
-    return value;
+    return SHARE.read(share);
   }
 }

@@ -6,12 +6,13 @@ import java.io.UncheckedIOException;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Path;
 import java.util.LinkedHashMap;
-import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Map;
 import java.util.Objects;
-import java.util.Set;
 import linkworthy.input.BadInput;
+import linkworthy.input.Key;
+import linkworthy.input.KeyGroup;
+import linkworthy.input.Kind;
 import linkworthy.input.Require;
 import linkworthy.input.Spelling;
 import linkworthy.input.YamlNode;
@@ -45,19 +46,31 @@ public record NodeProfile(
     @Nullable Radio radio) {
   private static final String ID = "[a-z][a-z0-9-]{0,63}";
   private static final String FOLDER = "/linkworthy/noise/library/nodes/";
-  private static final Set<String> KEYS =
-      new LinkedHashSet<>(
-          List.of(
+  private static final Kind.Real NOT_NEGATIVE =
+      Kind.Real.from(0, Double.MAX_VALUE, "a finite number of at least 0");
+  private static final Kind.Real POSITIVE =
+      Kind.Real.above(0, Double.MAX_VALUE, "a finite number above 0");
+
+  /** What a profile file holds. */
+  public static final KeyGroup KEYS =
+      KeyGroup.of(
+          "node-profile",
+          Key.required(
               "id",
+              new Kind.Text(ID, "lower-case letters, digits and hyphens, a letter first"),
+              "name in reports"),
+          Key.required(
               "sent-nj-per-bit",
-              "received-nj-per-bit",
-              "mac-nj",
-              "sleep-mw",
-              "ram-kib",
-              "kbit-per-second",
-              "battery-j",
-              "source",
-              "notes"));
+              new Kind.GroupOr(Radio.KEYS, NOT_NEGATIVE),
+              "energy to send a bit, nJ"),
+          Key.required("received-nj-per-bit", NOT_NEGATIVE, "energy to receive a bit, nJ"),
+          Key.required("mac-nj", NOT_NEGATIVE, "energy of a multiply-accumulate, nJ"),
+          Key.required("sleep-mw", NOT_NEGATIVE, "power between pictures, mW"),
+          Key.required("ram-kib", POSITIVE, "working memory, KiB"),
+          Key.required("kbit-per-second", POSITIVE, "bit rate on the air, kbit/s"),
+          Key.required("battery-j", POSITIVE, "usable energy of the battery, J"),
+          Key.required("source", Kind.Text.any(), "where the numbers come from"),
+          Key.optional("notes", Kind.Text.any(), "none", "what else a reader should know"));
 
   /**
    * @throws IllegalArgumentException if a figure is negative or not finite, or the memory, bit rate
@@ -114,9 +127,16 @@ public record NodeProfile(
    */
   public record Radio(
       double electronicsNanojoules, double nearPicojoules, double farPicojoules, double metres) {
-    private static final Set<String> KEYS =
-        new LinkedHashSet<>(
-            List.of("electronics-nj", "near-pj-per-m2", "far-pj-per-m4", "distance-m"));
+    /** The keys of a radio. */
+    public static final KeyGroup KEYS =
+        KeyGroup.of(
+            "radio",
+            Key.required(
+                "electronics-nj", NOT_NEGATIVE, "energy of a bit before the amplifier, nJ"),
+            Key.required(
+                "near-pj-per-m2", POSITIVE, "amplifier up to √(near/far) m, pJ a bit and m²"),
+            Key.required("far-pj-per-m4", POSITIVE, "amplifier beyond, pJ a bit and m⁴"),
+            Key.required("distance-m", NOT_NEGATIVE, "metres to the receiver"));
 
     public Radio {
       Require.notNegative(electronicsNanojoules, "electronics-nj (nJ)");
@@ -126,12 +146,11 @@ public record NodeProfile(
     }
 
     private static Radio parse(YamlNode group) {
-      group.onlyKeys(KEYS);
       return new Radio(
-          number(group, "electronics-nj", false),
-          number(group, "near-pj-per-m2", true),
-          number(group, "far-pj-per-m4", true),
-          number(group, "distance-m", false));
+          NOT_NEGATIVE.read(group.get("electronics-nj")),
+          POSITIVE.read(group.get("near-pj-per-m2")),
+          POSITIVE.read(group.get("far-pj-per-m4")),
+          NOT_NEGATIVE.read(group.get("distance-m")));
     }
 
     private Map<String, Object> settings() {
@@ -191,34 +210,20 @@ public record NodeProfile(
    * @throws BadInput if they cannot be used; one line with file, line and key
    */
   public static NodeProfile parse(YamlNode root) {
-    root.onlyKeys(KEYS);
-    String id = root.get("id").text();
-    if (!id.matches(ID)) {
-      throw root.get("id").bad("lower-case letters, digits and hyphens, a letter first");
-    }
+    KEYS.check(root);
     YamlNode sent = root.get("sent-nj-per-bit");
     Radio radio = sent.isMapping() ? Radio.parse(sent) : null;
     return new NodeProfile(
-        id,
-        radio == null ? number(root, "sent-nj-per-bit", false) : radio.sentNanojoules(),
-        number(root, "received-nj-per-bit", false),
-        number(root, "mac-nj", false),
-        number(root, "sleep-mw", false),
-        number(root, "ram-kib", true),
-        number(root, "kbit-per-second", true),
-        number(root, "battery-j", true),
+        root.get("id").text(),
+        radio == null ? NOT_NEGATIVE.read(sent) : radio.sentNanojoules(),
+        NOT_NEGATIVE.read(root.get("received-nj-per-bit")),
+        NOT_NEGATIVE.read(root.get("mac-nj")),
+        NOT_NEGATIVE.read(root.get("sleep-mw")),
+        POSITIVE.read(root.get("ram-kib")),
+        POSITIVE.read(root.get("kbit-per-second")),
+        POSITIVE.read(root.get("battery-j")),
         root.get("source").text(),
         radio);
-  }
-
-  private static double number(YamlNode root, String key, boolean positive) {
-    String accepted = "a finite number " + (positive ? "above 0" : "of at least 0");
-    YamlNode node = root.get(key);
-    double value = node.number(accepted);
-    if (value < 0 || (positive && value == 0)) {
-      throw node.bad(accepted);
-    }
-    return value;
   }
 
   /** The profile as a file writes it, in a fixed order. */

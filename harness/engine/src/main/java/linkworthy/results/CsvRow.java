@@ -74,13 +74,18 @@ final class CsvRow {
     }
   }
 
+  /** A text, as it was before {@link CsvTable#harmless}. */
   String words(String column) {
+    return CsvTable.original(field(column));
+  }
+
+  private String field(String column) {
     return record.get(names.indexOf(column));
   }
 
   /** A number; NaN where the field is empty or says {@code n/a}. */
   double number(String column) {
-    String text = words(column);
+    String text = field(column);
     return switch (text) {
       case "", NO_EVIDENCE -> Double.NaN;
       case "inf" -> Double.POSITIVE_INFINITY;
@@ -95,7 +100,7 @@ final class CsvRow {
   }
 
   long whole(String column, long min, long max) {
-    String text = words(column);
+    String text = field(column);
     if (WHOLE.matcher(text).matches()) {
       long value = Long.parseLong(text);
       if (value >= min && value <= max) {

@@ -20,6 +20,7 @@ import java.util.Map;
 import java.util.Objects;
 import java.util.function.Consumer;
 import java.util.function.Function;
+import java.util.regex.Pattern;
 import linkworthy.input.BadInput;
 import linkworthy.input.Decimal;
 import org.apache.commons.csv.CSVException;
@@ -36,6 +37,7 @@ import org.jspecify.annotations.Nullable;
  */
 final class CsvTable<T> {
   private static final String INFINITE = "inf";
+  private static final Pattern FORMULA = Pattern.compile("'*[=+\\-@\t\r]");
   private static final CSVFormat FORMAT =
       CSVFormat.RFC4180.builder().setRecordSeparator("\n").get();
 
@@ -93,8 +95,23 @@ final class CsvTable<T> {
     return table.header() + table.lines(rows);
   }
 
+  /** A column of text; see {@link #harmless}. */
   static <T> Column<T> words(String name, Function<T, String> value) {
-    return new Column<>(name, value);
+    return new Column<>(name, row -> harmless(value.apply(row)));
+  }
+
+  /**
+   * Text that no spreadsheet takes for a formula: where it begins with {@code =}, {@code +}, {@code
+   * -}, {@code @}, a tab or a carriage return, whatever number of apostrophes before that, one more
+   * apostrophe is put in front.
+   */
+  static String harmless(String text) {
+    return FORMULA.matcher(text).lookingAt() ? "'" + text : text;
+  }
+
+  /** The text that {@link #harmless} made this of. */
+  static String original(String field) {
+    return field.startsWith("'") && FORMULA.matcher(field).lookingAt() ? field.substring(1) : field;
   }
 
   static <T> Column<T> whole(String name, Function<T, Number> value) {

@@ -1,6 +1,7 @@
 package linkworthy.results;
 
 import java.io.IOException;
+import java.io.UncheckedIOException;
 import java.nio.charset.CharacterCodingException;
 import java.nio.file.Files;
 import java.nio.file.Path;
@@ -9,10 +10,13 @@ import java.time.ZoneOffset;
 import java.time.format.DateTimeFormatter;
 import java.util.List;
 import java.util.Locale;
+import java.util.Objects;
 import java.util.function.Consumer;
+import java.util.stream.Stream;
 import linkworthy.codec.CodecFamilies;
 import linkworthy.codec.CodecReader;
 import linkworthy.input.BadInput;
+import linkworthy.input.Unavailable;
 import linkworthy.statistics.Cell;
 import linkworthy.study.Study;
 import linkworthy.study.StudyReader;
@@ -83,6 +87,35 @@ public final class ResultsFolder {
       requireFile(folder, CellsCsv.FILE);
     }
     return new ResultsFolder(folder, run);
+  }
+
+  /**
+   * Every folder below a folder, or the folder itself, that has the record of a run or a table of
+   * trials, in the order of the paths. Whether it can be used is another matter.
+   *
+   * @throws BadInput if there is no such folder
+   * @throws Unavailable if a folder cannot be read
+   */
+  public static List<Path> below(Path folder) {
+    if (!Files.isDirectory(folder)) {
+      throw new BadInput(
+          folder
+              + (Files.exists(folder) ? " is no folder" : " does not exist")
+              + "; accepted: a folder with results folders in it");
+    }
+    try (Stream<Path> paths = Files.walk(folder)) {
+      return paths
+          .filter(path -> path.endsWith(RunRecord.FILE) || path.endsWith(TrialsCsv.FILE))
+          .filter(Files::isRegularFile)
+          .map(path -> path.resolveSibling(""))
+          .distinct()
+          .sorted()
+          .toList();
+    } catch (UncheckedIOException e) {
+      throw Unavailable.cannot("read " + folder, Objects.requireNonNull(e.getCause()));
+    } catch (IOException e) {
+      throw Unavailable.cannot("read " + folder, e);
+    }
   }
 
   private static void requireFolder(Path folder) {
@@ -294,13 +327,48 @@ public final class ResultsFolder {
   }
 
   /**
-   * Reads the trials one by one, in the order of the plan.
+   * Reads the trials one by one, in the order of the plan, and holds the record against itself.
+   *
+   * @return the number of trials
+   * @throws BadInput if the file is cut off or no table of trials, has a row twice or in the wrong
+   *     place, or if a complete run has not as many rows as it says or cells that do not follow
+   *     from them
+   */
+  public long trials(Consumer<? super Trial> each) {
+    RecordCheck check = new RecordCheck(this);
+    long rows =
+        rows(
+            trial -> {
+              check.require(trial);
+              each.accept(trial);
+            });
+    check.requireEnd();
+    return rows;
+  }
+
+  /**
+   * Reads the trials one by one, whatever else the record says.
    *
    * @return the number of trials
    * @throws BadInput if the file is cut off or no table of trials
    */
-  public long trials(Consumer<? super Trial> each) {
+  public long rows(Consumer<? super Trial> each) {
     return TrialsCsv.read(folder.resolve(TrialsCsv.FILE), each);
+  }
+
+  /**
+   * @throws BadInput if the run is not complete
+   */
+  public void requireComplete() {
+    if (!run.complete()) {
+      throw new BadInput(
+          folder
+              + " is the record of a run that is not complete ("
+              + run.trialsDone()
+              + " of "
+              + run.trialsPlanned()
+              + " trials); accepted: a complete run");
+    }
   }
 
   /**

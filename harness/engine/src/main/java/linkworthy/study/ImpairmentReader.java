@@ -6,13 +6,13 @@ import java.util.ArrayList;
 import java.util.Collection;
 import java.util.HashMap;
 import java.util.HashSet;
-import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Map;
 import java.util.Set;
 import java.util.TreeMap;
 import linkworthy.input.BadInput;
 import linkworthy.input.Decimal;
+import linkworthy.input.Kind;
 import linkworthy.input.YamlNode;
 import linkworthy.noise.NoiseLibrary;
 import linkworthy.noise.NoiseModel;
@@ -22,7 +22,6 @@ import linkworthy.noise.Site;
 /** Reads the impairments of a study and keeps watch over their labels. */
 final class ImpairmentReader {
   private static final List<String> FIXED_KEYS = List.of("noise", "acts-on", "label");
-  private static final int MAX_LABEL = 64;
 
   private final Path baseFolder;
   private final Map<Place, NoiseModel> models = new HashMap<>();
@@ -38,11 +37,7 @@ final class ImpairmentReader {
 
   ImpairmentChoice read(YamlNode entry) {
     NoiseModel plain = model(entry.get("noise"));
-    Set<String> parameters = plain.implementation().parameters().keySet();
-    Set<String> accepted = new LinkedHashSet<>(FIXED_KEYS);
-    accepted.addAll(parameters);
-    accepted.addAll(plain.axes());
-    entry.onlyKeys(accepted);
+    StudyKeys.impairment("impairment", Kind.Text.any(), plain).check(entry);
 
     NoiseModel model = inForce(entry, plain);
     String label = entry.find("label").map(ImpairmentReader::label).orElse(model.id());
@@ -100,7 +95,7 @@ final class ImpairmentReader {
   }
 
   private static String label(YamlNode node) {
-    String label = node.line(MAX_LABEL);
+    String label = StudyKeys.LABEL.read(node).strip();
     if (label.equals(ImpairmentChoice.CLEAN)) {
       throw node.refuse("is 'none', which is kept for clean pictures; accepted: another name");
     }
@@ -116,12 +111,7 @@ final class ImpairmentReader {
   }
 
   private static String axis(YamlNode entry, Collection<String> axes) {
-    List<String> given = axes.stream().filter(axis -> entry.find(axis).isPresent()).toList();
-    if (given.size() != 1) {
-      String found = given.isEmpty() ? "no severity" : "several: " + String.join(", ", given);
-      throw entry.refuse("has " + found + "; accepted: one of " + String.join(", ", axes));
-    }
-    return given.get(0);
+    return axes.stream().filter(axis -> entry.find(axis).isPresent()).findFirst().orElseThrow();
   }
 
   private double severity(

@@ -1,9 +1,6 @@
 package linkworthy.study;
 
 import java.nio.file.Path;
-import java.util.LinkedHashSet;
-import java.util.List;
-import java.util.Set;
 import linkworthy.input.YamlNode;
 import linkworthy.link.NodeProfile;
 import org.jspecify.annotations.Nullable;
@@ -16,8 +13,6 @@ import org.jspecify.annotations.Nullable;
 final class NodeReader {
   private static final String PROFILE = "profile";
   private static final String INTERVAL = "interval-s";
-  private static final Set<String> KEYS = new LinkedHashSet<>(List.of(PROFILE, INTERVAL));
-  private static final String ACCEPTED_INTERVAL = "a number of seconds above 0";
 
   private NodeReader() {}
 
@@ -31,7 +26,6 @@ final class NodeReader {
           ? null
           : new NodeChoice(profile(node, baseFolder), interval(usualInterval));
     }
-    node.onlyKeys(KEYS);
     YamlNode profile = node.get(PROFILE);
     return new NodeChoice(
         profile.isMapping() ? NodeProfile.parse(profile) : profile(profile, baseFolder),
@@ -50,10 +44,6 @@ final class NodeReader {
   }
 
   private static double interval(YamlNode node) {
-    double seconds = node.number(ACCEPTED_INTERVAL);
-    if (!(seconds > 0)) {
-      throw node.bad(ACCEPTED_INTERVAL);
-    }
-    return seconds;
+    return StudyKeys.INTERVAL.read(node);
   }
 }

@@ -2,7 +2,6 @@ package linkworthy.study;
 
 import java.util.ArrayList;
 import java.util.EnumSet;
-import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Locale;
 import java.util.Set;
@@ -17,11 +16,6 @@ import org.jspecify.annotations.Nullable;
 final class ProtectionReader {
   private static final List<String> PARTS =
       List.of("repeat", "reed-solomon", "hamming", "retransmit");
-  private static final List<String> KEYS =
-      List.of("repeat", "reed-solomon", "hamming", "retransmit", "ack-bytes", "only");
-  private static final List<String> CODE_KEYS = List.of("n", "k", "depth");
-  private static final List<String> CLASSES =
-      List.of(Importance.values()).stream().map(Importance::id).toList();
 
   private final YamlNode defaults;
   private final Link link;
@@ -36,11 +30,9 @@ final class ProtectionReader {
   }
 
   Protection read(YamlNode node) {
-    if (!node.isMapping() && !node.isSequence()) {
-      if (node.text().equals(Protection.NONE_ID)) {
-        return Protection.NONE;
-      }
-      throw node.bad("none, a group of keys, or a list of such groups for classes of their own");
+    StudyKeys.protect().check(node);
+    if (StudyKeys.protect().isWord(node)) {
+      return Protection.NONE;
     }
     Set<Importance> taken = EnumSet.noneOf(Importance.class);
     List<Protection.Rule> rules = new ArrayList<>();
@@ -62,11 +54,10 @@ final class ProtectionReader {
   }
 
   private Protection.Rule rule(YamlNode group, Set<Importance> taken) {
-    group.onlyKeys(new LinkedHashSet<>(KEYS));
     if (PARTS.stream().noneMatch(part -> group.find(part).isPresent())) {
       throw group.refuse("protects nothing; accepted: one or more of " + String.join(", ", PARTS));
     }
-    int retransmit = whole(group, "retransmit", 0, Protection.MAX_RETRANSMIT);
+    int retransmit = StudyKeys.RETRANSMIT.read(given(group, "retransmit"));
     if (retransmit == 0 && group.find("ack-bytes").isPresent()) {
       throw group
           .get("ack-bytes")
@@ -74,25 +65,22 @@ final class ProtectionReader {
     }
     return new Protection.Rule(
         classes(group, taken),
-        whole(group, "repeat", 1, Protection.MAX_REPEAT),
+        StudyKeys.REPEAT.read(given(group, "repeat")),
         code(given(group, "reed-solomon")),
         hamming(given(group, "hamming")),
         retransmit,
-        whole(group, "ack-bytes", 0, Link.MAX_PAYLOAD));
+        StudyKeys.ACK.read(given(group, "ack-bytes")));
   }
 
   private YamlNode given(YamlNode group, String key) {
     return group.find(key).orElseGet(() -> defaults.get(key));
   }
 
-  private int whole(YamlNode group, String key, int min, int max) {
-    return (int) given(group, key).integer(min, max);
-  }
-
   private Set<Importance> classes(YamlNode group, Set<Importance> taken) {
     Set<Importance> classes = EnumSet.noneOf(Importance.class);
     for (YamlNode item : given(group, "only").oneOrMore()) {
-      Importance importance = Importance.valueOf(item.oneOf(CLASSES).toUpperCase(Locale.ROOT));
+      Importance importance =
+          Importance.valueOf(StudyKeys.CLASSES.read(item).toUpperCase(Locale.ROOT));
       if (!taken.add(importance)) {
         throw (group.find("only").isPresent() ? item : group)
             .refuse(
@@ -107,28 +95,17 @@ final class ProtectionReader {
 
   private Protection.@Nullable ErasureCode code(YamlNode node) {
     if (!node.isMapping()) {
-      if (!node.isSequence() && node.text().equals(Protection.NONE_ID)) {
-        return null;
-      }
-      throw node.bad("none, or a group with n, k and depth");
+      return null;
     }
-    node.onlyKeys(new LinkedHashSet<>(CODE_KEYS));
-    int n = (int) node.get("n").integer(2, 255);
-    int k = (int) node.get("k").integer(1, 254);
+    int n = StudyKeys.N.read(node.get("n"));
+    int k = StudyKeys.K.read(node.get("k"));
     if (k >= n) {
       throw node.get("k").refuse("is " + k + "; accepted: 1 to " + (n - 1) + ", below n");
     }
-    return new Protection.ErasureCode(n, k, whole(node, "depth", 1, Protection.MAX_DEPTH));
+    return new Protection.ErasureCode(n, k, StudyKeys.DEPTH.read(given(node, "depth")));
   }
 
   private @Nullable HammingCode hamming(YamlNode node) {
-    if (!node.isMapping()) {
-      if (!node.isSequence() && node.text().equals(Protection.NONE_ID)) {
-        return null;
-      }
-      throw node.bad("none, or a group with depth");
-    }
-    node.onlyKeys(Set.of("depth"));
-    return new HammingCode(whole(node, "depth", 1, Protection.MAX_DEPTH));
+    return node.isMapping() ? new HammingCode(StudyKeys.DEPTH.read(given(node, "depth"))) : null;
   }
 }

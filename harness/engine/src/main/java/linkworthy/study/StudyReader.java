@@ -19,13 +19,12 @@ import linkworthy.codec.CodecFamilies;
 import linkworthy.codec.CodecReader;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
+import linkworthy.input.Kind;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Link;
 import linkworthy.link.PartNumber;
 import linkworthy.link.Protection;
 import linkworthy.noise.Site;
-import linkworthy.quality.QualityMeasure;
-import linkworthy.quality.QualityMeasures;
 import linkworthy.study.PictureChoice.ManifestFile;
 import org.jspecify.annotations.Nullable;
 
@@ -38,9 +37,7 @@ import org.jspecify.annotations.Nullable;
  * (see {@link PictureChoice#open()}), so that a record can be read where its pictures are absent.
  */
 public final class StudyReader {
-  private static final YamlNode DEFAULTS =
-      YamlNode.parse("defaults.yaml", resource("defaults.yaml"));
-  private static final int MAX_PURPOSE = 2000;
+  static final YamlNode DEFAULTS = YamlNode.parse("defaults.yaml", resource("defaults.yaml"));
   private static final String PSNR = "psnr";
   private static final String PROTECT = "protect";
 
@@ -80,34 +77,21 @@ public final class StudyReader {
    * @throws BadInput if it cannot be used; one line with file, line and key
    */
   public static Study read(YamlNode root, Path baseFolder, CodecReader codecs) {
-    root.onlyKeys(
-        ordered(
-            "name",
-            "purpose",
-            "seed",
-            "pictures",
-            "impairments",
-            "codecs",
-            "protect",
-            "link",
-            "replicates",
-            "measures",
-            "node",
-            "raw-hop"));
+    StudyKeys.study(new Kind.Elsewhere(), new Kind.Elsewhere()).check(root);
     PictureChoice pictures =
         pictures(root.find("pictures").orElse(DEFAULTS.get("pictures")), baseFolder);
     YamlNode replicates = given(root, DEFAULTS, "replicates");
     EarlyStop rule = earlyStop(replicates);
     Link link = link(root.find("link").orElse(DEFAULTS.get("link")), pictures.hasAllPlanes());
     return new Study(
-        name(root.get("name")),
-        purpose(given(root, DEFAULTS, "purpose")),
-        given(root, DEFAULTS, "seed").integer(0, Study.MAX_SEED),
+        root.get("name").text(),
+        given(root, DEFAULTS, "purpose").text().strip(),
+        StudyKeys.SEED.readLong(given(root, DEFAULTS, "seed")),
         pictures,
         impairments(root.get("impairments"), baseFolder),
         codecs(root, link, pictures, codecs),
         link,
-        rule == null ? (int) replicates.integer(1, Study.MAX_REPLICATES) : rule.atMost(),
+        rule == null ? StudyKeys.REPLICATES.read(replicates) : rule.atMost(),
         measures(given(root, DEFAULTS, "measures")),
         NodeReader.read(given(root, DEFAULTS, "node"), DEFAULTS.get("node-interval-s"), baseFolder),
         root.find("raw-hop").map(node -> rawHop(node, baseFolder)).orElse(null),
@@ -133,36 +117,11 @@ public final class StudyReader {
     return group.find(key).orElseGet(() -> defaults.get(key));
   }
 
-  private static String name(YamlNode node) {
-    String name = node.text();
-    if (!Study.NAME.matcher(name).matches()) {
-      throw node.bad(
-          "up to 64 letters, digits, dots, dashes and underscores, a letter or digit first (it"
-              + " names a folder)");
-    }
-    return name;
-  }
-
-  private static String purpose(YamlNode node) {
-    String purpose = node.text().strip();
-    boolean control = purpose.chars().anyMatch(c -> Character.isISOControl(c) && c != '\n');
-    if (purpose.length() > MAX_PURPOSE || control) {
-      throw node.bad(
-          "text of up to " + MAX_PURPOSE + " characters, none of them a control character");
-    }
-    return purpose;
-  }
-
   private static PictureChoice pictures(YamlNode group, Path baseFolder) {
-    group.onlyKeys(
-        ordered("manifest", "select", "train", "longest-side", "planes", "chroma", "signal-power"));
     YamlNode defaults = DEFAULTS.get("pictures");
-    String power =
-        given(group, defaults, "signal-power")
-            .oneOf(Arrays.stream(SignalPower.values()).map(SignalPower::id).toList());
+    String power = StudyKeys.POWER.read(given(group, defaults, "signal-power"));
     List<String> select = distinct(given(group, defaults, "select"));
-    String planes =
-        given(group, defaults, "planes").oneOf(List.of(PictureChoice.LUMA, PictureChoice.ALL));
+    String planes = StudyKeys.PLANES.read(given(group, defaults, "planes"));
     return new PictureChoice(
         manifest(given(group, defaults, "manifest"), baseFolder),
         select,
@@ -187,8 +146,7 @@ public final class StudyReader {
 
   private static String chroma(YamlNode group, String planes) {
     if (planes.equals(PictureChoice.ALL)) {
-      return given(group, DEFAULTS.get("pictures"), "chroma")
-          .oneOf(List.of(PictureChoice.HALVED, PictureChoice.FULL));
+      return StudyKeys.CHROMA.read(given(group, DEFAULTS.get("pictures"), "chroma"));
     }
     boolean own = group != DEFAULTS.get("pictures");
     group
@@ -219,19 +177,9 @@ public final class StudyReader {
   }
 
   private static OptionalInt longestSide(YamlNode node) {
-    if (isNone(node)) {
-      return OptionalInt.empty();
-    }
-    try {
-      return OptionalInt.of((int) node.integer(PictureChoice.MIN_SIDE, Picture.MAX_SIDE));
-    } catch (BadInput e) {
-      throw node.bad(
-          "a whole number of samples from "
-              + PictureChoice.MIN_SIDE
-              + " to "
-              + Picture.MAX_SIDE
-              + ", or none");
-    }
+    return StudyKeys.LONGEST_SIDE.isWord(node)
+        ? OptionalInt.empty()
+        : OptionalInt.of((int) node.integer(PictureChoice.MIN_SIDE, Picture.MAX_SIDE));
   }
 
   private static List<ImpairmentChoice> impairments(YamlNode list, Path baseFolder) {
@@ -303,17 +251,18 @@ public final class StudyReader {
   }
 
   private static Link link(YamlNode group, boolean allPlanes) {
-    group.onlyKeys(ordered("payload-bytes", "header-bytes", "order"));
     YamlNode defaults = DEFAULTS.get("link");
     int plane = allPlanes ? 1 : 0;
-    List<Link.Order> orders = List.of(Link.Order.values());
-    List<String> words = orders.stream().map(Link.Order::id).toList();
     return new Link(
         (int)
             given(group, defaults, "payload-bytes")
                 .integer(Link.MIN_PAYLOAD + plane, Link.MAX_PAYLOAD),
         (int) given(group, defaults, "header-bytes").integer(0, Link.MAX_PAYLOAD - plane),
-        orders.get(words.indexOf(given(group, defaults, "order").oneOf(words))));
+        List.of(Link.Order.values())
+            .get(
+                StudyKeys.ORDER
+                    .accepted()
+                    .indexOf(StudyKeys.ORDER.read(given(group, defaults, "order")))));
   }
 
   /** The rule by which replicates end early; null if the node is a number of replicates. */
@@ -321,26 +270,13 @@ public final class StudyReader {
     if (!node.isMapping()) {
       return null;
     }
-    node.onlyKeys(ordered("at-least", "at-most", "half-width-db"));
-    int most = (int) node.get("at-most").integer(2, Study.MAX_REPLICATES);
+    int most = StudyKeys.AT_LEAST.read(node.get("at-most"));
     int least = (int) node.get("at-least").integer(2, most);
-    String accepted = "a half-width above 0, in dB";
-    double halfWidth = node.get("half-width-db").number(accepted);
-    if (!(halfWidth > 0) || Double.isInfinite(halfWidth)) {
-      throw node.get("half-width-db").bad(accepted);
-    }
-    return new EarlyStop(least, most, halfWidth);
+    return new EarlyStop(least, most, StudyKeys.HALF_WIDTH.read(node.get("half-width-db")));
   }
 
   private static List<String> measures(YamlNode list) {
     List<String> ids = distinct(list);
-    for (YamlNode item : list.oneOrMore()) {
-      try {
-        QualityMeasure unused = QualityMeasures.get(item.text());
-      } catch (BadInput e) {
-        throw item.refuse("cannot be used: " + e.getMessage());
-      }
-    }
     if (!ids.contains(PSNR)) {
       throw list.refuse("lacks psnr; accepted: a list with psnr in it");
     }
@@ -355,9 +291,5 @@ public final class StudyReader {
       }
     }
     return List.copyOf(words);
-  }
-
-  private static Set<String> ordered(String... keys) {
-    return new LinkedHashSet<>(Arrays.asList(keys));
   }
 }

@@ -12,11 +12,12 @@ import linkworthy.study.EarlyStop;
  * <p>With a fixed number of replicates every unit of the plan comes. Where a study has an {@link
  * EarlyStop}, the replicates of a picture under a severity end with the first one of number n (from
  * 1) for which n is {@code at-most}, or n is at least {@code at-least} and for every codec the
- * half-width of the 95 % Student t interval over the n PSNR of this picture is at most {@code
- * half-width-db * sqrt(P)}, with P the number of pictures of the study: the mean over P pictures of
- * equal spread then has {@code half-width-db}. Equal values, infinite ones included, have width 0;
- * otherwise an infinite value is never narrow enough. The units behind that replicate are left out.
- * So the rows of one picture under one severity alone decide how many they are.
+ * {@link NoiseWidth} over the n PSNR of this picture, which leaves ten of them out of account, is
+ * at most {@code half-width-db * sqrt(P)}, with P the number of pictures of the study: the mean
+ * over P pictures of equal spread then has {@code half-width-db} or less. Equal values, infinite
+ * ones included, have width 0; otherwise an infinite value is never narrow enough. Fewer than five
+ * never are. The units behind that replicate are left out. So the rows of one picture under one
+ * severity alone decide how many they are.
  */
 public final class Course {
   private final Plan plan;

@@ -157,7 +157,7 @@ class ShortlistTest {
         "{measure: psnr, at-least: 1}|'psnr', of which the run has no figures; did you mean 'psnr-db'?",
         "{measure: ssim, at-least: 1}|accepted: psnr-db, mse",
         "{measure: psnr-db}|has no level; accepted: one of at-least, at-most, mean-at-least",
-        "{measure: psnr-db, at-least: 1, at-most: 2}|has at-least and at-most; accepted: one of",
+        "{measure: psnr-db, at-least: 1, at-most: 2}|has several: at-least, at-most; accepted: one of",
         "{measure: psnr-db, at-least: x}|'x'; accepted: a number",
         "{measure: psnr-db, at-least: 1, for: 1}|'1'; accepted: a share above 0 and below 1",
         "{measure: psnr-db, mean-at-least: 1, for: 0.9}|stands beside mean-at-least",

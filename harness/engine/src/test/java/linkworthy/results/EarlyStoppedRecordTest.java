@@ -40,7 +40,7 @@ class EarlyStoppedRecordTest {
                 pictures: {select: [canyon, cat], longest-side: 16}
                 impairments: [{noise: gaussian, snr-db: [20, 10]}]
                 codecs: [{transform: dct, keep: 3}, {transform: mean, step: 16}]
-                replicates: {at-least: 2, at-most: 9, half-width-db: 0.5}
+                replicates: {at-least: 2, at-most: 13, half-width-db: 1}
                 seed: 7
                 """),
             Path.of("")));

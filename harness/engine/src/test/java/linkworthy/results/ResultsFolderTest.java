@@ -126,7 +126,7 @@ class ResultsFolderTest {
     assertThat(folder.run().complete()).isTrue();
     assertThat(folder.cells()).isEqualTo(Samples.CELLS);
     List<Trial> trials = new ArrayList<>();
-    assertThat(folder.trials(trials::add)).isEqualTo(2);
+    assertThat(folder.rows(trials::add)).isEqualTo(2);
     assertThat(trials).isEqualTo(UNIT);
     List<Timing> timings = new ArrayList<>();
     assertThat(folder.timings(timings::add)).isEqualTo(1);
@@ -142,7 +142,7 @@ class ResultsFolderTest {
       writer.append(UNIT, List.of());
       assertThat(Files.readString(out.resolve("trials.csv"))).isEqualTo(Samples.TRIALS);
       writer.append(UNIT, List.of());
-      assertThat(ResultsFolder.open(out).trials(trial -> {})).isEqualTo(4);
+      assertThat(ResultsFolder.open(out).rows(trial -> {})).isEqualTo(4);
       assertThat(ResultsFolder.open(out).run().complete()).isFalse();
       assertThatExceptionOfType(BadInput.class)
           .isThrownBy(() -> ResultsFolder.open(out).cells())

@@ -2,7 +2,7 @@ package linkworthy.trial;
 
 import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.assertThatIllegalArgumentException;
-import static org.assertj.core.api.Assertions.within;
+import static org.assertj.core.api.Assertions.withinPercentage;
 
 import java.nio.file.Path;
 import java.util.ArrayList;
@@ -15,6 +15,7 @@ import linkworthy.statistics.StudentT;
 import linkworthy.study.StudyReader;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
+import org.junit.jupiter.params.provider.CsvSource;
 import org.junit.jupiter.params.provider.ValueSource;
 
 /** Replicates that end early. */
@@ -66,13 +67,18 @@ class CourseTest {
     return groups;
   }
 
-  /** The widest of the codecs' intervals over the first replicates of a group. */
+  /**
+   * The widest of the codecs' intervals over the first n replicates of a group, as if they were n -
+   * 10, or 3^(n - 11) of 11 or fewer; none of fewer than five.
+   */
   private static double width(List<Trial> group, int replicates) {
     Map<String, Moments> psnr = new LinkedHashMap<>();
     group.stream()
         .filter(trial -> trial.replicate() < replicates)
         .forEach(t -> psnr.computeIfAbsent(t.codec(), c -> new Moments()).add(t.psnrDb()));
-    return psnr.values().stream().mapToDouble(StudentT::halfWidth).max().orElseThrow();
+    double counted = replicates > 10 ? replicates - 10 : StrictMath.pow(3, replicates - 11);
+    double widest = psnr.values().stream().mapToDouble(StudentT::halfWidth).max().orElseThrow();
+    return replicates < 5 ? Double.POSITIVE_INFINITY : widest * Math.sqrt(replicates / counted);
   }
 
   @ParameterizedTest
@@ -152,24 +158,31 @@ class CourseTest {
         .withMessageContaining("unit 2");
   }
 
-  /** Values 1 to 5: t(0.975, 4) = 2.776445 in any table, s = sqrt(2.5), so 2.776445 sqrt(0.5). */
-  @Test
-  void theWidthIsStudents() {
+  /**
+   * Values 1 to n, whose variance is n (n + 1)/12. Five count as 1/729 and 14 as 4; t(0.975, 4) =
+   * 2.776445 and t(0.975, 13) = 2.160369, as in any table.
+   */
+  @ParameterizedTest
+  @CsvSource({"5, 2.776445, 729", "14, 2.160369, 0.25"})
+  void theWidthIsStudentsOfFewerValues(int values, double t, double inverse) {
     NoiseWidth width = new NoiseWidth();
-    for (int value = 1; value <= 5; value++) {
+    for (int value = 1; value <= values; value++) {
       assertThat(width.halfWidth()).isPositive();
       width.add(value);
     }
-    assertThat(width.halfWidth()).isEqualTo(2.776445 * Math.sqrt(0.5), within(1e-12));
+    double variance = values * (values + 1) / 12.0;
+    assertThat(width.halfWidth())
+        .isCloseTo(t * Math.sqrt(variance * inverse), withinPercentage(1e-10));
     assertThat(width.copy().halfWidth()).isEqualTo(width.halfWidth());
   }
 
   @Test
   void equalValuesHaveNoWidthAndInfiniteOnesNoEnd() {
     NoiseWidth width = new NoiseWidth();
-    width.add(Double.POSITIVE_INFINITY);
-    assertThat(width.halfWidth()).isInfinite();
-    width.add(Double.POSITIVE_INFINITY);
+    for (int n = 1; n <= 5; n++) {
+      assertThat(width.halfWidth()).isInfinite();
+      width.add(Double.POSITIVE_INFINITY);
+    }
     assertThat(width.halfWidth()).isZero();
     width.add(30);
     assertThat(width.halfWidth()).isInfinite();

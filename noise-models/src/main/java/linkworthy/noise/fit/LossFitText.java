@@ -8,13 +8,20 @@ import linkworthy.noise.fit.ChainEstimate.Form;
 
 /** A fit of a loss trace in plain words. */
 public final class LossFitText {
-  private static final int LONGEST_SHOWN = 12;
   private static final int BAR = 40;
   private static final int FEW_RUNS = 10;
   private static final double LEAST_CHANCE = 1e-4;
   private static final String LEAST_CHANCE_TEXT = "0.0001";
 
   private LossFitText() {}
+
+  /** What is chosen, and whether the lengths of runs speak against it, in a sentence each. */
+  public static List<String> answer(LossFit fit) {
+    List<String> lines = new ArrayList<>();
+    choice(lines, fit);
+    goodness(lines, fit);
+    return lines;
+  }
 
   /** What was measured, what was fitted, what is chosen and why, and how well it fits. */
   public static List<String> lines(LossFit fit) {
@@ -128,28 +135,18 @@ public final class LossFitText {
   }
 
   private static void plot(List<String> lines, LossFit fit) {
-    List<Integer> runs = fit.trace().runs(true, false);
-    MarkovLoss chain = fit.chosen().chain();
-    double stay = (1 - chain.r()) * (1 - chain.h());
-    int[] counts = new int[LONGEST_SHOWN + 2];
-    runs.forEach(run -> counts[Math.min(run, LONGEST_SHOWN + 1)]++);
-    int most = 1;
-    for (int count : counts) {
-      most = Math.max(most, count);
-    }
+    RunTable table = RunTable.of(fit);
+    int chosen = table.forms().indexOf(fit.chosen());
+    int most = table.rows().stream().mapToInt(RunTable.Row::observed).max().orElse(1);
     lines.add("packets lost in a row, how often, and as fitted:");
-    double left = runs.size();
-    for (int length = 1; length <= LONGEST_SHOWN + 1; length++) {
-      boolean rest = length > LONGEST_SHOWN;
-      double expected = rest ? left : left * (1 - stay);
-      left -= expected;
-      String bar = "#".repeat((counts[length] * BAR + most - 1) / most);
+    for (RunTable.Row row : table.rows()) {
+      String bar = "#".repeat((row.observed() * BAR + most - 1) / most);
       add(
           lines,
           "%4s %7d %9.1f  %s",
-          rest ? ">" + LONGEST_SHOWN : Integer.toString(length),
-          counts[length],
-          expected,
+          row.length(),
+          row.observed(),
+          row.expected().get(chosen),
           bar);
     }
   }

@@ -7,6 +7,7 @@ import static org.assertj.core.api.Assertions.within;
 import java.io.IOException;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.util.Arrays;
 import java.util.List;
 import java.util.Optional;
 import linkworthy.input.BadInput;
@@ -17,6 +18,7 @@ import linkworthy.noise.NoiseStreams;
 import linkworthy.noise.Severity;
 import linkworthy.noise.Site;
 import org.apache.commons.rng.UniformRandomProvider;
+import org.apache.commons.statistics.distribution.BinomialDistribution;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 import org.junit.jupiter.params.ParameterizedTest;
@@ -183,6 +185,43 @@ class LossFitTest {
     for (double sum : squares) {
       assertThat(sum).isBetween(5.0, 48.5);
     }
+  }
+
+  /**
+   * Intervals of 1.96 stated errors hold the truth in 93 to 97 % of the traces; {@code
+   * -Dlinkworthy.statistics=N} takes N traces instead of 150. Limits are binomial, with a tail of
+   * 1e-5 under any such share: a false alarm of 12 limits in fewer than 1 of 8 000 new sets of
+   * seeds.
+   */
+  @Test
+  void theStatedErrorsCover() {
+    int traces = Integer.getInteger("linkworthy.statistics", 150);
+    MarkovLoss truth = MarkovLoss.simple(0.05, 4);
+    int[] simple = new int[3];
+    int[] three = new int[3];
+    for (long seed = 1; seed <= traces; seed++) {
+      ChainEstimate fit = LossFit.of(simulated(truth, 10_000, 3000 + seed)).simple();
+      simple[0] += holds(fit.chain().p(), truth.p(), fit.errorOfP());
+      simple[1] += holds(fit.chain().r(), truth.r(), fit.errorOfR());
+      simple[2] += holds(fit.chain().lossRate(), 0.05, fit.errorOfLossRate());
+      fit = LossFit.of(simulated(GILBERT, 30_000, 3000 + seed)).threeParameter().orElseThrow();
+      three[0] += holds(fit.chain().p(), GILBERT.p(), fit.errorOfP());
+      three[1] += holds(fit.chain().r(), GILBERT.r(), fit.errorOfR());
+      three[2] += holds(fit.chain().h(), GILBERT.h(), fit.errorOfH());
+    }
+    int least = BinomialDistribution.of(traces, 0.93).inverseCumulativeProbability(1e-5);
+    int most = BinomialDistribution.of(traces, 0.97).inverseSurvivalProbability(1e-5);
+    for (int[] held : List.of(simple, three)) {
+      for (int hits : held) {
+        assertThat(hits)
+            .as("of %d: %s, %s", traces, Arrays.toString(simple), Arrays.toString(three))
+            .isBetween(least, most);
+      }
+    }
+  }
+
+  private static int holds(double found, double truth, double error) {
+    return Math.abs(found - truth) <= 1.96 * error ? 1 : 0;
   }
 
   private static void assertNear(double found, double truth, double error, long seed) {

@@ -3,10 +3,9 @@ package example.thumbnail;
 import java.nio.ByteBuffer;
 import java.util.ArrayList;
 import java.util.LinkedHashMap;
-import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Map;
-import java.util.Set;
+import java.util.Optional;
 import linkworthy.codec.Codec;
 import linkworthy.codec.CodecFamily;
 import linkworthy.codec.Decoding;
@@ -15,6 +14,9 @@ import linkworthy.codec.Memo;
 import linkworthy.codec.PictureShape;
 import linkworthy.corpus.Picture;
 import linkworthy.input.BadInput;
+import linkworthy.input.Key;
+import linkworthy.input.KeyGroup;
+import linkworthy.input.Kind;
 import linkworthy.input.YamlNode;
 import linkworthy.link.Importance;
 import linkworthy.link.Link;
@@ -22,11 +24,21 @@ import linkworthy.link.Packet;
 
 /** The codec {@code thumbnail: SIDE}: sends the mean of each block of SIDE x SIDE samples. */
 public final class ThumbnailFamily implements CodecFamily {
-  private static final Set<String> KEYS = new LinkedHashSet<>(List.of("thumbnail", "label"));
+  private static final Kind.Whole SIDE = new Kind.Whole(2, 64);
+  private static final KeyGroup KEYS =
+      KeyGroup.of(
+          "thumbnail",
+          Key.required("thumbnail", new Kind.OneOrMore(SIDE), "side of a block in samples"),
+          Codec.LABEL);
 
   @Override
   public String id() {
     return "thumbnail";
+  }
+
+  @Override
+  public Optional<KeyGroup> keys() {
+    return Optional.of(KEYS);
   }
 
   @Override
@@ -40,7 +52,7 @@ public final class ThumbnailFamily implements CodecFamily {
 
   @Override
   public List<Codec> read(YamlNode entry, Link link) {
-    entry.onlyKeys(KEYS);
+    KEYS.check(entry);
     List<YamlNode> sides = entry.get("thumbnail").oneOrMore();
     String label = entry.find("label").map(YamlNode::text).orElse("");
     if (!label.isEmpty() && sides.size() > 1) {
@@ -48,7 +60,7 @@ public final class ThumbnailFamily implements CodecFamily {
     }
     List<Codec> codecs = new ArrayList<>();
     for (YamlNode node : sides) {
-      int side = (int) node.integer(2, 64);
+      int side = SIDE.read(node);
       codecs.add(
           new Thumbnail(label.isEmpty() ? "thumbnail " + side : label, side, link.payloadBytes()));
     }
