@@ -39,8 +39,8 @@ import org.apache.spark.api.java.JavaSparkContext;
  * records, which is emptied of nothing: it must be new.
  *
  * <p>The model: tasks are handed out one by one, each to the core that is free first; a task takes
- * its overhead and the times of its units, drawn from those measured; then the driver reads all
- * rows, one after the other.
+ * its overhead and the times of its units, drawn from those measured; the driver reads the rows of
+ * one task after the other, each as soon as it is there.
  */
 public final class ScaleFigures {
   private static final long SEED = 7;
@@ -138,9 +138,9 @@ public final class ScaleFigures {
         double begin = Math.max(free.remove(), i * handOut);
         double done = begin + task + work(own, random);
         free.add(done);
-        end = Math.max(end, done);
+        end = Math.max(end, done) + merge * own * codecs;
       }
-      return end + merge * units * codecs;
+      return end;
     }
 
     /** Sum of the times of so many units; of very many, their mean and spread are enough. */
@@ -238,7 +238,7 @@ public final class ScaleFigures {
   private void predict(Constants constants, int rowBytes) {
     int codecs = plan.study().codecs().size();
     out.println(
-        "| trials | cores | tasks | job | of it the driver's merge | core hours | rows, GB | driver's"
+        "| trials | cores | tasks | job | the driver's reading alone | core hours | rows, GB | driver's"
             + " memory, GB |");
     out.println("|---|---|---|---|---|---|---|---|");
     for (long trials : new long[] {1_000_000, 100_000_000}) {
@@ -257,7 +257,7 @@ public final class ScaleFigures {
             tasks,
             time(job),
             time(merge),
-            many * (job - merge) / 3600,
+            constants.processor(units, tasks, 0) / 3600,
             trials * (double) rowBytes / 1e9,
             0.5 + trials * 12.0 / 1e9);
       }
