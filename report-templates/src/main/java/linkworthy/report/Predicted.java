@@ -7,7 +7,7 @@ package linkworthy.report;
  * @param codec label of the codec
  * @param predictedDb PSNR of the expected mean squared error, in dB; NaN where nothing is predicted
  * @param measuredDb PSNR of the mean squared error, in dB
- * @param noiseHalfWidthDb half-width of the noise interval of the mean PSNR, in dB, or NaN
+ * @param noiseHalfWidthDb half-width of the noise interval of the mean squared error, in dB, or NaN
  * @param refusal why nothing is predicted, or empty
  */
 public record Predicted(

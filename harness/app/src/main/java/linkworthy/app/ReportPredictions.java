@@ -12,13 +12,13 @@ import linkworthy.trial.Prediction;
 final class ReportPredictions {
   private ReportPredictions() {}
 
-  static List<Predicted> of(ResultsFolder results) {
+  static List<Predicted> of(ResultsFolder results, ReportTrials trials) {
     List<Cell> cells = results.cells();
     List<Predicted> predicted = new ArrayList<>();
     for (Prediction prediction : results.predictions()) {
       cells.stream()
           .filter(cell -> isOf(cell, prediction))
-          .forEach(cell -> predicted.add(beside(cell, prediction)));
+          .forEach(cell -> predicted.add(beside(cell, prediction, trials)));
     }
     return predicted;
   }
@@ -31,7 +31,7 @@ final class ReportPredictions {
         && cell.codec().equals(prediction.codec());
   }
 
-  private static Predicted beside(Cell cell, Prediction prediction) {
+  private static Predicted beside(Cell cell, Prediction prediction, ReportTrials trials) {
     return new Predicted(
         new Condition(
             cell.impairment(),
@@ -44,7 +44,7 @@ final class ReportPredictions {
         cell.codec(),
         prediction.psnrOfMeanMseDb(),
         cell.psnrOfMeanMseDb(),
-        cell.psnrNoiseHalfWidthDb(),
+        trials.meanSquaredErrorHalfWidthDb(cell),
         prediction.refusal());
   }
 }
