@@ -1,7 +1,9 @@
 package linkworthy.app;
 
 import java.util.ArrayList;
+import java.util.HashMap;
 import java.util.List;
+import java.util.Map;
 import linkworthy.report.Condition;
 import linkworthy.report.Predicted;
 import linkworthy.results.ResultsFolder;
@@ -13,23 +15,32 @@ final class ReportPredictions {
   private ReportPredictions() {}
 
   static List<Predicted> of(ResultsFolder results) {
-    List<Cell> cells = results.cells();
+    Map<Key, Cell> cells = new HashMap<>();
+    for (Cell cell : results.cells()) {
+      cells.put(
+          new Key(cell.impairment(), cell.actsOn(), cell.axis(), cell.severity(), cell.codec()),
+          cell);
+    }
     List<Predicted> predicted = new ArrayList<>();
     for (Prediction prediction : results.predictions()) {
-      cells.stream()
-          .filter(cell -> isOf(cell, prediction))
-          .forEach(cell -> predicted.add(beside(cell, prediction)));
+      Cell cell =
+          cells.get(
+              new Key(
+                  prediction.impairment(),
+                  prediction.actsOn(),
+                  prediction.axis(),
+                  prediction.severity(),
+                  prediction.codec()));
+      if (cell != null) {
+        predicted.add(beside(cell, prediction));
+      }
     }
     return predicted;
   }
 
-  private static boolean isOf(Cell cell, Prediction prediction) {
-    return cell.impairment().equals(prediction.impairment())
-        && cell.actsOn().equals(prediction.actsOn())
-        && cell.axis().equals(prediction.axis())
-        && cell.severity() == prediction.severity()
-        && cell.codec().equals(prediction.codec());
-  }
+  /** What names a cell. */
+  private record Key(
+      String impairment, String actsOn, String axis, double severity, String codec) {}
 
   private static Predicted beside(Cell cell, Prediction prediction) {
     return new Predicted(
