@@ -188,13 +188,17 @@ final class Assessment {
 
   private int runUnits(
       LocalRunner runner, Course course, Mishaps mishaps, ResultsWriter writer, Cells cells) {
-    long left = (long) (plan.units() - course.next()) * plan.study().codecs().size();
+    int codecs = plan.study().codecs().size();
+    long left = (long) (plan.units() - course.next()) * codecs;
+    int[] next = {course.next()};
     try (Progress progress = new Progress(surroundings, "assess", upTo(), left, quiet)) {
       return runner.run(
           course,
           (unit, trials, timings) -> {
             writer.append(trials, timings);
             trials.forEach(cells::add);
+            progress.leaveOut((long) (unit.index() - next[0]) * codecs);
+            next[0] = unit.index() + 1;
             progress.step(trials.size());
           });
     } finally {
