@@ -39,17 +39,21 @@ public record Costs(String node, double ramKib, List<CodecCost> codecs, List<Nod
    * One node's part in a codec, means over clean pictures.
    *
    * @param node which, in words
+   * @param ramKib peak working memory, in KiB
    * @param rawSentBits raw samples passed on, overhead included
    * @param rawReceivedBits raw samples got, overhead included
    * @param codedSentBits coded packets, overhead included
+   * @param receivedBits acknowledgements
    * @param energyMj in millijoules
    */
   public record NodeShare(
       String codec,
       String node,
       double macs,
+      double ramKib,
       double rawSentBits,
       double rawReceivedBits,
       double codedSentBits,
+      double receivedBits,
       double energyMj) {}
 }

@@ -27,10 +27,11 @@ public final class ReportRenderer {
 
   private static final Pattern REFERENCE = Pattern.compile("&#(x[0-9a-f]{1,6}|[0-9]{1,7});");
 
-  private final String further = resource("pages.css").replace("\r", "");
-
   private final TemplateEngine engine = new TemplateEngine();
   private final String style = resource("report.css").replace("\r", "");
+
+  /** For all pages but reports and shortlists. */
+  private final String further = style + resource("pages.css").replace("\r", "");
 
   /** A page is XML as well, where less-than signs need a fence. */
   private final String script = "//<![CDATA[\n" + resource("report.js").replace("\r", "") + "//]]>";
@@ -51,71 +52,63 @@ public final class ReportRenderer {
    * @throws IllegalArgumentException if two figures are of one codec in one condition
    */
   public String render(ReportPage page) {
-    Context context = context(page.title());
+    Context context = context(style, page.title());
     context.setVariable("page", page);
     context.setVariable("view", ReportView.of(page));
     return process("report.html", context);
   }
 
-  /** A comparison of runs as HTML text, under the same rules. */
+  /** The answer to one question as HTML text, under the same rules. */
   public String render(ComparisonPage page) {
-    Context context = context(page.title());
+    Context context = context(further, page.title());
     context.setVariable("page", page);
-    context.setVariable("plots", TrendPlot.of(page.trends()));
+    context.setVariable("plots", TrendPlot.of(page));
     return process("comparison.html", context);
   }
 
   /** A shortlist as HTML text, in the manner of the report. */
   public String render(ShortlistPage page) {
-    Context context = context(page.title());
+    Context context = context(style, page.title());
     context.setVariable("page", page);
     return process("shortlist.html", context);
   }
 
   /** A start page over runs as HTML text, under the same rules. */
   public String render(IndexPage page) {
-    Context context = furtherContext();
+    Context context = context(further, page.title());
     context.setVariable("page", page);
     return process("index.html", context);
   }
 
-  /** A page of the handbook as HTML text; its content is taken as it is. */
+  /** A page of the handbook as HTML text, without a script; its content is taken as it is. */
   public String render(HandbookPage page) {
-    Context context = furtherContext();
+    Context context = new Context(Locale.ROOT);
+    setStyle(context, further, page.title(), "");
     context.setVariable("page", page);
     return process("handbook.html", context);
-  }
-
-  /** For pages with more style than reports have, and without any script. */
-  private Context furtherContext() {
-    String both = style + further;
-    Context context = new Context(Locale.ROOT);
-    context.setVariable("style", both);
-    context.setVariable(
-        "policy",
-        "default-src 'none'; style-src '"
-            + hash(both)
-            + "'; img-src data:; base-uri 'none'; form-action 'none'");
-    return context;
   }
 
   private String process(String template, Context context) {
     return printable(engine.process(template, context));
   }
 
-  private Context context(String title) {
+  private Context context(String sheet, String title) {
     Context context = new Context(Locale.ROOT);
-    String style = this.style + pageHeads(title);
-    context.setVariable("style", style);
+    setStyle(context, sheet, title, "script-src '" + hash(script) + "'; ");
     context.setVariable("script", script);
+    return context;
+  }
+
+  private void setStyle(Context context, String sheet, String title, String scripts) {
+    String style = sheet + pageHeads(title);
+    context.setVariable("style", style);
     context.setVariable(
         "policy",
         "default-src 'none'; style-src '"
             + hash(style)
-            + "'; script-src '"
-            + hash(script)
-            + "'; img-src data:; base-uri 'none'; form-action 'none'");
-    return context;
+            + "'; "
+            + scripts
+            + "img-src data:; base-uri 'none'; form-action 'none'");
   }
 
   /** What stands in the margins of a printed page: the title, and the page of how many. */

@@ -1,12 +1,14 @@
 package linkworthy.report;
 
 import java.util.ArrayList;
+import java.util.Collections;
 import java.util.List;
 import java.util.stream.DoubleStream;
 
 /**
  * Figures in a row: one panel for at most six series. All panels of a trend share their axes. What
- * is infinite, or not above 0 on a logarithmic scale, is not drawn.
+ * is infinite, or not above 0 on a logarithmic scale, is not drawn; an interval is cut at the
+ * frame.
  */
 record TrendPlot(
     ComparisonPage.Kind kind,
@@ -27,11 +29,19 @@ record TrendPlot(
   private static final int BOTTOM = 236;
   private static final int MOST_TICKS = 12;
 
-  /** A series as path data, and its name for the key. */
-  record Line(String css, String path, String markers, String sign, String name) {}
+  /** A series as path data, and its name for the key; what is not drawn is empty. */
+  record Line(String css, String path, String whiskers, String markers, String sign, String name) {}
 
-  /** All panels; none if nothing can be drawn. */
-  static List<TrendPlot> of(List<ComparisonPage.Trend> trends) {
+  /** The panels of each table of a page; none where nothing can be drawn. */
+  static List<List<TrendPlot>> of(ComparisonPage page) {
+    List<List<TrendPlot>> plots = new ArrayList<>();
+    for (ComparisonPage.Table table : page.tables()) {
+      plots.add(of(table.trends(), "trend-" + plots.size() + "-"));
+    }
+    return plots;
+  }
+
+  private static List<TrendPlot> of(List<ComparisonPage.Trend> trends, String id) {
     List<TrendPlot> plots = new ArrayList<>();
     for (ComparisonPage.Trend trend : trends) {
       double[] values =
@@ -48,7 +58,7 @@ record TrendPlot(
                 : Axis.log(values[0], most, BOTTOM, TOP);
         int parts = (trend.series().size() + Shape.KINDS - 1) / Shape.KINDS;
         for (int part = 0; part < parts; part++) {
-          plots.add(panel(trend, part, parts, y, "trend-" + plots.size()));
+          plots.add(panel(trend, part, parts, y, id + plots.size()));
         }
       }
     }
@@ -56,7 +66,7 @@ record TrendPlot(
   }
 
   private static boolean isLinear(ComparisonPage.Trend trend) {
-    return trend.kind() == ComparisonPage.Kind.RUNS;
+    return trend.kind() != ComparisonPage.Kind.BURSTS;
   }
 
   private static boolean isDrawn(ComparisonPage.Trend trend, double value) {
@@ -69,11 +79,6 @@ record TrendPlot(
     int size = trend.series().size();
     List<ComparisonPage.Series> some =
         trend.series().subList(size * part / parts, size * (part + 1) / parts);
-    List<LinePlot.Tick> horizontal = new ArrayList<>();
-    int stride = (trend.runs().size() + MOST_TICKS - 1) / MOST_TICKS;
-    for (int run = 0; run < trend.runs().size(); run += stride) {
-      horizontal.add(new LinePlot.Tick(Numbers.coordinate(x(trend, run)), trend.runs().get(run)));
-    }
     List<Line> lines = new ArrayList<>();
     for (int i = 0; i < some.size(); i++) {
       lines.add(line(trend, some.get(i), i, y));
@@ -83,22 +88,46 @@ record TrendPlot(
         id,
         title,
         trend.kind().heading() + ", a line for each series; the numbers are in the tables.",
-        horizontal,
+        horizontal(trend),
         y.ticks().stream()
             .map(v -> new LinePlot.Tick(Numbers.coordinate(y.at(v)), Numbers.typed(v)))
             .toList(),
         lines);
   }
 
+  private static List<LinePlot.Tick> horizontal(ComparisonPage.Trend trend) {
+    if (!trend.places().isEmpty()) {
+      Axis across = across(trend);
+      return across.ticks().stream()
+          .map(at -> new LinePlot.Tick(Numbers.coordinate(across.at(at)), Numbers.typed(at)))
+          .toList();
+    }
+    List<LinePlot.Tick> ticks = new ArrayList<>();
+    int stride = (trend.runs().size() + MOST_TICKS - 1) / MOST_TICKS;
+    for (int run = 0; run < trend.runs().size(); run += stride) {
+      ticks.add(new LinePlot.Tick(Numbers.coordinate(x(trend, run)), trend.runs().get(run)));
+    }
+    return ticks;
+  }
+
   private static double x(ComparisonPage.Trend trend, int run) {
+    if (!trend.places().isEmpty()) {
+      return across(trend).at(trend.places().get(run));
+    }
     int last = Math.max(1, trend.runs().size() - 1);
     return LEFT + 14 + (double) run / last * (RIGHT - LEFT - 28);
+  }
+
+  private static Axis across(ComparisonPage.Trend trend) {
+    return Axis.linear(
+        Collections.min(trend.places()), Collections.max(trend.places()), LEFT, RIGHT);
   }
 
   private static Line line(
       ComparisonPage.Trend trend, ComparisonPage.Series series, int index, Axis y) {
     StringBuilder path = new StringBuilder();
     StringBuilder markers = new StringBuilder();
+    StringBuilder whiskers = new StringBuilder();
     boolean pen = false;
     for (int run = 0; run < series.values().size(); run++) {
       double value = series.values().get(run);
@@ -110,14 +139,27 @@ record TrendPlot(
             .append(' ')
             .append(Numbers.coordinate(y.at(value)));
         markers.append(Shape.at(index, across, y.at(value)));
+        if (!series.halfWidths().isEmpty()) {
+          double half = series.halfWidths().get(run);
+          whiskers
+              .append('M')
+              .append(Numbers.coordinate(across))
+              .append(' ')
+              .append(Numbers.coordinate(Math.min(BOTTOM, y.at(value - half))))
+              .append('V')
+              .append(Numbers.coordinate(Math.max(TOP, y.at(value + half))));
+        }
       }
       pen = drawn;
     }
+    boolean hasLine = series.drawn() != ComparisonPage.Drawn.POINTS;
+    boolean hasPoints = series.drawn() != ComparisonPage.Drawn.LINE;
     return new Line(
         "c" + index + " d" + index,
-        path.toString(),
-        markers.toString(),
-        Shape.at(index, 7, 7),
+        hasLine ? path.toString() : "",
+        whiskers.toString(),
+        hasPoints ? markers.toString() : "",
+        hasPoints ? Shape.at(index, 7, 7) : "",
         series.name());
   }
 }

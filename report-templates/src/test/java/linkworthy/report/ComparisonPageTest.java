@@ -18,9 +18,11 @@ class ComparisonPageTest {
         text,
         text,
         text,
+        text,
         List.of(text),
-        List.of(new ComparisonPage.Table(text, text, columns, List.of(List.of(text, text)))),
-        trends,
+        List.of(
+            new ComparisonPage.Table(text, text, columns, List.of(List.of(text, text)), trends)),
+        List.of(new Fact(text, text)),
         List.of(new Fact(text, text)),
         text);
   }
@@ -56,7 +58,7 @@ class ComparisonPageTest {
     assertThat(shown.texts("//tbody/tr/td/@class")).containsExactly("n");
     assertThat(shown.texts("//thead//th")).containsExactly(HOSTILE, HOSTILE);
     assertThat(shown.texts("//figcaption")).containsExactly(HOSTILE);
-    assertThat(shown.texts("//dl/div/*")).containsExactly(HOSTILE, HOSTILE);
+    assertThat(shown.texts("//dl/div/*")).containsExactly(HOSTILE, HOSTILE, HOSTILE, HOSTILE);
     assertThat(shown.texts("//@id")).doesNotHaveDuplicates();
   }
 
@@ -86,7 +88,7 @@ class ComparisonPageTest {
   void whatCannotBeDrawnIsLeftOut() {
     RenderedPage shown = shown(page("a", List.of(trend("b", 2, Double.NaN, Double.NaN))));
     assertThat(shown.texts("//figure")).isEmpty();
-    assertThat(shown.texts("//section[@id='trends']")).isEmpty();
+    assertThat(shown.texts("//div[@class='panels wide']")).isEmpty();
     assertThat(shown(page("a", List.of(trend("b", 1, 30)))).texts("//figure")).hasSize(1);
   }
 

@@ -294,8 +294,9 @@ class ReportRendererTest {
                 new Costs.CodecCost("pca", 2e9, 64.01, 250, 125, 20, 99),
                 new Costs.CodecCost("own", NaN, NaN, NaN, NaN, NaN, NaN)),
             List.of(
-                new Costs.NodeShare("tiles", "camera", 0, 500, 0, 0, 115),
-                new Costs.NodeShare("tiles", "helper 1", 716_000, 0, 31_044, 5788.4, 9.235)));
+                new Costs.NodeShare("tiles", "camera", 0, 4, 500, 0, 0, 40, 115),
+                new Costs.NodeShare(
+                    "tiles", "helper 1", 716_000, 38.5, 0, 31_044, 5788.4, 0, 9.235)));
     RenderedPage shown =
         RenderedPage.of(
             new ReportPage(
@@ -315,7 +316,13 @@ class ReportRendererTest {
     assertThat(shown.texts("(//section[@id='costs']//table)[2]/tbody/tr[2]/td"))
         .startsWith("helper 1")
         .endsWith("9.23")
-        .hasSize(6);
+        .hasSize(8);
+    assertThat(shown.texts("(//section[@id='costs']//table)[2]/tbody/tr[3]/td"))
+        .containsExactly(
+            "worst node", "716\u202f000", "38.5", "500", "31\u202f044", "5788", "40", "115");
+    assertThat(shown.texts("(//section[@id='costs']//table)[2]/tbody/tr[4]/td"))
+        .startsWith("total", "716\u202f000", "42.5", "500")
+        .endsWith("40", "124");
   }
 
   /** Gaps against the larger of 0.1 dB and the noise interval; without an interval 0.1 dB. */

@@ -89,7 +89,9 @@ final class SamplePages {
                 "Node 'mote': 230 nJ to send a bit. Source: made up",
                 64,
                 List.of(new Costs.CodecCost(label, 1_234_567, 63.99, 1.5, 1.5, 20, 4321.9)),
-                List.of(new Costs.NodeShare(label, "helper 1", 716_000, 0, 31_044, 5788.4, 9.235))),
+                List.of(
+                    new Costs.NodeShare(
+                        label, "helper 1", 716_000, 38.5, 0, 31_044, 5788.4, 0, 9.235))),
             new Comparisons(
                 List.of(
                     new Comparisons.CurveGap(
@@ -178,7 +180,7 @@ final class SamplePages {
             text,
             64,
             List.of(new Costs.CodecCost(text, 1, 2, 3, 4, 5, 6)),
-            List.of(new Costs.NodeShare(text, text, 1, 2, 3, 4, 5))),
+            List.of(new Costs.NodeShare(text, text, 1, 2, 3, 4, 5, 6, 7))),
         new Comparisons(
             List.of(
                 new Comparisons.CurveGap(

@@ -4,16 +4,18 @@ import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Objects;
 import java.util.concurrent.Callable;
 import linkworthy.decision.Drift;
 import linkworthy.decision.History;
 import linkworthy.input.BadInput;
 import linkworthy.report.ComparisonPage;
-import linkworthy.report.ReportRenderer;
+import linkworthy.report.Fact;
 import linkworthy.results.FolderFiles;
 import linkworthy.results.ResultsFolder;
 import org.jspecify.annotations.Nullable;
 import picocli.CommandLine.Command;
+import picocli.CommandLine.Mixin;
 import picocli.CommandLine.Option;
 import picocli.CommandLine.Parameters;
 
@@ -62,8 +64,7 @@ final class DriftCommand implements Callable<Integer> {
   @Option(names = "--all", description = "List every cell, not only the moved and undecided ones.")
   private boolean all;
 
-  @Option(names = "--html", paramLabel = "FILE", description = "Write a page as well.")
-  private @Nullable Path html;
+  @Mixin private final PageOption html = new PageOption();
 
   @Option(
       names = "--junit",
@@ -81,8 +82,10 @@ final class DriftCommand implements Callable<Integer> {
       throw new BadInput(
           "--tolerance-db is " + toleranceDb + "; accepted: 0 to " + (int) MAX_TOLERANCE_DB);
     }
-    requireFile("--html", html);
-    requireFile("--junit", junit);
+    html.check();
+    if (junit != null && Files.isDirectory(junit)) {
+      throw new BadInput("--junit is the folder " + junit + "; accepted: a file");
+    }
     if (over != null) {
       if (!folders.isEmpty() || junit != null) {
         throw new BadInput(
@@ -97,12 +100,6 @@ final class DriftCommand implements Callable<Integer> {
     return drift(ResultsFolder.open(folders.get(0)), ResultsFolder.open(folders.get(1)));
   }
 
-  private static void requireFile(String option, @Nullable Path file) {
-    if (file != null && Files.isDirectory(file)) {
-      throw new BadInput(option + " is the folder " + file + "; accepted: a file");
-    }
-  }
-
   private int drift(ResultsFolder old, ResultsFolder now) {
     Drift drift = Drift.between(old, now, toleranceDb);
     String answer = DriftWords.answer(drift, toleranceDb);
@@ -112,27 +109,34 @@ final class DriftCommand implements Callable<Integer> {
     } else {
       print(answer, tables);
     }
-    if (html != null) {
-      write(
-          html,
-          new ReportRenderer()
-              .render(
-                  new ComparisonPage(
-                      now.run().study(),
-                      "What moved between " + name(old) + " and " + name(now) + "?",
-                      answer,
-                      drift.changes().isEmpty()
-                          ? List.of("Nothing that the records name changed in between.")
-                          : List.of(),
-                      DriftWords.tables(drift, true),
-                      List.of(),
-                      DriftWords.definitions(toleranceDb),
-                      Version.text())));
-    }
+    html.write(surroundings, () -> page(old, now, drift, answer));
     if (junit != null) {
-      write(junit, JunitReport.of(drift, now.run().study()));
+      FolderFiles.replace(junit, JunitReport.of(drift, now.run().study()));
+      surroundings.out().println("wrote " + junit);
     }
     return drift.worse() > 0 ? Main.NO : Main.DONE;
+  }
+
+  private ComparisonPage page(ResultsFolder old, ResultsFolder now, Drift drift, String answer) {
+    return new ComparisonPage(
+        now.run().study(),
+        "drift",
+        "What moved between " + name(old) + " and " + name(now) + "?",
+        answer,
+        DriftWords.remarks(drift),
+        DriftWords.pageTables(drift),
+        DriftWords.definitions(toleranceDb),
+        List.of(
+            PageOption.command(
+                "this comparison",
+                "drift",
+                old.path(),
+                now.path(),
+                "--tolerance-db",
+                DriftWords.plain(toleranceDb)),
+            PageOption.command("is the old record sound?", "recheck", old.path()),
+            PageOption.command("is the new record sound?", "recheck", now.path())),
+        Version.text());
   }
 
   private static String name(ResultsFolder folder) {
@@ -163,22 +167,47 @@ final class DriftCommand implements Callable<Integer> {
         history.incomplete().stream().map(path -> "left out, not complete: " + path).toList();
     print(answer, tables);
     remarks.forEach(surroundings.out()::println);
-    if (html != null) {
-      write(
-          html,
-          new ReportRenderer()
-              .render(
-                  new ComparisonPage(
-                      study,
-                      "How did the study fare over its runs?",
-                      answer,
-                      remarks,
-                      tables,
-                      DriftWords.trends(history),
-                      DriftWords.definitions(toleranceDb),
-                      Version.text())));
-    }
+    String last = steps.get(steps.size() - 1);
+    html.write(surroundings, () -> page(history, answer, last, tables, remarks));
     return worse > 0 ? Main.NO : Main.DONE;
+  }
+
+  private ComparisonPage page(
+      History history,
+      String answer,
+      String last,
+      List<ComparisonPage.Table> tables,
+      List<String> remarks) {
+    List<Fact> commands =
+        new ArrayList<>(
+            List.of(
+                PageOption.command(
+                    "this history",
+                    "drift",
+                    "--over",
+                    Objects.requireNonNull(over),
+                    "--tolerance-db",
+                    DriftWords.plain(toleranceDb))));
+    int runs = history.runs().size();
+    if (runs > 1) {
+      commands.add(
+          PageOption.command(
+              "every cell of the newest step",
+              "drift",
+              history.runs().get(runs - 2).path(),
+              history.runs().get(runs - 1).path(),
+              "--all"));
+    }
+    return new ComparisonPage(
+        history.runs().get(0).run().study(),
+        "history",
+        "How did the study fare over its runs?",
+        answer + (runs > 1 ? ". The newest against the one before: " + last : ""),
+        remarks,
+        tables,
+        DriftWords.definitions(toleranceDb),
+        commands,
+        Version.text());
   }
 
   private void print(String answer, List<ComparisonPage.Table> tables) {
@@ -187,10 +216,5 @@ final class DriftCommand implements Callable<Integer> {
       surroundings.out().println();
       TextTable.of(table).forEach(surroundings.out()::println);
     }
-  }
-
-  private void write(Path file, String text) {
-    FolderFiles.replace(file, text);
-    surroundings.out().println("wrote " + file);
   }
 }

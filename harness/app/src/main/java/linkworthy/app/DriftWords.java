@@ -69,6 +69,27 @@ final class DriftWords {
     return tables;
   }
 
+  /** The tables of a page: those of the console, then every cell if they do not hold all. */
+  static List<ComparisonPage.Table> pageTables(Drift drift) {
+    List<ComparisonPage.Table> tables = tables(drift, false);
+    if (drift.cells().stream().anyMatch(cell -> !cell.isOfNote())) {
+      tables.add(cells(drift.cells(), "all"));
+    }
+    return tables;
+  }
+
+  /** What the answer leaves open, for a page. */
+  static List<String> remarks(Drift drift) {
+    List<String> remarks = new ArrayList<>();
+    if (drift.changes().isEmpty()) {
+      remarks.add("Nothing that the records name changed in between.");
+    }
+    if (drift.count(Movement.UNDECIDED) > 0) {
+      remarks.add("Undecided does not mean unchanged: more pictures or replicates would tell.");
+    }
+    return remarks;
+  }
+
   private static ComparisonPage.Table changes(List<Change> changes) {
     return new ComparisonPage.Table(
         "What changed in between",
@@ -85,8 +106,8 @@ final class DriftWords {
 
   private static ComparisonPage.Table cells(List<CellDrift> cells, String which) {
     return new ComparisonPage.Table(
-        "Cells",
-        which + "; mean PSNR in dB, difference new minus old with its 95 % interval",
+        which.equals("all") ? "All cells" : "Cells that moved or are undecided",
+        "mean PSNR in dB, difference new minus old with its 95 % interval",
         List.of(
             words("condition"),
             words("codec"),
@@ -200,8 +221,8 @@ final class DriftWords {
         "Runs",
         "oldest first",
         List.of(
-            words("run"),
-            words("start"),
+            number("run"),
+            new ComparisonPage.Column("start", ComparisonPage.Style.SHORT),
             words("version"),
             words("study"),
             words("folder"),
@@ -213,7 +234,7 @@ final class DriftWords {
     return fingerprint.substring(0, Math.min(SHORT_HASH, fingerprint.length()));
   }
 
-  /** A table for each noise: mean PSNR of every cell in every run. */
+  /** A table for each noise, mean PSNR of every cell in every run, with its plot. */
   static List<ComparisonPage.Table> tables(History history) {
     List<ComparisonPage.Table> tables = new ArrayList<>();
     groups(history)
@@ -228,7 +249,8 @@ final class DriftWords {
                       heading,
                       "mean PSNR in dB of each run",
                       columns,
-                      keys.stream().map(key -> row(history, key)).toList()));
+                      keys.stream().map(key -> row(history, key)).toList(),
+                      List.of(trend(history, heading, keys))));
             });
     return tables;
   }
@@ -246,24 +268,21 @@ final class DriftWords {
     return row;
   }
 
-  /** A trend for each noise: a line for each codec, its mean over the severities. */
-  static List<ComparisonPage.Trend> trends(History history) {
-    List<ComparisonPage.Trend> trends = new ArrayList<>();
-    groups(history)
-        .forEach(
-            (heading, keys) -> {
-              Map<String, List<double[]>> byCodec = new LinkedHashMap<>();
-              keys.forEach(
-                  key ->
-                      byCodec
-                          .computeIfAbsent(key.codec(), codec -> new ArrayList<>())
-                          .add(history.psnrMeanDb(key)));
-              List<ComparisonPage.Series> series = new ArrayList<>();
-              byCodec.forEach(
-                  (codec, rows) -> series.add(new ComparisonPage.Series(codec, mean(rows))));
-              trends.add(new ComparisonPage.Trend(heading, runLabels(history), series));
-            });
-    return trends;
+  /** A line for each codec, its mean over the severities. */
+  private static ComparisonPage.Trend trend(History history, String heading, List<CellKey> keys) {
+    Map<String, List<double[]>> byCodec = new LinkedHashMap<>();
+    keys.forEach(
+        key ->
+            byCodec
+                .computeIfAbsent(key.codec(), codec -> new ArrayList<>())
+                .add(history.psnrMeanDb(key)));
+    List<ComparisonPage.Series> series = new ArrayList<>();
+    byCodec.forEach((codec, rows) -> series.add(new ComparisonPage.Series(codec, mean(rows))));
+    long severities = keys.stream().map(CellKey::severity).distinct().count();
+    return new ComparisonPage.Trend(
+        heading + (severities > 1 ? ", mean over " + severities + " severities" : ""),
+        runLabels(history),
+        series);
   }
 
   private static List<Double> mean(List<double[]> rows) {

@@ -1,6 +1,5 @@
 package linkworthy.app;
 
-import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.Locale;
 import java.util.Objects;
@@ -16,11 +15,10 @@ import linkworthy.noise.fit.LossTrace;
 import linkworthy.noise.fit.ModelFile;
 import linkworthy.noise.fit.PicturesFit;
 import linkworthy.noise.fit.PicturesFit.Kind;
-import linkworthy.report.ReportRenderer;
-import linkworthy.results.FolderFiles;
 import org.jspecify.annotations.Nullable;
 import picocli.CommandLine.ArgGroup;
 import picocli.CommandLine.Command;
+import picocli.CommandLine.Mixin;
 import picocli.CommandLine.Option;
 import picocli.CommandLine.Parameters;
 
@@ -96,7 +94,7 @@ final class NoiseCommand {
         "Examples:",
         "  linkworthy noise fit trace.csv --column lost --out my-link.yaml",
         "  linkworthy noise fit trace.csv --html fit.html",
-        "  linkworthy noise fit --pictures frames --out my-sensor.yaml"
+        "  linkworthy noise fit --pictures frames --out my-sensor.yaml --html fit.html"
       })
   int fit(
       @ArgGroup(exclusive = true, multiplicity = "1") Measured measured,
@@ -115,11 +113,7 @@ final class NoiseCommand {
               paramLabel = "FILE",
               description = "Model file to write; must not exist.")
           @Nullable Path out,
-      @Option(
-              names = "--html",
-              paramLabel = "FILE",
-              description = "Write a page as well, with a plot of the trace's losses in a row.")
-          @Nullable Path html) {
+      @Mixin PageOption html) {
     if (repeated && single) {
       throw new BadInput("--repeated and --single are both given; accepted: one of them");
     }
@@ -129,34 +123,29 @@ final class NoiseCommand {
     if (measured.pictures != null && column != null) {
       throw new BadInput("--column is for a trace, not for --pictures");
     }
-    if (measured.pictures != null && html != null) {
-      throw new BadInput("--html is for a trace, not for --pictures");
-    }
-    if (html != null && Files.isDirectory(html)) {
-      throw new BadInput("--html is the folder " + html + "; accepted: a file");
-    }
+    html.check();
     if (out != null) {
       ModelFile.requireNew(out);
     }
     if (measured.pictures != null) {
       Kind kind = repeated ? Kind.REPEATED : single ? Kind.SINGLE : Kind.TOLD_BY_PICTURES;
-      fitPictures(measured.pictures, kind, out);
+      fitPictures(measured.pictures, kind, out, html);
       return Main.DONE;
     }
     return fitTrace(Objects.requireNonNull(measured.trace), column, out, html);
   }
 
-  private void fitPictures(Path folder, Kind kind, @Nullable Path out) {
+  private void fitPictures(Path folder, Kind kind, @Nullable Path out, PageOption html) {
     PicturesFit fit = PicturesFit.of(folder, kind);
     fit.lines().forEach(surroundings.out()::println);
     if (out != null) {
       ModelFile.write(out, fit.model(ModelFile.id(out)));
       surroundings.out().println("wrote " + out + "; its notes say what was measured");
     }
+    html.write(surroundings, () -> FitPage.of(fit, folder, kind));
   }
 
-  private int fitTrace(
-      Path trace, @Nullable String column, @Nullable Path out, @Nullable Path html) {
+  private int fitTrace(Path trace, @Nullable String column, @Nullable Path out, PageOption html) {
     LossTrace read = LossTrace.read(trace, Optional.ofNullable(column));
     Optional<String> obstacle = LossFit.obstacle(read);
     if (obstacle.isPresent()) {
@@ -171,10 +160,7 @@ final class NoiseCommand {
           .out()
           .println("wrote " + out + "; in a study: noise: " + out + " with loss-rate: [...]");
     }
-    if (html != null) {
-      FolderFiles.replace(html, new ReportRenderer().render(FitPage.of(fit)));
-      surroundings.out().println("page: " + html);
-    }
+    html.write(surroundings, () -> FitPage.of(fit, trace, column));
     return Main.DONE;
   }
 

@@ -3,10 +3,8 @@ package linkworthy.app;
 import java.io.IOException;
 import java.nio.file.Files;
 import java.nio.file.Path;
-import java.util.ArrayList;
 import java.util.LinkedHashMap;
 import java.util.List;
-import java.util.Locale;
 import java.util.Map;
 import java.util.Objects;
 import java.util.concurrent.ExecutionException;
@@ -48,17 +46,12 @@ final class Recheck {
   /** Trials that are repeated unless something else is asked for. */
   static final long USUAL_SAMPLE = 100;
 
-  private static final int SHOWN = 5;
-  private static final List<Double> SHARES = List.of(0.01, 0.05);
   private static final int BATCH = 16;
 
   private final Surroundings surroundings;
   private final ResultsFolder results;
   private final Extent extent;
-  private final List<String> verified = new ArrayList<>();
-  private final List<String> notVerified = new ArrayList<>();
-  private final List<String> mismatches = new ArrayList<>();
-  private long mismatched;
+  private final RecheckFindings findings = new RecheckFindings();
 
   /**
    * How much is done.
@@ -76,37 +69,30 @@ final class Recheck {
 
   /**
    * @param study the study in the folder, whether or not it is still that of the run
-   * @return the exit code
+   * @return what was found
    */
-  int run(Study study, List<PluginFolder.Jar> plugins) {
+  RecheckFindings run(Study study, List<PluginFolder.Jar> plugins) {
     checkStudy(study);
     checkModels(study);
     checkProgram(plugins);
-    Plan plan = mismatched == 0 ? plan(study) : null;
+    Plan plan = findings.stands() ? plan(study) : null;
     if (plan != null) {
       checkPictures(plan);
     }
-    if (plan == null || mismatched > 0) {
-      notVerified.add("rows: no trial was repeated, as the above must be mended first");
+    if (plan == null || !findings.stands()) {
+      findings.notVerified("rows", "no trial was repeated, as the above must be mended first");
     } else {
       checkRows(plan);
     }
-    return say();
+    return findings;
   }
 
   private @Nullable Plan plan(Study study) {
     try {
       return Plan.unchecked(study);
     } catch (BadInput e) {
-      mismatch(e.getMessage());
+      findings.mismatch(e.getMessage());
       return null;
-    }
-  }
-
-  private void mismatch(String what) {
-    mismatched++;
-    if (mismatches.size() < SHOWN) {
-      mismatches.add(what);
     }
   }
 
@@ -114,24 +100,25 @@ final class Recheck {
     RunRecord run = results.run();
     String fingerprint = StudyWriter.fingerprint(study);
     if (!fingerprint.equals(run.studyFingerprint())) {
-      mismatch("study fingerprint recorded " + run.studyFingerprint() + ", found " + fingerprint);
+      findings.mismatch(
+          "study fingerprint recorded " + run.studyFingerprint() + ", found " + fingerprint);
     }
     if (!study.name().equals(run.study()) || !study.purpose().equals(run.purpose())) {
-      mismatch("name or purpose in study.yaml are not those in run.json");
+      findings.mismatch("name or purpose in study.yaml are not those in run.json");
     }
     sameText("study.yaml", StudyWriter.canonical(study));
-    if (mismatched == 0) {
-      verified.add("study: study.yaml has the fingerprint of the run");
+    if (findings.stands()) {
+      findings.verified("study", "study.yaml has the fingerprint of the run");
     }
   }
 
   private void checkModels(Study study) {
-    long before = mismatched;
+    long before = findings.mismatched();
     StudyWriter.modelFiles(study).forEach(this::sameText);
     List<RunRecord.ModelUsed> found = RunRecord.models(study);
     for (RunRecord.ModelUsed recorded : results.run().noiseModels()) {
       if (!found.contains(recorded)) {
-        mismatch(
+        findings.mismatch(
             "noise model "
                 + recorded.id()
                 + " version "
@@ -142,10 +129,11 @@ final class Recheck {
       }
     }
     if (!StudyWriter.modelFiles(study).isEmpty()) {
-      notVerified.add("noise models: the words under source and notes in model files of one's own");
+      findings.notVerified(
+          "noise models", "the words under source and notes in model files of one's own");
     }
-    if (before == mismatched) {
-      verified.add("noise models: " + found.size() + ", by their fingerprints");
+    if (before == findings.mismatched()) {
+      findings.verified("noise models", found.size() + ", by their fingerprints");
     }
   }
 
@@ -153,7 +141,7 @@ final class Recheck {
     Path file = results.path().resolve(name);
     try {
       if (!Files.exists(file) || !Files.readString(file).equals(expected)) {
-        mismatch(name + " is not what the program writes for this study");
+        findings.mismatch(name + " is not what the program writes for this study");
       }
     } catch (IOException e) {
       throw Unavailable.cannot("read " + file, e);
@@ -164,26 +152,27 @@ final class Recheck {
   private void checkProgram(List<PluginFolder.Jar> plugins) {
     String recorded = results.run().programVersion();
     if (recorded.equals(Version.text())) {
-      verified.add("program: version " + recorded + ", that of the run");
+      findings.verified("program", "version " + recorded + ", that of the run");
     } else {
-      notVerified.add(
-          "program: version " + Version.text() + " repeats what version " + recorded + " recorded");
+      findings.notVerified(
+          "program",
+          "version " + Version.text() + " repeats what version " + recorded + " recorded");
     }
     List<RunRecord.PluginUsed> found =
         plugins.stream().map(jar -> new RunRecord.PluginUsed(jar.name(), jar.sha256())).toList();
     if (!found.equals(results.run().plugins())) {
-      notVerified.add(
-          "plugins: " + found + " repeat what " + results.run().plugins() + " recorded");
+      findings.notVerified(
+          "plugins", found + " repeat what " + results.run().plugins() + " recorded");
     } else if (!found.isEmpty()) {
-      verified.add("plugins: " + found.size() + " jars, by their checksums");
+      findings.verified("plugins", found.size() + " jars, by their checksums");
     }
     results
         .run()
         .programs()
         .forEach(
             program ->
-                notVerified.add(
-                    "program of the codec '" + program.codec() + "': " + program.program()));
+                findings.notVerified(
+                    "program of the codec '" + program.codec() + "'", program.program()));
   }
 
   private void checkPictures(Plan plan) {
@@ -195,12 +184,12 @@ final class Recheck {
         .map(RunRecord.PictureUsed::id)
         .toList()
         .equals(plan.pictures().stream().map(ManifestEntry::id).toList())) {
-      mismatch("the study selects other pictures than run.json lists");
+      findings.mismatch("the study selects other pictures than run.json lists");
     }
     for (RunRecord.PictureUsed picture : used) {
       ManifestEntry entry = byId.get(picture.id());
       if (entry == null || !entry.sha256().equals(picture.sha256())) {
-        mismatch(
+        findings.mismatch(
             "picture '"
                 + picture.id()
                 + "' recorded with SHA-256 "
@@ -209,21 +198,22 @@ final class Recheck {
                 + (entry == null ? "missing" : entry.sha256()));
         continue;
       }
-      manifest.check(entry).map(Finding::message).ifPresent(this::mismatch);
+      manifest.check(entry).map(Finding::message).ifPresent(findings::mismatch);
     }
-    if (mismatched > 0) {
+    if (!findings.stands()) {
       return;
     }
-    verified.add("pictures: " + used.size() + ", by their checksums");
+    findings.verified("pictures", used.size() + ", by their checksums");
     if (!manifest.fingerprint().equals(results.run().corpusFingerprint())) {
-      notVerified.add(
-          "corpus: the manifest's fingerprint was "
+      findings.notVerified(
+          "corpus",
+          "the manifest's fingerprint was "
               + results.run().corpusFingerprint()
               + " and is "
               + manifest.fingerprint()
               + "; the pictures used are the same");
     } else {
-      verified.add("corpus: the manifest has the fingerprint of the run");
+      findings.verified("corpus", "the manifest has the fingerprint of the run");
     }
   }
 
@@ -231,46 +221,27 @@ final class Recheck {
     long rows = checkKeysAndCells(plan);
     checkFormulas(plan);
     long sampled = Math.min(extent.sample(), Math.min(rows, plan.trials()));
-    long before = mismatched;
+    long before = findings.mismatched();
     repeat(plan, RowSample.draw(Math.min(rows, plan.trials()), sampled, extent.seed()));
-    if (before == mismatched) {
-      verified.add(
-          "rows: "
-              + sampled
+    findings.repeated(sampled, rows, extent.seed());
+    if (before == findings.mismatched()) {
+      findings.verified(
+          "rows",
+          sampled
               + " of "
               + rows
               + " trials repeated, equal bit for bit"
               + (sampled < rows ? " (seed " + extent.seed() + ")" : ""));
     }
     if (sampled < rows) {
-      notVerified.add("rows: the figures of the other " + (rows - sampled) + " trials");
-      notVerified.add(
-          "if 1 row was altered, the chance to have missed it is "
-              + chance(RowSample.chanceMissed(rows, 1, sampled)));
-      for (double share : SHARES) {
-        long altered = RowSample.rowsOf(share, rows);
-        notVerified.add(
-            String.format(
-                Locale.ROOT,
-                "if %.0f %% of the rows were altered (%d), the chance to have missed all of them"
-                    + " is %s",
-                100 * share,
-                altered,
-                chance(RowSample.chanceMissed(rows, altered, sampled))));
-      }
+      findings.notVerified("rows", "the figures of the other " + (rows - sampled) + " trials");
     }
-    notVerified.add("timings.csv, which no rerun repeats");
-  }
-
-  private static String chance(double chance) {
-    return chance >= 0.001 || chance == 0
-        ? String.format(Locale.ROOT, "%.4f", chance)
-        : String.format(Locale.ROOT, "%.2e", chance);
+    findings.notVerified("timings.csv", "measured times, which no rerun repeats");
   }
 
   /** Reads all rows: each must be the trial that the plan has at its place. */
   private long checkKeysAndCells(Plan plan) {
-    long before = mismatched;
+    long before = findings.mismatched();
     RecordCheck check = new RecordCheck(results);
     Course course = new Course(plan);
     long rows =
@@ -279,7 +250,7 @@ final class Recheck {
               check.add(trial);
               String expected = course.isAtEnd() ? "none" : course.trialId();
               if (!trial.trial().equals(expected)) {
-                mismatch(
+                findings.mismatch(
                     "row "
                         + check.rows()
                         + ": trial recorded "
@@ -291,16 +262,17 @@ final class Recheck {
                 course.add(trial);
               }
             });
-    check.ofRows().forEach(this::mismatch);
-    mismatched += check.moreOfRows();
+    check.ofRows().forEach(findings::mismatch);
+    findings.more(check.moreOfRows());
     if (results.run().complete()) {
-      check.ofNumber().forEach(this::mismatch);
+      check.ofNumber().forEach(findings::mismatch);
       if (!course.isAtEnd()) {
-        mismatch("run.json says complete; the plan has trials behind the last row");
+        findings.mismatch("run.json says complete; the plan has trials behind the last row");
       }
     }
-    if (before == mismatched) {
-      verified.add("order: each of the " + rows + " rows has the id that the plan has there");
+    if (before == findings.mismatched()) {
+      findings.verified(
+          "order", "each of the " + rows + " rows has the id that the plan has there");
     }
     checkCells(check);
     return rows;
@@ -308,14 +280,14 @@ final class Recheck {
 
   private void checkCells(RecordCheck check) {
     if (!results.run().complete()) {
-      notVerified.add("cells: there are none, as the run is not complete");
+      findings.notVerified("cells", "there are none, as the run is not complete");
     } else if (!check.ofRows().isEmpty()) {
-      notVerified.add("cells: the rows of trials.csv do not add up to any");
+      findings.notVerified("cells", "the rows of trials.csv do not add up to any");
     } else {
       List<String> complaints = check.ofCells(true);
-      complaints.forEach(this::mismatch);
+      complaints.forEach(findings::mismatch);
       if (complaints.isEmpty()) {
-        verified.add("cells: cells.csv computed again from trials.csv, the same bytes");
+        findings.verified("cells", "cells.csv computed again from trials.csv, the same bytes");
       }
     }
   }
@@ -323,7 +295,7 @@ final class Recheck {
   /** The tables that follow from the study and its clean pictures. */
   private void checkFormulas(Plan plan) {
     if (!results.run().complete()) {
-      notVerified.add("nodes and predictions: there are none, as the run is not complete");
+      findings.notVerified("nodes and predictions", "there are none, as the run is not complete");
       return;
     }
     List<NodeShare> nodes = NodeTable.of(plan);
@@ -336,12 +308,12 @@ final class Recheck {
   private void checkFormula(String name, String expected) {
     boolean there = Files.exists(results.path().resolve(name));
     if (expected.isEmpty() && there) {
-      mismatch(name + " is there; by the study there is nothing in it");
+      findings.mismatch(name + " is there; by the study there is nothing in it");
     } else if (!expected.isEmpty()) {
-      long before = mismatched;
+      long before = findings.mismatched();
       sameText(name, expected);
-      if (before == mismatched) {
-        verified.add(name + ": computed again from the study and its pictures, the same bytes");
+      if (before == findings.mismatched()) {
+        findings.verified(name, "computed again from the study and its pictures, the same bytes");
       }
     }
   }
@@ -413,13 +385,14 @@ final class Recheck {
   private void compare(long line, Trial recorded, Trial repeated) {
     List<TrialsCsv.Difference> differences = TrialsCsv.differences(recorded, repeated);
     if (!differences.isEmpty()) {
-      mismatch(
+      findings.mismatch(
           "trials.csv, line "
               + line
               + ", trial "
               + recorded.trial()
               + ": "
-              + String.join("; ", differences.stream().map(Object::toString).toList()));
+              + String.join("; ", differences.stream().map(Object::toString).toList()),
+          recorded.trial());
     }
   }
 
@@ -438,20 +411,5 @@ final class Recheck {
       }
       throw new IllegalStateException(e.getCause());
     }
-  }
-
-  private int say() {
-    var out = surroundings.out();
-    verified.forEach(line -> out.println("verified      " + line));
-    notVerified.forEach(line -> out.println("not verified  " + line));
-    mismatches.forEach(line -> out.println("MISMATCH      " + line));
-    if (mismatched > mismatches.size()) {
-      out.println("MISMATCH      and " + (mismatched - mismatches.size()) + " more");
-    }
-    out.println(
-        mismatched == 0
-            ? "the record stands, as far as it was verified"
-            : "the record does not stand: mismatches: " + mismatched);
-    return mismatched == 0 ? Main.DONE : Main.NO;
   }
 }

@@ -61,6 +61,8 @@ final class RecheckCommand implements Callable<Integer> {
   @Option(names = "--quiet", description = "Show no progress.")
   private boolean quiet;
 
+  @Mixin private final PageOption html = new PageOption();
+
   @Mixin private final CodecOptions codecs = new CodecOptions();
 
   RecheckCommand(Surroundings surroundings) {
@@ -82,6 +84,7 @@ final class RecheckCommand implements Callable<Integer> {
       throw new BadInput(
           "--threads is " + threads + "; accepted: 1 to " + AssessCommand.MAX_THREADS);
     }
+    html.check();
     ResultsFolder results = ResultsFolder.open(folder);
     try (PluginFolder plugins = codecs.open()) {
       Recheck.Extent extent =
@@ -90,8 +93,12 @@ final class RecheckCommand implements Callable<Integer> {
               seed == null ? new SecureRandom().nextLong(MAX_SEED + 1) : seed,
               threads,
               quiet);
-      return new Recheck(surroundings, results, extent)
-          .run(results.study(codecs.families(plugins)), plugins.jars());
+      RecheckFindings findings =
+          new Recheck(surroundings, results, extent)
+              .run(results.study(codecs.families(plugins)), plugins.jars());
+      findings.lines().forEach(surroundings.out()::println);
+      html.write(surroundings, () -> findings.page(results.run().study(), folder));
+      return findings.stands() ? Main.DONE : Main.NO;
     }
   }
 }

@@ -144,9 +144,11 @@ final class Reports {
         share.codec(),
         share.node() == 0 ? "camera" : "helper " + share.node(),
         share.macs(),
+        share.memoryKib(),
         share.rawSentBits(),
         share.rawReceivedBits(),
         share.codedSentBits(),
+        share.receivedBits(),
         share.energyMj());
   }
 

@@ -1,14 +1,11 @@
 package linkworthy.app;
 
-import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.concurrent.Callable;
-import linkworthy.input.BadInput;
 import linkworthy.report.ReportRenderer;
-import linkworthy.results.FolderFiles;
 import linkworthy.results.ResultsFolder;
-import org.jspecify.annotations.Nullable;
 import picocli.CommandLine.Command;
+import picocli.CommandLine.Mixin;
 import picocli.CommandLine.Option;
 import picocli.CommandLine.Parameters;
 
@@ -50,8 +47,7 @@ final class ShortlistCommand implements Callable<Integer> {
   @SuppressWarnings("NullAway.Init")
   private Path need;
 
-  @Option(names = "--html", paramLabel = "FILE", description = "Write a page as well.")
-  private @Nullable Path html;
+  @Mixin private final PageOption html = new PageOption();
 
   ShortlistCommand(Surroundings surroundings) {
     this.surroundings = surroundings;
@@ -59,16 +55,11 @@ final class ShortlistCommand implements Callable<Integer> {
 
   @Override
   public Integer call() {
-    if (html != null && Files.isDirectory(html)) {
-      throw new BadInput("--html is the folder " + html + "; accepted: a file");
-    }
+    html.check();
     ResultsFolder results = ResultsFolder.open(folder);
     ShortlistText text = ShortlistText.of(results, need);
     text.lines().forEach(surroundings.out()::println);
-    if (html != null) {
-      FolderFiles.replace(html, new ReportRenderer().render(text.page(results.run())));
-      surroundings.out().println("page: " + html);
-    }
+    html.writeText(surroundings, () -> new ReportRenderer().render(text.page(results.run())));
     return text.hasAnswer() ? Main.DONE : Main.NO;
   }
 }

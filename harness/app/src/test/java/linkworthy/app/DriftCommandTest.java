@@ -310,8 +310,8 @@ class DriftCommandTest {
     assertThat(outcome.code()).isZero();
     assertThat(outcome.out())
         .startsWith("3 complete runs of small\n")
-        .containsPattern("(?m)^  1    2026-11-29T10:15:00Z .*  run2  ")
-        .containsPattern("(?m)^  3    2026-12-01T10:15:00Z .*  run0  .* cells: ")
+        .containsPattern("(?m)^    1  2026-11-29T10:15:00Z .*  run2  ")
+        .containsPattern("(?m)^    3  2026-12-01T10:15:00Z .*  run0  .* cells: ")
         .containsPattern("(?m)^  snr-db 20  mean( +[0-9.]+){3} +\\+[0-9.]+$");
     String page = Files.readString(html);
     Document parsed = xml(page.replace("<!DOCTYPE html>", ""));

@@ -117,18 +117,7 @@ class NoiseFitTest {
 
   @Test
   void sensorNoiseIsFittedToPictures() throws IOException {
-    Path frames = Files.createDirectories(folder.resolve("frames"));
-    Manifest shipped = Manifest.shipped();
-    Picture canyon = shipped.load(shipped.select(List.of("canyon")).get(0));
-    Severity severity = new Severity(ShotNoise.GAIN, 0.5);
-    for (int i = 0; i < 2; i++) {
-      Impairment.OnSamples noise =
-          (Impairment.OnSamples)
-              new ShotNoise().at(severity, Map.of(), Site.SAMPLES, SignalStatistics.of(canyon));
-      Picture noisy =
-          noise.apply(canyon, NoiseStreams.open(i, "t", "t", Site.SAMPLES, severity, 0, "t"));
-      Files.write(frames.resolve(i + ".pgm"), pgm(noisy));
-    }
+    Path frames = frames(folder.resolve("frames"), 2);
     Path model = folder.resolve("sensor.yaml");
     Outcome fit =
         Program.run(
@@ -140,6 +129,23 @@ class NoiseFitTest {
     Outcome single =
         Program.run(folder, "noise", "fit", "--pictures", frames.toString(), "--single");
     assertThat(single.out()).contains("0.pgm: noise deviation", "chosen: gaussian");
+  }
+
+  /** Frames of a scene with shot noise. */
+  static Path frames(Path frames, int count) throws IOException {
+    Files.createDirectories(frames);
+    Manifest shipped = Manifest.shipped();
+    Picture canyon = shipped.load(shipped.select(List.of("canyon")).get(0));
+    Severity severity = new Severity(ShotNoise.GAIN, 0.5);
+    for (int i = 0; i < count; i++) {
+      Impairment.OnSamples noise =
+          (Impairment.OnSamples)
+              new ShotNoise().at(severity, Map.of(), Site.SAMPLES, SignalStatistics.of(canyon));
+      Picture noisy =
+          noise.apply(canyon, NoiseStreams.open(i, "t", "t", Site.SAMPLES, severity, 0, "t"));
+      Files.write(frames.resolve(i + ".pgm"), pgm(noisy));
+    }
+    return frames;
   }
 
   private static byte[] pgm(Picture picture) {
@@ -161,7 +167,7 @@ class NoiseFitTest {
             List.of("noise", "fit"),
             List.of("noise", "fit", trace, "--pictures", folder.toString()),
             List.of("noise", "fit", trace, "--single"),
-            List.of("noise", "fit", "--pictures", folder.toString(), "--html", "x.html"),
+            List.of("noise", "fit", "--pictures", folder.toString(), "--html", folder.toString()),
             List.of("noise", "fit", "--pictures", folder.toString(), "--column", "x"),
             List.of("noise", "fit", "--pictures", folder.toString(), "--single", "--repeated"),
             List.of("noise", "fit", "--pictures", folder + "/nowhere"))) {

@@ -24,9 +24,30 @@ import linkworthy.input.BadInput;
  * @param errorOfVariance its standard error
  * @param line the line, if there are classes enough for one
  * @param drift largest difference between the means of two frames, grey levels
+ * @param levels the classes that count, from dark to bright
  */
 public record SensorFit(
-    int frames, double variance, double errorOfVariance, Optional<Line> line, double drift) {
+    int frames,
+    double variance,
+    double errorOfVariance,
+    Optional<Line> line,
+    double drift,
+    List<Level> levels) {
+  public SensorFit {
+    levels = List.copyOf(levels);
+  }
+
+  /**
+   * A class of samples of nearly equal mean.
+   *
+   * @param samples how many
+   * @param mean their mean, grey levels
+   * @param variance their mean noise variance without the rounding, grey levels squared; may come
+   *     out below 0
+   * @param error standard error of the variance for normal noise
+   */
+  public record Level(long samples, double mean, double variance, double error) {}
+
   /**
    * A line through the classes.
    *
@@ -115,7 +136,7 @@ public record SensorFit(
               + (frames.size() > 1 ? "different" : "one")
               + " size; accepted: two or more of equal size and depth");
     }
-    List<Level> levels = levels(frames);
+    List<Tally> levels = levels(frames);
     if (levels.isEmpty()) {
       throw new BadInput(
           "no grey level of the frames has enough samples that are neither black nor white;"
@@ -126,7 +147,7 @@ public record SensorFit(
     double samples = 0;
     double sum = 0;
     double squares = 0;
-    for (Level level : levels) {
+    for (Tally level : levels) {
       samples += level.samples;
       sum += level.samples * level.variance;
       squares += level.samples * level.variance * level.variance;
@@ -138,7 +159,12 @@ public record SensorFit(
     Optional<Line> line =
         levels.size() < LEAST_CLASSES ? Optional.empty() : Optional.of(line(levels, frames.size()));
     return new SensorFit(
-        frames.size(), Math.max(0, sum / samples - ROUNDING), error, line, drift(frames));
+        frames.size(),
+        Math.max(0, sum / samples - ROUNDING),
+        error,
+        line,
+        drift(frames),
+        levels.stream().map(level -> level.without(frames.size())).toList());
   }
 
   private static double drift(List<Picture> frames) {
@@ -152,9 +178,17 @@ public record SensorFit(
   }
 
   /** Samples of nearly equal mean. */
-  private record Level(double samples, double mean, double variance) {}
+  private record Tally(double samples, double mean, double variance) {
+    Level without(int frames) {
+      return new Level(
+          (long) samples,
+          mean,
+          variance - ROUNDING,
+          variance * Math.sqrt(2 / (samples * (frames - 1))));
+    }
+  }
 
-  private static List<Level> levels(List<Picture> frames) {
+  private static List<Tally> levels(List<Picture> frames) {
     int size = frames.get(0).size();
     int peak = frames.get(0).peak();
     int n = frames.size();
@@ -183,16 +217,16 @@ public record SensorFit(
       of[2] += (squares[i] - (double) sums[i] * sums[i] / n) / (n - 1);
       of[3] += clipped[i] ? 1 : 0;
     }
-    List<Level> levels = new ArrayList<>();
+    List<Tally> levels = new ArrayList<>();
     for (double[] of : tally) {
       if (of[0] >= LEAST_SAMPLES && of[3] < MOST_CLIPPED * of[0] * n) {
-        levels.add(new Level(of[0], of[1] / of[0], of[2] / of[0]));
+        levels.add(new Tally(of[0], of[1] / of[0], of[2] / of[0]));
       }
     }
     return levels;
   }
 
-  private static Line line(List<Level> levels, int frames) {
+  private static Line line(List<Tally> levels, int frames) {
     double gain = 0;
     double offset = 1;
     Line line = new Line(0, 0, 0, 0, 0, 0);
@@ -212,14 +246,14 @@ public record SensorFit(
 
   /** One turn: weights from the line before, or by the numbers of samples alone at first. */
   private static Line line(
-      List<Level> levels, int frames, double gain, double offset, boolean first) {
-    double least = levels.stream().mapToDouble(Level::variance).max().orElse(1) / 1000;
+      List<Tally> levels, int frames, double gain, double offset, boolean first) {
+    double least = levels.stream().mapToDouble(Tally::variance).max().orElse(1) / 1000;
     double w = 0;
     double wx = 0;
     double wy = 0;
     double[] weights = new double[levels.size()];
     for (int i = 0; i < weights.length; i++) {
-      Level level = levels.get(i);
+      Tally level = levels.get(i);
       double fitted = first ? 1 : Math.max(least, gain * level.mean + offset);
       weights[i] = level.samples * (frames - 1) / (2 * fitted * fitted);
       w += weights[i];
