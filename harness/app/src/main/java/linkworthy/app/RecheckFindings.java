@@ -216,7 +216,7 @@ final class RecheckFindings {
         mismatched > LISTED ? "the first " + LISTED + " of " + mismatched : "",
         List.of(
             new ComparisonPage.Column("no.", true),
-            new ComparisonPage.Column("what does not agree", false),
+            new ComparisonPage.Column("what does not agree", ComparisonPage.Style.PROSE),
             new ComparisonPage.Column("to see it for yourself", ComparisonPage.Style.COMMANDS)),
         table);
   }
