@@ -1,7 +1,8 @@
-"""The study of ../study.yaml in vectorised NumPy, SciPy and scikit-image; see ../README.md.
+"""The study of ../study.yaml in vectorised NumPy and SciPy; see ../README.md.
 
-Usage: peer.py MANIFEST.csv TRIALS.csv [PROCESSES]
-Writes a row for each trial and prints the number of trials and the seconds they took.
+Usage: peer.py MANIFEST.csv TRIALS.csv SSIM [REPLICATES]
+SSIM is skimage, opencv or opencv32. Runs one process a processor, writes a row for each trial and
+prints the number of trials and the seconds they took.
 """
 
 import os
@@ -21,7 +22,8 @@ import numpy as np
 from scipy.fft import dctn
 from scipy.linalg import eigh
 from skimage.io import imread
-from skimage.metrics import structural_similarity
+
+from similarity import PEAK, judge
 
 KEEPS = (4, 8, 16, 32)
 MOST = KEEPS[-1]
@@ -31,8 +33,6 @@ SIDE = 8
 NOISES = ("gaussian", "salt-and-pepper", "burst-loss")
 SNRS_DB = (25.0, 10.0)
 MEAN_BURST = 4.0
-REPLICATES = 2
-PEAK = 255
 PAYLOAD_BITS = 8 * 96
 SEED = 1
 
@@ -217,6 +217,11 @@ def clean(path):
 
 
 @lru_cache(maxsize=2)
+def judge_of(how, path):
+    return judge(how, clean(path))
+
+
+@lru_cache(maxsize=2)
 def clean_code(path):
     return code(clean(path))
 
@@ -260,7 +265,8 @@ def to_samples(values):
 
 def unit(task):
     """All codecs on one picture under one realisation of noise: a row for each."""
-    picture_id, path, noise, snr_db, replicate = task
+    how, picture_id, path, noise, snr_db, replicate = task
+    ssim_of = judge_of(how, path)
     picture = clean(path)
     lost_packets = None
     if noise in ("gaussian", "salt-and-pepper"):
@@ -283,37 +289,30 @@ def unit(task):
             error -= picture
             mse = float(np.vdot(error, error)) / error.size
             psnr = 10 * np.log10(PEAK**2 / mse) if mse > 0 else np.inf
-            ssim = structural_similarity(
-                picture,
-                shown,
-                gaussian_weights=True,
-                sigma=1.5,
-                use_sample_covariance=False,
-                data_range=PEAK,
-            )
+            ssim = ssim_of(shown)
             codec = CODECS[len(rows)]
             rows.append((picture_id, noise, snr_db, replicate, codec, bits, mse, psnr, ssim))
     return rows
 
 
-def tasks(manifest):
+def tasks(manifest, how, replicates):
     with open(manifest, encoding="utf-8", newline="") as file:
         pictures = [row for row in csv.DictReader(file) if row["set"] == "field"]
     for row in pictures:
         path = str(manifest.parent / row["file"])
-        yield row["id"], path, "none", "", 0
+        yield how, row["id"], path, "none", "", 0
         for noise in NOISES:
             for snr_db in SNRS_DB:
-                for replicate in range(REPLICATES):
-                    yield row["id"], path, noise, snr_db, replicate
+                for replicate in range(replicates):
+                    yield how, row["id"], path, noise, snr_db, replicate
 
 
 def main():
-    manifest, trials = Path(sys.argv[1]), Path(sys.argv[2])
-    processes = int(sys.argv[3]) if len(sys.argv) > 3 else os.cpu_count()
+    manifest, trials, how = Path(sys.argv[1]), Path(sys.argv[2]), sys.argv[3]
+    replicates = int(sys.argv[4]) if len(sys.argv) > 4 else 2
     start = time.perf_counter()
     count = 0
-    with multiprocessing.Pool(processes) as pool, open(
+    with multiprocessing.Pool(os.cpu_count()) as pool, open(
         trials, "w", encoding="utf-8", newline=""
     ) as file:
         out = csv.writer(file, lineterminator="\n")
@@ -321,7 +320,7 @@ def main():
             ("picture", "impairment", "severity", "replicate", "codec")
             + ("payload_bits", "mse", "psnr_db", "ssim")
         )
-        for rows in pool.imap(unit, tasks(manifest)):
+        for rows in pool.imap(unit, tasks(manifest, how, replicates)):
             out.writerows(rows)
             count += len(rows)
     seconds = time.perf_counter() - start

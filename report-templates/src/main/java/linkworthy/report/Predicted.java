@@ -7,7 +7,7 @@ package linkworthy.report;
  * @param codec label of the codec
  * @param predictedDb PSNR of the expected mean squared error, in dB; NaN where nothing is predicted
  * @param measuredDb PSNR of the mean squared error, in dB
- * @param noiseHalfWidthDb half-width of the noise interval of the mean PSNR, in dB, or NaN
+ * @param noiseHalfWidthDb half-width of the noise interval of the mean squared error, in dB, or NaN
  * @param refusal why nothing is predicted, or empty
  */
 public record Predicted(
@@ -28,18 +28,16 @@ public record Predicted(
     return measuredDb == predictedDb ? 0 : measuredDb - predictedDb;
   }
 
-  /** Whether all replicates came out alike, so that the noise interval says nothing. */
+  /**
+   * Whether the gap is beyond the tolerance and no noise interval can judge it: there is none, as
+   * with one replicate, or all replicates came out alike.
+   */
   boolean isUndecided() {
-    return noiseHalfWidthDb == 0 && Math.abs(gapDb()) > TOLERANCE_DB;
+    return !(noiseHalfWidthDb > 0) && Math.abs(gapDb()) > TOLERANCE_DB;
   }
 
   /** Whether the gap is larger than both the noise interval and the tolerance allow. */
   boolean isFinding() {
-    if (isUndecided()) {
-      return false;
-    }
-    double allowed =
-        Double.isNaN(noiseHalfWidthDb) ? TOLERANCE_DB : Math.max(TOLERANCE_DB, noiseHalfWidthDb);
-    return Math.abs(gapDb()) > allowed;
+    return Math.abs(gapDb()) > Math.max(TOLERANCE_DB, noiseHalfWidthDb) && !isUndecided();
   }
 }

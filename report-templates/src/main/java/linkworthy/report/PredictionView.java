@@ -60,7 +60,13 @@ record PredictionView(String tolerance, String sentence, List<Row> rows, List<Fa
         one.isFinding(),
         one.isFinding()
             ? "finding: measured is " + (one.gapDb() > 0 ? "better" : "worse") + " than predicted"
-            : one.isUndecided() ? "undecided: all replicates came out alike" : "as predicted");
+            : one.isUndecided() ? undecided(one) : "as predicted");
+  }
+
+  private static String undecided(Predicted one) {
+    return Double.isNaN(one.noiseHalfWidthDb())
+        ? "undecided: there is no noise interval"
+        : "undecided: all replicates came out alike";
   }
 
   private static String title(Condition condition) {

@@ -346,12 +346,12 @@ class ReportRendererTest {
         .containsExactly(
             "as predicted",
             "as predicted",
-            "finding: measured is better than predicted",
+            "undecided: there is no noise interval",
             "finding: measured is worse than predicted",
             "undecided: all replicates came out alike");
     assertThat(shown.texts("(//section[@id='predictions']//table)[1]/tbody/tr/td[5]"))
         .containsExactly("0.09", "0.50", "0.50", "-0.50", "0.50");
-    assertThat(shown.text("//section[@id='predictions']/p")).contains("2 gaps are larger", "of 5");
+    assertThat(shown.text("//section[@id='predictions']/p")).contains("1 gap is larger", "of 5");
     assertThat(shown.texts("(//section[@id='predictions']//table)[2]/tbody/tr/td"))
         .containsExactly("e");
   }

@@ -74,38 +74,59 @@ final class Assessment {
   }
 
   private int run(LocalRunner runner, Mishaps mishaps) {
-    Cells cells = new Cells();
-    Course course = new Course(plan);
-    try (ResultsWriter writer = open(cells, course)) {
-      if (!writer.run().programs().isEmpty() && !quiet) {
-        surroundings.err().println("linkworthy: " + Confinement.ofThisMachine().sentence());
-      }
-      int first = writer.unitsAtStart();
-      if (first > 0 && !quiet) {
-        sayWhatIsKept(first);
-      }
-      int units = first + runUnits(runner, course, mishaps, writer, cells);
-      long done = (long) units * plan.study().codecs().size();
-      if (!course.isAtEnd()) {
-        RunRecord ended = writer.run().end(done, surroundings.clock());
-        writer.stop(ended);
-        surroundings
-            .err()
-            .println(
-                "linkworthy: stopped after "
-                    + ended.trialsDone()
-                    + " of "
-                    + upTo()
-                    + ended.trialsPlanned()
-                    + " trials; go on with: "
-                    + goOn);
+    try (ResultsWriter writer = record(runner, mishaps)) {
+      if (!writer.run().complete()) {
         return Main.ENVIRONMENT;
       }
-      writer.complete(plan, cells.toList(), writer.run().complete(done, surroundings.clock()));
       ResultsFolder results = ResultsFolder.open(folder);
       writer.writeReport(Reports.html(results, () -> plan, null));
       ending.print(results, surroundings.out());
       return Main.DONE;
+    }
+  }
+
+  /**
+   * Runs the plan to the end of its record, or to where it is stopped. What is known of the trials
+   * is let go before the report reads them again.
+   */
+  private ResultsWriter record(LocalRunner runner, Mishaps mishaps) {
+    Cells cells = new Cells();
+    Course course = new Course(plan);
+    ResultsWriter writer = open(cells, course);
+    try {
+      record(runner, mishaps, writer, cells, course);
+      return writer;
+    } catch (RuntimeException | Error e) {
+      writer.close();
+      throw e;
+    }
+  }
+
+  private void record(
+      LocalRunner runner, Mishaps mishaps, ResultsWriter writer, Cells cells, Course course) {
+    if (!writer.run().programs().isEmpty() && !quiet) {
+      surroundings.err().println("linkworthy: " + Confinement.ofThisMachine().sentence());
+    }
+    int first = writer.unitsAtStart();
+    if (first > 0 && !quiet) {
+      sayWhatIsKept(first);
+    }
+    int units = first + runUnits(runner, course, mishaps, writer, cells);
+    long done = (long) units * plan.study().codecs().size();
+    if (course.isAtEnd()) {
+      writer.complete(plan, cells.toList(), writer.run().complete(done, surroundings.clock()));
+    } else {
+      writer.stop(writer.run().end(done, surroundings.clock()));
+      surroundings
+          .err()
+          .println(
+              "linkworthy: stopped after "
+                  + writer.run().trialsDone()
+                  + " of "
+                  + upTo()
+                  + writer.run().trialsPlanned()
+                  + " trials; go on with: "
+                  + goOn);
     }
   }
 
@@ -149,13 +170,17 @@ final class Assessment {
 
   private int runUnits(
       LocalRunner runner, Course course, Mishaps mishaps, ResultsWriter writer, Cells cells) {
-    long left = (long) (plan.units() - course.next()) * plan.study().codecs().size();
+    int codecs = plan.study().codecs().size();
+    long left = (long) (plan.units() - course.next()) * codecs;
+    int[] next = {course.next()};
     try (Progress progress = new Progress(surroundings, "assess", upTo(), left, quiet)) {
       return runner.run(
           course,
           (unit, trials, timings) -> {
             writer.append(trials, timings);
             trials.forEach(cells::add);
+            progress.leaveOut((long) (unit.index() - next[0]) * codecs);
+            next[0] = unit.index() + 1;
             progress.step(trials.size());
           });
     } finally {

@@ -4,6 +4,8 @@ import java.io.PrintWriter;
 import java.time.Clock;
 import java.time.Duration;
 import java.time.Instant;
+import java.util.ArrayDeque;
+import java.util.Deque;
 import java.util.Locale;
 import me.tongfei.progressbar.DelegatingProgressBarConsumer;
 import me.tongfei.progressbar.ProgressBar;
@@ -12,25 +14,32 @@ import me.tongfei.progressbar.ProgressBarStyle;
 import org.jspecify.annotations.Nullable;
 
 /**
- * Shows how far long work has come: a bar on a terminal; otherwise a plain line every ten seconds
- * with done and total, rate and time left.
+ * Shows how far long work has come: a bar on a terminal; otherwise a plain line with done and
+ * total, rate and time left, every ten seconds and after ten minutes every minute. The rate is that
+ * of the last ten minutes, as trials of one picture may take longer than those of another.
  */
 final class Progress implements AutoCloseable {
   /** Stands before a total that may turn out to be smaller. */
   static final String UP_TO = "up to ";
 
   private static final Duration INTERVAL = Duration.ofSeconds(10);
+  private static final Duration LATER = Duration.ofMinutes(1);
+  private static final Duration WINDOW = Duration.ofMinutes(10);
 
   private final PrintWriter out;
   private final Clock clock;
   private final String task;
   private final String upTo;
-  private final long total;
   private final boolean quiet;
   private final Instant start;
   private final @Nullable ProgressBar bar;
+  private final Deque<Mark> marks = new ArrayDeque<>();
   private Instant lastLine;
+  private long total;
   private long done;
+
+  /** How much was done at a time. */
+  private record Mark(Instant time, long done) {}
 
   /**
    * @param upTo {@link #UP_TO} if there may be fewer steps in the end, or empty
@@ -46,6 +55,7 @@ final class Progress implements AutoCloseable {
     this.quiet = quiet;
     this.start = clock.instant();
     this.lastLine = start;
+    marks.add(new Mark(start, 0));
     this.bar =
         quiet || !surroundings.terminal()
             ? null
@@ -64,9 +74,22 @@ final class Progress implements AutoCloseable {
     done += steps;
     if (bar != null) {
       bar.stepBy(steps);
-    } else if (!quiet && Duration.between(lastLine, clock.instant()).compareTo(INTERVAL) >= 0) {
-      lastLine = clock.instant();
-      out.println(line());
+    } else if (!quiet) {
+      Instant now = clock.instant();
+      Duration interval = Duration.between(start, now).compareTo(WINDOW) > 0 ? LATER : INTERVAL;
+      if (Duration.between(lastLine, now).compareTo(interval) >= 0) {
+        lastLine = now;
+        out.println(line(now));
+        out.flush();
+      }
+    }
+  }
+
+  /** Says that so many steps will not come. */
+  void leaveOut(long steps) {
+    total -= steps;
+    if (bar != null) {
+      bar.maxHint(total);
     }
   }
 
@@ -76,10 +99,9 @@ final class Progress implements AutoCloseable {
   }
 
   /** As in {@code assess: 1200 of 9600 trials, 12 %, 130.2 a second, 1 min 05 s left}. */
-  private String line() {
-    double seconds = Math.max(1e-3, Duration.between(start, clock.instant()).toMillis() / 1e3);
-    double rate = done / seconds;
-    long left = done == 0 ? 0 : Math.round((total - done) / rate);
+  private String line(Instant now) {
+    double rate = rate(now);
+    long left = rate == 0 ? 0 : Math.round((total - done) / rate);
     return String.format(
         Locale.ROOT,
         "%s: %d of %s%d trials, %d %%, %.1f a second, %s%s left",
@@ -91,6 +113,18 @@ final class Progress implements AutoCloseable {
         rate,
         upTo,
         duration(left));
+  }
+
+  /** Steps a second since the oldest mark that is not older than the window. */
+  private double rate(Instant now) {
+    while (marks.size() > 1
+        && Duration.between(marks.getFirst().time(), now).compareTo(WINDOW) > 0) {
+      marks.removeFirst();
+    }
+    Mark from = marks.getFirst();
+    marks.addLast(new Mark(now, done));
+    double seconds = Math.max(1e-3, Duration.between(from.time(), now).toMillis() / 1e3);
+    return (done - from.done()) / seconds;
   }
 
   /** Seconds as {@code 45 s}, {@code 1 min 05 s} or {@code 2 h 03 min}. */

@@ -7,7 +7,6 @@ import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
 import java.util.Objects;
-import java.util.SortedSet;
 import java.util.concurrent.ExecutionException;
 import java.util.concurrent.ExecutorService;
 import java.util.concurrent.Executors;
@@ -264,6 +263,7 @@ final class Recheck {
               }
             });
     check.ofRows().forEach(findings::mismatch);
+    findings.more(check.moreOfRows());
     if (results.run().complete()) {
       check.ofNumber().forEach(findings::mismatch);
       if (!course.isAtEnd()) {
@@ -319,7 +319,7 @@ final class Recheck {
   }
 
   /** Repeats the trials at these places, the codecs of one unit together. */
-  private void repeat(Plan plan, SortedSet<Long> sample) {
+  private void repeat(Plan plan, RowSample sample) {
     Course course = new Course(plan);
     Repetition repetition = new Repetition(plan, extent.threads());
     ExecutorService executor = Executors.newFixedThreadPool(extent.threads());

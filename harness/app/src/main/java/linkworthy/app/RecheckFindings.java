@@ -66,6 +66,11 @@ final class RecheckFindings {
     }
   }
 
+  /** Mismatches that are counted and not named. */
+  void more(long count) {
+    mismatched += count;
+  }
+
   long mismatched() {
     return mismatched;
   }
@@ -87,8 +92,9 @@ final class RecheckFindings {
     mismatches.stream()
         .limit(SHOWN)
         .forEach(mismatch -> lines.add("MISMATCH      " + mismatch.found()));
-    if (mismatched > SHOWN) {
-      lines.add("MISMATCH      and " + (mismatched - SHOWN) + " more");
+    long shown = Math.min(SHOWN, mismatches.size());
+    if (mismatched > shown) {
+      lines.add("MISMATCH      and " + (mismatched - shown) + " more");
     }
     lines.add(
         stands()
@@ -213,7 +219,9 @@ final class RecheckFindings {
     }
     return new ComparisonPage.Table(
         "Mismatches",
-        mismatched > LISTED ? "the first " + LISTED + " of " + mismatched : "",
+        mismatched > mismatches.size()
+            ? "the first " + mismatches.size() + " of " + mismatched
+            : "",
         List.of(
             new ComparisonPage.Column("no.", true),
             new ComparisonPage.Column("what does not agree", ComparisonPage.Style.PROSE),

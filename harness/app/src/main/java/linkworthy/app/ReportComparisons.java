@@ -18,7 +18,7 @@ final class ReportComparisons {
 
   static Comparisons of(ResultsFolder results) {
     List<Cell> cells = results.cells();
-    Measurements measured = new Measurements();
+    Measurements measured = Measurements.ofPsnr();
     results.trials(measured::add);
     return new Comparisons(
         CurveComparison.of(cells).stream().map(ReportComparisons::gap).toList(),

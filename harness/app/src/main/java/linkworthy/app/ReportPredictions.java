@@ -1,7 +1,9 @@
 package linkworthy.app;
 
 import java.util.ArrayList;
+import java.util.HashMap;
 import java.util.List;
+import java.util.Map;
 import linkworthy.report.Condition;
 import linkworthy.report.Predicted;
 import linkworthy.results.ResultsFolder;
@@ -12,26 +14,20 @@ import linkworthy.trial.Prediction;
 final class ReportPredictions {
   private ReportPredictions() {}
 
-  static List<Predicted> of(ResultsFolder results) {
-    List<Cell> cells = results.cells();
+  static List<Predicted> of(ResultsFolder results, ReportTrials trials) {
+    Map<ReportTrials.Place, Cell> cells = new HashMap<>();
+    results.cells().forEach(cell -> cells.put(ReportTrials.Place.of(cell), cell));
     List<Predicted> predicted = new ArrayList<>();
     for (Prediction prediction : results.predictions()) {
-      cells.stream()
-          .filter(cell -> isOf(cell, prediction))
-          .forEach(cell -> predicted.add(beside(cell, prediction)));
+      Cell cell = cells.get(ReportTrials.Place.of(prediction));
+      if (cell != null) {
+        predicted.add(beside(cell, prediction, trials));
+      }
     }
     return predicted;
   }
 
-  private static boolean isOf(Cell cell, Prediction prediction) {
-    return cell.impairment().equals(prediction.impairment())
-        && cell.actsOn().equals(prediction.actsOn())
-        && cell.axis().equals(prediction.axis())
-        && cell.severity() == prediction.severity()
-        && cell.codec().equals(prediction.codec());
-  }
-
-  private static Predicted beside(Cell cell, Prediction prediction) {
+  private static Predicted beside(Cell cell, Prediction prediction, ReportTrials trials) {
     return new Predicted(
         new Condition(
             cell.impairment(),
@@ -44,7 +40,7 @@ final class ReportPredictions {
         cell.codec(),
         prediction.psnrOfMeanMseDb(),
         cell.psnrOfMeanMseDb(),
-        cell.psnrNoiseHalfWidthDb(),
+        trials.meanSquaredErrorHalfWidthDb(cell),
         prediction.refusal());
   }
 }

@@ -12,18 +12,24 @@ import linkworthy.results.ResultsFolder;
 import linkworthy.results.RunRecord;
 import linkworthy.statistics.Cell;
 import linkworthy.statistics.Moments;
+import linkworthy.statistics.StudentT;
+import linkworthy.trial.Prediction;
 import linkworthy.trial.Trial;
 
 /**
  * What the report of a run takes from its single trials: for each cell the typical trial, whose
- * PSNR is nearest to the mean of the cell (the first such in the record), and for the middle
- * severity of each noise the mean PSNR of every picture.
+ * PSNR is nearest to the mean of the cell (the first such in the record), for the middle severity
+ * of each noise the mean PSNR of every picture, and for each cell that has a prediction how well
+ * its mean squared error is known.
  */
 final class ReportTrials {
   private final ResultsFolder results;
   private final List<Noise> noises;
   private final Map<Place, Typical> typical = new LinkedHashMap<>();
   private final Map<Place, Map<String, Moments>> pictures = new LinkedHashMap<>();
+
+  /** Squared error over squared peak, by picture. */
+  private final Map<Place, Map<String, Moments>> relativeErrors = new LinkedHashMap<>();
 
   /** One noise of the study: its conditions, mildest first. */
   record Noise(List<Measurements.Condition> conditions) {
@@ -45,6 +51,16 @@ final class ReportTrials {
       return new Place(ReportTrials.condition(cell), cell.codec());
     }
 
+    static Place of(Prediction prediction) {
+      return new Place(
+          new Measurements.Condition(
+              prediction.impairment(),
+              prediction.actsOn(),
+              prediction.axis(),
+              prediction.severity()),
+          prediction.codec());
+    }
+
     static Place of(Trial trial) {
       return new Place(ReportTrials.condition(trial), trial.codec());
     }
@@ -60,6 +76,11 @@ final class ReportTrials {
   private ReportTrials(ResultsFolder results, List<Cell> cells) {
     this.results = results;
     this.noises = noises(cells);
+    for (Prediction prediction : results.predictions()) {
+      if (prediction.refusal().isEmpty()) {
+        relativeErrors.put(Place.of(prediction), new LinkedHashMap<>());
+      }
+    }
     cells.forEach(cell -> typical.put(Place.of(cell), new Typical(cell.psnrMeanDb(), "", 0)));
   }
 
@@ -73,14 +94,21 @@ final class ReportTrials {
               Place place = Place.of(trial);
               trials.typical.computeIfPresent(place, (p, t) -> t.or(trial));
               if (middles.contains(place.condition())) {
-                trials
-                    .pictures
-                    .computeIfAbsent(place, p -> new LinkedHashMap<>())
-                    .computeIfAbsent(trial.picture(), p -> new Moments())
-                    .add(trial.psnrDb());
+                add(
+                    trials.pictures.computeIfAbsent(place, p -> new LinkedHashMap<>()),
+                    trial,
+                    trial.psnrDb());
+              }
+              Map<String, Moments> errors = trials.relativeErrors.get(place);
+              if (errors != null) {
+                add(errors, trial, StrictMath.pow(10, -trial.psnrDb() / 10));
               }
             });
     return trials;
+  }
+
+  private static void add(Map<String, Moments> byPicture, Trial trial, double figure) {
+    byPicture.computeIfAbsent(trial.picture(), p -> new Moments()).add(figure);
   }
 
   static Measurements.Condition condition(Cell cell) {
@@ -122,6 +150,21 @@ final class ReportTrials {
   /** Id of the typical trial of a cell; empty if the cell has no trial. */
   String typical(Cell cell) {
     return typical.getOrDefault(Place.of(cell), new Typical(0, "", 0)).trial();
+  }
+
+  /**
+   * Half-width of the noise interval of the mean squared error of a cell that has a prediction, in
+   * dB: {@code 10 / ln 10} times its half-width over its mean (the delta method). NaN where there
+   * is no interval.
+   */
+  double meanSquaredErrorHalfWidthDb(Cell cell) {
+    List<Moments> groups =
+        List.copyOf(relativeErrors.getOrDefault(Place.of(cell), Map.of()).values());
+    double mean = 0;
+    for (Moments group : groups) {
+      mean += group.mean() / groups.size();
+    }
+    return 10 / StrictMath.log(10) * StudentT.halfWidthOfGroups(groups) / mean;
   }
 
   /** Mean PSNR of each picture in a middle condition, in the order of the record. */

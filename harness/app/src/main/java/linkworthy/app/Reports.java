@@ -71,7 +71,7 @@ final class Reports {
                 provenance(results),
                 costs(results),
                 ReportComparisons.of(results),
-                ReportPredictions.of(results),
+                ReportPredictions.of(results, trials),
                 new Particulars(
                     trials.spreads(),
                     pictures.gallery(),

@@ -152,7 +152,8 @@ class HandbookTest {
 
   /**
    * Every file that the handbook shows is written, and every command that it shows is run, page by
-   * page in one folder. Only what builds the project's own jars is left to another test.
+   * page in one folder. Only what builds the project's own jars is left to another test, and what
+   * needs a cluster, which stands in blocks of plain text, to the tests of the cluster.
    */
   @TestFactory
   List<DynamicTest> everyPageDoesWhatItShows(@TempDir Path yard) throws IOException {

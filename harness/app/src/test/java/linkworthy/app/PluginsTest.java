@@ -293,6 +293,15 @@ class PluginsTest {
   }
 
   @Test
+  void anEntryWithoutACodecIsRefused() throws IOException {
+    own("READ", "return List.of();");
+    CommandLineRun run = assess("own: 1", "--plugins", folder().toString());
+    assertThat(run.exitCode()).as(run.err()).isEqualTo(Main.BAD_INPUT);
+    assertThat(run.err()).contains("failed in read()", "no codec for an entry");
+    assertThat(home.resolve("out")).doesNotExist();
+  }
+
+  @Test
   void failuresInTrialsAreRowsAndTheRunGoesOn() throws IOException {
     Map<String, Map.Entry<String, String>> faults =
         Map.of(

@@ -22,10 +22,14 @@ class ProgressTest {
   private Instant now = Program.CLOCK.instant();
 
   private Progress progress(boolean terminal, boolean quiet) {
+    return progress(400, terminal, quiet);
+  }
+
+  private Progress progress(long total, boolean terminal, boolean quiet) {
     Clock clock = ((InstantSource) () -> now).withZone(ZoneOffset.UTC);
     PrintWriter to = new PrintWriter(err);
     return new Progress(
-        new Surroundings(to, to, terminal, clock, folder), "assess", "", 400, quiet);
+        new Surroundings(to, to, terminal, clock, folder), "assess", "", total, quiet);
   }
 
   private void pass(int seconds) {
@@ -53,6 +57,33 @@ class ProgressTest {
             "assess: 104 of 400 trials, 26 %, 10.4 a second, 28 s left",
             "assess: 200 of 400 trials, 50 %, 10.0 a second, 20 s left",
             "assess: 400 of 400 trials, 100 %, 13.3 a second, 0 s left");
+  }
+
+  /** Ten million steps: an hour at 100 a second, then 400 a second. */
+  @Test
+  void theRateOfALongRunIsThatOfItsLastMinutes() {
+    try (Progress progress = progress(10_000_000, false, false)) {
+      for (int second = 1; second <= 7200; second++) {
+        pass(1);
+        progress.step(second <= 3600 ? 100 : 400);
+      }
+    }
+    // 60 in the first ten minutes, then one a minute.
+    assertThat(err.toString().lines())
+        .hasSize(170)
+        .contains("assess: 360000 of 10000000 trials, 3 %, 100.0 a second, 26 h 46 min left")
+        .endsWith("assess: 1800000 of 10000000 trials, 18 %, 400.0 a second, 5 h 41 min left");
+  }
+
+  @Test
+  void stepsThatDoNotComeAreNotWaitedFor() {
+    try (Progress progress = progress(false, false)) {
+      pass(10);
+      progress.leaveOut(200);
+      progress.step(100);
+    }
+    assertThat(err.toString().lines())
+        .containsExactly("assess: 100 of 200 trials, 50 %, 10.0 a second, 10 s left");
   }
 
   @Test

@@ -1,6 +1,7 @@
 package linkworthy.app;
 
 import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.within;
 
 import java.io.IOException;
 import java.io.StringReader;
@@ -20,6 +21,7 @@ import javax.xml.xpath.XPathConstants;
 import javax.xml.xpath.XPathFactory;
 import linkworthy.results.ResultsFolder;
 import linkworthy.statistics.Cell;
+import linkworthy.statistics.StudentT;
 import org.junit.jupiter.api.BeforeAll;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
@@ -214,6 +216,40 @@ class ReportPageTest {
       assertThat(away).containsKey(typical);
       assertThat(away.values()).allMatch(a -> a >= away.getOrDefault(typical, Double.NaN));
     }
+  }
+
+  /**
+   * Two pictures of two replicates with squared errors a, b and c, d: the half-width of their mean
+   * is t times |(a - b, c - d)| / 4, with Welch's degrees of freedom, {@code (v + w)^2 / (v^2 +
+   * w^2)} for the squared differences v and w.
+   */
+  @Test
+  void predictionsAreHeldAgainstTheNoiseOfTheMeanSquaredError() {
+    ResultsFolder results = ResultsFolder.open(out);
+    List<Cell> cells = results.cells();
+    ReportTrials trials = ReportTrials.of(results, cells);
+    int checked = 0;
+    for (Cell cell : cells) {
+      List<Double> errors = new ArrayList<>();
+      long unused =
+          results.trials(
+              trial -> {
+                if (ReportTrials.Place.of(trial).equals(ReportTrials.Place.of(cell))) {
+                  errors.add(trial.mse());
+                }
+              });
+      double found = trials.meanSquaredErrorHalfWidthDb(cell);
+      if (errors.size() == 4 && Double.isFinite(found)) {
+        double v = Math.pow(errors.get(0) - errors.get(1), 2);
+        double w = Math.pow(errors.get(2) - errors.get(3), 2);
+        double t = StudentT.quantile(0.975, (v + w) * (v + w) / (v * v + w * w));
+        double mean = errors.stream().mapToDouble(e -> e / 4).sum();
+        assertThat(found)
+            .isCloseTo(10 / Math.log(10) * t * Math.sqrt(v + w) / 4 / mean, within(1e-9 * found));
+        checked++;
+      }
+    }
+    assertThat(checked).isGreaterThanOrEqualTo(2);
   }
 
   @Test

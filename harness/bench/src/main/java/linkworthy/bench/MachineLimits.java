@@ -1,5 +1,6 @@
 package linkworthy.bench;
 
+import java.util.Arrays;
 import java.util.Locale;
 import java.util.concurrent.CountDownLatch;
 import java.util.function.Supplier;
@@ -10,6 +11,10 @@ import java.util.function.Supplier;
  * in the first-level cache, and bytes per second of {@code a[i] = b[i] + s c[i]} on arrays far
  * larger than any cache (24 bytes an element, as STREAM counts; McCalpin 1995). The best of several
  * rounds, with one thread and with one for each processor.
+ *
+ * <p>{@link Roofline} holds the stages of a trial against these and, on one thread, against the
+ * triad within the first and the second cache, divisions of doubles in the first-level cache and
+ * steps on integers that no vector instruction can take.
  */
 public final class MachineLimits {
   private static final int ROUNDS = 12;
@@ -18,6 +23,9 @@ public final class MachineLimits {
   private static final int MULTIPLY_ADDS = 16;
   private static final int FAR_ABOVE_CACHE = 1 << 24;
   private static final int BYTES_OF_TRIAD = 24;
+  private static final int IN_SECOND_CACHE = 1 << 14;
+  private static final int CHAINS = 4;
+  private static final int STEPS = 4;
 
   private MachineLimits() {}
 
@@ -40,6 +48,34 @@ public final class MachineLimits {
       if (threads == all) {
         return;
       }
+    }
+  }
+
+  /**
+   * What one thread reaches.
+   *
+   * @param multiplyAdds a second, double precision
+   * @param divisions a second, double precision
+   * @param steps a second on 64-bit integers: shifts, exclusive ors and additions
+   * @param nearBytes a second within the first-level cache
+   * @param cacheBytes a second within the second-level cache
+   * @param memoryBytes a second from and to memory
+   */
+  record OneThread(
+      double multiplyAdds,
+      double divisions,
+      double steps,
+      double nearBytes,
+      double cacheBytes,
+      double memoryBytes) {
+    static OneThread measure(int rounds) {
+      return new OneThread(
+          best(1, rounds, () -> new MultiplyAdds(SWEEPS / 4)),
+          best(1, rounds, () -> new Divisions(SWEEPS / 4)),
+          best(1, rounds, () -> new Steps(SWEEPS * 100)),
+          best(1, rounds, () -> new Triad(IN_CACHE, SWEEPS)),
+          best(1, rounds, () -> new Triad(IN_SECOND_CACHE, SWEEPS / 16)),
+          best(1, rounds, () -> new Triad(FAR_ABOVE_CACHE)));
     }
   }
 
@@ -131,13 +167,79 @@ public final class MachineLimits {
     }
   }
 
+  /** Quotients in the first-level cache. */
+  static final class Divisions implements Kernel {
+    private final double[] values = new double[IN_CACHE];
+    private final int sweeps;
+
+    Divisions(int sweeps) {
+      this.sweeps = sweeps;
+      Arrays.fill(values, 1);
+    }
+
+    @Override
+    public double run() {
+      for (int sweep = 0; sweep < sweeps; sweep++) {
+        divide(values, 2);
+      }
+      return (double) sweeps * values.length;
+    }
+
+    private static void divide(double[] x, double numerator) {
+      for (int i = 0; i < x.length; i++) {
+        x[i] = numerator / x[i];
+      }
+    }
+
+    /** Every value, which is 1 and 2 in turn. */
+    double[] values() {
+      return values;
+    }
+  }
+
+  /** Four independent chains of shift, exclusive or, shift and addition. */
+  static final class Steps implements Kernel {
+    private final int rounds;
+    private long sum;
+
+    Steps(int rounds) {
+      this.rounds = rounds;
+    }
+
+    @Override
+    public double run() {
+      long a = 1;
+      long b = 2;
+      long c = 3;
+      long d = 4;
+      for (int i = 0; i < rounds; i++) {
+        a = (a ^ a >>> 7) + (a << 3);
+        b = (b ^ b >>> 7) + (b << 3);
+        c = (c ^ c >>> 7) + (c << 3);
+        d = (d ^ d >>> 7) + (d << 3);
+      }
+      sum = a + b + c + d;
+      return (double) rounds * CHAINS * STEPS;
+    }
+
+    long sum() {
+      return sum;
+    }
+  }
+
   /** The triad of STREAM. */
   static final class Triad implements Kernel {
     private final double[] a;
     private final double[] b;
     private final double[] c;
+    private final int sweeps;
 
     Triad(int length) {
+      this(length, 1);
+    }
+
+    Triad(int length, int sweeps) {
+      this.sweeps = sweeps;
       a = new double[length];
       b = new double[length];
       c = new double[length];
@@ -149,8 +251,10 @@ public final class MachineLimits {
 
     @Override
     public double run() {
-      triad(a, b, c, 3);
-      return (double) BYTES_OF_TRIAD * a.length;
+      for (int sweep = 0; sweep < sweeps; sweep++) {
+        triad(a, b, c, 3);
+      }
+      return (double) BYTES_OF_TRIAD * a.length * sweeps;
     }
 
     private static void triad(double[] a, double[] b, double[] c, double s) {

@@ -1,5 +1,6 @@
 package linkworthy.bench;
 
+import java.nio.file.Path;
 import java.util.List;
 import linkworthy.codec.Codec;
 import linkworthy.codec.CodecFamilies;
@@ -12,6 +13,8 @@ import linkworthy.noise.NoiseLibrary;
 import linkworthy.noise.Severity;
 import linkworthy.noise.SignalStatistics;
 import linkworthy.noise.Site;
+import linkworthy.study.StudyReader;
+import linkworthy.trial.Plan;
 
 /** What the benchmarks work on. */
 final class Scenes {
@@ -23,6 +26,12 @@ final class Scenes {
   static Picture photographer() {
     Manifest manifest = Manifest.shipped();
     return manifest.load(manifest.select(List.of("photographer")).get(0));
+  }
+
+  /** The plan of a study file with another number of replicates. */
+  static Plan plan(Path study, int replicates) {
+    YamlNode root = YamlNode.read(study).with("replicates", Integer.toString(replicates));
+    return Plan.of(StudyReader.read(root, study.toAbsolutePath().resolveSibling("")));
   }
 
   /** A shipped noise model at 20 dB on a picture. */

@@ -4,7 +4,6 @@ import java.nio.file.Path;
 import java.util.Arrays;
 import java.util.Locale;
 import linkworthy.results.TrialsCsv;
-import linkworthy.study.StudyReader;
 import linkworthy.trial.LocalRunner;
 import linkworthy.trial.Plan;
 
@@ -15,6 +14,8 @@ import linkworthy.trial.Plan;
  * <p>A pass reads the pictures, runs every unit and writes out every row of the record in memory.
  */
 public final class StudyThroughput {
+  static final int REPLICATES = 2;
+
   private static final int PAIRS = 5;
 
   private final Plan plan;
@@ -23,10 +24,11 @@ public final class StudyThroughput {
     this.plan = plan;
   }
 
-  /** Arguments: the study file, and the number of pairs (5 unless given). */
+  /** Arguments: the study file, the number of pairs and the replicates (5 and 2 unless given). */
   public static void main(String[] args) {
-    StudyThroughput throughput = new StudyThroughput(Plan.of(StudyReader.read(Path.of(args[0]))));
     int pairs = args.length > 1 ? Integer.parseInt(args[1]) : PAIRS;
+    int replicates = args.length > 2 ? Integer.parseInt(args[2]) : REPLICATES;
+    StudyThroughput throughput = new StudyThroughput(Scenes.plan(Path.of(args[0]), replicates));
     throughput.trialsPerSecond(1);
     throughput.trialsPerSecond(2);
     double[] ratios = new double[pairs];

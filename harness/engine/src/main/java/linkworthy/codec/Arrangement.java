@@ -72,8 +72,9 @@ public sealed interface Arrangement {
     @Override
     public void scatter(double[] values, int variable, PictureShape shape, int[] samples) {
       int start = variable * shape.width();
-      for (int x = 0; x < shape.width(); x++) {
-        samples[start + x] = shape.toSample(values[x]);
+      double[] raised = shape.raised(values);
+      for (int x = 0; x < raised.length; x++) {
+        samples[start + x] = (int) raised[x];
       }
     }
   }
@@ -138,11 +139,12 @@ public sealed interface Arrangement {
       double[][] values = new double[side * side][observations(shape)];
       for (int y = 0; y < down(shape) * side; y++) {
         int row = mirrored(y, picture.height()) * width;
-        int firstVariable = y % side * side;
         int firstBlock = y / side * across;
-        for (int x = 0; x < across * side; x++) {
-          values[firstVariable + x % side][firstBlock + x / side] =
-              samples[row + mirrored(x, width)];
+        for (int left = 0; left < side; left++) {
+          double[] variable = values[y % side * side + left];
+          for (int x = left, b = firstBlock; x < across * side; x += side, b++) {
+            variable[b] = samples[row + (x < width ? x : mirrored(x, width))];
+          }
         }
       }
       return values;
@@ -156,10 +158,11 @@ public sealed interface Arrangement {
     public void scatter(double[] values, int variable, PictureShape shape, int[] samples) {
       int across = across(shape);
       int left = variable % side;
+      double[] raised = shape.raised(values);
       for (int y = variable / side, block = 0; y < shape.height(); y += side, block += across) {
         int row = y * shape.width();
         for (int x = left, b = block; x < shape.width(); x += side, b++) {
-          samples[row + x] = shape.toSample(values[b]);
+          samples[row + x] = (int) raised[b];
         }
       }
     }

@@ -8,14 +8,31 @@ import org.ejml.data.DMatrixRMaj;
  * elements (so that the compiler can use vector instructions).
  */
 final class Matrices {
+  /** So many observations stay in the first-level cache while all sums go by. */
+  private static final int NEAR = 8;
+
   private Matrices() {}
 
-  /** Takes the mean off a variable and returns it. */
+  /**
+   * Takes the mean off a variable of samples and returns it. Sums of whole numbers are exact in any
+   * order, so there are four.
+   */
   static double centre(double[] variable) {
-    double sum = 0;
-    for (double value : variable) {
-      sum += value;
+    double s0 = 0;
+    double s1 = 0;
+    double s2 = 0;
+    double s3 = 0;
+    int i = 0;
+    for (; i + 4 <= variable.length; i += 4) {
+      s0 += variable[i];
+      s1 += variable[i + 1];
+      s2 += variable[i + 2];
+      s3 += variable[i + 3];
     }
+    for (; i < variable.length; i++) {
+      s0 += variable[i];
+    }
+    double sum = s0 + s1 + s2 + s3;
     double mean = sum / variable.length;
     for (int j = 0; j < variable.length; j++) {
       variable[j] -= mean;
@@ -36,16 +53,9 @@ final class Matrices {
         observations[j][i] = centred[i][j];
       }
     }
-    double[][] sums = new double[d][];
-    for (int i = 0; i < d; i++) {
-      sums[i] = new double[d];
-      int j = 0;
-      for (; j + 4 <= n; j += 4) {
-        addFour(sums[i], i, observations, j);
-      }
-      for (; j < n; j++) {
-        add(sums[i], i, observations[j][i], observations[j]);
-      }
+    double[][] sums = new double[d][d];
+    for (int j = 0; j < n; j += NEAR) {
+      addObservations(sums, observations, j, Math.min(n, j + NEAR));
     }
     DMatrixRMaj covariance = new DMatrixRMaj(d, d);
     for (int i = 0; i < d; i++) {
@@ -58,17 +68,36 @@ final class Matrices {
     return covariance;
   }
 
-  private static void addFour(double[] sums, int i, double[][] observations, int j) {
-    double[] o0 = observations[j];
-    double[] o1 = observations[j + 1];
-    double[] o2 = observations[j + 2];
-    double[] o3 = observations[j + 3];
-    double a0 = o0[i];
-    double a1 = o1[i];
-    double a2 = o2[i];
-    double a3 = o3[i];
-    for (int k = i; k < sums.length; k++) {
-      sums[k] = (((sums[k] + a0 * o0[k]) + a1 * o1[k]) + a2 * o2[k]) + a3 * o3[k];
+  private static void addObservations(double[][] sums, double[][] observations, int from, int to) {
+    int i = 0;
+    for (; i + 2 <= sums.length; i += 2) {
+      int j = from;
+      for (; j + 2 <= to; j += 2) {
+        addTwoByTwo(sums[i], sums[i + 1], i, observations[j], observations[j + 1]);
+      }
+      for (; j < to; j++) {
+        add(sums[i], i, observations[j][i], observations[j]);
+        add(sums[i + 1], i, observations[j][i + 1], observations[j]);
+      }
+    }
+    for (; i < sums.length; i++) {
+      for (int j = from; j < to; j++) {
+        add(sums[i], i, observations[j][i], observations[j]);
+      }
+    }
+  }
+
+  /** Two observations to two rows of sums, i and i + 1, from column i. */
+  private static void addTwoByTwo(double[] upper, double[] lower, int i, double[] p, double[] q) {
+    double up = p[i];
+    double uq = q[i];
+    double lp = p[i + 1];
+    double lq = q[i + 1];
+    for (int k = i; k < upper.length; k++) {
+      double pk = p[k];
+      double qk = q[k];
+      upper[k] = (upper[k] + up * pk) + uq * qk;
+      lower[k] = (lower[k] + lp * pk) + lq * qk;
     }
   }
 

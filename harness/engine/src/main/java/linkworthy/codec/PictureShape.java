@@ -18,7 +18,20 @@ public record PictureShape(int width, int height, int bitDepth) {
    * half count as halves, so that the order of summation does not show.
    */
   int toSample(double value) {
+    return (int) raised(value, (1 << bitDepth) - 1);
+  }
+
+  /** Values that become those of {@link #toSample} when their fraction is cut off. */
+  double[] raised(double[] values) {
     double peak = (1 << bitDepth) - 1;
-    return (int) (Math.max(0, Math.min(peak, value)) + (0.5 + 5e-10));
+    double[] raised = new double[values.length];
+    for (int i = 0; i < raised.length; i++) {
+      raised[i] = raised(values[i], peak);
+    }
+    return raised;
+  }
+
+  private static double raised(double value, double peak) {
+    return Math.max(0, Math.min(peak, value)) + (0.5 + 5e-10);
   }
 }

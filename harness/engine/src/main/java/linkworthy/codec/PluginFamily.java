@@ -52,11 +52,16 @@ final class PluginFamily implements CodecFamily {
 
   @Override
   public List<Codec> read(YamlNode entry, Link link) {
-    return guarded("read()", () -> complete(family.read(entry, link)));
+    return guarded(
+        "read()",
+        () -> complete(Objects.requireNonNull(family.read(entry, link), "it returned null")));
   }
 
   /** The codecs, each having said what the record needs to know before anything runs. */
   private static List<Codec> complete(List<Codec> codecs) {
+    if (codecs.isEmpty()) {
+      throw new IllegalStateException("no codec for an entry");
+    }
     for (Codec codec : codecs) {
       if (codec.label().isBlank()) {
         throw new IllegalStateException("a codec has an empty label");

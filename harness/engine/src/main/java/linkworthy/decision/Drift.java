@@ -6,6 +6,7 @@ import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.LinkedHashSet;
 import java.util.List;
+import java.util.Objects;
 import java.util.Set;
 import java.util.function.Predicate;
 import java.util.stream.Collectors;
@@ -130,8 +131,8 @@ public final class Drift {
    * @param unchangedPictures ids of the pictures that are the same in both
    * @param sameNoise whether equal replicates of these pictures met the same noise in a cell
    * @param toleranceDb smallest difference of mean PSNR that matters, 0 to 100 dB
-   * @throws IllegalArgumentException if the tolerance is outside its range, or a picture has a
-   *     replicate of a cell twice
+   * @throws IllegalArgumentException if the tolerance is outside its range, or the trials of a cell
+   *     and picture do not come together, each replicate once and in ascending order
    */
   public static Drift between(
       Iterable<Trial> old,
@@ -175,7 +176,7 @@ public final class Drift {
   }
 
   private static CellFigures figures(RunFigures run, CellKey key) {
-    return run.cells().getOrDefault(key, new CellFigures());
+    return Objects.requireNonNull(run.cells().get(key));
   }
 
   private static List<CellKey> without(RunFigures run, Set<CellKey> common) {

@@ -1,18 +1,20 @@
 package linkworthy.decision;
 
+import java.util.HashMap;
 import java.util.LinkedHashMap;
 import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Map;
 import java.util.Optional;
 import java.util.Set;
+import java.util.function.Predicate;
 import linkworthy.statistics.Moments;
 import linkworthy.trial.Trial;
 
 /**
  * The trials of a run, gathered for decisions: of every measure the mean and variance over
  * replicates, for each picture, condition and codec. Takes trials in the order of the plan; keeps
- * about 100 bytes for each picture, condition, codec and measure.
+ * about 20 bytes for each picture, condition, codec and measure that is kept.
  */
 public final class Measurements {
   /** Name of the share of trials in which nothing usable arrived. */
@@ -25,8 +27,26 @@ public final class Measurements {
   private final Map<Condition, Moments> snrDb = new LinkedHashMap<>();
   private final Set<String> codecs = new LinkedHashSet<>();
   private final Set<String> measures = new LinkedHashSet<>();
-  private final Set<String> pictures = new LinkedHashSet<>();
+  private final Map<String, Picture> pictures = new HashMap<>();
+  private final Predicate<String> kept;
   private long trials;
+
+  /** One id for all samples, and its number. */
+  private record Picture(int number, String id) {}
+
+  /** All measures. */
+  public Measurements() {
+    this(measure -> true);
+  }
+
+  private Measurements(Predicate<String> kept) {
+    this.kept = kept;
+  }
+
+  /** PSNR alone, as {@link OrderChange} needs it. */
+  public static Measurements ofPsnr() {
+    return new Measurements(PSNR::equals);
+  }
 
   /**
    * What hurt the pictures, and how strongly.
@@ -63,13 +83,15 @@ public final class Measurements {
     put(figures, "packets-lost", trial.packetsLost());
     put(figures, OUTAGE_RATE, trial.outage() ? 1 : 0);
     trial.further().forEach((column, figure) -> put(figures, column.replace('_', '-'), figure));
+    figures.keySet().removeIf(kept.negate());
+    Picture picture =
+        pictures.computeIfAbsent(trial.picture(), id -> new Picture(pictures.size(), id));
     samples
         .computeIfAbsent(condition, c -> new LinkedHashMap<>())
         .computeIfAbsent(trial.codec(), codec -> new Sample())
-        .add(trial.picture(), figures);
+        .add(picture.number(), picture.id(), figures);
     snrDb.computeIfAbsent(condition, c -> new Moments()).add(trial.snrDb());
     codecs.add(trial.codec());
-    pictures.add(trial.picture());
     measures.addAll(figures.keySet());
     trials++;
   }

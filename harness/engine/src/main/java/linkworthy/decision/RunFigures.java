@@ -3,15 +3,21 @@ package linkworthy.decision;
 import java.util.LinkedHashMap;
 import java.util.Map;
 import linkworthy.results.ResultsFolder;
+import linkworthy.statistics.Numbering;
 import linkworthy.trial.Trial;
 
-/** The cells of one run, in the order of their first trials; about 200 bytes for each trial. */
+/**
+ * The cells of one run, in the order of their first trials; about 10 bytes for each trial and 24
+ * for each picture of a cell.
+ */
 final class RunFigures {
+  private final Numbering pictures = new Numbering();
   private final Map<CellKey, CellFigures> cells = new LinkedHashMap<>();
 
   static RunFigures of(Iterable<Trial> trials) {
     RunFigures figures = new RunFigures();
     trials.forEach(figures::add);
+    figures.cells.values().forEach(CellFigures::end);
     return figures;
   }
 
@@ -22,11 +28,12 @@ final class RunFigures {
     folder.requireComplete();
     RunFigures figures = new RunFigures();
     long unused = folder.trials(figures::add);
+    figures.cells.values().forEach(CellFigures::end);
     return figures;
   }
 
   private void add(Trial trial) {
-    cells.computeIfAbsent(CellKey.of(trial), key -> new CellFigures()).add(trial);
+    cells.computeIfAbsent(CellKey.of(trial), key -> new CellFigures(pictures)).add(trial);
   }
 
   Map<CellKey, CellFigures> cells() {

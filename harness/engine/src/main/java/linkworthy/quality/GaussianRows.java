@@ -6,9 +6,15 @@ package linkworthy.quality;
  *
  * <p>Rows are given from top to bottom; the last eleven are kept, so the working set is eleven rows
  * whatever the height. The window is separable and symmetric: rows are folded about the middle one,
- * then columns. The inner loops read and write at one common index, on separate arrays, because
- * that is what the virtual machine turns into vector instructions; for the same reason columns are
- * shifted by copying. The order of additions is fixed.
+ * then columns. The order of additions is fixed.
+ *
+ * <p>A row lies in eight lanes: it is cut into eight strips of columns, each overlapping the next
+ * by ten, and what stands at the same place of the strips is neighbours in the array. A step of one
+ * column is then a step of eight elements, and the virtual machine turns the inner loops into
+ * vector instructions without shifting anything.
+ *
+ * <p>Each pass over a row is a class of its own behind one call, because the virtual machine gives
+ * up on vector instructions where it compiles many loops as one piece of code.
  */
 final class GaussianRows {
   static final int RADIUS = 5;
@@ -17,17 +23,64 @@ final class GaussianRows {
 
   private static final double[] WEIGHTS = weights();
 
+  private static final int LANES = 8;
+
+  /** One sweep over a row: three down the columns, then three along the row. */
+  private interface Pass {
+    void run(GaussianRows rows, double[] means);
+  }
+
+  private static final Pass[] PASSES = {
+    (r, to) -> fold(r.row(4), r.row(5), r.row(6), WEIGHTS[0], WEIGHTS[1], r.folded),
+    (r, to) ->
+        addTwoPairs(r.row(3), r.row(7), WEIGHTS[2], r.row(2), r.row(8), WEIGHTS[3], r.folded),
+    (r, to) ->
+        addTwoPairs(r.row(1), r.row(9), WEIGHTS[4], r.row(0), r.row(10), WEIGHTS[5], r.folded),
+    (r, to) -> foldInner(r.folded, WEIGHTS[0], WEIGHTS[1], to),
+    (r, to) -> addMiddle(r.folded, WEIGHTS[2], WEIGHTS[3], to),
+    (r, to) -> addOuter(r.folded, WEIGHTS[4], WEIGHTS[5], to),
+  };
+
+  private final int width;
+  private final int strip;
   private final double[][] rows;
   private final double[] folded;
-  private final double[] left;
-  private final double[] right;
   private int next;
 
+  /**
+   * @param width columns of a row, at least 11
+   */
   GaussianRows(int width) {
-    rows = new double[SIDE][width];
-    folded = new double[width];
-    left = new double[width];
-    right = new double[width];
+    this.width = width;
+    strip = (width - 2 * RADIUS + LANES - 1) / LANES;
+    rows = new double[SIDE][length(width)];
+    folded = new double[length(width)];
+  }
+
+  /** Elements of a row of so many columns. */
+  static int length(int width) {
+    return meansLength(width) + 2 * RADIUS * LANES;
+  }
+
+  /** Elements of a row of means. */
+  static int meansLength(int width) {
+    return (width - 2 * RADIUS + LANES - 1) / LANES * LANES;
+  }
+
+  /** Puts a row of samples into lanes; places beyond the last column are 0. */
+  void load(int[] samples, int start, double[] row) {
+    for (int lane = 0; lane < LANES; lane++) {
+      int first = lane * strip;
+      int count = Math.max(0, Math.min(strip + 2 * RADIUS, width - first));
+      for (int i = 0; i < count; i++) {
+        row[i * LANES + lane] = samples[start + first + i];
+      }
+    }
+  }
+
+  /** Where the mean of the window that begins at a column is. */
+  int place(int column) {
+    return column % strip * LANES + column / strip;
   }
 
   /** Weight of the window at a distance of 0 to 5 samples from its middle, along one axis. */
@@ -55,19 +108,10 @@ final class GaussianRows {
     return row;
   }
 
-  /** Means of the windows that end at the newest row, left to right, into {@code means}. */
+  /** Means of the windows that end at the newest row into {@code means}, in lanes. */
   void means(double[] means) {
-    scale(row(RADIUS), WEIGHTS[0], folded, folded.length);
-    for (int k = 1; k <= RADIUS; k++) {
-      addPair(row(RADIUS - k), row(RADIUS + k), WEIGHTS[k], folded, folded.length);
-    }
-    int count = folded.length - 2 * RADIUS;
-    System.arraycopy(folded, RADIUS, left, 0, count);
-    scale(left, WEIGHTS[0], means, count);
-    for (int k = 1; k <= RADIUS; k++) {
-      System.arraycopy(folded, RADIUS - k, left, 0, count);
-      System.arraycopy(folded, RADIUS + k, right, 0, count);
-      addPair(left, right, WEIGHTS[k], means, count);
+    for (Pass pass : PASSES) {
+      pass.run(this, means);
     }
   }
 
@@ -75,15 +119,40 @@ final class GaussianRows {
     return rows[(next + fromOldest) % SIDE];
   }
 
-  private static void scale(double[] from, double weight, double[] to, int count) {
-    for (int i = 0; i < count; i++) {
-      to[i] = weight * from[i];
+  private static void fold(
+      double[] before, double[] middle, double[] after, double w0, double w1, double[] to) {
+    for (int i = 0; i < to.length; i++) {
+      to[i] = w0 * middle[i] + w1 * (before[i] + after[i]);
     }
   }
 
-  private static void addPair(double[] a, double[] b, double weight, double[] to, int count) {
-    for (int i = 0; i < count; i++) {
-      to[i] += weight * (a[i] + b[i]);
+  private static void addTwoPairs(
+      double[] a, double[] b, double w, double[] c, double[] d, double v, double[] to) {
+    for (int i = 0; i < to.length; i++) {
+      to[i] = (to[i] + w * (a[i] + b[i])) + v * (c[i] + d[i]);
+    }
+  }
+
+  /** Columns 0 and 1 from the middle. One loop over all eleven is not made into vectors. */
+  private static void foldInner(double[] f, double w0, double w1, double[] to) {
+    for (int i = 0; i < to.length; i++) {
+      to[i] = w0 * f[i + 5 * LANES] + w1 * (f[i + 4 * LANES] + f[i + 6 * LANES]);
+    }
+  }
+
+  /** Columns 2 and 3 from the middle. */
+  private static void addMiddle(double[] f, double w2, double w3, double[] to) {
+    for (int i = 0; i < to.length; i++) {
+      to[i] =
+          (to[i] + w2 * (f[i + 3 * LANES] + f[i + 7 * LANES]))
+              + w3 * (f[i + 2 * LANES] + f[i + 8 * LANES]);
+    }
+  }
+
+  /** Columns 4 and 5 from the middle. */
+  private static void addOuter(double[] f, double w4, double w5, double[] to) {
+    for (int i = 0; i < to.length; i++) {
+      to[i] = (to[i] + w4 * (f[i + LANES] + f[i + 9 * LANES])) + w5 * (f[i] + f[i + 10 * LANES]);
     }
   }
 }

@@ -15,7 +15,7 @@ import linkworthy.input.BadInput;
  * with {@code mx = sum w x}, {@code sx^2 = sum w x^2 - mx^2}, {@code sxy = sum w x y - mx my}
  * (population moments), {@code C1 = (0.01 P)^2}, {@code C2 = (0.03 P)^2} and P the peak of the bit
  * depth. The figure is the mean over the windows that lie wholly inside the picture; pictures are
- * never shrunk beforehand. A judge keeps 16 bytes for each sample of the clean picture.
+ * never shrunk beforehand. A judge keeps about 28 bytes for each sample of the clean picture.
  */
 public final class Ssim implements QualityMeasure {
   private static final double K1 = 0.01;
@@ -54,6 +54,7 @@ public final class Ssim implements QualityMeasure {
 
   private static final class Windows implements Judge {
     private final Picture clean;
+    private final double[][] cleanRows;
     private final double[][] cleanMeans;
     private final double[][] cleanVariances;
     private final double c1;
@@ -65,13 +66,15 @@ public final class Ssim implements QualityMeasure {
       c2 = K2 * clean.peak() * (K2 * clean.peak());
       int width = clean.width();
       int windowRows = clean.height() - GaussianRows.SIDE + 1;
-      cleanMeans = new double[windowRows][width - GaussianRows.SIDE + 1];
-      cleanVariances = new double[windowRows][width - GaussianRows.SIDE + 1];
+      cleanMeans = new double[windowRows][GaussianRows.meansLength(width)];
+      cleanVariances = new double[windowRows][GaussianRows.meansLength(width)];
+      cleanRows = new double[clean.height()][GaussianRows.length(width)];
       GaussianRows values = new GaussianRows(width);
       GaussianRows squares = new GaussianRows(width);
       for (int y = 0; y < clean.height(); y++) {
-        double[] row = values.nextRow();
-        load(clean, y, row);
+        values.load(clean.samples(), y * width, cleanRows[y]);
+        double[] row = cleanRows[y];
+        System.arraycopy(row, 0, values.nextRow(), 0, row.length);
         multiply(row, row, squares.nextRow());
         int window = y - GaussianRows.SIDE + 1;
         if (window >= 0) {
@@ -86,21 +89,19 @@ public final class Ssim implements QualityMeasure {
     public double of(Picture decoded) {
       Psnr.requireSameShape(clean, decoded);
       int width = clean.width();
-      int windowColumns = width - GaussianRows.SIDE + 1;
+      int length = GaussianRows.meansLength(width);
       GaussianRows values = new GaussianRows(width);
       GaussianRows squares = new GaussianRows(width);
       GaussianRows products = new GaussianRows(width);
-      double[] cleanRow = new double[width];
-      double[] means = new double[windowColumns];
-      double[] variances = new double[windowColumns];
-      double[] covariances = new double[windowColumns];
-      double[] columnSums = new double[windowColumns];
+      double[] means = new double[length];
+      double[] variances = new double[length];
+      double[] covariances = new double[length];
+      double[] columnSums = new double[length];
       for (int y = 0; y < clean.height(); y++) {
         double[] row = values.nextRow();
-        load(decoded, y, row);
-        load(clean, y, cleanRow);
+        values.load(decoded.samples(), y * width, row);
         multiply(row, row, squares.nextRow());
-        multiply(row, cleanRow, products.nextRow());
+        multiply(row, cleanRows[y], products.nextRow());
         int window = y - GaussianRows.SIDE + 1;
         if (window >= 0) {
           values.means(means);
@@ -111,9 +112,10 @@ public final class Ssim implements QualityMeasure {
           addSimilarity(window, means, variances, covariances, columnSums);
         }
       }
+      int windowColumns = width - GaussianRows.SIDE + 1;
       double sum = 0;
-      for (double columnSum : columnSums) {
-        sum += columnSum;
+      for (int column = 0; column < windowColumns; column++) {
+        sum += columnSums[values.place(column)];
       }
       return sum / ((double) cleanMeans.length * windowColumns);
     }
@@ -129,14 +131,6 @@ public final class Ssim implements QualityMeasure {
         double denominator =
             (mx[i] * mx[i] + my[i] * my[i] + luminanceFloor) * (vx[i] + vy[i] + contrastFloor);
         columnSums[i] += numerator / denominator;
-      }
-    }
-
-    private static void load(Picture picture, int y, double[] row) {
-      int[] samples = picture.samples();
-      int start = y * row.length;
-      for (int x = 0; x < row.length; x++) {
-        row[x] = samples[start + x];
       }
     }
 

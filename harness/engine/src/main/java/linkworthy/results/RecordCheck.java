@@ -18,10 +18,12 @@ import linkworthy.trial.Trial;
  */
 public final class RecordCheck {
   private static final double RELATIVE = 1e-9;
+  private static final int MOST_COMPLAINTS = 100;
 
   private final ResultsFolder folder;
   private final Cells cells = new Cells();
   private final List<String> complaints = new ArrayList<>();
+  private long more;
   private long rows;
 
   /** A check of this record, before its first row. */
@@ -35,8 +37,12 @@ public final class RecordCheck {
     try {
       cells.add(trial);
     } catch (IllegalArgumentException e) {
-      complaints.add(
-          folder.path().resolve(TrialsCsv.FILE) + ", line " + (rows + 1) + ": " + e.getMessage());
+      if (complaints.size() < MOST_COMPLAINTS) {
+        complaints.add(
+            folder.path().resolve(TrialsCsv.FILE) + ", line " + (rows + 1) + ": " + e.getMessage());
+      } else {
+        more++;
+      }
     }
   }
 
@@ -45,9 +51,14 @@ public final class RecordCheck {
     return rows;
   }
 
-  /** What the rows so far have against them, one line each. */
+  /** What the rows so far have against them, one line each; of very many the first. */
   public List<String> ofRows() {
     return List.copyOf(complaints);
+  }
+
+  /** How many rows have something against them besides {@link #ofRows}. */
+  public long moreOfRows() {
+    return more;
   }
 
   /** What their number has against it, after the last row of a complete run. */

@@ -305,9 +305,9 @@ public final class ResultsWriter implements AutoCloseable {
    *
    * @throws linkworthy.input.Unavailable if the folder cannot be written
    */
-  public void finish(List<Cell> cells, RunRecord run) {
+  public void finish(List<Cell> cells, RunRecord ended) {
     write(CellsCsv.FILE, CellsCsv.text(cells));
-    write(RunRecord.FILE, run.toJson());
+    stop(ended);
   }
 
   /**
@@ -349,8 +349,9 @@ public final class ResultsWriter implements AutoCloseable {
    *
    * @throws linkworthy.input.Unavailable if the folder cannot be written
    */
-  public void stop(RunRecord run) {
-    write(RunRecord.FILE, run.toJson());
+  public void stop(RunRecord ended) {
+    write(RunRecord.FILE, ended.toJson());
+    run = ended;
   }
 
   /**

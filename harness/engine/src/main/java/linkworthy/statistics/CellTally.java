@@ -1,31 +1,49 @@
 package linkworthy.statistics;
 
+import java.util.Arrays;
+import java.util.EnumMap;
 import java.util.LinkedHashMap;
 import java.util.Map;
-import java.util.function.ToDoubleFunction;
-import java.util.stream.DoubleStream;
+import java.util.Objects;
+import linkworthy.statistics.PictureTally.Figure;
 import linkworthy.trial.Trial;
 
-/** What is known of one cell so far. */
+/**
+ * What is known of one cell so far: the PSNR of every trial, running moments over the pictures that
+ * are done, and the tally of the one at hand.
+ */
 final class CellTally {
   private final Trial first;
-  private final Map<String, PictureTally> pictures = new LinkedHashMap<>();
+  private final PsnrTable psnrDb;
+  private final Map<Figure, Moments> done = new EnumMap<>(Figure.class);
+  private final Map<String, Moments> furtherDone = new LinkedHashMap<>();
+  private PictureTally current = new PictureTally();
+  private double[] squaredErrors = new double[1];
+  private boolean hasNoiseInterval = true;
   private String transform;
   private String over;
   private int keep;
   private String step;
   private long failures;
 
-  CellTally(Trial first) {
+  CellTally(Trial first, Numbering pictures) {
     this.first = first;
+    psnrDb = new PsnrTable(pictures);
     transform = first.transform();
     over = first.over();
     keep = first.keep();
     step = first.step();
+    for (Figure figure : Figure.values()) {
+      done.put(figure, new Moments());
+    }
+    first.further().keySet().forEach(column -> furtherDone.put(column, new Moments()));
   }
 
   void add(Trial trial) {
-    pictures.computeIfAbsent(trial.picture(), id -> new PictureTally()).add(trial);
+    if (psnrDb.add(trial) && psnrDb.pictures() > 1) {
+      endPicture(psnrDb.pictures() - 2);
+    }
+    current.add(trial);
     transform = transform.equals(trial.transform()) ? transform : "";
     over = over.equals(trial.over()) ? over : "";
     keep = keep == trial.keep() ? keep : -1;
@@ -33,9 +51,28 @@ final class CellTally {
     failures += trial.failure().isEmpty() ? 0 : 1;
   }
 
+  /** A picture with a single trial, or an infinite value, leaves the cell without an interval. */
+  private void endPicture(int place) {
+    done.forEach((figure, moments) -> moments.add(current.mean(figure)));
+    furtherDone.forEach((column, moments) -> moments.add(current.mean(column)));
+    double squaredError = squaredError(current);
+    hasNoiseInterval &= !Double.isNaN(squaredError);
+    if (hasNoiseInterval) {
+      if (place == squaredErrors.length) {
+        squaredErrors = Arrays.copyOf(squaredErrors, 2 * place);
+      }
+      squaredErrors[place] = squaredError;
+    }
+    current = new PictureTally();
+  }
+
+  private static double squaredError(PictureTally picture) {
+    return picture.psnrDb().variance() / picture.psnrDb().count();
+  }
+
   /** Per-picture means of PSNR, in dB. */
   Moments psnrOfPictures() {
-    return Moments.of(pictures.values().stream().mapToDouble(p -> p.psnr().mean()).toArray());
+    return Objects.requireNonNull(done.get(Figure.PSNR_DB)).with(current.mean(Figure.PSNR_DB));
   }
 
   /**
@@ -46,10 +83,10 @@ final class CellTally {
   Moments minus(CellTally other) {
     Moments overPictures = new Moments();
     Moments overReplicates = new Moments();
-    for (Map.Entry<String, PictureTally> entry : pictures.entrySet()) {
-      PictureTally theirs = other.pictures.get(entry.getKey());
-      if (theirs != null) {
-        Moments differences = entry.getValue().minus(theirs);
+    int[] places = psnrDb.placesIn(other.psnrDb);
+    for (int i = 0; i < places.length; i++) {
+      if (places[i] >= 0) {
+        Moments differences = psnrDb.minus(i, other.psnrDb, places[i]);
         if (differences.count() > 0) {
           overReplicates = differences;
           overPictures.add(differences.mean());
@@ -66,24 +103,24 @@ final class CellTally {
         first.actsOn(),
         first.axis(),
         first.severity(),
-        mean(PictureTally::equivalentNoiseVariance),
-        mean(PictureTally::snrDb),
+        mean(Figure.EQUIVALENT_NOISE_VARIANCE),
+        mean(Figure.SNR_DB),
         first.codec(),
         transform,
         over,
         keep,
         step,
-        pictures.size(),
-        pictures.values().stream().mapToLong(PictureTally::count).sum(),
+        psnrDb.pictures(),
+        psnrDb.trials(),
         psnr.mean(),
-        StudentT.halfWidthOfGroups(pictures.values().stream().map(PictureTally::psnr).toList()),
+        noiseHalfWidth(),
         StudentT.halfWidth(psnr),
-        10 * StrictMath.log10(1 / mean(PictureTally::relativeError)),
-        Percentile.of(allPsnrDb(), 0.05),
-        mean(PictureTally::ssim),
-        mean(PictureTally::bitsPerPixel),
-        mean(PictureTally::outageRate),
-        mean(PictureTally::realisedNoiseVariance),
+        10 * StrictMath.log10(1 / mean(Figure.RELATIVE_ERROR)),
+        Percentile.of(psnrDb.toArray(), 0.05),
+        mean(Figure.SSIM),
+        mean(Figure.BITS_PER_PIXEL),
+        mean(Figure.OUTAGE_RATE),
+        mean(Figure.REALISED_NOISE_VARIANCE),
         behindBestDb,
         behindBestPAdjusted,
         standing,
@@ -91,19 +128,26 @@ final class CellTally {
         furtherMeans());
   }
 
+  private double noiseHalfWidth() {
+    int last = psnrDb.pictures() - 1;
+    if (!hasNoiseInterval) {
+      return Double.NaN;
+    }
+    double[] parts = Arrays.copyOf(squaredErrors, last + 1);
+    long[] counts = new long[last + 1];
+    parts[last] = squaredError(current);
+    Arrays.setAll(counts, psnrDb::trials);
+    return StudentT.halfWidthOfGroups(parts, counts);
+  }
+
   private Map<String, Double> furtherMeans() {
     Map<String, Double> means = new LinkedHashMap<>();
-    for (String column : first.further().keySet()) {
-      means.put(column, mean(picture -> picture.further(column)));
-    }
+    furtherDone.forEach(
+        (column, moments) -> means.put(column, moments.with(current.mean(column)).mean()));
     return means;
   }
 
-  private double mean(ToDoubleFunction<PictureTally> figure) {
-    return Moments.of(pictures.values().stream().mapToDouble(figure).toArray()).mean();
-  }
-
-  private double[] allPsnrDb() {
-    return pictures.values().stream().flatMapToDouble(p -> DoubleStream.of(p.psnrDb())).toArray();
+  private double mean(Figure figure) {
+    return Objects.requireNonNull(done.get(figure)).with(current.mean(figure)).mean();
   }
 }

@@ -10,11 +10,11 @@ import linkworthy.trial.Trial;
  * Gathers trials into cells. A cell is one codec under one severity (impairment, place, axis and
  * value), over all pictures; the codecs under one severity are a row.
  *
- * <p>Trials are taken one at a time, in the canonical order; about 12 bytes are kept for each, and
- * about 200 for each picture of a cell. Replicates are nested in pictures: <b>every mean is the
- * mean over pictures of the means over replicates</b>, so that each picture counts the same however
- * many replicates it has. In a cell of P pictures, with R_p replicates of picture p, mean m_p and
- * standard deviation s_p of their PSNR:
+ * <p>Trials are taken one at a time, in the canonical order; 8 to 12 bytes are kept for each, up to
+ * 32 for each picture of a cell, and about 2000 for each cell. Replicates are nested in pictures:
+ * <b>every mean is the mean over pictures of the means over replicates</b>, so that each picture
+ * counts the same however many replicates it has. In a cell of P pictures, with R_p replicates of
+ * picture p, mean m_p and standard deviation s_p of their PSNR:
  *
  * <ul>
  *   <li>mean PSNR: {@code M = (1/P) sum m_p}; infinite if any trial's is.
@@ -40,6 +40,7 @@ import linkworthy.trial.Trial;
 public final class Cells {
   private static final double ALPHA = 0.05;
 
+  private final Numbering pictures = new Numbering();
   private final Map<Row, Map<String, CellTally>> rows = new LinkedHashMap<>();
 
   private record Row(String impairment, String actsOn, String axis, double severity) {}
@@ -58,8 +59,8 @@ public final class Cells {
   /**
    * Takes one more trial.
    *
-   * @throws IllegalArgumentException if its PSNR is NaN, or if the replicates of its cell and
-   *     picture are not in ascending order, each once
+   * @throws IllegalArgumentException if its PSNR is NaN, or if the trials of its cell and picture
+   *     do not come together and with their replicates in ascending order, each once
    */
   public void add(Trial trial) {
     if (Double.isNaN(trial.psnrDb())) {
@@ -68,7 +69,7 @@ public final class Cells {
     }
     Row row = new Row(trial.impairment(), trial.actsOn(), trial.axis(), trial.severity());
     rows.computeIfAbsent(row, r -> new LinkedHashMap<>())
-        .computeIfAbsent(trial.codec(), codec -> new CellTally(trial))
+        .computeIfAbsent(trial.codec(), codec -> new CellTally(trial, pictures))
         .add(trial);
   }
 
@@ -97,7 +98,7 @@ public final class Cells {
     double[] adjusted = Holm.adjust(p);
     List<Cell> cells = new ArrayList<>();
     for (int i = 0; i < means.length; i++) {
-      double behind = PictureTally.difference(means[best], means[i]);
+      double behind = PsnrTable.difference(means[best], means[i]);
       cells.add(row.get(i).cell(behind, adjusted[i], standing(i == best, adjusted[i])));
     }
     return cells;

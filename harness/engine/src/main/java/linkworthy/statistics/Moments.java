@@ -42,6 +42,18 @@ public final class Moments {
     squares.addProduct(difference, difference);
   }
 
+  /** The moments of these values and one more; these stay as they are. */
+  Moments with(double value) {
+    Moments moments = new Moments();
+    moments.differences.add(differences);
+    moments.squares.add(squares);
+    moments.first = first;
+    moments.nonFinite = nonFinite;
+    moments.count = count;
+    moments.add(value);
+    return moments;
+  }
+
   /** How many values there were. */
   public long count() {
     return count;

@@ -1,8 +1,9 @@
 package linkworthy.statistics;
 
-import java.util.SortedSet;
+import java.util.BitSet;
+import java.util.HashMap;
+import java.util.Map;
 import java.util.SplittableRandom;
-import java.util.TreeSet;
 import linkworthy.input.Require;
 
 /**
@@ -10,6 +11,12 @@ import linkworthy.input.Require;
  * likely as every other, so that what is said of altered rows does not depend on where they stand.
  */
 public final class RowSample {
+  /** Rows of a block, as a power of two; a block that has a drawn row takes a bit for each row. */
+  private static final int BLOCK = 24;
+
+  private final Map<Long, BitSet> blocks = new HashMap<>();
+  private long size;
+
   private RowSample() {}
 
   /**
@@ -18,19 +25,44 @@ public final class RowSample {
    *
    * @param rows there are, from 0
    * @param sampled 0 to {@code rows}
-   * @return their numbers, from 0, in ascending order
    * @throws IllegalArgumentException if there are fewer rows than that
    */
-  public static SortedSet<Long> draw(long rows, long sampled, long seed) {
+  public static RowSample draw(long rows, long sampled, long seed) {
     requireUpTo(rows, sampled, "sampled");
     SplittableRandom random = new SplittableRandom(seed);
-    SortedSet<Long> drawn = new TreeSet<>();
+    RowSample drawn = new RowSample();
     for (long last = rows - sampled; last < rows; last++) {
       if (!drawn.add(random.nextLong(last + 1))) {
-        drawn.add(last);
+        boolean unused = drawn.add(last);
       }
     }
     return drawn;
+  }
+
+  private boolean add(long row) {
+    BitSet block = blocks.computeIfAbsent(row >> BLOCK, number -> new BitSet());
+    int bit = bit(row);
+    if (block.get(bit)) {
+      return false;
+    }
+    block.set(bit);
+    size++;
+    return true;
+  }
+
+  private static int bit(long row) {
+    return (int) (row & ((1 << BLOCK) - 1));
+  }
+
+  /** Whether a row was drawn; rows are counted from 0. */
+  public boolean contains(long row) {
+    BitSet block = blocks.get(row >> BLOCK);
+    return block != null && block.get(bit(row));
+  }
+
+  /** How many rows were drawn. */
+  public long size() {
+    return size;
   }
 
   /** So many rows as a share of them is, rounded up: the fewest that are at least this share. */

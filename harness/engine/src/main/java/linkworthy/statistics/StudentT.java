@@ -43,7 +43,16 @@ public final class StudentT {
    * groups, or if any group has fewer than two values or an infinite one.
    */
   public static double halfWidthOfGroups(List<Moments> groups) {
-    double[] parts = groups.stream().mapToDouble(g -> g.variance() / g.count()).toArray();
+    return halfWidthOfGroups(
+        groups.stream().mapToDouble(g -> g.variance() / g.count()).toArray(),
+        groups.stream().mapToLong(Moments::count).toArray());
+  }
+
+  /**
+   * @param parts {@code s_p^2 / R_p} of each group
+   * @param counts {@code R_p}
+   */
+  static double halfWidthOfGroups(double[] parts, long[] counts) {
     double sum = 0;
     for (double part : parts) {
       sum += part;
@@ -51,7 +60,7 @@ public final class StudentT {
     double squares = 0;
     for (int p = 0; p < parts.length; p++) {
       double share = parts[p] / sum;
-      squares += share * share / (groups.get(p).count() - 1.0);
+      squares += share * share / (counts[p] - 1.0);
     }
     double scale = (double) parts.length * parts.length;
     return halfWidth(sum / scale, sum > 0 ? 1 / squares : 1);

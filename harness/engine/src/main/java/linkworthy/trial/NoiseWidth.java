@@ -28,6 +28,7 @@ final class NoiseWidth {
   private static final int RESERVE = 10;
   private static final double STEEPNESS = 3;
 
+  private static final long MOST_REMEMBERED = 100_000;
   private static final ConcurrentMap<Long, Double> QUANTILES = new ConcurrentHashMap<>();
 
   private long count;
@@ -66,8 +67,7 @@ final class NoiseWidth {
     }
     double scatter = squares - sum * sum / count;
     return Double.isFinite(scatter)
-        ? QUANTILES.computeIfAbsent(count, NoiseWidth::quantile)
-            * Math.sqrt(Math.max(0, scatter) / (count - 1) / counted())
+        ? remembered(count) * Math.sqrt(Math.max(0, scatter) / (count - 1) / counted())
         : Double.POSITIVE_INFINITY;
   }
 
@@ -77,6 +77,12 @@ final class NoiseWidth {
       counted /= STEEPNESS;
     }
     return counted;
+  }
+
+  private static double remembered(long count) {
+    return count > MOST_REMEMBERED
+        ? quantile(count)
+        : QUANTILES.computeIfAbsent(count, NoiseWidth::quantile);
   }
 
   private static double quantile(long count) {

@@ -37,6 +37,15 @@ public final class Plan {
         conditions.add(new WorkUnit.Condition(impairment, severity));
       }
     }
+    double units = pictures.size() * (1.0 + (double) conditions.size() * study.replicates());
+    if (units > Integer.MAX_VALUE) {
+      throw new BadInput(
+          "the study has "
+              + (long) units
+              + " units of a picture, a severity and a replicate; accepted: up to "
+              + Integer.MAX_VALUE
+              + " (cut it into several studies)");
+    }
   }
 
   /**

@@ -4,7 +4,8 @@ import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.assertThatIllegalArgumentException;
 import static org.assertj.core.api.Assertions.within;
 
-import java.util.SortedSet;
+import java.util.List;
+import java.util.stream.LongStream;
 import org.apache.commons.statistics.distribution.HypergeometricDistribution;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
@@ -41,13 +42,25 @@ class RowSampleTest {
 
   @Test
   void aSampleHasDistinctRowsAndFollowsItsSeed() {
-    SortedSet<Long> sample = RowSample.draw(1000, 100, 7);
-    assertThat(sample).hasSize(100).isEqualTo(RowSample.draw(1000, 100, 7));
-    assertThat(sample.first()).isNotNegative();
-    assertThat(sample.last()).isLessThan(1000);
-    assertThat(RowSample.draw(1000, 100, 8)).isNotEqualTo(sample);
-    assertThat(RowSample.draw(5, 5, 1)).containsExactly(0L, 1L, 2L, 3L, 4L);
-    assertThat(RowSample.draw(5, 0, 1)).isEmpty();
+    List<Long> sample = rows(1000, 100, 7);
+    assertThat(sample).hasSize(100).isEqualTo(rows(1000, 100, 7));
+    assertThat(RowSample.draw(1000, 100, 7).size()).isEqualTo(100);
+    assertThat(rows(1000, 100, 8)).isNotEqualTo(sample);
+    assertThat(rows(5, 5, 1)).containsExactly(0L, 1L, 2L, 3L, 4L);
+    assertThat(rows(5, 0, 1)).isEmpty();
+  }
+
+  /** Rows far apart: more than an int counts. */
+  @Test
+  void rowsMayBeMoreThanBillions() {
+    RowSample sample = RowSample.draw(1L << 40, 3, 7);
+    assertThat(sample.size()).isEqualTo(3);
+    assertThat(sample.contains(1L << 40)).isFalse();
+  }
+
+  private static List<Long> rows(long rows, long sampled, long seed) {
+    RowSample sample = RowSample.draw(rows, sampled, seed);
+    return LongStream.range(-1, rows + 1).filter(sample::contains).boxed().toList();
   }
 
   /**
@@ -60,7 +73,7 @@ class RowSampleTest {
     int seeds = 4000;
     int[] counts = new int[20];
     for (int seed = 0; seed < seeds; seed++) {
-      RowSample.draw(20, 5, seed).forEach(row -> counts[row.intValue()]++);
+      rows(20, 5, seed).forEach(row -> counts[row.intValue()]++);
     }
     assertThat(counts)
         .satisfies(
