@@ -37,6 +37,10 @@ public record ComparisonPage(
   public enum Style {
     /** From the left. */
     WORDS(""),
+    /** From the left, a few words that should seldom break. */
+    NAMES("name"),
+    /** From the left, whole sentences. */
+    PROSE("prose"),
     /** In one line. */
     SHORT("nb"),
     /** To the right. */

@@ -78,6 +78,38 @@ class ComparisonPageTest {
         .noneMatch(String::isEmpty);
   }
 
+  /**
+   * Levels 0 and 100 with 4 % beyond on either side, as any linear axis has: the frame from 36 to
+   * 384 is 108 levels wide, so level 0 stands at 36 + 348 * 4 / 108 = 48.9, level 50 in the middle.
+   */
+  @Test
+  void pointsStandAtTheirPlacesAndALineHasNone() {
+    ComparisonPage.Trend trend =
+        new ComparisonPage.Trend(
+            ComparisonPage.Kind.LEVELS,
+            "levels",
+            List.of(),
+            List.of(0.0, 50.0, 100.0),
+            List.of(
+                new ComparisonPage.Series(
+                    "measured",
+                    ComparisonPage.Drawn.POINTS,
+                    List.of(0.0, 5.0, 10.0),
+                    List.of(1.0, 1.0, 1.0)),
+                new ComparisonPage.Series(
+                    "fitted", ComparisonPage.Drawn.LINE, List.of(0.0, 5.0, 10.0), List.of())));
+    RenderedPage shown = shown(page("a", List.of(trend)));
+    assertThat(shown.texts("//figure/*/*/*[@class='line']/@d"))
+        .singleElement()
+        .asString()
+        .matches("M48\\.9 [0-9.]+L210\\.0 132\\.0L371\\.1 [0-9.]+");
+    assertThat(shown.texts("//figure/*/*/*[@class='marker']")).hasSize(1);
+    // a half-width of 1 is 208 / 10.8 = 19.3 high; the first and last are cut at the frame
+    assertThat(shown.text("//*[@class='whisker']/@d"))
+        .matches("M48\\.9 236\\.0V[0-9.]+M210\\.0 151\\.3V112\\.7M371\\.1 [0-9.]+V28\\.0");
+    assertThat(shown.texts("//*[@class='tick mid']")).startsWith("0", "20").endsWith("100");
+  }
+
   @Test
   void manyRunsHaveFewTicks() {
     RenderedPage shown = shown(page("a", List.of(trend("b", 1, new double[100]))));

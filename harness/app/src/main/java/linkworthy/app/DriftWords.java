@@ -110,7 +110,7 @@ final class DriftWords {
         "mean PSNR in dB, difference new minus old with its 95 % interval",
         List.of(
             words("condition"),
-            words("codec"),
+            new ComparisonPage.Column("codec", ComparisonPage.Style.NAMES),
             words("verdict"),
             number("old"),
             number("new"),
@@ -159,7 +159,9 @@ final class DriftWords {
           new ComparisonPage.Table(
               heading,
               "",
-              List.of(words("condition"), words("codec")),
+              List.of(
+                  words("condition"),
+                  new ComparisonPage.Column("codec", ComparisonPage.Style.NAMES)),
               keys.stream().map(key -> List.of(condition(key), key.codec())).toList()));
     }
   }
@@ -226,7 +228,7 @@ final class DriftWords {
             words("version"),
             words("study"),
             words("folder"),
-            words("against the run before")),
+            new ComparisonPage.Column("against the run before", ComparisonPage.Style.PROSE)),
         rows);
   }
 
@@ -241,7 +243,10 @@ final class DriftWords {
         .forEach(
             (heading, keys) -> {
               List<ComparisonPage.Column> columns =
-                  new ArrayList<>(List.of(words("severity"), words("codec")));
+                  new ArrayList<>(
+                      List.of(
+                          words("severity"),
+                          new ComparisonPage.Column("codec", ComparisonPage.Style.NAMES)));
               runLabels(history).forEach(label -> columns.add(number(label)));
               columns.add(number("last - first"));
               tables.add(

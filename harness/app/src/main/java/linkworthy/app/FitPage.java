@@ -36,14 +36,15 @@ final class FitPage {
     return page(
         fit.trace().name(),
         "What kind of losses does this link have?",
-        fit.chosen().form().label()
-            + ", loss rate "
-            + number(fit.chosen().chain().lossRate())
-            + ", mean burst "
-            + number(fit.chosen().meanBurst())
-            + " packets, fitted to "
-            + fit.trace().packets()
-            + " packets.",
+        sentence(
+            fit.chosen().form().label()
+                + ", loss rate "
+                + number(fit.chosen().chain().lossRate())
+                + ", mean burst "
+                + number(fit.chosen().meanBurst())
+                + " packets, fitted to "
+                + fit.trace().packets()
+                + " packets"),
         LossFitText.answer(fit),
         List.of(parameters(table, fit), runs(table)),
         definitions(),

@@ -66,7 +66,7 @@ final class RecheckFindings {
     }
   }
 
-  /** Further mismatches that are only counted. */
+  /** Mismatches that are counted and not named. */
   void more(long count) {
     mismatched += count;
   }
@@ -92,8 +92,9 @@ final class RecheckFindings {
     mismatches.stream()
         .limit(SHOWN)
         .forEach(mismatch -> lines.add("MISMATCH      " + mismatch.found()));
-    if (mismatched > SHOWN) {
-      lines.add("MISMATCH      and " + (mismatched - SHOWN) + " more");
+    long shown = Math.min(SHOWN, mismatches.size());
+    if (mismatched > shown) {
+      lines.add("MISMATCH      and " + (mismatched - shown) + " more");
     }
     lines.add(
         stands()
@@ -218,10 +219,12 @@ final class RecheckFindings {
     }
     return new ComparisonPage.Table(
         "Mismatches",
-        mismatched > LISTED ? "the first " + LISTED + " of " + mismatched : "",
+        mismatched > mismatches.size()
+            ? "the first " + mismatches.size() + " of " + mismatched
+            : "",
         List.of(
             new ComparisonPage.Column("no.", true),
-            new ComparisonPage.Column("what does not agree", false),
+            new ComparisonPage.Column("what does not agree", ComparisonPage.Style.PROSE),
             new ComparisonPage.Column("to see it for yourself", ComparisonPage.Style.COMMANDS)),
         table);
   }

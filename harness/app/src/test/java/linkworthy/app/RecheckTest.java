@@ -8,7 +8,9 @@ import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Locale;
 import java.util.Map;
+import java.util.TimeZone;
 import java.util.function.UnaryOperator;
 import linkworthy.results.TrialsCsv;
 import linkworthy.statistics.RowSample;
@@ -109,6 +111,68 @@ class RecheckTest {
             "if 1 % of the rows were altered (1), the chance to have missed all of them is 0.6667",
             "if 5 % of the rows were altered (5), the chance to have missed all of them is 0.1243");
     assertThat(recheck(copy(), "--sample", "30", "--seed", "5")).isEqualTo(outcome);
+  }
+
+  /** The page says the same as the console, and under every locale and time zone the same bytes. */
+  @Test
+  void thePageSaysWhatWasVerifiedAndWhatMayHaveBeenMissed() throws IOException {
+    Path page = folder.resolve("recheck.html");
+    List<String> pages = new ArrayList<>();
+    Locale locale = Locale.getDefault();
+    TimeZone zone = TimeZone.getDefault();
+    for (String tag : List.of("en-US UTC", "de-DE Asia/Tokyo", "tr-TR UTC")) {
+      List<String> words = List.of(tag.split(" ", 2));
+      Locale.setDefault(Locale.forLanguageTag(words.get(0)));
+      TimeZone.setDefault(TimeZone.getTimeZone(words.get(1)));
+      try {
+        Outcome outcome =
+            recheck(copy(), "--sample", "30", "--seed", "5", "--html", page.toString());
+        assertThat(outcome.code()).isZero();
+        assertThat(outcome.out()).endsWith("page: " + page + "\n");
+      } finally {
+        Locale.setDefault(locale);
+        TimeZone.setDefault(zone);
+      }
+      pages.add(Files.readString(page));
+    }
+    assertThat(pages.stream().distinct()).hasSize(1);
+    String text =
+        pages
+            .get(0)
+            .replaceAll("(?s)<(style|script|title)\\b.*?</\\1>", "")
+            .replaceAll("<[^>]*>", "|")
+            .replaceAll("[|\\s]*\\|[|\\s]*", "|");
+    // 1 % and less of 90 rows is 1 row: 60 / 90. 2 % are 2, 5 % are 5, 10 % are 9: recomputed
+    // independently in Python with scipy.stats.hypergeom.pmf(0, 90, D, 30).
+    assertThat(text)
+        .contains(
+            "|The record stands, as far as it was verified: 30 of 90 trials were repeated and are"
+                + " equal, bit for bit.|",
+            "|Rows repeated: 30 of 90, drawn at random with the seed 5. The figures of the other 60"
+                + " were read, not repeated.|",
+            "the chance that this check had missed all of them is 0.6667; a single altered row it"
+                + " misses with the chance 0.6667.|",
+            "|1 row|1|0.6667|0.1 %|1|0.6667|0.5 %|1|0.6667|1 %|1|0.6667|2 %|2|0.4419|5 %|5|0.1243|"
+                + "10 %|9|0.0209|",
+            "|part of the record|what was found|study|study.yaml has the fingerprint of the run|",
+            "|rows|the figures of the other 60 trials|timings.csv|",
+            "recheck " + folder + "/copy --sample 30 --seed 5|")
+        .doesNotContain("Mismatches");
+  }
+
+  @Test
+  void aPageIsWrittenOfWhatDoesNotStandEvenIfNoTrialWasRepeated() throws IOException {
+    Path results = copy();
+    change(results.resolve("study.yaml"), text -> text.replace("seed: 7", "seed: 8"));
+    Path page = folder.resolve("recheck.html");
+    assertThat(recheck(results, "--html", page.toString()).code()).isEqualTo(1);
+    assertThat(Files.readString(page))
+        .contains(
+            "The record does not stand: ", "No trial was repeated: ", "study fingerprint recorded ")
+        .doesNotContain("may have missed");
+    Outcome refused = Program.run(folder, "recheck", "" + results, "--html", "" + folder);
+    assertThat(refused.errors()).singleElement().asString().contains("--html is the folder");
+    assertThat(refused.code()).isEqualTo(2);
   }
 
   @Test
