@@ -83,7 +83,7 @@ public final class Roofline {
       StudyWork.Stage stage, StageTimes.Seen seen, MachineLimits.OneThread limits, long trials) {
     double seconds = seen.share(stage.name()) * seen.seconds();
     StudyWork.Work work = stage.work();
-    double bytes = work.nearBytes() + work.cacheBytes();
+    double bytes = work.nearBytes() + work.cacheBytes() + work.memoryBytes();
     String binding = "";
     double least = 0;
     for (var limit : StudyWork.LIMITS.entrySet()) {

@@ -21,8 +21,9 @@ import linkworthy.trial.Plan;
  *
  * <p>Multiply-adds count two operations on doubles each, additions half of one. Bytes are all loads
  * and stores of the inner loops, near where the loops' data lies: in the first-level cache, or in
- * the second where a whole matrix or picture is swept. Steps are operations on integers. Where a
- * count depends on the pictures it is a guess, and the formula says 'about'.
+ * the second where a whole matrix or picture is swept, or in memory where a picture is new. Steps
+ * are operations on integers. Where a count depends on the pictures it is a guess, and the formula
+ * says 'about'.
  */
 final class StudyWork {
   static final int LEADING = 64;
@@ -57,25 +58,31 @@ final class StudyWork {
    * @param steps on integers
    * @param nearBytes to and from the first-level cache
    * @param cacheBytes to and from the second
+   * @param memoryBytes to and from memory
    */
   record Work(
-      double multiplyAdds, double divisions, double steps, double nearBytes, double cacheBytes) {
-    static final Work NONE = new Work(0, 0, 0, 0, 0);
+      double multiplyAdds,
+      double divisions,
+      double steps,
+      double nearBytes,
+      double cacheBytes,
+      double memoryBytes) {
+    static final Work NONE = new Work(0, 0, 0, 0, 0, 0);
 
     static Work near(double multiplyAdds, double bytesOfEach) {
-      return new Work(multiplyAdds, 0, 0, multiplyAdds * bytesOfEach, 0);
+      return new Work(multiplyAdds, 0, 0, multiplyAdds * bytesOfEach, 0, 0);
     }
 
     static Work cache(double multiplyAdds, double bytes) {
-      return new Work(multiplyAdds, 0, 0, 0, bytes);
+      return new Work(multiplyAdds, 0, 0, 0, bytes, 0);
     }
 
     static Work steps(double steps) {
-      return new Work(0, 0, steps, 0, 0);
+      return new Work(0, 0, steps, 0, 0, 0);
     }
 
     static Work divisions(double divisions) {
-      return new Work(0, divisions, 0, 0, 0);
+      return new Work(0, divisions, 0, 0, 0, 0);
     }
 
     Work plus(Work other) {
@@ -84,7 +91,8 @@ final class StudyWork {
           divisions + other.divisions,
           steps + other.steps,
           nearBytes + other.nearBytes,
-          cacheBytes + other.cacheBytes);
+          cacheBytes + other.cacheBytes,
+          memoryBytes + other.memoryBytes);
     }
 
     Work times(double factor) {
@@ -93,7 +101,8 @@ final class StudyWork {
           divisions * factor,
           steps * factor,
           nearBytes * factor,
-          cacheBytes * factor);
+          cacheBytes * factor,
+          memoryBytes * factor);
     }
   }
 
@@ -267,8 +276,8 @@ final class StudyWork {
                 "codec.Symbols.direction")),
         new Stage(
             "count coded bits",
-            "about 40 steps each (8 parameters)",
-            perFamily((f, p) -> Work.steps(40 * coded(f, p)).times(seen)),
+            "about 20 steps each (4 parameters)",
+            perFamily((f, p) -> Work.steps(20 * coded(f, p)).times(seen)),
             List.of("codec.RiceCosts.<init>", "codec.RiceCosts.sums", "codec.RiceCoder$Cost")));
   }
 
@@ -301,8 +310,8 @@ final class StudyWork {
             List.of("codec.TransformCodec.reconstruct", "codec.WholePicture")),
         new Stage(
             "round and clip",
-            "2 a sample; 12 bytes a sample",
-            perPicture(p -> Work.cache(2.0 * p.size(), 12.0 * p.size()).times(shown())),
+            "2 a sample; 16 bytes a sample from and to memory, as the picture is new",
+            perPicture(p -> new Work(2, 0, 0, 0, 0, 16).times((double) p.size() * shown())),
             List.of(
                 "codec.Arrangement$Rows.scatter",
                 "codec.Arrangement$Blocks.scatter",
@@ -318,8 +327,8 @@ final class StudyWork {
             List.of("quality.Psnr", "trial.Subject.meanSquaredError")),
         new Stage(
             "SSIM",
-            "57 and a division a sample; 1776 bytes a sample",
-            perPicture(p -> new Work(57, 1, 0, 1776, 0).times((double) p.size() * shown())),
+            "57 and a division a sample; 950 bytes a sample",
+            perPicture(p -> new Work(57, 1, 0, 950, 0, 0).times((double) p.size() * shown())),
             List.of("quality.Ssim$Windows", "quality.GaussianRows")));
   }
 
@@ -397,6 +406,7 @@ final class StudyWork {
     limits.put("steps", w -> w.work().steps() / w.limits().steps());
     limits.put("first cache", w -> w.work().nearBytes() / w.limits().nearBytes());
     limits.put("second cache", w -> w.work().cacheBytes() / w.limits().cacheBytes());
+    limits.put("memory", w -> w.work().memoryBytes() / w.limits().memoryBytes());
     return limits;
   }
 }
