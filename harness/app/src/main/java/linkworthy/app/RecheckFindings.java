@@ -289,11 +289,12 @@ final class RecheckFindings {
                   + " bit or letter"),
           new Fact(
               "study",
-              "study.yaml has the checksum (SHA-256) that was noted when the run began, so the"
-                  + " question was not changed afterwards"),
+              "study.yaml has the checksum (SHA-256) that run.json notes, and its purpose is the one"
+                  + " noted there"),
           new Fact(
               "noise models, pictures, corpus",
-              "what the trials were made of; each is known by its checksum, so none was exchanged"),
+              "what the trials were made of: each has the checksum that run.json notes. Whoever"
+                  + " rewrote all of it together would have to have run the trials anew"),
           new Fact(
               "order",
               "every row of trials.csv is read and stands where the study puts it: none is"

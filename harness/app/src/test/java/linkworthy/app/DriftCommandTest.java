@@ -368,7 +368,7 @@ class DriftCommandTest {
     Files.write(trials, twice);
     assertRefused(
         2,
-        List.of("trials.csv, line 91", "each replicate once"),
+        List.of("trials.csv, line 91", "the trials of each picture together"),
         "drift",
         first.toString(),
         cut.toString());
