@@ -38,8 +38,12 @@ public interface Basis {
     return this;
   }
 
-  /** Names the directions found, for codecs that share them. */
-  default String work() {
+  /**
+   * Names the directions found, for codecs that share them.
+   *
+   * @param variables number of variables d
+   */
+  default String work(int variables) {
     return id();
   }
 

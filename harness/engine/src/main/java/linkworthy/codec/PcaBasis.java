@@ -48,14 +48,19 @@ final class PcaBasis implements Basis {
   }
 
   @Override
-  public String work() {
-    return few ? ID + " of " + FEW : ID;
+  public String work(int variables) {
+    return isLeading(variables) ? ID + " of " + FEW : ID;
+  }
+
+  /** Whether directions are left out; where there are few variables, all are found for everyone. */
+  private boolean isLeading(int variables) {
+    return few && variables >= MANY_VARIABLES;
   }
 
   @Override
   public Directions directions(Arrangement arrangement, PictureShape shape, double[][] centred) {
     DMatrixRMaj covariance = Matrices.covariance(centred);
-    return few ? leading(covariance) : of(covariance);
+    return isLeading(centred.length) ? leading(covariance) : of(covariance);
   }
 
   /** Principal directions of a covariance, without the negligible ones. */
@@ -64,11 +69,9 @@ final class PcaBasis implements Basis {
   }
 
   /** The first 64 of them, with the variances of all. */
-  static Directions leading(DMatrixRMaj covariance) {
+  private static Directions leading(DMatrixRMaj covariance) {
     double floor = negligible(covariance);
-    return covariance.getNumRows() < MANY_VARIABLES
-        ? of(covariance)
-        : above(floor, SymmetricEigen.largest(covariance, FEW, floor));
+    return above(floor, SymmetricEigen.largest(covariance, FEW, floor));
   }
 
   /** All d principal directions of a covariance. */

@@ -169,15 +169,19 @@ final class TransformCodec implements Codec {
             : analysis.kept(keep);
     WholePicture whole =
         memo.once(
-            new WholeKey(arrangement, basis.work(), quantization),
+            new WholeKey(arrangement, work(shape), quantization),
             WholePicture.class,
             () -> new WholePicture(shape, arrangement, basis, analysis, symbols, quantization));
     return new Encoding(pack(shape, analysis, symbols, kept), kept, "", () -> whole.upTo(kept));
   }
 
+  private String work(PictureShape shape) {
+    return basis.work(arrangement.variables(shape));
+  }
+
   Analysis analysis(Picture picture, Memo memo) {
     return memo.once(
-        new AnalysisKey(arrangement, basis.work()),
+        new AnalysisKey(arrangement, work(PictureShape.of(picture))),
         Analysis.class,
         () -> Analysis.of(picture, arrangement, basis));
   }
@@ -185,7 +189,7 @@ final class TransformCodec implements Codec {
   Symbols symbols(Picture picture, Memo memo) {
     Analysis analysis = analysis(picture, memo);
     return memo.once(
-        new SymbolsKey(arrangement, basis.work(), quantization),
+        new SymbolsKey(arrangement, work(PictureShape.of(picture)), quantization),
         Symbols.class,
         () -> new Symbols(analysis, quantization));
   }
@@ -209,7 +213,7 @@ final class TransformCodec implements Codec {
         analysis.components(),
         k ->
             memo.once(
-                    new SentBitsKey(arrangement, basis.work(), quantization, link, k),
+                    new SentBitsKey(arrangement, work(shape), quantization, link, k),
                     Long.class,
                     () -> sentBits(pack(shape, analysis, symbols, k)))
                 <= budget);

@@ -315,6 +315,20 @@ class TransformCodecTest extends CodecContractTest {
     assertThat(memo.computed()).as("one analysis, two sets of symbols, two pictures").isEqualTo(5);
   }
 
+  /** Below 192 variables a rule for K shares the analysis with numbers of components. */
+  @Test
+  void workOnFewVariablesIsSharedWithRulesForK() {
+    Memo memo = new Memo();
+    for (String rule : List.of("keep: 4", "share: 0.9")) {
+      CodecFamilies.installed()
+          .read(
+              YamlNode.parse("test", "{transform: pca, over: blocks, " + rule + ", step: 8}"), LINK)
+          .get(0)
+          .encode(TestPattern.cvp(64), memo);
+    }
+    assertThat(memo.computed()).as("one analysis, set of symbols and picture").isEqualTo(3);
+  }
+
   /**
    * A row-PCA figure pays for its basis: what is sent for K components lies near the order-0
    * entropy of the very indices, means and preambles aside.
