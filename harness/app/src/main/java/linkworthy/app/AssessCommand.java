@@ -160,11 +160,7 @@ final class AssessCommand implements Callable<Integer> {
         try (PluginFolder plugins = codecs.open();
             ResultsWriter writer = stopped.tidy()) {
           ResultsFolder results = ResultsFolder.open(folder);
-          writer.writeReport(
-              Reports.html(
-                  results,
-                  () -> Plan.unchecked(results.unchangedStudy(codecs.families(plugins))),
-                  null));
+          writer.writeReport(Reports.html(results, codecs, plugins, null));
         }
         words.println("report: " + folder.resolve(ResultsFolder.REPORT));
       }

@@ -19,7 +19,6 @@ import linkworthy.input.BadInput;
 import linkworthy.input.Unavailable;
 import linkworthy.results.ResultsFolder;
 import linkworthy.results.ResultsWriter;
-import linkworthy.trial.Plan;
 
 /**
  * One run of a study on Apache Spark: the driver is a process of its own, the report is made here.
@@ -72,11 +71,7 @@ final class ClusterAssessment {
     try (ResultsWriter writer = ResultsFolder.openStopped(folder).tidy();
         PluginFolder plugins = codecs.open()) {
       ResultsFolder results = ResultsFolder.open(folder);
-      writer.writeReport(
-          Reports.html(
-              results,
-              () -> Plan.unchecked(results.unchangedStudy(codecs.families(plugins))),
-              null));
+      writer.writeReport(Reports.html(results, codecs, plugins, null));
       ending.print(results, surroundings.out());
     }
     return Main.DONE;

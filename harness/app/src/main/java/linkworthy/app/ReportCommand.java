@@ -6,7 +6,6 @@ import linkworthy.codec.PluginFolder;
 import linkworthy.input.BadInput;
 import linkworthy.results.FolderFiles;
 import linkworthy.results.ResultsFolder;
-import linkworthy.trial.Plan;
 import org.jspecify.annotations.Nullable;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Mixin;
@@ -68,12 +67,7 @@ final class ReportCommand implements Runnable {
     requireNoFolder(file);
     ResultsFolder results = ResultsFolder.open(folder);
     try (PluginFolder plugins = codecs.open()) {
-      FolderFiles.replace(
-          file,
-          Reports.html(
-              results,
-              () -> Plan.unchecked(results.unchangedStudy(codecs.families(plugins))),
-              need));
+      FolderFiles.replace(file, Reports.html(results, codecs, plugins, need));
     }
     surroundings.out().println("report: " + file);
   }

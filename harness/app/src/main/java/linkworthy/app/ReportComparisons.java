@@ -16,10 +16,11 @@ import linkworthy.statistics.Cell;
 final class ReportComparisons {
   private ReportComparisons() {}
 
+  /** Of a record whose trials have been {@link ReportTrials checked}. */
   static Comparisons of(ResultsFolder results) {
     List<Cell> cells = results.cells();
     Measurements measured = Measurements.ofPsnr();
-    results.trials(measured::add);
+    long unused = results.rows(measured::add);
     return new Comparisons(
         CurveComparison.of(cells).stream().map(ReportComparisons::gap).toList(),
         OrderChange.of(cells, measured).stream().map(ReportComparisons::crossing).toList());

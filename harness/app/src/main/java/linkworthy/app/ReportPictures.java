@@ -194,7 +194,7 @@ final class ReportPictures {
       }
     }
     long unused =
-        results.trials(
+        results.rows(
             trial ->
                 wanted.computeIfPresent(
                     new Wanted(trial.picture(), ReportTrials.Place.of(trial)),

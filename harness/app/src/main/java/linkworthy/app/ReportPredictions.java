@@ -4,7 +4,6 @@ import java.util.ArrayList;
 import java.util.HashMap;
 import java.util.List;
 import java.util.Map;
-import linkworthy.report.Condition;
 import linkworthy.report.Predicted;
 import linkworthy.results.ResultsFolder;
 import linkworthy.statistics.Cell;
@@ -29,14 +28,7 @@ final class ReportPredictions {
 
   private static Predicted beside(Cell cell, Prediction prediction, ReportTrials trials) {
     return new Predicted(
-        new Condition(
-            cell.impairment(),
-            cell.actsOn(),
-            cell.axis(),
-            cell.severity(),
-            cell.equivalentNoiseVariance(),
-            cell.realisedNoiseVarianceMean(),
-            cell.snrDb()),
+        Reports.condition(cell),
         cell.codec(),
         prediction.psnrOfMeanMseDb(),
         cell.psnrOfMeanMseDb(),

@@ -6,6 +6,7 @@ import java.util.Iterator;
 import java.util.List;
 import java.util.Optional;
 import java.util.function.Supplier;
+import linkworthy.codec.PluginFolder;
 import linkworthy.input.Decimal;
 import linkworthy.link.NodeProfile;
 import linkworthy.report.Answer;
@@ -39,6 +40,18 @@ import org.jspecify.annotations.Nullable;
  */
 final class Reports {
   private Reports() {}
+
+  /**
+   * The page of a recorded run as HTML.
+   *
+   * @param codecs that the run's study may name, with their plugins
+   * @param need file of needs that the answer is to be about, or null
+   */
+  static String html(
+      ResultsFolder results, CodecOptions codecs, PluginFolder plugins, @Nullable Path need) {
+    return html(
+        results, () -> Plan.unchecked(results.unchangedStudy(codecs.families(plugins))), need);
+  }
 
   /**
    * The whole page as HTML.
@@ -166,16 +179,21 @@ final class Reports {
     return results.cells().stream().map(cell -> figure(cell, "")).toList();
   }
 
+  /** What a cell was measured under, as the page knows it. */
+  static Condition condition(Cell cell) {
+    return new Condition(
+        cell.impairment(),
+        cell.actsOn(),
+        cell.axis(),
+        cell.severity(),
+        cell.equivalentNoiseVariance(),
+        cell.realisedNoiseVarianceMean(),
+        cell.snrDb());
+  }
+
   private static Figure figure(Cell cell, String typicalTrial) {
     return new Figure(
-        new Condition(
-            cell.impairment(),
-            cell.actsOn(),
-            cell.axis(),
-            cell.severity(),
-            cell.equivalentNoiseVariance(),
-            cell.realisedNoiseVarianceMean(),
-            cell.snrDb()),
+        condition(cell),
         new CodecColumn(
             cell.codec(),
             cell.transform(),
