@@ -10,26 +10,17 @@ import linkworthy.input.BadInput;
 import linkworthy.input.Decimal;
 import linkworthy.input.Unavailable;
 import linkworthy.results.FolderFiles;
+import linkworthy.results.IndentedJson;
 import linkworthy.results.TrialsCsv;
 import linkworthy.study.Study;
 import linkworthy.trial.Repetition;
 import linkworthy.trial.Trial;
 import org.jspecify.annotations.Nullable;
-import tools.jackson.core.util.DefaultIndenter;
-import tools.jackson.core.util.DefaultPrettyPrinter;
-import tools.jackson.databind.SerializationFeature;
 import tools.jackson.databind.json.JsonMapper;
 
 /** The files of a repeated trial. */
 final class Replay {
-  private static final JsonMapper JSON =
-      JsonMapper.builder()
-          .enable(SerializationFeature.INDENT_OUTPUT)
-          .defaultPrettyPrinter(
-              new DefaultPrettyPrinter()
-                  .withObjectIndenter(new DefaultIndenter("  ", "\n"))
-                  .withArrayIndenter(new DefaultIndenter("  ", "\n")))
-          .build();
+  private static final JsonMapper JSON = IndentedJson.builder().build();
 
   private final Study study;
   private final Trial recorded;

@@ -8,11 +8,9 @@ import linkworthy.decision.Needs;
 import linkworthy.input.Kind;
 import linkworthy.link.NodeProfile;
 import linkworthy.noise.NoiseModel;
+import linkworthy.results.IndentedJson;
 import linkworthy.study.StudyKeys;
 import org.jspecify.annotations.Nullable;
-import tools.jackson.core.util.DefaultIndenter;
-import tools.jackson.core.util.DefaultPrettyPrinter;
-import tools.jackson.databind.SerializationFeature;
 import tools.jackson.databind.json.JsonMapper;
 
 /**
@@ -23,14 +21,7 @@ final class Schemas {
   /** What there are schemas of. */
   static final List<String> IDS = List.of("study", "model", "node", "needs", "summary");
 
-  private static final JsonMapper JSON =
-      JsonMapper.builder()
-          .enable(SerializationFeature.INDENT_OUTPUT)
-          .defaultPrettyPrinter(
-              new DefaultPrettyPrinter()
-                  .withObjectIndenter(new DefaultIndenter("  ", "\n"))
-                  .withArrayIndenter(new DefaultIndenter("  ", "\n")))
-          .build();
+  private static final JsonMapper JSON = IndentedJson.builder().build();
 
   private Schemas() {}
 

@@ -19,12 +19,9 @@ import linkworthy.study.Study;
 import linkworthy.study.StudyWriter;
 import org.jspecify.annotations.Nullable;
 import tools.jackson.core.JacksonException;
-import tools.jackson.core.util.DefaultIndenter;
-import tools.jackson.core.util.DefaultPrettyPrinter;
 import tools.jackson.databind.DeserializationFeature;
 import tools.jackson.databind.MapperFeature;
 import tools.jackson.databind.PropertyNamingStrategies;
-import tools.jackson.databind.SerializationFeature;
 import tools.jackson.databind.json.JsonMapper;
 
 /**
@@ -81,19 +78,14 @@ public record RunRecord(
   public static final String PROGRAM = "linkworthy";
 
   private static final JsonMapper JSON =
-      JsonMapper.builder()
+      IndentedJson.builder()
           .propertyNamingStrategy(PropertyNamingStrategies.SNAKE_CASE)
           .disable(MapperFeature.SORT_PROPERTIES_ALPHABETICALLY)
-          .enable(SerializationFeature.INDENT_OUTPUT)
           .enable(
               DeserializationFeature.FAIL_ON_UNKNOWN_PROPERTIES,
               DeserializationFeature.FAIL_ON_MISSING_CREATOR_PROPERTIES,
               DeserializationFeature.FAIL_ON_NULL_FOR_PRIMITIVES,
               DeserializationFeature.FAIL_ON_TRAILING_TOKENS)
-          .defaultPrettyPrinter(
-              new DefaultPrettyPrinter()
-                  .withObjectIndenter(new DefaultIndenter("  ", "\n"))
-                  .withArrayIndenter(new DefaultIndenter("  ", "\n")))
           .build();
 
   /** A noise model in force. */
