@@ -1,5 +1,6 @@
 package linkworthy.codec;
 
+import java.util.function.Supplier;
 import org.jspecify.annotations.Nullable;
 
 /**
@@ -26,40 +27,29 @@ final class Symbols {
 
   /** Symbols of component k, one for each observation. */
   synchronized int[] component(int k) {
-    int[] known = coefficients[k];
-    if (known == null) {
-      known = quantization.component(k).symbols(analysis.component(k));
-      coefficients[k] = known;
-    }
-    return known;
+    return once(coefficients, k, () -> quantization.component(k).symbols(analysis.component(k)));
   }
 
   /** Symbols of the entries of direction k. */
   synchronized int[] direction(int k) {
-    int[] known = directions[k];
-    if (known == null) {
-      known = directionQuantizer(k).symbols(analysis.direction(k));
-      directions[k] = known;
-    }
-    return known;
+    return once(directions, k, () -> directionQuantizer(k).symbols(analysis.direction(k)));
   }
 
   /** What the symbols of component k cost as Rice codes. */
   synchronized RiceCosts componentCosts(int k) {
-    RiceCosts known = coefficientCosts[k];
-    if (known == null) {
-      known = new RiceCosts(component(k));
-      coefficientCosts[k] = known;
-    }
-    return known;
+    return once(coefficientCosts, k, () -> new RiceCosts(component(k)));
   }
 
   /** What the symbols of direction k cost as Rice codes. */
   synchronized RiceCosts directionCosts(int k) {
-    RiceCosts known = directionCosts[k];
+    return once(directionCosts, k, () -> new RiceCosts(direction(k)));
+  }
+
+  private static <T> T once(@Nullable T[] all, int k, Supplier<T> work) {
+    T known = all[k];
     if (known == null) {
-      known = new RiceCosts(direction(k));
-      directionCosts[k] = known;
+      known = work.get();
+      all[k] = known;
     }
     return known;
   }
