@@ -6,6 +6,7 @@ import java.util.List;
 import java.util.ServiceLoader;
 import java.util.SortedMap;
 import java.util.TreeMap;
+import java.util.function.Supplier;
 import linkworthy.input.BadInput;
 import linkworthy.input.ById;
 import linkworthy.input.Spelling;
@@ -61,8 +62,13 @@ public final class CodecFamilies implements CodecReader {
 
   /** These families, with leave for {@code command} to run programs of this machine. */
   public CodecFamilies allowingCommands() {
+    return allowingCommands(Confinement::ofThisMachine);
+  }
+
+  /** The same with a confinement that is not this machine's. */
+  CodecFamilies allowingCommands(Supplier<Confinement> confinement) {
     SortedMap<String, CodecFamily> all = new TreeMap<>(byId);
-    CodecFamily allowed = new CommandCodecFamily(true);
+    CodecFamily allowed = new CommandCodecFamily(true, confinement);
     all.put(allowed.id(), allowed);
     return new CodecFamilies(all);
   }

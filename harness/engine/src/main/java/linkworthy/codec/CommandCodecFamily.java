@@ -4,6 +4,7 @@ import java.nio.file.Path;
 import java.util.Arrays;
 import java.util.List;
 import java.util.Optional;
+import java.util.function.Supplier;
 import linkworthy.input.Key;
 import linkworthy.input.KeyGroup;
 import linkworthy.input.Kind;
@@ -60,17 +61,20 @@ public final class CommandCodecFamily implements CodecFamily {
           Codec.LABEL);
 
   private final boolean allowed;
+  private final Supplier<Confinement> confinement;
 
   /** The family as it is found on the class path: it runs nothing. */
   public CommandCodecFamily() {
-    this(false);
+    this(false, Confinement::ofThisMachine);
   }
 
   /**
    * @param allowed whether programs may be run
+   * @param confinement of the programs, asked for when one is run
    */
-  CommandCodecFamily(boolean allowed) {
+  CommandCodecFamily(boolean allowed, Supplier<Confinement> confinement) {
     this.allowed = allowed;
+    this.confinement = confinement;
   }
 
   @Override
@@ -137,13 +141,7 @@ public final class CommandCodecFamily implements CodecFamily {
     String label = entry.find("label").map(node -> node.line(Codec.MAX_LABEL)).orElse("");
     return List.of(
         new CommandCodec(
-            label,
-            encode,
-            decode,
-            onLoss,
-            limits(entry),
-            Confinement::ofThisMachine,
-            link.payloadBytes()));
+            label, encode, decode, onLoss, limits(entry), confinement, link.payloadBytes()));
   }
 
   private static CommandRun.Limits limits(YamlNode entry) {
