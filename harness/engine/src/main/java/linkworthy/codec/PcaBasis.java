@@ -69,7 +69,7 @@ final class PcaBasis implements Basis {
   }
 
   /** The first 64 of them, with the variances of all. */
-  private static Directions leading(DMatrixRMaj covariance) {
+  static Directions leading(DMatrixRMaj covariance) {
     double floor = negligible(covariance);
     return above(floor, SymmetricEigen.largest(covariance, FEW, floor));
   }
