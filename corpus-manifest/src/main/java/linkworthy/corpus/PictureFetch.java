@@ -2,6 +2,7 @@ package linkworthy.corpus;
 
 import java.io.IOException;
 import java.io.UncheckedIOException;
+import java.net.ConnectException;
 import java.net.URI;
 import java.net.http.HttpClient;
 import java.net.http.HttpHeaders;
@@ -10,6 +11,7 @@ import java.net.http.HttpResponse;
 import java.net.http.HttpResponse.BodySubscribers;
 import java.nio.ByteBuffer;
 import java.nio.channels.FileChannel;
+import java.nio.channels.UnresolvedAddressException;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.LinkOption;
@@ -17,12 +19,14 @@ import java.nio.file.Path;
 import java.nio.file.StandardCopyOption;
 import java.nio.file.StandardOpenOption;
 import java.time.Duration;
+import java.util.Objects;
 import java.util.Optional;
 import java.util.concurrent.CompletableFuture;
 import java.util.concurrent.ExecutionException;
 import java.util.concurrent.TimeUnit;
 import java.util.concurrent.TimeoutException;
 import java.util.concurrent.atomic.AtomicLong;
+import javax.net.ssl.SSLException;
 import linkworthy.input.BadInput;
 import linkworthy.input.Unavailable;
 
@@ -245,13 +249,23 @@ public final class PictureFetch {
       }
     }
     Throwable cause = problem.getCause() == null ? problem : problem.getCause();
-    String message = String.valueOf(cause.getMessage());
-    boolean early = message.contains("EOF") || message.contains("fixed content-length");
-    String why =
-        early
-            ? "the connection ended before all was sent; run it again to continue"
-            : cause.getClass().getSimpleName() + (cause.getMessage() == null ? "" : " " + message);
-    return new Unavailable("cannot fetch " + at + ": " + why, problem);
+    return new Unavailable("cannot fetch " + at + ": " + reason(at, cause), problem);
+  }
+
+  private static String reason(URI at, Throwable cause) {
+    String message = Objects.requireNonNullElse(cause.getMessage(), "");
+    if (message.contains("EOF") || message.contains("fixed content-length")) {
+      return "the connection ended before all was sent; run it again to continue";
+    }
+    if (cause instanceof ConnectException) {
+      return cause.getCause() instanceof UnresolvedAddressException
+          ? "no host of the name " + at.getHost() + " is known"
+          : "the host takes no connection at that port";
+    }
+    if (cause instanceof SSLException) {
+      return "no safe connection: " + message;
+    }
+    return (cause.getClass().getSimpleName() + " " + message).strip();
   }
 
   /** What has come of a picture so far, and the version it is of. */

@@ -215,6 +215,18 @@ class PictureFetchTest {
   }
 
   @Test
+  void aHostThatDoesNotListenIsSaidInWords() throws IOException {
+    int closed;
+    try (ServerSocket once = new ServerSocket(0, 1, InetAddress.getLoopbackAddress())) {
+      closed = once.getLocalPort();
+    }
+    assertRefused(
+        "http://127.0.0.1:" + closed + "/p",
+        Unavailable.class,
+        "the host takes no connection at that port");
+  }
+
+  @Test
   void tooMuchIsRefusedWhetherAnnouncedOrNot() throws IOException {
     byte[] much = new byte[(2 << 20) + 1];
     on("/much", exchange -> send(exchange, 200, much));
