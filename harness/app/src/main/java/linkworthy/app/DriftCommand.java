@@ -163,8 +163,7 @@ final class DriftCommand implements Callable<Integer> {
     tables.addAll(DriftWords.tables(history));
     String study = history.runs().get(0).run().study();
     String answer = history.runs().size() + " complete runs of " + study;
-    List<String> remarks =
-        history.incomplete().stream().map(path -> "left out, not complete: " + path).toList();
+    List<String> remarks = history.leftOut().stream().map(why -> "left out: " + why).toList();
     print(answer, tables);
     remarks.forEach(surroundings.out()::println);
     String last = steps.get(steps.size() - 1);

@@ -13,6 +13,7 @@ import java.util.List;
 import java.util.Locale;
 import java.util.Map;
 import java.util.function.UnaryOperator;
+import java.util.regex.Pattern;
 import javax.xml.parsers.DocumentBuilderFactory;
 import linkworthy.results.CellsCsv;
 import linkworthy.results.TrialsCsv;
@@ -303,6 +304,8 @@ class DriftCommandTest {
               "codecs.3.label=mean");
       assertThat(run).isEqualTo(new Outcome(0, "", ""));
     }
+    Path broken = Files.createDirectory(runs.resolve("broken"));
+    Files.writeString(broken.resolve("run.json"), "{");
     Path html = folder.resolve("history.html");
     Outcome outcome =
         Program.run(folder, "drift", "--over", runs.toString(), "--html", html.toString());
@@ -312,7 +315,9 @@ class DriftCommandTest {
         .startsWith("3 complete runs of small\n")
         .containsPattern("(?m)^    1  2026-11-29T10:15:00Z .*  run2  ")
         .containsPattern("(?m)^    3  2026-12-01T10:15:00Z .*  run0  .* cells: ")
-        .containsPattern("(?m)^  snr-db 20  mean( +[0-9.]+){3} +\\+[0-9.]+$");
+        .containsPattern("(?m)^  snr-db 20  mean( +[0-9.]+){3} +\\+[0-9.]+$")
+        .containsPattern(
+            "(?m)^left out: " + Pattern.quote(broken.toString()) + " has no study\\.yaml");
     String page = Files.readString(html);
     Document parsed = xml(page.replace("<!DOCTYPE html>", ""));
     // clean, gaussian, salt-and-pepper and burst-loss
@@ -339,7 +344,7 @@ class DriftCommandTest {
     assertRefused(2, List.of("1 folders", "OLD and NEW"), "drift", old);
     assertRefused(2, List.of("0 folders", "--over FOLDER"), "drift");
     assertRefused(2, List.of("--over goes with"), "drift", old, old, "--over", old);
-    assertRefused(2, List.of("no complete run"), "drift", "--over", empty.toString());
+    assertRefused(2, List.of("no sound and complete run"), "drift", "--over", empty.toString());
     assertRefused(2, List.of("does not exist"), "drift", "--over", empty + "/no");
     for (String tolerance : List.of("-1", "NaN", "1e9")) {
       assertRefused(
@@ -356,7 +361,8 @@ class DriftCommandTest {
     Files.writeString(json, text.replace("\"complete\" : true", "\"complete\" : false"));
     assertRefused(
         2, List.of("not complete", "90 of 90"), "drift", first.toString(), cut.toString());
-    assertRefused(2, List.of("no complete run"), "drift", "--over", cut.toString());
+    assertRefused(
+        2, List.of("no sound and complete run in it ("), "drift", "--over", cut.toString());
     Files.writeString(json, text);
     Path trials = cut.resolve("trials.csv");
     List<String> lines = Files.readAllLines(trials);

@@ -21,12 +21,12 @@ import linkworthy.statistics.Cell;
  */
 public final class History {
   private final List<ResultsFolder> runs;
-  private final List<Path> incomplete;
+  private final List<String> leftOut;
   private final Map<CellKey, double[]> means = new LinkedHashMap<>();
 
-  private History(List<ResultsFolder> runs, List<Path> incomplete) {
+  private History(List<ResultsFolder> runs, List<String> leftOut) {
     this.runs = List.copyOf(runs);
-    this.incomplete = List.copyOf(incomplete);
+    this.leftOut = List.copyOf(leftOut);
     for (int i = 0; i < runs.size(); i++) {
       for (Cell cell : runs.get(i).cells()) {
         means.computeIfAbsent(CellKey.of(cell), key -> unknown())[i] = cell.psnrMeanDb();
@@ -41,30 +41,37 @@ public final class History {
   }
 
   /**
-   * Opens all complete results folders below a folder, or the folder itself if it is one.
+   * Opens all sound and complete results folders below a folder, or the folder itself if it is one.
    *
-   * @throws BadInput if there is no such folder, no complete run in it, runs of several studies, or
-   *     a record that cannot be used
+   * @throws BadInput if there is no such folder, no such run in it, or runs of several studies
    * @throws linkworthy.input.Unavailable if a folder cannot be read
    */
   public static History over(Path folder) {
     List<ResultsFolder> runs = new ArrayList<>();
-    List<Path> incomplete = new ArrayList<>();
+    List<String> leftOut = new ArrayList<>();
     for (Path path : ResultsFolder.below(folder)) {
       if (!Files.exists(path.resolve(RunRecord.FILE))) {
         continue;
       }
-      ResultsFolder found = ResultsFolder.open(path);
-      if (found.run().complete()) {
-        long unused = found.trials(trial -> {});
-        runs.add(found);
-      } else {
-        incomplete.add(path);
+      try {
+        ResultsFolder found = ResultsFolder.open(path);
+        if (found.run().complete()) {
+          long unusedRows = found.trials(trial -> {});
+          List<Cell> unusedCells = found.cells();
+          runs.add(found);
+        } else {
+          leftOut.add(path + " is not complete");
+        }
+      } catch (BadInput e) {
+        leftOut.add(e.getMessage());
       }
     }
     if (runs.isEmpty()) {
       throw new BadInput(
-          folder + " has no complete run in it; accepted: a folder with results folders in it");
+          folder
+              + " has no sound and complete run in it"
+              + leftOut.stream().findFirst().map(why -> " (" + why + ")").orElse("")
+              + "; accepted: a folder with results folders in it");
     }
     Set<String> studies = new TreeSet<>(runs.stream().map(run -> run.run().study()).toList());
     if (studies.size() > 1) {
@@ -77,7 +84,7 @@ public final class History {
     runs.sort(
         Comparator.comparing((ResultsFolder run) -> run.run().start())
             .thenComparing(run -> run.path().toString()));
-    return new History(runs, incomplete);
+    return new History(runs, leftOut);
   }
 
   /** The complete runs, oldest first. */
@@ -85,9 +92,9 @@ public final class History {
     return runs;
   }
 
-  /** Results folders of runs that are not complete; they are left out. */
-  public List<Path> incomplete() {
-    return incomplete;
+  /** Which folders are left out and why, a line each: not complete, or a record not sound. */
+  public List<String> leftOut() {
+    return leftOut;
   }
 
   /** The cells that any run has, in the order in which they first come. */
