@@ -11,6 +11,7 @@ import java.util.concurrent.ExecutionException;
 import java.util.concurrent.ExecutorService;
 import java.util.concurrent.Executors;
 import java.util.concurrent.Future;
+import java.util.function.Consumer;
 import linkworthy.codec.PluginFolder;
 import linkworthy.corpus.Finding;
 import linkworthy.corpus.Manifest;
@@ -245,21 +246,17 @@ final class Recheck {
     RecordCheck check = new RecordCheck(results);
     Course course = new Course(plan);
     long rows =
-        results.rows(
-            trial -> {
-              check.add(trial);
+        follow(
+            course,
+            row -> {
+              check.add(row.trial());
+              String found = row.trial().trial();
               String expected = course.isAtEnd() ? "none" : course.trialId();
-              if (!trial.trial().equals(expected)) {
+              if (row.isDoubled()) {
+                findings.mismatch(row.place() + " repeats the line before, trial " + found);
+              } else if (!found.equals(expected)) {
                 findings.mismatch(
-                    "row "
-                        + check.rows()
-                        + ": trial recorded "
-                        + trial.trial()
-                        + ", by the plan "
-                        + expected);
-              }
-              if (!course.isAtEnd()) {
-                course.add(trial);
+                    row.place() + ": trial recorded " + found + ", by the plan " + expected);
               }
             });
     check.ofRows().forEach(findings::mismatch);
@@ -318,34 +315,47 @@ final class Recheck {
     }
   }
 
+  /**
+   * Reads all rows along the plan. A row that repeats the one before is no step, so that the rows
+   * behind it are held against their own trials.
+   */
+  private long follow(Course course, Consumer<Row> visitor) {
+    long[] line = {1};
+    String[] before = {""};
+    return results.rows(
+        trial -> {
+          boolean isDoubled =
+              trial.trial().equals(before[0])
+                  && (course.isAtEnd() || !trial.trial().equals(course.trialId()));
+          visitor.accept(new Row(++line[0], trial, isDoubled));
+          before[0] = trial.trial();
+          if (!isDoubled && !course.isAtEnd()) {
+            course.add(trial);
+          }
+        });
+  }
+
   /** Repeats the trials at these places, the codecs of one unit together. */
   private void repeat(Plan plan, RowSample sample) {
     Course course = new Course(plan);
     Repetition repetition = new Repetition(plan, extent.threads());
     ExecutorService executor = Executors.newFixedThreadPool(extent.threads());
     Map<Integer, Map<Integer, Row>> batch = new LinkedHashMap<>();
-    long[] row = {0};
+    long[] index = {0};
     try (Progress progress =
         new Progress(surroundings, "recheck", "", sample.size(), extent.quiet())) {
       long unused =
-          results.rows(
-              trial -> {
-                long index = row[0]++;
-                if (course.isAtEnd()) {
+          follow(
+              course,
+              row -> {
+                if (row.isDoubled() || course.isAtEnd() || !sample.contains(index[0]++)) {
                   return;
                 }
                 int unit = course.next();
-                int codec = course.codec();
-                course.add(trial);
-                if (!sample.contains(index)) {
-                  return;
-                }
                 if (!batch.containsKey(unit) && batch.size() >= BATCH * extent.threads()) {
                   progress.step(compare(plan, repetition, executor, batch));
                 }
-                batch
-                    .computeIfAbsent(unit, u -> new LinkedHashMap<>())
-                    .put(codec, new Row(2 + index, trial));
+                batch.computeIfAbsent(unit, u -> new LinkedHashMap<>()).put(course.codec(), row);
               });
       progress.step(compare(plan, repetition, executor, batch));
     } finally {
@@ -353,8 +363,12 @@ final class Recheck {
     }
   }
 
-  /** A recorded trial and its line in the table. */
-  private record Row(long line, Trial trial) {}
+  /** A recorded trial, its line in the table, and whether it repeats the line before. */
+  private record Row(long line, Trial trial, boolean isDoubled) {
+    String place() {
+      return TrialsCsv.FILE + ", line " + line;
+    }
+  }
 
   /** Runs a batch of units, compares their rows in order and empties the batch. */
   private long compare(
@@ -374,7 +388,7 @@ final class Recheck {
       List<Trial> repeated = result(Objects.requireNonNull(running.get(unit.getKey())));
       int i = 0;
       for (Row recorded : unit.getValue().values()) {
-        compare(recorded.line(), recorded.trial(), repeated.get(i++));
+        compare(recorded, repeated.get(i++));
         compared++;
       }
     }
@@ -382,12 +396,12 @@ final class Recheck {
     return compared;
   }
 
-  private void compare(long line, Trial recorded, Trial repeated) {
+  private void compare(Row row, Trial repeated) {
+    Trial recorded = row.trial();
     List<TrialsCsv.Difference> differences = TrialsCsv.differences(recorded, repeated);
     if (!differences.isEmpty()) {
       findings.mismatch(
-          "trials.csv, line "
-              + line
+          row.place()
               + ", trial "
               + recorded.trial()
               + ": "

@@ -296,6 +296,30 @@ class RecheckTest {
     change(
         results.resolve("trials.csv"),
         text -> text + text.substring(text.lastIndexOf('\n', text.length() - 2) + 1));
+    assertMismatch(results, "repeats the line before, trial");
+  }
+
+  @Test
+  void aRowDoubledInTheMiddleIsNamedAndTheRowsBehindItAreNot() throws IOException {
+    Path results = copy();
+    change(
+        results.resolve("trials.csv"),
+        text -> {
+          List<String> lines = new ArrayList<>(text.lines().toList());
+          lines.add(30, lines.get(29));
+          return String.join("\n", lines) + "\n";
+        });
+    Outcome outcome = recheck(results, "--all");
+    assertThat(outcome.code()).isEqualTo(1);
+    assertThat(outcome.out())
+        .contains("MISMATCH      trials.csv, line 31 repeats the line before, trial ")
+        .doesNotContain("by the plan", "PSNR", "MISMATCH      trials.csv, line 32");
+  }
+
+  @Test
+  void aRowBehindTheLastOfThePlanIsFound() throws IOException {
+    Path results = copy();
+    change(results.resolve("trials.csv"), text -> text + text.lines().toList().get(1) + "\n");
     assertMismatch(results, "by the plan none");
   }
 
@@ -311,7 +335,7 @@ class RecheckTest {
         });
     Outcome outcome = recheck(results, "--sample", "1", "--seed", "1");
     assertThat(outcome.code()).isEqualTo(1);
-    assertThat(outcome.out()).contains("MISMATCH      row 30: trial recorded");
+    assertThat(outcome.out()).contains("MISMATCH      trials.csv, line 31: trial recorded");
   }
 
   @Test
