@@ -277,7 +277,8 @@ final class Recheck {
 
   private void checkCells(RecordCheck check) {
     if (!results.run().complete()) {
-      findings.notVerified("cells", "there are none, as the run is not complete");
+      findings.notVerified(
+          "cells", "there are none until 'assess --resume " + results.path() + "' ends the run");
     } else if (!check.ofRows().isEmpty()) {
       findings.notVerified("cells", "the rows of trials.csv do not add up to any");
     } else {
@@ -292,7 +293,7 @@ final class Recheck {
   /** The tables that follow from the study and its clean pictures. */
   private void checkFormulas(Plan plan) {
     if (!results.run().complete()) {
-      findings.notVerified("nodes and predictions", "there are none, as the run is not complete");
+      findings.notVerified("nodes and predictions", "there are none before the run has ended");
       return;
     }
     List<NodeShare> nodes = NodeTable.of(plan);

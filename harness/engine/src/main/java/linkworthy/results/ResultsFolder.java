@@ -384,16 +384,19 @@ public final class ResultsFolder {
               + run.trialsDone()
               + " of "
               + run.trialsPlanned()
-              + " trials); accepted: a complete run");
+              + " trials); accepted: a complete run, as 'assess --resume "
+              + folder
+              + "' makes it");
     }
   }
 
   /**
    * The cells of a complete run.
    *
-   * @throws BadInput if there are none yet, or the file is no table of cells
+   * @throws BadInput if the run is not complete, or the file is missing or no table of cells
    */
   public List<Cell> cells() {
+    requireComplete();
     requireFile(folder, CellsCsv.FILE);
     return CellsCsv.read(folder.resolve(CellsCsv.FILE));
   }

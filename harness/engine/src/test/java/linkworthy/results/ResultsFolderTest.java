@@ -146,7 +146,8 @@ class ResultsFolderTest {
       assertThat(ResultsFolder.open(out).run().complete()).isFalse();
       assertThatExceptionOfType(BadInput.class)
           .isThrownBy(() -> ResultsFolder.open(out).cells())
-          .withMessageContaining("has no cells.csv");
+          .withMessageContaining("not complete")
+          .withMessageContaining("'assess --resume " + out + "' makes it");
     }
     assertThat(names(out)).doesNotContain("lock");
   }
