@@ -69,10 +69,17 @@ public record PicturesFit(
                 lumas.get(0).height(),
                 Manifest.sha256(lines.toString().getBytes(StandardCharsets.UTF_8)));
     try {
-      return areRepeated(lumas, kind)
-          ? new PicturesFit(source, names, Optional.of(SensorFit.of(lumas)), List.of())
-          : new PicturesFit(
+      if (areRepeated(lumas, kind)) {
+        return new PicturesFit(source, names, Optional.of(SensorFit.of(lumas)), List.of());
+      }
+      PicturesFit singles =
+          new PicturesFit(
               source, names, Optional.empty(), lumas.stream().map(SingleFrame::of).toList());
+      if (singles.deviation() == 0) {
+        throw new BadInput(
+            "half of the pictures show no noise beyond the rounding to grey levels; accepted: pictures with noise");
+      }
+      return singles;
     } catch (BadInput e) {
       throw new BadInput(folder + ": " + e.getMessage(), e);
     }

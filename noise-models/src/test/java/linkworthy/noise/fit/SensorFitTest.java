@@ -179,6 +179,15 @@ class SensorFitTest {
         .hasMessageContaining("has no pictures");
   }
 
+  @Test
+  void aSinglePictureWithoutNoiseIsRefused() throws IOException {
+    write("grey.pgm", new Picture(64, 64, 8, IntStream.range(0, 64 * 64).map(i -> 99).toArray()));
+    assertThatThrownBy(() -> PicturesFit.of(folder, PicturesFit.Kind.SINGLE))
+        .isInstanceOf(BadInput.class)
+        .hasMessageStartingWith(folder + ": ")
+        .hasMessageContaining("no noise beyond the rounding");
+  }
+
   private void write(String name, Picture picture) throws IOException {
     byte[] head =
         ("P5\n" + picture.width() + " " + picture.height() + "\n255\n")
