@@ -36,6 +36,11 @@ class ProtectionReaderTest {
         .containsExactly(new Protection.Rule(ALL, 2, null, 0, 5));
     assertThat(protection("{reed-solomon: {n: 12, k: 8}}").rules())
         .containsExactly(new Protection.Rule(ALL, 1, new Protection.ErasureCode(12, 8, 1), 0, 5));
+    assertThat(protection("{reed-solomon: {n: 12, k: 8, corrects: erasures}}"))
+        .isEqualTo(protection("{reed-solomon: {n: 12, k: 8}}"));
+    assertThat(protection("{reed-solomon: {n: 12, k: 8, corrects: errors}}").rules())
+        .containsExactly(
+            new Protection.Rule(ALL, 1, new Protection.ErasureCode(12, 8, 1, true), 0, 5));
     assertThat(protection("{retransmit: 3}").rules())
         .containsExactly(new Protection.Rule(ALL, 1, null, 3, 5));
     assertThat(protection("{hamming: {}}").rules())
@@ -78,6 +83,7 @@ class ProtectionReaderTest {
         - {transform: dct, keep: [2, 4], protect: none}
         - {transform: dct, keep: 2, protect: {repeat: 2}}
         - {transform: dct, keep: 2, protect: {hamming: {depth: 8}}}
+        - {transform: dct, keep: 2, protect: {reed-solomon: {n: 6, k: 4, corrects: errors}}}
         - {transform: dct, keep: 2, protect: {retransmit: 3}, label: patient}
         - {transform: dct, keep: 2, protect: [{repeat: 3, only: header}, {retransmit: 1, only: rest}]}
       """;
@@ -93,6 +99,7 @@ class ProtectionReaderTest {
             "dct blocks8 K4 step8",
             "dct blocks8 K2 step8 repeat2",
             "dct blocks8 K2 step8 hamming7-4x8",
+            "dct blocks8 K2 step8 rs6-4x1e",
             "patient",
             "dct blocks8 K2 step8 repeat3:header retry1:rest");
   }
