@@ -95,6 +95,30 @@ public record Protection(List<Rule> rules) {
       return only.stream().sorted().toList();
     }
 
+    /** The parts that set flipped bits right, as studies call them. */
+    public List<String> forFlippedBits() {
+      List<String> parts = new ArrayList<>();
+      if (hamming != null) {
+        parts.add("hamming");
+      }
+      if (code != null && code.correctsErrors()) {
+        parts.add("corrects: " + ErasureCode.ERRORS);
+      }
+      return parts;
+    }
+
+    /** The parts that make up for packets that do not arrive, and do nothing else. */
+    public List<String> forLostPackets() {
+      List<String> parts = new ArrayList<>();
+      if (code != null && !code.correctsErrors()) {
+        parts.add("reed-solomon with corrects: " + ErasureCode.ERASURES);
+      }
+      if (retransmit > 0) {
+        parts.add("retransmit");
+      }
+      return parts;
+    }
+
     private boolean isIdle() {
       return repeat == 1 && code == null && hamming == null && retransmit == 0;
     }

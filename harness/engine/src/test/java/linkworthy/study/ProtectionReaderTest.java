@@ -10,6 +10,7 @@ import linkworthy.input.BadInput;
 import linkworthy.link.HammingCode;
 import linkworthy.link.Importance;
 import linkworthy.link.Protection;
+import org.jspecify.annotations.Nullable;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
@@ -296,5 +297,35 @@ class ProtectionReaderTest {
         .hasMessageContaining("has only 31 bytes of payload-bytes left")
         .hasMessageContaining("payload-bytes of at least 40");
     assertThat(StudyReaderTest.read(planes.replace("39", "40")).codecs()).hasSize(1);
+  }
+
+  /** What protects from damage needs damaged packets, what protects from loss lost ones. */
+  @ParameterizedTest
+  @CsvSource(
+      delimiter = '|',
+      value = {
+        "burst-loss, loss-rate: 0.1 | {hamming: {depth: 8}} | hamming",
+        "burst-loss, loss-rate: 0.1 | {reed-solomon: {n: 6, k: 4, corrects: errors}}"
+            + " | corrects: errors",
+        "burst-loss, loss-rate: 0.1 | {reed-solomon: {n: 6, k: 4}, retransmit: 1} | ",
+        "'bit-errors, frame-check: true, bit-error-rate: 0.01' | {hamming: {}, retransmit: 2}"
+            + " | hamming",
+        "'bit-errors, bit-error-rate: 0.01' | {hamming: {}} | ",
+        "'bit-errors, bit-error-rate: 0.01' | {reed-solomon: {n: 6, k: 4, corrects: errors}} | ",
+        "'bit-errors, bit-error-rate: 0.01' | {reed-solomon: {n: 6, k: 4}, retransmit: 1}"
+            + " | 'reed-solomon with corrects: erasures, retransmit'",
+        "'gaussian, snr-db: 20' | {repeat: 2} | "
+      })
+  void whatProtectsFromNothingIsSaid(String noise, String protect, @Nullable String parts) {
+    Study study =
+        StudyReaderTest.read(
+            "protect: "
+                + protect
+                + "\n"
+                + StudyReaderTest.SHORT.replace(
+                    "  - noise: gaussian\n    snr-db: 20\n", "  - {noise: " + noise + "}\n"));
+    assertThat(study.warnings().stream().map(line -> line.split(" gains nothing", 2)[0]).toList())
+        .isEqualTo(parts == null ? List.of() : List.of(parts.split(", ", -1)));
+    assertThat(study.warnings()).noneMatch(line -> line.contains("\n"));
   }
 }
