@@ -239,6 +239,24 @@ class ChannelTest {
     assertSameBytes(both.sent, List.of(a, a, a, a));
   }
 
+  /** Pauses are counted by packets: 6 transmissions here, each awaited. */
+  @Test
+  void transmissionsOfANodeAreCounted() {
+    List<Packet> packets = packets(3, 4);
+    Recorder air = new Recorder(t -> Set.of(1, 3, 4).contains(t));
+    assertThat(new Channel(LINK, all(1, null, 2)).send(packets, air).byNode().get(0))
+        .returns(6L, Channel.Traffic::transmissions)
+        .returns(6L, Channel.Traffic::awaited)
+        .returns(8L * 5 * 3, Channel.Traffic::receivedBits);
+    assertThat(
+            new Channel(LINK, all(2, null, 0))
+                .send(packets, new Recorder(t -> false))
+                .byNode()
+                .get(0))
+        .returns(6L, Channel.Traffic::transmissions)
+        .returns(0L, Channel.Traffic::awaited);
+  }
+
   /** Packet t of a group belongs to word t modulo depth; parity follows its group. */
   @Test
   void symbolsOfAWordAreDepthPacketsApart() {
