@@ -311,6 +311,7 @@ class ReportRendererTest {
                 Comparisons.NONE));
     assertThat(shown.texts("(//section[@id='costs']//table)[1]/tbody/tr/td[3]"))
         .containsExactly("fits", "too much", "unknown");
+    assertThat(shown.texts("//section[@id='costs']//table//td/b")).containsExactly("too much");
     assertThat(shown.texts("(//section[@id='costs']//table)[1]/tbody/tr/td[last()]"))
         .containsExactly("4321", "99", "n/a");
     assertThat(shown.texts("(//section[@id='costs']//table)[2]/tbody/tr[2]/td"))

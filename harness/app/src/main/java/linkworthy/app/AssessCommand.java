@@ -261,6 +261,9 @@ final class AssessCommand implements Callable<Integer> {
   }
 
   private int assess(Study study, PluginFolder plugins) {
+    if (!quiet) {
+      study.warnings().forEach(line -> surroundings.err().println("linkworthy: " + line));
+    }
     String master = cluster.master();
     if (master != null && !dryRun) {
       return runOn(master, folder(study));

@@ -8,6 +8,7 @@ import java.io.Writer;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.List;
 import java.util.Map;
 import org.junit.jupiter.api.Test;
@@ -36,6 +37,21 @@ class CommandsTest {
         .anyMatch(line -> line.matches("memory: +about \\d+ MiB"))
         .anyMatch(line -> line.matches("disk: +about \\d+ MiB"));
     assertThat(Program.contents(folder)).isEqualTo(before);
+  }
+
+  /** A protection with nothing to do is said before the run, in one line. */
+  @Test
+  void protectionFromNothingIsSaid() {
+    String study = SmallStudy.in(folder).toString();
+    String[] arguments = {"assess", study, "--dry-run", "--set", "protect={hamming: {depth: 8}}"};
+    Outcome outcome = Program.run(folder, arguments);
+    assertThat(outcome.err())
+        .isEqualTo(
+            "linkworthy: hamming gains nothing in this study: no impairment flips bits of packets"
+                + " that are then used (bit-errors with frame-check: false)\n");
+    String[] quietly = Arrays.copyOf(arguments, arguments.length + 1);
+    quietly[arguments.length] = "--quiet";
+    assertThat(Program.run(folder, quietly).err()).isEmpty();
   }
 
   @Test

@@ -56,6 +56,14 @@ public interface Codec {
   }
 
   /**
+   * The codec as it codes the colour planes of a picture; itself if it treats all planes alike.
+   * What it is called and what it asks of a node stay the same.
+   */
+  default Codec forChroma() {
+    return this;
+  }
+
+  /**
    * Names of the programs outside this one that the codec runs. Where there are any, the same study
    * may give other numbers on another machine or day, and the report says so.
    */

@@ -54,8 +54,8 @@ final class JpegBlocks {
   }
 
   /** Indices of coefficients under a quality's steps. */
-  static int[] quantised(double[] coefficients, int quality) {
-    int[] steps = JpegTables.steps(quality);
+  static int[] quantised(double[] coefficients, FrequencySteps weights) {
+    int[] steps = JpegTables.steps(weights);
     Quantizer[] quantizers = new Quantizer[steps.length];
     java.util.Arrays.setAll(quantizers, i -> new Quantizer(steps[i]));
     int[] indices = new int[coefficients.length];
@@ -66,8 +66,8 @@ final class JpegBlocks {
   }
 
   /** The picture that indices stand for, as {@link JpegInverse} computes it. */
-  Picture inverse(int[] indices, int quality) {
-    int[] steps = JpegTables.steps(quality);
+  Picture inverse(int[] indices, FrequencySteps weights) {
+    int[] steps = JpegTables.steps(weights);
     int[] picture = new int[shape.size()];
     int[] coefficients = new int[JpegTables.BLOCK];
     int[] samples = new int[JpegTables.BLOCK];

@@ -12,7 +12,8 @@ import org.jspecify.annotations.Nullable;
 
 /**
  * Baseline JPEG (ITU-T T.81) of one 8-bit component with restart intervals, the typical tables of
- * Annex K and the quality rule of {@link JpegTables#steps}.
+ * Annex K and the steps of {@link FrequencySteps}. Colour planes have the steps of table K.2 and,
+ * unlike common files, the Huffman tables of luminance.
  *
  * <p>Both ends know the tables, and every packet carries the picture's size and the quality, so the
  * file's header is not sent: the receiver rebuilds it, the byte stuffing and the restart markers
@@ -32,10 +33,17 @@ final class JpegCodec implements Codec {
   private final OptionalInt quality;
   private final @Nullable RateTarget rate;
   private final int restartEvery;
+  private final boolean chroma;
   private final Link link;
 
   private JpegCodec(
-      String label, OptionalInt quality, @Nullable RateTarget rate, int restartEvery, Link link) {
+      String label,
+      OptionalInt quality,
+      @Nullable RateTarget rate,
+      int restartEvery,
+      boolean chroma,
+      Link link) {
+    this.chroma = chroma;
     this.quality = quality;
     this.rate = rate;
     this.restartEvery = restartEvery;
@@ -48,11 +56,20 @@ final class JpegCodec implements Codec {
    * @param restartEvery rows of blocks in a restart interval
    */
   static JpegCodec of(String label, int quality, int restartEvery, Link link) {
-    return new JpegCodec(label, OptionalInt.of(quality), null, restartEvery, link);
+    return new JpegCodec(label, OptionalInt.of(quality), null, restartEvery, false, link);
   }
 
   static JpegCodec of(String label, RateTarget rate, int restartEvery, Link link) {
-    return new JpegCodec(label, OptionalInt.empty(), rate, restartEvery, link);
+    return new JpegCodec(label, OptionalInt.empty(), rate, restartEvery, false, link);
+  }
+
+  @Override
+  public Codec forChroma() {
+    return new JpegCodec(label, quality, rate, restartEvery, true, link);
+  }
+
+  private FrequencySteps steps(int inForce) {
+    return new FrequencySteps(inForce, chroma);
   }
 
   private String derivedLabel() {
@@ -152,7 +169,7 @@ final class JpegCodec implements Codec {
   }
 
   private Encoding encode(double[] coefficients, PictureShape shape, int inForce) {
-    int[] indices = JpegBlocks.quantised(coefficients, inForce);
+    int[] indices = JpegBlocks.quantised(coefficients, steps(inForce));
     return new Encoding(
         Packetizer.pack(
             preamble(shape).bytes(inForce),
@@ -165,7 +182,7 @@ final class JpegCodec implements Codec {
   public Decoding decode(PictureShape shape, List<byte[]> arrived) {
     Arrival arrival = arrival(shape, arrived);
     return new Decoding(
-        new JpegBlocks(shape).inverse(arrival.reader().filled(), arrival.quality()),
+        new JpegBlocks(shape).inverse(arrival.reader().filled(), steps(arrival.quality())),
         arrival.reader().completeness());
   }
 
@@ -173,7 +190,7 @@ final class JpegCodec implements Codec {
   byte[] file(PictureShape shape, List<byte[]> arrived) {
     Arrival arrival = arrival(shape, arrived);
     return JpegScan.file(
-        shape, arrival.quality(), arrival.reader().filled(), blocksPerInterval(shape));
+        shape, steps(arrival.quality()), arrival.reader().filled(), blocksPerInterval(shape));
   }
 
   private record Arrival(int quality, JpegScan.Reader reader) {}

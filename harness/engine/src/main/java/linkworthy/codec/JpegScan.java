@@ -172,11 +172,12 @@ final class JpegScan {
    * A file in the JPEG interchange format: SOI, JFIF APP0, DQT, SOF0, two DHT, DRI, SOS, intervals
    * with RSTn between them, EOI.
    */
-  static byte[] file(PictureShape shape, int quality, int[] indices, int blocksPerInterval) {
+  static byte[] file(
+      PictureShape shape, FrequencySteps weights, int[] indices, int blocksPerInterval) {
     ByteArrayOutputStream out = new ByteArrayOutputStream();
     marker(out, 0xD8);
     segment(out, 0xE0, 'J', 'F', 'I', 'F', 0, 1, 1, 0, 0, 1, 0, 1, 0, 0);
-    segment(out, 0xDB, concatenated(new int[] {0}, JpegTables.steps(quality)));
+    segment(out, 0xDB, concatenated(new int[] {0}, JpegTables.steps(weights)));
     segment(
         out,
         0xC0,

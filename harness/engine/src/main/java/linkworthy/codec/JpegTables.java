@@ -1,11 +1,11 @@
 package linkworthy.codec;
 
+import java.util.Arrays;
 import javax.imageio.plugins.jpeg.JPEGHuffmanTable;
-import javax.imageio.plugins.jpeg.JPEGQTable;
 
 /**
- * The tables that both ends of a JPEG link know: the typical luminance tables of ITU-T T.81 Annex
- * K, as the Java platform has them, and table K.1 scaled by a quality.
+ * The tables that both ends of a JPEG link know: the typical Huffman tables for luminance of ITU-T
+ * T.81 Annex K, as the Java platform has them, and {@link FrequencySteps} scaled by a quality.
  */
 final class JpegTables {
   /** Coefficients of a block, and samples of its side. */
@@ -28,20 +28,10 @@ final class JpegTables {
     return ZIG_ZAG[position];
   }
 
-  /**
-   * Quantiser steps in zig-zag order: table K.1 times s / 100, rounded half up, within 1 to 255,
-   * where s is 5000 / quality (whole division) below quality 50 and 200 - 2 quality from there on.
-   * The rule is not in T.81; it is the convention of the library of the Independent JPEG Group.
-   *
-   * @param quality 1 to 100
-   */
-  static int[] steps(int quality) {
-    int scale = quality < 50 ? 5000 / quality : 200 - 2 * quality;
-    int[] typical = JPEGQTable.K1Luminance.getTable();
+  /** Quantiser steps in zig-zag order. */
+  static int[] steps(FrequencySteps weights) {
     int[] steps = new int[BLOCK];
-    for (int i = 0; i < BLOCK; i++) {
-      steps[i] = Math.max(1, Math.min(255, (scale * typical[ZIG_ZAG[i]] + 50) / 100));
-    }
+    Arrays.setAll(steps, i -> weights.step(ZIG_ZAG[i]));
     return steps;
   }
 
@@ -67,7 +57,7 @@ final class JpegTables {
           sizes[value] = size;
           int first = code << (LONGEST - size);
           int entry = value << 5 | size;
-          java.util.Arrays.fill(look, first, first + (1 << (LONGEST - size)), (short) entry);
+          Arrays.fill(look, first, first + (1 << (LONGEST - size)), (short) entry);
         }
         code <<= 1;
       }

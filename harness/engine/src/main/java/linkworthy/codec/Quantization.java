@@ -1,7 +1,7 @@
 package linkworthy.codec;
 
 /** Which quantiser each component has; both ends know it. */
-sealed interface Quantization permits Quantizer, LuminanceSteps {
+sealed interface Quantization permits Quantizer, FrequencySteps {
   /** The quantiser of component k. */
   Quantizer component(int k);
 

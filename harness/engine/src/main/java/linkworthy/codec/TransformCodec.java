@@ -47,6 +47,13 @@ final class TransformCodec implements Codec {
     this.label = label.isEmpty() ? derivedLabel() : label;
   }
 
+  @Override
+  public Codec forChroma() {
+    return quantization instanceof FrequencySteps steps
+        ? new TransformCodec(label, arrangement, basis, keep, steps.forChroma(), link)
+        : this;
+  }
+
   private String derivedLabel() {
     List<String> words = new ArrayList<>(List.of(basis.id(), arrangement.id()));
     if (!keep.label().isEmpty()) {
@@ -99,8 +106,8 @@ final class TransformCodec implements Codec {
     }
     if (quantization instanceof Quantizer quantizer) {
       settings.put("step", quantizer.isNone() ? "none" : (Object) quantizer.step());
-    } else if (quantization instanceof LuminanceSteps steps) {
-      settings.put("weights", LuminanceSteps.ID);
+    } else if (quantization instanceof FrequencySteps steps) {
+      settings.put("weights", FrequencySteps.ID);
       settings.put("quality", steps.quality());
     }
     settings.put("label", label);

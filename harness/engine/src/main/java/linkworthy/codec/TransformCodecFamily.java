@@ -54,7 +54,7 @@ public final class TransformCodecFamily implements CodecFamily {
     keys.add(
         Key.optional(
             "weights",
-            Kind.Words.of(LuminanceSteps.ID),
+            Kind.Words.of(FrequencySteps.ID),
             "none",
             "in place of step, with dct over blocks of side 8"));
     keys.add(
@@ -218,7 +218,7 @@ public final class TransformCodecFamily implements CodecFamily {
   private static List<? extends Quantization> quantizations(
       YamlNode entry, Basis basis, Arrangement arrangement) {
     if (entry.find("weights").isPresent()) {
-      return luminanceSteps(entry, basis, arrangement);
+      return frequencySteps(entry, basis, arrangement);
     }
     entry
         .find("quality")
@@ -232,18 +232,18 @@ public final class TransformCodecFamily implements CodecFamily {
         .orElse(List.of(new Quantizer(DEFAULT_STEP)));
   }
 
-  private static List<LuminanceSteps> luminanceSteps(
+  private static List<FrequencySteps> frequencySteps(
       YamlNode entry, Basis basis, Arrangement arrangement) {
     YamlNode weights = entry.get("weights");
     if (!basis.id().equals("dct")
-        || !arrangement.equals(new Arrangement.Blocks(LuminanceSteps.SIDE))) {
+        || !arrangement.equals(new Arrangement.Blocks(FrequencySteps.SIDE))) {
       throw weights.refuse("is for blocks of 8 x 8; accepted with 'transform: dct', side 8");
     }
     if (entry.find("step").isPresent()) {
       throw entry.get("step").refuse("stands beside 'weights'; accepted: one of the two");
     }
     return entry.get("quality").oneOrMore().stream()
-        .map(node -> new LuminanceSteps(QUALITY.read(node)))
+        .map(node -> new FrequencySteps(QUALITY.read(node)))
         .toList();
   }
 }

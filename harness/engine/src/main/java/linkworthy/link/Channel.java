@@ -87,10 +87,19 @@ public final class Channel {
    *
    * @param sentBits payloads, overhead and frame checks of all its transmissions
    * @param receivedBits acknowledgements
+   * @param transmissions packets it sent
+   * @param awaited those of them after which it waited for an acknowledgement
    */
-  public record Traffic(long sentBits, long receivedBits) {
+  public record Traffic(long sentBits, long receivedBits, long transmissions, long awaited) {
+    /** No traffic at all. */
+    public static final Traffic NONE = new Traffic(0, 0, 0, 0);
+
     private Traffic plus(Traffic other) {
-      return new Traffic(sentBits + other.sentBits, receivedBits + other.receivedBits);
+      return new Traffic(
+          sentBits + other.sentBits,
+          receivedBits + other.receivedBits,
+          transmissions + other.transmissions,
+          awaited + other.awaited);
     }
   }
 
@@ -120,7 +129,9 @@ public final class Channel {
       long bits = 8L * packet.length();
       payloadBits += bits;
       byNode.merge(
-          packet.node(), new Traffic(link.sentBits(1, bits) + air.checkBits(), 0), Traffic::plus);
+          packet.node(),
+          new Traffic(link.sentBits(1, bits) + air.checkBits(), 0, 1, 0),
+          Traffic::plus);
     }
     int sent = packets.size();
     List<byte[]> payloads =
@@ -161,6 +172,7 @@ public final class Channel {
       int tries = rule == null ? 1 : 1 + rule.retransmit();
       int copies = rule == null ? 1 : rule.repeat();
       int before = arrived.size();
+      int sentBefore = sent;
       for (int i = 0; i < tries && arrived.size() == before; i++) {
         for (int copy = 0; copy < copies; copy++) {
           transmit(payload, node, rule == null ? null : rule.hamming());
@@ -169,7 +181,7 @@ public final class Channel {
       if (rule != null && rule.retransmit() > 0) {
         long bits = 8L * rule.ackBytes() * (arrived.size() - before);
         acknowledgementBits += bits;
-        count(node, new Traffic(0, bits));
+        count(node, new Traffic(0, bits, 0, sent - sentBefore));
       }
     }
 
@@ -179,7 +191,7 @@ public final class Channel {
       sent = Math.incrementExact(sent);
       long bits = 8L * onAir.length;
       payloadBits += bits;
-      count(node, new Traffic(link.sentBits(1, bits) + air.checkBits(), 0));
+      count(node, new Traffic(link.sentBits(1, bits) + air.checkBits(), 0, 1, 0));
       if (got != null) {
         arrived.add(got == onAir ? payload : code == null ? got : code.decode(got));
       }

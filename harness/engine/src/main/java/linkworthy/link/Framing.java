@@ -3,6 +3,9 @@ package linkworthy.link;
 import java.nio.ByteBuffer;
 import java.util.ArrayList;
 import java.util.Arrays;
+import java.util.BitSet;
+import java.util.Collections;
+import java.util.Comparator;
 import java.util.EnumMap;
 import java.util.HashSet;
 import java.util.LinkedHashMap;
@@ -49,6 +52,9 @@ final class Framing {
   private final Map<Importance, Protection.Rule> rules = new EnumMap<>(Importance.class);
   private final @Nullable ReedSolomon[] codes;
 
+  /** Whether a packet that says it is outside every code can only be a damaged one. */
+  private final boolean correctsAll;
+
   Framing(Protection protection) {
     this.protection = protection;
     this.codes = new ReedSolomon[protection.rules().size()];
@@ -58,6 +64,13 @@ final class Framing {
       Protection.ErasureCode code = rule.code();
       codes[i] = code == null ? null : new ReedSolomon(code.n() - code.k());
     }
+    this.correctsAll = Arrays.stream(Importance.values()).allMatch(this::isCorrected);
+  }
+
+  private boolean isCorrected(Importance importance) {
+    Protection.Rule rule = rules.get(importance);
+    Protection.ErasureCode code = rule == null ? null : rule.code();
+    return code != null && code.correctsErrors();
   }
 
   /** Whether packets go out as they are, once each. */
@@ -200,10 +213,10 @@ final class Framing {
   }
 
   /**
-   * The codec's payloads among what arrived, in order of arrival, then those that could be
-   * restored, by rule and code word. Equal packets count once. Packets may be damaged, cut short,
-   * foreign, in any order: what makes no sense is dropped, nothing throws, and the work is bounded
-   * by the number and the lengths of the packets.
+   * The codec's payloads among what arrived, in order of arrival and set right where the code does
+   * that, then those that could be restored, by rule and code word. Equal packets count once.
+   * Packets may be damaged, cut short, foreign, in any order: what makes no sense is dropped,
+   * nothing throws, and the work is bounded by the number and the lengths of the packets.
    */
   List<byte[]> payloads(List<byte[]> arrived) {
     if (protection.isNone()) {
@@ -221,15 +234,21 @@ final class Framing {
         }
       }
     }
+    BitSet refuted = new BitSet();
     for (Word word : words.values()) {
-      word.restoreInto(payloads);
+      word.restoreInto(payloads, refuted);
+    }
+    for (int i = refuted.length() - 1; i >= 0; i = refuted.previousSetBit(i - 1)) {
+      payloads.remove(i);
     }
     return payloads;
   }
 
   private void open(byte[] packet, List<byte[]> payloads, SortedMap<Integer, Word> words) {
     if (packet.length > 0 && packet[0] == 0) {
-      payloads.add(tail(packet, 1));
+      if (!correctsAll) {
+        payloads.add(tail(packet, 1));
+      }
       return;
     }
     int place = packet.length < WORD_HEADER ? -1 : ((packet[0] & 0xFF) >> 5) - 1;
@@ -243,15 +262,19 @@ final class Framing {
     if (index < sizes.k()) {
       byte[] payload = tail(packet, WORD_HEADER);
       payloads.add(payload);
-      words.computeIfAbsent(tag, t -> new Word(code)).addData(index, payload);
+      word(words, tag, code, sizes).addData(index, payloads.size() - 1);
     } else if (index < sizes.n() && packet.length >= MAX_OVERHEAD) {
       int count = packet[WORD_HEADER] & 0xFF;
       if (count >= 1 && count <= sizes.k()) {
-        words
-            .computeIfAbsent(tag, t -> new Word(code))
+        word(words, tag, code, sizes)
             .addParity(index - sizes.k(), count, tail(packet, PARITY_HEADER));
       }
     }
+  }
+
+  private static Word word(
+      SortedMap<Integer, Word> words, int tag, ReedSolomon code, Protection.ErasureCode sizes) {
+    return words.computeIfAbsent(tag, t -> new Word(code, sizes.correctsErrors()));
   }
 
   private static byte[] tail(byte[] packet, int from) {
@@ -261,52 +284,122 @@ final class Framing {
   /** The symbols of one code word that arrived; the first of each index counts. */
   private static final class Word {
     private final ReedSolomon code;
-    private final SortedMap<Integer, byte[]> data = new TreeMap<>();
-    private final SortedMap<Integer, byte[]> parity = new TreeMap<>();
-    private int count;
-    private int length;
+    private final boolean correctsErrors;
 
-    Word(ReedSolomon code) {
+    /** Where the payloads of each index stand among all, the first that came first. */
+    private final SortedMap<Integer, List<Integer>> data = new TreeMap<>();
+
+    /** Parity symbols by what their packets say of the word, the first that came first. */
+    private final Map<Shape, SortedMap<Integer, byte[]>> parity = new LinkedHashMap<>();
+
+    /** Data symbols of a word, and bytes of a symbol. */
+    private record Shape(int count, int length) {}
+
+    Word(ReedSolomon code, boolean correctsErrors) {
       this.code = code;
+      this.correctsErrors = correctsErrors;
     }
 
-    void addData(int index, byte[] payload) {
-      data.putIfAbsent(index, payload);
+    void addData(int index, int place) {
+      data.computeIfAbsent(index, i -> new ArrayList<>()).add(place);
     }
 
-    /** Takes a parity symbol unless it contradicts the first one about the word's shape. */
-    void addParity(int index, int countOfWord, byte[] symbol) {
+    void addParity(int index, int count, byte[] symbol) {
+      parity
+          .computeIfAbsent(new Shape(count, symbol.length), shape -> new TreeMap<>())
+          .putIfAbsent(index, symbol);
+    }
+
+    /**
+     * The word's shape, about which damaged packets may contradict each other: what most say, or
+     * the first one if packets that came are taken to be right.
+     */
+    private Shape shape() {
+      return correctsErrors
+          ? Collections.max(parity.keySet(), Comparator.comparing(s -> symbols(s).size()))
+          : parity.keySet().iterator().next();
+    }
+
+    private SortedMap<Integer, byte[]> symbols(Shape shape) {
+      return Objects.requireNonNull(parity.get(shape));
+    }
+
+    /**
+     * Adds what could be restored to the payloads, and puts what could be set right in its place.
+     *
+     * @param refuted takes the places of payloads that are shown not to be what they claim
+     */
+    void restoreInto(List<byte[]> payloads, BitSet refuted) {
       if (parity.isEmpty()) {
-        count = countOfWord;
-        length = symbol.length;
+        return;
       }
-      if (count == countOfWord && length == symbol.length) {
-        parity.putIfAbsent(index, symbol);
-      }
-    }
-
-    void restoreInto(List<byte[]> payloads) {
-      byte[] @Nullable [] rows = new byte[count][];
+      Shape shape = shape();
+      byte[] @Nullable [] rows = new byte[shape.count()][];
       int have = 0;
-      for (int i = 0; i < count; i++) {
-        byte[] payload = data.get(i);
-        if (payload != null && payload.length <= length - LENGTH) {
-          rows[i] = symbol(payload, length);
+      for (int i = 0; i < rows.length; i++) {
+        byte[] payload = data.containsKey(i) ? payloads.get(data.get(i).get(0)) : null;
+        if (payload != null && payload.length <= shape.length() - LENGTH) {
+          rows[i] = symbol(payload, shape.length());
           have++;
         }
       }
-      if (have == count || have + parity.size() < count) {
-        return;
-      }
       byte[] @Nullable [] checks = new byte[code.parity()][];
-      parity.forEach((index, symbol) -> checks[index] = symbol);
-      code.restore(rows, checks);
-      for (int i = 0; i < count; i++) {
-        byte[] row = rows[i];
-        if (row != null && !data.containsKey(i) && isSound(row)) {
-          payloads.add(Arrays.copyOfRange(row, LENGTH, LENGTH + lengthIn(row)));
+      symbols(shape).forEach((index, symbol) -> checks[index] = symbol);
+      if (correctsErrors) {
+        correct(rows, checks, payloads, refuted);
+      } else if (have < rows.length) {
+        restore(rows, checks, payloads);
+      }
+    }
+
+    private void restore(
+        byte[] @Nullable [] rows, byte[] @Nullable [] checks, List<byte[]> payloads) {
+      if (code.restore(rows, checks)) {
+        for (int i = 0; i < rows.length; i++) {
+          byte[] row = rows[i];
+          if (row != null && !data.containsKey(i) && isSound(row)) {
+            payloads.add(payload(row));
+          }
         }
       }
+    }
+
+    /**
+     * A payload that is known in full stands for all that claimed its place; one of which some
+     * bytes stayed as they came replaces the first that claimed it, and is left out if none did.
+     */
+    private void correct(
+        byte[] @Nullable [] rows,
+        byte[] @Nullable [] checks,
+        List<byte[]> payloads,
+        BitSet refuted) {
+      boolean[] came = new boolean[rows.length];
+      for (int i = 0; i < rows.length; i++) {
+        came[i] = rows[i] != null;
+      }
+      BitSet beyond = code.correct(rows, checks);
+      for (int i = 0; i < rows.length; i++) {
+        byte[] row = rows[i];
+        if (row == null || !isSound(row)) {
+          continue;
+        }
+        int firstBeyond = beyond.nextSetBit(0);
+        boolean known = firstBeyond < 0 || firstBeyond >= LENGTH + lengthIn(row);
+        List<Integer> places = data.getOrDefault(i, List.of());
+        if (known) {
+          places.forEach(refuted::set);
+        }
+        if (came[i]) {
+          payloads.set(places.get(0), payload(row));
+          refuted.clear(places.get(0));
+        } else if (known) {
+          payloads.add(payload(row));
+        }
+      }
+    }
+
+    private static byte[] payload(byte[] symbol) {
+      return Arrays.copyOfRange(symbol, LENGTH, LENGTH + lengthIn(symbol));
     }
 
     private static int lengthIn(byte[] symbol) {

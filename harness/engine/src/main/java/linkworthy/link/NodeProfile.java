@@ -32,6 +32,9 @@ import org.jspecify.annotations.Nullable;
  * @param batteryJoules usable energy of the battery, in joules
  * @param source where the numbers come from
  * @param radio the model that the energy to send a bit follows from; null where it is given itself
+ * @param gapMicroseconds time that the air is kept free for each packet: interframe space and
+ *     back-off
+ * @param turnaroundMicroseconds time from a packet to its acknowledgement
  */
 public record NodeProfile(
     String id,
@@ -43,7 +46,9 @@ public record NodeProfile(
     double kilobitsPerSecond,
     double batteryJoules,
     String source,
-    @Nullable Radio radio) {
+    @Nullable Radio radio,
+    double gapMicroseconds,
+    double turnaroundMicroseconds) {
   private static final String ID = "[a-z][a-z0-9-]{0,63}";
   private static final String FOLDER = "/linkworthy/noise/library/nodes/";
   private static final Kind.Real NOT_NEGATIVE =
@@ -68,6 +73,16 @@ public record NodeProfile(
           Key.required("sleep-mw", NOT_NEGATIVE, "power between pictures, mW"),
           Key.required("ram-kib", POSITIVE, "working memory, KiB"),
           Key.required("kbit-per-second", POSITIVE, "bit rate on the air, kbit/s"),
+          Key.optional(
+              "gap-us",
+              NOT_NEGATIVE,
+              "`0`",
+              "time kept free for each packet, interframe space and back-off, µs"),
+          Key.optional(
+              "turnaround-us",
+              NOT_NEGATIVE,
+              "`0`",
+              "time from a packet to its acknowledgement, µs"),
           Key.required("battery-j", POSITIVE, "usable energy of the battery, J"),
           Key.required("source", Kind.Text.any(), "where the numbers come from"),
           Key.optional("notes", Kind.Text.any(), "none", "what else a reader should know"));
@@ -84,13 +99,15 @@ public record NodeProfile(
     Require.positive(ramKib, "ram-kib (KiB)");
     Require.positive(kilobitsPerSecond, "kbit-per-second (kbit/s)");
     Require.positive(batteryJoules, "battery-j (J)");
+    Require.notNegative(gapMicroseconds, "gap-us (µs)");
+    Require.notNegative(turnaroundMicroseconds, "turnaround-us (µs)");
     if (radio != null && radio.sentNanojoules() != sentNanojoules) {
       throw new IllegalArgumentException(
           "sent-nj-per-bit is " + sentNanojoules + " and the radio's " + radio.sentNanojoules());
     }
   }
 
-  /** A profile that gives the energy to send a bit itself. */
+  /** A profile that gives the energy to send a bit itself, and says nothing of pauses. */
   public NodeProfile(
       String id,
       double sentNanojoules,
@@ -111,7 +128,9 @@ public record NodeProfile(
         kilobitsPerSecond,
         batteryJoules,
         source,
-        null);
+        null,
+        0,
+        0);
   }
 
   /**
@@ -223,7 +242,13 @@ public record NodeProfile(
         POSITIVE.read(root.get("kbit-per-second")),
         POSITIVE.read(root.get("battery-j")),
         root.get("source").text(),
-        radio);
+        radio,
+        pause(root, "gap-us"),
+        pause(root, "turnaround-us"));
+  }
+
+  private static double pause(YamlNode root, String key) {
+    return root.find(key).map(NOT_NEGATIVE::read).orElse(0.0);
   }
 
   /** The profile as a file writes it, in a fixed order. */
@@ -236,6 +261,12 @@ public record NodeProfile(
     settings.put("sleep-mw", sleepMilliwatts);
     settings.put("ram-kib", ramKib);
     settings.put("kbit-per-second", kilobitsPerSecond);
+    if (gapMicroseconds > 0) {
+      settings.put("gap-us", gapMicroseconds);
+    }
+    if (turnaroundMicroseconds > 0) {
+      settings.put("turnaround-us", turnaroundMicroseconds);
+    }
     settings.put("battery-j", batteryJoules);
     settings.put("source", source);
     return settings;
@@ -255,9 +286,17 @@ public record NodeProfile(
         / 1e6;
   }
 
-  /** Time that bits take on the air, in milliseconds. */
-  public double airTimeMs(long bits) {
-    return bits / kilobitsPerSecond;
+  /**
+   * Time that bits take on the air, with the pauses between packets, in milliseconds. An exchange
+   * of a packet and its acknowledgement is the packet, the turnaround, the acknowledgement and the
+   * gap; where the acknowledgement does not come, its length is left out.
+   *
+   * @param transmissions packets, each with its gap
+   * @param awaited those of them that an acknowledgement was awaited for
+   */
+  public double airTimeMs(long bits, long transmissions, long awaited) {
+    return bits / kilobitsPerSecond
+        + (transmissions * gapMicroseconds + awaited * turnaroundMicroseconds) / 1000;
   }
 
   /**

@@ -95,6 +95,30 @@ public record Protection(List<Rule> rules) {
       return only.stream().sorted().toList();
     }
 
+    /** The parts that set flipped bits right, as studies call them. */
+    public List<String> forFlippedBits() {
+      List<String> parts = new ArrayList<>();
+      if (hamming != null) {
+        parts.add("hamming");
+      }
+      if (code != null && code.correctsErrors()) {
+        parts.add("corrects: " + ErasureCode.ERRORS);
+      }
+      return parts;
+    }
+
+    /** The parts that make up for packets that do not arrive, and do nothing else. */
+    public List<String> forLostPackets() {
+      List<String> parts = new ArrayList<>();
+      if (code != null && !code.correctsErrors()) {
+        parts.add("reed-solomon with corrects: " + ErasureCode.ERASURES);
+      }
+      if (retransmit > 0) {
+        parts.add("retransmit");
+      }
+      return parts;
+    }
+
     private boolean isIdle() {
       return repeat == 1 && code == null && hamming == null && retransmit == 0;
     }
@@ -102,7 +126,14 @@ public record Protection(List<Rule> rules) {
     private String label() {
       List<String> words = new ArrayList<>();
       if (code != null) {
-        words.add("rs" + code.n() + "-" + code.k() + "x" + code.depth());
+        words.add(
+            "rs"
+                + code.n()
+                + "-"
+                + code.k()
+                + "x"
+                + code.depth()
+                + (code.correctsErrors() ? "e" : ""));
       }
       if (hamming != null) {
         words.add("hamming7-4x" + hamming.depth());
@@ -141,8 +172,21 @@ public record Protection(List<Rule> rules) {
    * @param n symbols of a code word, above k, up to 255
    * @param k data symbols of a full code word, at least 1
    * @param depth distance between the symbols of a code word, in packets, 1 to {@link #MAX_DEPTH}
+   * @param correctsErrors whether packets that came may be damaged and are set right, too; if not,
+   *     they are taken to be right and missing ones are restored from them
    */
-  public record ErasureCode(int n, int k, int depth) {
+  public record ErasureCode(int n, int k, int depth, boolean correctsErrors) {
+    /** The word used in studies for restoring missing packets alone. */
+    public static final String ERASURES = "erasures";
+
+    /** The word used in studies for setting damaged packets right as well. */
+    public static final String ERRORS = "errors";
+
+    /** A code that restores missing packets. */
+    public ErasureCode(int n, int k, int depth) {
+      this(n, k, depth, false);
+    }
+
     public ErasureCode {
       Require.inRange(n, 2, 255, "n (symbols)");
       Require.inRange(k, 1, n - 1, "k (data symbols)");
@@ -154,6 +198,9 @@ public record Protection(List<Rule> rules) {
       settings.put("n", n);
       settings.put("k", k);
       settings.put("depth", depth);
+      if (correctsErrors) {
+        settings.put("corrects", ERRORS);
+      }
       return settings;
     }
   }
@@ -194,11 +241,11 @@ public record Protection(List<Rule> rules) {
   }
 
   /**
-   * What goes after a codec's label: {@code rs12-8x4} (n, k, depth), {@code hamming7-4x8} (depth),
-   * {@code repeat2}, {@code retry3}, joined by a plus sign where they combine; then, unless all
-   * classes are protected, a colon and the classes. An acknowledgement of other than 5 bytes stands
-   * with its length, as in {@code retry3ack11}. Rules are separated by blanks; empty for no
-   * protection.
+   * What goes after a codec's label: {@code rs12-8x4} (n, k, depth), with an e behind it where
+   * errors are corrected, {@code hamming7-4x8} (depth), {@code repeat2}, {@code retry3}, joined by
+   * a plus sign where they combine; then, unless all classes are protected, a colon and the
+   * classes. An acknowledgement of other than 5 bytes stands with its length, as in {@code
+   * retry3ack11}. Rules are separated by blanks; empty for no protection.
    */
   public String label() {
     return rules.stream().map(Rule::label).collect(Collectors.joining(" "));

@@ -1,15 +1,19 @@
 package linkworthy.link;
 
 import java.util.ArrayList;
+import java.util.Arrays;
+import java.util.BitSet;
 import java.util.List;
+import java.util.stream.IntStream;
 import linkworthy.input.Require;
 import org.jspecify.annotations.Nullable;
 
 /**
- * A systematic Reed-Solomon erasure code over 256 elements (Reed and Solomon 1960, "Polynomial
- * codes over certain finite fields"). The generator polynomial has the roots a^b, ..., a^(b+r-1)
- * for r parity symbols; a code word, first data symbol at the highest power, is a multiple of it.
- * Any k of the k + r symbols give back the k data symbols.
+ * A systematic Reed-Solomon code over 256 elements (Reed and Solomon 1960, "Polynomial codes over
+ * certain finite fields"). The generator polynomial has the roots a^b, ..., a^(b+r-1) for r parity
+ * symbols; a code word, first data symbol at the highest power, is a multiple of it. Any k of the k
+ * + r symbols give back the k data symbols; e wrong symbols and f missing ones are set right where
+ * 2e + f is at most r.
  *
  * <p>A symbol is a row of bytes, and byte i of all rows forms a code word of its own, so one object
  * codes whole packets. Codes may be shortened: fewer data symbols stand for leading zeros. An
@@ -17,6 +21,7 @@ import org.jspecify.annotations.Nullable;
  */
 public final class ReedSolomon {
   private final GaloisField field;
+  private final int firstRoot;
   private final int[] generator;
 
   /** What a data symbol adds to each parity symbol, by its distance from the last data symbol. */
@@ -38,6 +43,7 @@ public final class ReedSolomon {
     Require.inRange(parity, 1, GaloisField.ORDER - 1, "parity symbols");
     Require.inRange(firstRoot, 0, GaloisField.ORDER, "first root");
     this.field = field;
+    this.firstRoot = firstRoot;
     this.generator = generator(field, firstRoot, parity);
     this.shares = shares(field, generator);
   }
@@ -126,9 +132,7 @@ public final class ReedSolomon {
    * @throws IllegalArgumentException if the number of rows is another or rows differ in length
    */
   public boolean restore(byte[] @Nullable [] data, byte[] @Nullable [] parity) {
-    requireData(data.length);
-    Require.inRange(parity.length, parity(), parity(), "rows of parity");
-    requireOneLength(data, parity);
+    requireRows(data, parity);
     List<Integer> missing = new ArrayList<>();
     for (int i = 0; i < data.length; i++) {
       if (data[i] == null) {
@@ -158,7 +162,83 @@ public final class ReedSolomon {
     return true;
   }
 
-  private static void requireOneLength(byte[] @Nullable [] data, byte[] @Nullable [] parity) {
+  /**
+   * Sets wrong data symbols right and fills in the erased ones, which are null. Byte i of all rows
+   * is a word of its own: it is decoded if a code word differs from it in e places besides the f
+   * erased ones, with 2e + f at most {@link #parity()}. A word with more wrong symbols is either
+   * found to be beyond that, or taken for another code word: with t = (r - f)/2, rounded down, and
+   * n symbols, that happens to a random word with a probability of at most the sum over s = 0 to t
+   * of C(n-f, s) 255^s / 256^(r-f) (McEliece and Swanson, IEEE Transactions on Information Theory
+   * 32(5), 1986, from memory); with f = r, to all.
+   *
+   * @param data 1 to {@link #maxData()} rows, changed in place
+   * @param parity {@link #parity()} rows, null where erased
+   * @return the bytes at which no code word is near enough; data symbols that came are left there
+   *     as they came, and erased ones are 0. With more than {@link #parity()} symbols erased these
+   *     are all bytes, and nothing is changed
+   * @throws IllegalArgumentException if the number of rows is another or rows differ in length
+   */
+  public BitSet correct(byte[] @Nullable [] data, byte[] @Nullable [] parity) {
+    int width = requireRows(data, parity);
+    int length = data.length + parity.length;
+    byte[] @Nullable [] word = Arrays.copyOf(data, length);
+    System.arraycopy(parity, 0, word, data.length, parity.length);
+    int[] erased = IntStream.range(0, length).filter(i -> word[i] == null).toArray();
+    BitSet beyond = new BitSet();
+    if (erased.length > parity.length) {
+      beyond.set(0, width);
+      return beyond;
+    }
+    byte[][] syndromes = syndromes(word, width);
+    byte[][] rows = new byte[data.length][];
+    for (int i = 0; i < rows.length; i++) {
+      byte[] row = data[i];
+      rows[i] = row == null ? new byte[width] : row;
+    }
+    System.arraycopy(rows, 0, data, 0, rows.length);
+    Errata errata = new Errata(field, firstRoot, parity.length, length, erased);
+    int[] syndrome = new int[parity.length];
+    for (int at = 0; at < width; at++) {
+      if (column(syndromes, at, syndrome)) {
+        int[] changes = errata.of(syndrome);
+        beyond.set(at, changes == null);
+        for (int i = 0; changes != null && i < rows.length; i++) {
+          rows[i][at] ^= (byte) changes[i];
+        }
+      }
+    }
+    return beyond;
+  }
+
+  /** Copies a column; whether anything in it is not 0. */
+  private static boolean column(byte[][] rows, int at, int[] column) {
+    int any = 0;
+    for (int j = 0; j < column.length; j++) {
+      column[j] = rows[j][at] & 0xFF;
+      any |= column[j];
+    }
+    return any != 0;
+  }
+
+  /** Row j holds what each word, as a polynomial, is at root j. */
+  private byte[][] syndromes(byte[] @Nullable [] word, int width) {
+    byte[][] syndromes = new byte[parity()][width];
+    for (int i = 0; i < word.length; i++) {
+      byte[] row = word[i];
+      if (row != null) {
+        for (int j = 0; j < syndromes.length; j++) {
+          field.addMultiple(
+              syndromes[j], row, field.power((firstRoot + j) * (word.length - 1 - i)));
+        }
+      }
+    }
+    return syndromes;
+  }
+
+  /** The length of all rows. */
+  private int requireRows(byte[] @Nullable [] data, byte[] @Nullable [] parity) {
+    requireData(data.length);
+    Require.inRange(parity.length, parity(), parity(), "rows of parity");
     int length = -1;
     for (byte[] @Nullable [] rows : List.of(data, parity)) {
       for (byte[] row : rows) {
@@ -168,6 +248,7 @@ public final class ReedSolomon {
         }
       }
     }
+    return Math.max(0, length);
   }
 
   /** A parity symbol less what the known data symbols added to it. */

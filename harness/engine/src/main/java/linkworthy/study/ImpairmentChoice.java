@@ -2,6 +2,7 @@ package linkworthy.study;
 
 import java.util.List;
 import linkworthy.input.Require;
+import linkworthy.noise.BitErrors;
 import linkworthy.noise.NoiseModel;
 import linkworthy.noise.Severity;
 import linkworthy.noise.Site;
@@ -33,6 +34,20 @@ public record ImpairmentChoice(
     if (severities.isEmpty()) {
       throw new IllegalArgumentException(axis + " has no values; accepted: at least one");
     }
+  }
+
+  /** Whether packets may arrive damaged and be used all the same. */
+  boolean damagesPackets() {
+    return site == Site.BITS && !isChecked();
+  }
+
+  /** Whether packets may fail to arrive. */
+  boolean losesPackets() {
+    return site == Site.PACKETS || (site == Site.BITS && isChecked());
+  }
+
+  private boolean isChecked() {
+    return model.parameters().getOrDefault(BitErrors.FRAME_CHECK, 0.0) != 0;
   }
 
   /** The severities with their axis. */

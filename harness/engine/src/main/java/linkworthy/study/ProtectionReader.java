@@ -102,7 +102,11 @@ final class ProtectionReader {
     if (k >= n) {
       throw node.get("k").refuse("is " + k + "; accepted: 1 to " + (n - 1) + ", below n");
     }
-    return new Protection.ErasureCode(n, k, StudyKeys.DEPTH.read(given(node, "depth")));
+    return new Protection.ErasureCode(
+        n,
+        k,
+        StudyKeys.DEPTH.read(given(node, "depth")),
+        StudyKeys.CORRECTS.read(given(node, "corrects")).equals(Protection.ErasureCode.ERRORS));
   }
 
   private @Nullable HammingCode hamming(YamlNode node) {

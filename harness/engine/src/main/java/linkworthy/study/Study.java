@@ -4,9 +4,13 @@ import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Set;
+import java.util.SortedSet;
+import java.util.TreeSet;
+import java.util.function.Function;
 import java.util.regex.Pattern;
 import linkworthy.input.Require;
 import linkworthy.link.Link;
+import linkworthy.link.Protection;
 import linkworthy.quality.QualityMeasure;
 import linkworthy.quality.QualityMeasures;
 import org.jspecify.annotations.Nullable;
@@ -104,6 +108,38 @@ public record Study(
         .filter(id -> !ALWAYS_RECORDED.contains(id))
         .map(QualityMeasures::get)
         .toList();
+  }
+
+  /**
+   * What a reader of the study should know before it runs, a line each: a part of a protection that
+   * no impairment gives anything to do, so that it costs bits and gains nothing.
+   */
+  public List<String> warnings() {
+    List<String> warnings = new ArrayList<>();
+    boolean flips = impairments.stream().anyMatch(ImpairmentChoice::damagesPackets);
+    boolean loses = impairments.stream().anyMatch(ImpairmentChoice::losesPackets);
+    for (String part : parts(flips, Protection.Rule::forFlippedBits)) {
+      warnings.add(
+          part
+              + " gains nothing in this study: no impairment flips bits of packets that are then"
+              + " used (bit-errors with frame-check: false)");
+    }
+    for (String part : parts(loses, Protection.Rule::forLostPackets)) {
+      warnings.add(
+          part
+              + " gains nothing in this study: no impairment loses packets (burst-loss, or bit-errors"
+              + " with frame-check: true)");
+    }
+    return warnings;
+  }
+
+  /** The parts of a kind, by name; none if they have something to do. */
+  private SortedSet<String> parts(boolean busy, Function<Protection.Rule, List<String>> kind) {
+    SortedSet<String> parts = new TreeSet<>();
+    for (CodecChoice codec : busy ? List.<CodecChoice>of() : codecs) {
+      codec.protection().rules().forEach(rule -> parts.addAll(kind.apply(rule)));
+    }
+    return parts;
   }
 
   /** The same study with other codecs, as after their training. */

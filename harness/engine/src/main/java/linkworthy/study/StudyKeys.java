@@ -60,6 +60,8 @@ public final class StudyKeys {
   static final Kind.Whole N = new Kind.Whole(2, 255);
   static final Kind.Whole K = new Kind.Whole(1, 254);
   static final Kind.Whole DEPTH = new Kind.Whole(1, Protection.MAX_DEPTH);
+  static final Kind.Words CORRECTS =
+      Kind.Words.of(Protection.ErasureCode.ERASURES, Protection.ErasureCode.ERRORS);
   static final Kind.Words CLASSES =
       new Kind.Words(Arrays.stream(Importance.values()).map(Importance::id).toList());
   static final Kind.Real INTERVAL =
@@ -122,7 +124,7 @@ public final class StudyKeys {
     return KeyGroup.of(
         "protect",
         usual("protection", "repeat", REPEAT, "copies of each packet in all"),
-        usual("protection", "reed-solomon", code(), "erasure code across packets"),
+        usual("protection", "reed-solomon", code(), "code across packets"),
         usual(
             "protection",
             "hamming",
@@ -156,7 +158,13 @@ public final class StudyKeys {
         "reed-solomon",
         Key.required("n", N, "symbols of a code word"),
         Key.required("k", K, "data symbols among them, below n"),
-        usual("protection", "depth", DEPTH, "distance between the symbols of a word, in packets"));
+        usual("protection", "depth", DEPTH, "distance between the symbols of a word, in packets"),
+        usual(
+            "protection",
+            "corrects",
+            CORRECTS,
+            "missing packets alone, or damaged ones as well, for `bit-errors` without"
+                + " `frame-check`"));
   }
 
   /** The keys of {@code hamming}. */

@@ -73,7 +73,7 @@ final class GuardedCodec {
   PlaneCoding.Decoded decode(List<PictureShape> shapes, Sent sent, List<byte[]> arrived) {
     Failure failed = sent.failure();
     return coding.decode(
-        failed == null ? this::decode : (shape, packets) -> Decoding.failed(shape, failed),
+        failed == null ? this::decode : (plane, shape, packets) -> Decoding.failed(shape, failed),
         shapes,
         arrived);
   }
@@ -84,14 +84,14 @@ final class GuardedCodec {
     return whole == null
         ? decode(shapes, sent, sent.encoding().payloads())
         : coding.decode(
-            (shape, packets) ->
+            (plane, shape, packets) ->
                 guarded(shape, () -> new Decoding(whole.get(), Decoding.Completeness.COMPLETE)),
             shapes,
             List.of());
   }
 
-  private Decoding decode(PictureShape shape, List<byte[]> arrived) {
-    return guarded(shape, () -> codec.decode(shape, arrived));
+  private Decoding decode(int plane, PictureShape shape, List<byte[]> arrived) {
+    return guarded(shape, () -> PlaneCoding.of(codec, plane).decode(shape, arrived));
   }
 
   private static Decoding guarded(PictureShape shape, Supplier<Decoding> work) {

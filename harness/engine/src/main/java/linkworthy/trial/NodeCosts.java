@@ -18,8 +18,6 @@ import linkworthy.study.Study;
  * @param shares of each node, the camera first; empty where the codec does not say what it asks
  */
 record NodeCosts(NodeChoice node, List<Share> shares) {
-  private static final Channel.Traffic NONE = new Channel.Traffic(0, 0);
-
   /**
    * One node's part.
    *
@@ -43,7 +41,7 @@ record NodeCosts(NodeChoice node, List<Share> shares) {
   static NodeCosts of(NodeChoice node, List<Workload> work, Map<Integer, Channel.Traffic> traffic) {
     List<Share> shares = new ArrayList<>();
     for (int i = 0; i < work.size(); i++) {
-      shares.add(new Share(work.get(i), traffic.getOrDefault(i, NONE)));
+      shares.add(new Share(work.get(i), traffic.getOrDefault(i, Channel.Traffic.NONE)));
     }
     return new NodeCosts(node, shares);
   }
@@ -55,19 +53,23 @@ record NodeCosts(NodeChoice node, List<Share> shares) {
     double energy = macs;
     double worst = macs;
     long bits = 0;
+    long transmissions = 0;
+    long awaited = 0;
     for (Share share : shares) {
       macs += share.work().macs();
       memory = Math.max(memory, (double) share.work().memoryBytes());
       energy += share.millijoules(node.profile());
       worst = Math.max(worst, share.millijoules(node.profile()));
       bits += share.sentBits() + share.traffic().receivedBits();
+      transmissions += share.traffic().transmissions();
+      awaited += share.traffic().awaited();
     }
     double[] values = {
       macs,
       memory / 1024,
       energy,
       worst,
-      shares.isEmpty() ? Double.NaN : node.profile().airTimeMs(bits),
+      shares.isEmpty() ? Double.NaN : node.profile().airTimeMs(bits, transmissions, awaited),
       node.profile().picturesPerBattery(worst, node.intervalSeconds())
     };
     Map<String, Double> figures = new LinkedHashMap<>();

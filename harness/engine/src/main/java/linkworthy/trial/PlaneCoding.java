@@ -48,9 +48,9 @@ final class PlaneCoding {
     }
   }
 
-  /** Makes a plane of what arrived. */
+  /** Makes a plane, counted from 0, of what arrived. */
   interface Decoder {
-    Decoding decode(PictureShape shape, List<byte[]> arrived);
+    Decoding decode(int plane, PictureShape shape, List<byte[]> arrived);
   }
 
   /** The planes as they are coded. */
@@ -65,6 +65,11 @@ final class PlaneCoding {
     return coded;
   }
 
+  /** The codec of a plane; the first is luma. */
+  static Codec of(Codec codec, int plane) {
+    return plane == 0 ? codec : codec.forChroma();
+  }
+
   /**
    * Encodes the planes; the components in force are those of luma.
    *
@@ -77,7 +82,7 @@ final class PlaneCoding {
     List<Packet> packets = new ArrayList<>();
     int keep = -1;
     for (int plane = 0; plane < coded.size(); plane++) {
-      Encoding encoding = codec.encode(coded.get(plane), memos.get(plane));
+      Encoding encoding = of(codec, plane).encode(coded.get(plane), memos.get(plane));
       keep = plane == 0 ? encoding.keep() : keep;
       for (Packet packet : encoding.packets()) {
         packets.add(PartNumber.before(packet, plane, packet.node()));
@@ -93,7 +98,7 @@ final class PlaneCoding {
    */
   Decoded decode(Decoder decoder, List<PictureShape> coded, List<byte[]> arrived) {
     if (!numbered) {
-      Decoding decoding = decoder.decode(coded.get(0), arrived);
+      Decoding decoding = decoder.decode(0, coded.get(0), arrived);
       return new Decoded(List.of(decoding.picture()), decoding.completeness(), decoding.failure());
     }
     List<List<byte[]>> byPlane = PartNumber.sort(arrived, coded.size());
@@ -101,7 +106,7 @@ final class PlaneCoding {
     Set<Decoding.Completeness> parts = EnumSet.noneOf(Decoding.Completeness.class);
     Failure failure = null;
     for (int plane = 0; plane < coded.size(); plane++) {
-      Decoding decoding = decoder.decode(coded.get(plane), byPlane.get(plane));
+      Decoding decoding = decoder.decode(plane, coded.get(plane), byPlane.get(plane));
       parts.add(decoding.completeness());
       failure = failure == null ? decoding.failure() : failure;
       planes.add(stretched(decoding.picture(), coded.get(0)));

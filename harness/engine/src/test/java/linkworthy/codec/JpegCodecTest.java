@@ -133,7 +133,7 @@ class JpegCodecTest extends CodecContractTest {
     "100, 64"
   })
   void sumsOfTheQuantiserTable(int quality, int sum) {
-    assertThat(Arrays.stream(JpegTables.steps(quality)).sum()).isEqualTo(sum);
+    assertThat(Arrays.stream(JpegTables.steps(new FrequencySteps(quality))).sum()).isEqualTo(sum);
   }
 
   /** Row 0 of table K.1, scaled; recomputed independently in Python. */
@@ -148,7 +148,7 @@ class JpegCodecTest extends CodecContractTest {
   void firstRowOfTheQuantiserTable(int quality, String row) {
     int[] natural = new int[64];
     for (int i = 0; i < 64; i++) {
-      natural[JpegTables.natural(i)] = JpegTables.steps(quality)[i];
+      natural[JpegTables.natural(i)] = JpegTables.steps(new FrequencySteps(quality))[i];
     }
     assertThat(Arrays.copyOf(natural, 8))
         .containsExactly(Arrays.stream(row.split(" ", -1)).mapToInt(Integer::parseInt).toArray());
@@ -168,7 +168,7 @@ class JpegCodecTest extends CodecContractTest {
       int quality, double error, int nonZero, double entropy) {
     Picture picture = TestPattern.cvp(256);
     JpegBlocks blocks = new JpegBlocks(PictureShape.of(picture));
-    int[] indices = JpegBlocks.quantised(blocks.forward(picture), quality);
+    int[] indices = JpegBlocks.quantised(blocks.forward(picture), new FrequencySteps(quality));
     assertThat(Arrays.stream(indices).filter(i -> i != 0).count()).isEqualTo(nonZero);
     assertThat(meanSquaredError(picture, exactInverse(blocks, indices, quality)))
         .isCloseTo(error, within(1e-6));
@@ -188,7 +188,7 @@ class JpegCodecTest extends CodecContractTest {
   /** The inverse transform in floating point, rounded half up and clipped. */
   private static Picture exactInverse(JpegBlocks blocks, int[] indices, int quality) {
     double[][] cosines = DctBasis.oneDimensional(8);
-    int[] steps = JpegTables.steps(quality);
+    int[] steps = JpegTables.steps(new FrequencySteps(quality));
     int[] samples = new int[64 * blocks.count()];
     int width = 8 * blocks.across();
     PictureShape shape = new PictureShape(width, 8 * blocks.down(), 8);
@@ -253,7 +253,7 @@ class JpegCodecTest extends CodecContractTest {
     for (int round = 0; round < 60; round++) {
       Random random = new Random(round);
       int quality = 5 + random.nextInt(91);
-      int[] steps = JpegTables.steps(quality);
+      int[] steps = JpegTables.steps(new FrequencySteps(quality));
       int[] indices = new int[64 * blocks.count()];
       for (int block = 0; block < blocks.count(); block++) {
         double energy = StrictMath.pow(2, 11 * random.nextDouble());
@@ -263,8 +263,8 @@ class JpegCodecTest extends CodecContractTest {
           indices[64 * block + i] = (int) Math.rint((2 * random.nextDouble() - 1) * most);
         }
       }
-      int[] ours = blocks.inverse(indices, quality).samples();
-      byte[] file = JpegScan.file(shape, quality, indices, blocks.across());
+      int[] ours = blocks.inverse(indices, new FrequencySteps(quality)).samples();
+      byte[] file = JpegScan.file(shape, new FrequencySteps(quality), indices, blocks.across());
       assertThat(Arrays.equals(readByJava(file), ours)).as("round %d", round).isTrue();
       assertThat(Arrays.equals(readByDjpeg(file, folder), ours)).as("round %d", round).isTrue();
     }
@@ -281,8 +281,10 @@ class JpegCodecTest extends CodecContractTest {
     int[] samples = new int[shape.size()];
     Random random = new Random(1180);
     Arrays.setAll(samples, i -> random.nextInt(256));
-    int[] indices = JpegBlocks.quantised(blocks.forward(new Picture(800, 80, 8, samples)), 100);
-    Picture ours = blocks.inverse(indices, 100);
+    int[] indices =
+        JpegBlocks.quantised(
+            blocks.forward(new Picture(800, 80, 8, samples)), new FrequencySteps(100));
+    Picture ours = blocks.inverse(indices, new FrequencySteps(100));
     Picture exact = exactInverse(blocks, indices, 100);
     assertThat(IntStream.range(0, samples.length))
         .allMatch(i -> Math.abs(ours.samples()[i] - exact.samples()[i]) <= 1);
@@ -403,8 +405,8 @@ class JpegCodecTest extends CodecContractTest {
     PictureShape shape = PictureShape.of(picture);
     byte[] theirs = writtenByJava(picture, asJavaHasIt);
     JpegBlocks blocks = new JpegBlocks(shape);
-    int[] indices = JpegBlocks.quantised(blocks.forward(picture), quality);
-    byte[] ours = JpegScan.file(shape, quality, indices, blocks.count());
+    int[] indices = JpegBlocks.quantised(blocks.forward(picture), new FrequencySteps(quality));
+    byte[] ours = JpegScan.file(shape, new FrequencySteps(quality), indices, blocks.count());
     for (int marker : new int[] {0xDB, 0xC0}) {
       assertThat(segment(ours, marker)).isEqualTo(segment(theirs, marker));
     }
@@ -414,7 +416,9 @@ class JpegCodecTest extends CodecContractTest {
             10
                 * Math.abs(
                     StrictMath.log10(
-                        error / meanSquaredError(picture, blocks.inverse(indices, quality)))))
+                        error
+                            / meanSquaredError(
+                                picture, blocks.inverse(indices, new FrequencySteps(quality))))))
         .isLessThan(0.05);
   }
 
@@ -458,10 +462,10 @@ class JpegCodecTest extends CodecContractTest {
     for (Picture picture : manyPictures()) {
       PictureShape shape = PictureShape.of(picture);
       JpegBlocks blocks = new JpegBlocks(shape);
-      int[] indices = JpegBlocks.quantised(blocks.forward(picture), 60);
+      int[] indices = JpegBlocks.quantised(blocks.forward(picture), new FrequencySteps(60));
       JpegCodec codec = codec("{jpeg: baseline, quality: 60}");
       assertThat(codec.file(shape, packets(codec, picture)))
-          .isEqualTo(JpegScan.file(shape, 60, indices, blocks.across()));
+          .isEqualTo(JpegScan.file(shape, new FrequencySteps(60), indices, blocks.across()));
     }
   }
 
@@ -470,7 +474,8 @@ class JpegCodecTest extends CodecContractTest {
   void blocksLargerThanAPacketAreCutBetweenTheirCodes() {
     Picture picture = random(16, 16);
     PictureShape shape = PictureShape.of(picture);
-    int[] indices = JpegBlocks.quantised(new JpegBlocks(shape).forward(picture), 100);
+    int[] indices =
+        JpegBlocks.quantised(new JpegBlocks(shape).forward(picture), new FrequencySteps(100));
     var packets = Packetizer.pack(new byte[9], JpegScan.strips(indices, 2), 32);
     assertThat(packets).hasSizeGreaterThan(8).allMatch(p -> p.length() <= 32);
     JpegScan.Reader reader = new JpegScan.Reader(new JpegBlocks(shape), 2);

@@ -140,7 +140,8 @@ class PacketParsersTest {
               });
       assertThat(completeness).isNotEqualTo(Decoding.Completeness.COMPLETE);
       assertThat(reader.filled()).hasSize(64 * blocks.count());
-      assertThat(blocks.inverse(reader.filled(), 50).samples()).hasSize(SHAPE.size());
+      assertThat(blocks.inverse(reader.filled(), new FrequencySteps(50)).samples())
+          .hasSize(SHAPE.size());
     }
   }
 

@@ -38,6 +38,10 @@ class ChannelTest {
     return new Protection.ErasureCode(n, k, depth);
   }
 
+  private static Protection.ErasureCode correcting(int n, int k, int depth) {
+    return new Protection.ErasureCode(n, k, depth, true);
+  }
+
   /** One protection of each kind, combinations, and one that differs by class. */
   static Stream<Protection> protections() {
     return Stream.of(
@@ -50,6 +54,9 @@ class ChannelTest {
         all(1, code(255, 223, 1), 0),
         all(1, code(5, 1, 3), 0),
         all(2, code(10, 8, 2), 1),
+        all(1, correcting(12, 8, 4), 0),
+        all(1, correcting(255, 223, 1), 0),
+        all(2, correcting(10, 8, 2), 1),
         new Protection(
             List.of(new Protection.Rule(ALL, 2, code(12, 8, 2), new HammingCode(8), 1, 5))),
         new Protection(
@@ -232,6 +239,24 @@ class ChannelTest {
     assertSameBytes(both.sent, List.of(a, a, a, a));
   }
 
+  /** Pauses are counted by packets: 6 transmissions here, each awaited. */
+  @Test
+  void transmissionsOfANodeAreCounted() {
+    List<Packet> packets = packets(3, 4);
+    Recorder air = new Recorder(t -> Set.of(1, 3, 4).contains(t));
+    assertThat(new Channel(LINK, all(1, null, 2)).send(packets, air).byNode().get(0))
+        .returns(6L, Channel.Traffic::transmissions)
+        .returns(6L, Channel.Traffic::awaited)
+        .returns(8L * 5 * 3, Channel.Traffic::receivedBits);
+    assertThat(
+            new Channel(LINK, all(2, null, 0))
+                .send(packets, new Recorder(t -> false))
+                .byNode()
+                .get(0))
+        .returns(6L, Channel.Traffic::transmissions)
+        .returns(0L, Channel.Traffic::awaited);
+  }
+
   /** Packet t of a group belongs to word t modulo depth; parity follows its group. */
   @Test
   void symbolsOfAWordAreDepthPacketsApart() {
@@ -258,6 +283,58 @@ class ChannelTest {
     assertThat(outcome.payloads().stream().map(Arrays::toString))
         .isSubsetOf(sent.stream().map(Arrays::toString).toList());
     assertSameBytes(outcome.payloads().subList(0, 8 - losses), sent.subList(losses, 8));
+  }
+
+  /** Flips every bit of some bytes of a packet, some packets out of twelve. */
+  private static Channel.Outcome sendDamaged(
+      List<Packet> packets, Protection protection, int damaged, int from, int to) {
+    return new Channel(LINK, protection)
+        .send(
+            packets,
+            (index, node, payload) -> {
+              byte[] copy = payload.clone();
+              for (int i = from; index % 12 < damaged && i < Math.min(to, copy.length); i++) {
+                copy[i] ^= -1;
+              }
+              return copy;
+            });
+  }
+
+  /**
+   * With (12, 8) two damaged packets of twelve are set right, in their data or in their numbers (a
+   * packet that gives a wrong number is missing in its word); three are not, and stay as they came.
+   */
+  @ParameterizedTest
+  @CsvSource({"0, 0, 0", "2, 4, 300", "2, 0, 4", "2, 2, 9", "4, 0, 1", "1, 0, 1", "3, 4, 300"})
+  void damagedPacketsAreSetRight(int damaged, int from, int to) {
+    List<Packet> packets = packets(8 * 5, 6);
+    Channel.Outcome outcome =
+        sendDamaged(packets, all(1, correcting(12, 8, 1), 0), damaged, from, to);
+    List<String> sent = payloads(packets).stream().map(Arrays::toString).toList();
+    List<String> found = outcome.payloads().stream().map(Arrays::toString).toList();
+    if (damaged == 3) {
+      assertThat(found).hasSize(40);
+      assertThat(found.stream().filter(sent::contains)).hasSize(5 * 5);
+    } else {
+      assertThat(found).containsExactlyInAnyOrderElementsOf(sent);
+    }
+    Channel.Outcome erasuresOnly =
+        sendDamaged(packets, all(1, code(12, 8, 1), 0), damaged, from, to);
+    assertThat(erasuresOnly.payloads().stream().map(Arrays::toString).filter(sent::contains))
+        .hasSizeLessThanOrEqualTo(found.size());
+  }
+
+  /**
+   * Two first copies of each word are damaged: the code tells which was right, and one payload is
+   * handed on.
+   */
+  @Test
+  void damagedCopiesAreLeftOutWhereTheWordIsKnown() {
+    List<Packet> packets = packets(8 * 6, 7);
+    Channel.Outcome outcome = sendDamaged(packets, all(2, correcting(12, 8, 1), 0), 1, 5, 300);
+    assertThat(outcome.payloads().stream().map(Arrays::toString).toList())
+        .containsExactlyInAnyOrderElementsOf(
+            payloads(packets).stream().map(Arrays::toString).toList());
   }
 
   /** Only the classes that are named are protected. */
@@ -375,6 +452,9 @@ class ChannelTest {
             "rs255-223x1",
             "rs5-1x3",
             "rs10-8x2+repeat2+retry1",
+            "rs12-8x4e",
+            "rs255-223x1e",
+            "rs10-8x2e+repeat2+retry1",
             "rs12-8x2+hamming7-4x8+repeat2+retry1",
             "repeat3:header rs12-8x2:basis+first",
             "rs6-2x1+retry1:header rs9-8x3:rest");

@@ -76,7 +76,7 @@ class NodeProfileTest {
     String text = new YAMLMapper().writeValueAsString(profile.settings());
     assertThat(NodeProfile.parse(YamlNode.parse("node.yaml", text))).isEqualTo(profile);
     assertThatIllegalArgumentException()
-        .isThrownBy(() -> new NodeProfile("n", 1, 1, 1, 1, 1, 1, 1, "x", profile.radio()))
+        .isThrownBy(() -> new NodeProfile("n", 1, 1, 1, 1, 1, 1, 1, "x", profile.radio(), 0, 0))
         .withMessageContaining("sent-nj-per-bit is 1.0 and the radio's 319.5");
   }
 
@@ -107,8 +107,47 @@ class NodeProfileTest {
   void workAirTimeAndBattery() {
     NodeProfile node = new NodeProfile("n", 1, 1, 0.5, 2, 64, 250, 100, "own example");
     assertThat(node.millijoules(2_000_000, 0, 0)).isEqualTo(1);
-    assertThat(node.airTimeMs(8 * 133)).isCloseTo(4.256, within(1e-12));
+    assertThat(node.airTimeMs(8 * 133, 1, 1)).isCloseTo(4.256, within(1e-12));
     assertThat(node.picturesPerBattery(10, 20)).isEqualTo(100_000 / 50.0);
+  }
+
+  /**
+   * IEEE 802.15.4-2003/2006, clause 6 (from memory): at 250 kbit/s an octet lasts 32 µs and an
+   * acknowledgement, 11 octets with preamble and length, 352 µs; the turnaround of 12 symbols lasts
+   * 192 µs, a unit of back-off, 20 symbols, 320 µs, the long interframe space, 40 symbols, 640 µs.
+   * So the longest frame and its acknowledgement take 4256 + 192 + 352 + 640 µs without back-off.
+   */
+  @Test
+  void anAcknowledgedPacketTakesItsPausesToo() {
+    String text =
+        """
+        id: n
+        sent-nj-per-bit: 1
+        received-nj-per-bit: 1
+        mac-nj: 5
+        sleep-mw: 0
+        ram-kib: 64
+        kbit-per-second: 250
+        gap-us: 640
+        turnaround-us: 192
+        battery-j: 9
+        source: a test
+        """;
+    NodeProfile node = NodeProfile.parse(YamlNode.parse("node.yaml", text));
+    assertThat(node.airTimeMs(8, 0, 0)).isCloseTo(0.032, within(1e-12));
+    assertThat(node.airTimeMs(8 * 11, 0, 0)).isCloseTo(0.352, within(1e-12));
+    assertThat(node.airTimeMs(8 * (133 + 11), 1, 1)).isCloseTo(5.440, within(1e-12));
+    assertThat(node.airTimeMs(8 * 133, 1, 0)).as("not awaited").isCloseTo(4.896, within(1e-12));
+    String backOff = text.replace("gap-us: 640", "gap-us: 960");
+    assertThat(
+            NodeProfile.parse(YamlNode.parse("node.yaml", backOff)).airTimeMs(8 * (133 + 11), 1, 1))
+        .isCloseTo(5.760, within(1e-12));
+    String written = new YAMLMapper().writeValueAsString(node.settings());
+    assertThat(NodeProfile.parse(YamlNode.parse("node.yaml", written))).isEqualTo(node);
+    assertThat(NodeProfile.find("yard-camera").settings()).doesNotContainKeys("gap-us");
+    assertThatThrownBy(() -> NodeProfile.parse(YamlNode.parse("n.yaml", text.replace("192", "-1"))))
+        .isInstanceOf(BadInput.class)
+        .hasMessageContaining("'turnaround-us'");
   }
 
   /**

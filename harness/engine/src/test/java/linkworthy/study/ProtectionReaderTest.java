@@ -10,6 +10,7 @@ import linkworthy.input.BadInput;
 import linkworthy.link.HammingCode;
 import linkworthy.link.Importance;
 import linkworthy.link.Protection;
+import org.jspecify.annotations.Nullable;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
@@ -36,6 +37,11 @@ class ProtectionReaderTest {
         .containsExactly(new Protection.Rule(ALL, 2, null, 0, 5));
     assertThat(protection("{reed-solomon: {n: 12, k: 8}}").rules())
         .containsExactly(new Protection.Rule(ALL, 1, new Protection.ErasureCode(12, 8, 1), 0, 5));
+    assertThat(protection("{reed-solomon: {n: 12, k: 8, corrects: erasures}}"))
+        .isEqualTo(protection("{reed-solomon: {n: 12, k: 8}}"));
+    assertThat(protection("{reed-solomon: {n: 12, k: 8, corrects: errors}}").rules())
+        .containsExactly(
+            new Protection.Rule(ALL, 1, new Protection.ErasureCode(12, 8, 1, true), 0, 5));
     assertThat(protection("{retransmit: 3}").rules())
         .containsExactly(new Protection.Rule(ALL, 1, null, 3, 5));
     assertThat(protection("{hamming: {}}").rules())
@@ -78,6 +84,7 @@ class ProtectionReaderTest {
         - {transform: dct, keep: [2, 4], protect: none}
         - {transform: dct, keep: 2, protect: {repeat: 2}}
         - {transform: dct, keep: 2, protect: {hamming: {depth: 8}}}
+        - {transform: dct, keep: 2, protect: {reed-solomon: {n: 6, k: 4, corrects: errors}}}
         - {transform: dct, keep: 2, protect: {retransmit: 3}, label: patient}
         - {transform: dct, keep: 2, protect: [{repeat: 3, only: header}, {retransmit: 1, only: rest}]}
       """;
@@ -93,6 +100,7 @@ class ProtectionReaderTest {
             "dct blocks8 K4 step8",
             "dct blocks8 K2 step8 repeat2",
             "dct blocks8 K2 step8 hamming7-4x8",
+            "dct blocks8 K2 step8 rs6-4x1e",
             "patient",
             "dct blocks8 K2 step8 repeat3:header retry1:rest");
   }
@@ -289,5 +297,35 @@ class ProtectionReaderTest {
         .hasMessageContaining("has only 31 bytes of payload-bytes left")
         .hasMessageContaining("payload-bytes of at least 40");
     assertThat(StudyReaderTest.read(planes.replace("39", "40")).codecs()).hasSize(1);
+  }
+
+  /** What protects from damage needs damaged packets, what protects from loss lost ones. */
+  @ParameterizedTest
+  @CsvSource(
+      delimiter = '|',
+      value = {
+        "burst-loss, loss-rate: 0.1 | {hamming: {depth: 8}} | hamming",
+        "burst-loss, loss-rate: 0.1 | {reed-solomon: {n: 6, k: 4, corrects: errors}}"
+            + " | corrects: errors",
+        "burst-loss, loss-rate: 0.1 | {reed-solomon: {n: 6, k: 4}, retransmit: 1} | ",
+        "'bit-errors, frame-check: true, bit-error-rate: 0.01' | {hamming: {}, retransmit: 2}"
+            + " | hamming",
+        "'bit-errors, bit-error-rate: 0.01' | {hamming: {}} | ",
+        "'bit-errors, bit-error-rate: 0.01' | {reed-solomon: {n: 6, k: 4, corrects: errors}} | ",
+        "'bit-errors, bit-error-rate: 0.01' | {reed-solomon: {n: 6, k: 4}, retransmit: 1}"
+            + " | 'reed-solomon with corrects: erasures, retransmit'",
+        "'gaussian, snr-db: 20' | {repeat: 2} | "
+      })
+  void whatProtectsFromNothingIsSaid(String noise, String protect, @Nullable String parts) {
+    Study study =
+        StudyReaderTest.read(
+            "protect: "
+                + protect
+                + "\n"
+                + StudyReaderTest.SHORT.replace(
+                    "  - noise: gaussian\n    snr-db: 20\n", "  - {noise: " + noise + "}\n"));
+    assertThat(study.warnings().stream().map(line -> line.split(" gains nothing", 2)[0]).toList())
+        .isEqualTo(parts == null ? List.of() : List.of(parts.split(", ", -1)));
+    assertThat(study.warnings()).noneMatch(line -> line.contains("\n"));
   }
 }

@@ -57,7 +57,14 @@ class DamagedTrialsTest {
           Damages.bounded(
               (4 << 20) + 200 * (bytes + 3L * subject.picture().size()),
               what,
-              () -> subject.coding().decode(codec::decode, subject.shapes(), arrived));
+              () ->
+                  subject
+                      .coding()
+                      .decode(
+                          (plane, shape, packets) ->
+                              PlaneCoding.of(codec, plane).decode(shape, packets),
+                          subject.shapes(),
+                          arrived));
       assertThat(decoded.failure()).isNull();
       assertThat(decoded.planes())
           .hasSameSizeAs(subject.planes())

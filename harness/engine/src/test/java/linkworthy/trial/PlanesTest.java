@@ -9,9 +9,11 @@ import java.util.List;
 import linkworthy.codec.Codec;
 import linkworthy.codec.Decoding;
 import linkworthy.codec.Encoding;
+import linkworthy.codec.Memo;
 import linkworthy.codec.PictureShape;
 import linkworthy.corpus.Picture;
 import linkworthy.input.YamlNode;
+import linkworthy.study.CodecChoice;
 import linkworthy.study.StudyReader;
 import org.junit.jupiter.api.Test;
 
@@ -166,20 +168,78 @@ class PlanesTest {
         .isEqualTo((subject.shapes().get(0).width() + 1) / 2);
 
     List<byte[]> blue = encoding.payloads().stream().filter(p -> p[0] == 1).toList();
-    PlaneCoding.Decoded decoded = subject.coding().decode(codec::decode, subject.shapes(), blue);
+    PlaneCoding.Decoded decoded =
+        subject
+            .coding()
+            .decode(
+                (plane, shape, packets) -> codec.decode(shape, packets), subject.shapes(), blue);
     assertThat(decoded.completeness()).isEqualTo(Decoding.Completeness.PARTIAL);
     assertThat(decoded.luma().samples()).containsOnly(128);
     assertThat(decoded.planes().get(1).samples()).isNotEqualTo(decoded.luma().samples());
     assertThat(decoded.planes().stream().map(PictureShape::of).distinct()).hasSize(1);
 
     List<byte[]> strange = List.of(new byte[0], new byte[] {3, 1, 2}, new byte[] {-1});
-    assertThat(subject.coding().decode(codec::decode, subject.shapes(), strange).completeness())
+    assertThat(
+            subject
+                .coding()
+                .decode(
+                    (plane, shape, packets) -> codec.decode(shape, packets),
+                    subject.shapes(),
+                    strange)
+                .completeness())
         .isEqualTo(Decoding.Completeness.NOTHING);
     assertThat(
             subject
                 .coding()
-                .decode(codec::decode, subject.shapes(), encoding.payloads())
+                .decode(
+                    (plane, shape, packets) -> codec.decode(shape, packets),
+                    subject.shapes(),
+                    encoding.payloads())
                 .completeness())
         .isEqualTo(Decoding.Completeness.COMPLETE);
+  }
+
+  /**
+   * Colour planes have the steps of table K.2 of T.81, luma those of K.1: each plane is what its
+   * own codec makes of it, and at one quality colour takes fewer bits than by the table of luma.
+   */
+  @Test
+  void colourPlanesHaveTheirOwnSteps() {
+    String codecs =
+        """
+          - {transform: dct, weights: luminance, quality: 50, keep: 64}
+          - {jpeg: baseline, quality: 50}
+        """;
+    Plan plan =
+        plan(
+            FULL.replaceAll("(?m)^  - \\{transform.*\\n", "")
+                .replace("codecs:\n", "codecs:\n" + codecs));
+    Subject subject = subject(plan, "fig");
+    for (CodecChoice choice : plan.study().codecs()) {
+      Codec codec = choice.codec();
+      Encoding all = subject.coding().encode(codec, subject.coded(), subject.memos());
+      PlaneCoding.Decoded decoded =
+          subject
+              .coding()
+              .decode(
+                  (plane, shape, packets) -> PlaneCoding.of(codec, plane).decode(shape, packets),
+                  subject.shapes(),
+                  all.payloads());
+      for (int plane = 0; plane < 3; plane++) {
+        Picture coded = subject.coded().get(plane);
+        Codec own = plane == 0 ? codec : codec.forChroma();
+        List<byte[]> alone = own.encode(coded, new Memo()).payloads();
+        assertThat(decoded.planes().get(plane).samples())
+            .isEqualTo(own.decode(PictureShape.of(coded), alone).picture().samples());
+        if (plane > 0) {
+          assertThat(bytes(alone)).isLessThan(bytes(codec.encode(coded, new Memo()).payloads()));
+        }
+      }
+      assertThat(codec.forChroma().settings()).isEqualTo(codec.settings());
+    }
+  }
+
+  private static int bytes(List<byte[]> payloads) {
+    return payloads.stream().mapToInt(p -> p.length).sum();
   }
 }

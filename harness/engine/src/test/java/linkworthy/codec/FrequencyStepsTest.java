@@ -6,15 +6,16 @@ import static org.assertj.core.api.Assertions.within;
 import java.util.Arrays;
 import java.util.List;
 import java.util.stream.IntStream;
+import javax.imageio.plugins.jpeg.JPEGQTable;
 import linkworthy.corpus.Picture;
 import linkworthy.corpus.TestPattern;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
 
-class LuminanceStepsTest {
+class FrequencyStepsTest {
   private static int[] table(int quality) {
-    LuminanceSteps steps = new LuminanceSteps(quality);
+    FrequencySteps steps = new FrequencySteps(quality);
     return IntStream.range(0, 64).map(steps::step).toArray();
   }
 
@@ -63,10 +64,29 @@ class LuminanceStepsTest {
             99);
   }
 
+  /**
+   * ITU-T T.81 (1992), Annex K, table K.2, from memory; the sum 5505 recomputed independently in
+   * Python. Both tables are those of the Java platform as well.
+   */
+  @Test
+  void theTableForChrominance() {
+    FrequencySteps steps = new FrequencySteps(50).forChroma();
+    int[] natural = IntStream.range(0, 64).map(steps::step).toArray();
+    assertThat(Arrays.stream(natural).sum()).isEqualTo(5505);
+    assertThat(Arrays.copyOf(natural, 32))
+        .containsExactly(
+            17, 18, 24, 47, 99, 99, 99, 99, 18, 21, 26, 66, 99, 99, 99, 99, 24, 26, 56, 99, 99, 99,
+            99, 99, 47, 66, 99, 99, 99, 99, 99, 99);
+    assertThat(Arrays.copyOfRange(natural, 32, 64)).containsOnly(99);
+    assertThat(natural).isEqualTo(JPEGQTable.K2Chrominance.getTable());
+    assertThat(table(50)).isEqualTo(JPEGQTable.K1Luminance.getTable());
+    assertThat(new FrequencySteps(75).forChroma().step(0)).as("(50 17 + 50) / 100").isEqualTo(9);
+  }
+
   /** The first ten steps along the zig-zag (Wallace 1991, figure 10). */
   @Test
   void componentsFollowTheZigZag() {
-    LuminanceSteps steps = new LuminanceSteps(50);
+    FrequencySteps steps = new FrequencySteps(50);
     assertThat(IntStream.range(0, 10).mapToObj(steps::component).map(Quantizer::step).toList())
         .isEqualTo(List.of(16.0, 11.0, 12.0, 14.0, 12.0, 10.0, 16.0, 14.0, 13.0, 14.0));
   }
@@ -87,7 +107,7 @@ class LuminanceStepsTest {
     Picture pattern = TestPattern.cvp(256);
     PictureShape shape = PictureShape.of(pattern);
     Arrangement blocks = new Arrangement.Blocks(8);
-    Quantization steps = new LuminanceSteps(quality);
+    Quantization steps = new FrequencySteps(quality);
     double[][] values = blocks.gather(pattern);
     for (double[] variable : values) {
       Arrays.setAll(variable, j -> variable[j] - 128);
