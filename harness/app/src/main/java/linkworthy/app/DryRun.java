@@ -61,7 +61,8 @@ final class DryRun {
     to.println(
         "disk:     "
             + range(mebibytes(sample.bytes(least)), mebibytes(sample.bytes(most)))
-            + " MiB");
+            + " MiB"
+            + (rehearsal.isWhole() ? "" : ", and more pictures in the report"));
     to.println(
         "measured: "
             + rehearsal.units()

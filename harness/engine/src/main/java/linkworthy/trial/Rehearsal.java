@@ -29,7 +29,7 @@ import linkworthy.study.PictureChoice;
  * other, and with code that has been compiled by then. What the compiling cost is kept apart.
  *
  * <p>Where units are slow each is run once. Only where even that takes more than twice the time and
- * 5 % of the plan's units have been run, the rest is taken to be like the others, in proportion to
+ * 10 % of the plan's units have been run, the rest is taken to be like the others, in proportion to
  * the size of the picture.
  */
 public final class Rehearsal {
@@ -41,7 +41,7 @@ public final class Rehearsal {
   private static final int PATIENCE = 2;
 
   /** Share of the plan's units that may be run even if it takes very long. */
-  private static final double SMALL_SHARE = 0.05;
+  private static final double SMALL_SHARE = 0.1;
 
   private final Plan plan;
   private final int threads;
@@ -249,6 +249,11 @@ public final class Rehearsal {
       like -= like < conditions.size() ? 1 : conditions.size();
     }
     return like;
+  }
+
+  /** Whether each of the units was run. */
+  public boolean isWhole() {
+    return rows.size() == warm.length;
   }
 
   /** How many different units were run. */

@@ -48,6 +48,7 @@ class RehearsalTest {
   void mildestMiddleAndHarshestSeverityOfThreePicturesAreRunAsInThePlan() {
     assertThat(rehearsal.pictures()).hasSize(3).isSorted().doesNotHaveDuplicates();
     assertThat(rehearsal.units()).isEqualTo(3 * (1 + 3 + 2));
+    assertThat(rehearsal.isWhole()).isTrue();
     for (int picture : rehearsal.pictures()) {
       // Clean; 30, 20 and 5 dB; 0.1 and 0.4 of the packets.
       for (int condition : new int[] {-1, 4, 0, 1, 6, 7}) {
@@ -92,11 +93,14 @@ class RehearsalTest {
   @Test
   void whereUnitsAreVerySlowTheRestIsLikeTheFirst() {
     Rehearsal slow = Rehearsal.of(plan, 1, 0);
-    // Of 100 units 5 % and one more: those of the smallest picture.
-    assertThat(slow.runs()).isEqualTo(6);
-    assertThat(slow.units()).isEqualTo(6);
-    List<Trial> clean = slow.trials(slow.pictures().get(0), -1);
-    assertThat(clean).isEqualTo(slow.trials(slow.pictures().get(2), -1)).hasSize(3);
+    // Of 100 units 10 % and one more: those of the smallest picture, and of the middle one all but
+    // the harshest loss.
+    assertThat(slow.runs()).isEqualTo(11);
+    assertThat(slow.units()).isEqualTo(11);
+    assertThat(slow.isWhole()).isFalse();
+    // The largest picture has the rows of the middle one.
+    assertThat(slow.pictures().stream().map(picture -> slow.trials(picture, -1)).distinct())
+        .hasSize(2);
     assertThat(slow.seconds(3, 0)).isPositive();
   }
 }
