@@ -44,6 +44,7 @@ final class SampleRecord {
   private static final double NEWEST = 0.2;
 
   private static final int REPLICATES = 2;
+  private static final int MOST_TRIES = 100;
   private static final String SOME_ID = "0123456789abcdef";
 
   private final Plan plan;
@@ -83,18 +84,31 @@ final class SampleRecord {
             .withPlugins(plugins);
     try {
       Path folder = Files.createTempDirectory("linkworthy-dry-run");
-      Thread onSignal = new Thread(() -> remove(folder), "remove");
+      Thread onSignal = new Thread(() -> removeOnSignal(folder), "remove");
       Runtime.getRuntime().addShutdownHook(onSignal);
       try {
         sample.measure(folder, begun, surroundings);
       } finally {
-        remove(folder);
+        if (Files.exists(folder)) {
+          remove(folder);
+        }
         Assessment.release(onSignal);
       }
     } catch (IOException | UncheckedIOException e) {
       throw new Unavailable("cannot write a temporary folder: " + e.getMessage(), e);
     }
     return sample;
+  }
+
+  /** The record may still be growing. */
+  private static void removeOnSignal(Path folder) {
+    for (int i = 0; i < MOST_TRIES && Files.exists(folder); i++) {
+      try {
+        remove(folder);
+      } catch (UncheckedIOException e) {
+        Thread.onSpinWait();
+      }
+    }
   }
 
   private static void remove(Path folder) {
