@@ -16,7 +16,6 @@ import linkworthy.results.ResultsFolder;
 import linkworthy.results.ResultsWriter;
 import linkworthy.study.Study;
 import linkworthy.study.StudyReader;
-import linkworthy.trial.Estimate;
 import linkworthy.trial.Plan;
 import org.jspecify.annotations.Nullable;
 import picocli.CommandLine.Command;
@@ -75,7 +74,10 @@ final class AssessCommand implements Callable<Integer> {
 
   @Option(
       names = "--dry-run",
-      description = "Check everything, count trials, estimate time, memory and disk; run nothing.")
+      description = {
+        "Check everything, count trials, and estimate time, memory and disk from a few trials that",
+        "are run for it; keep nothing."
+      })
   private boolean dryRun;
 
   @Option(
@@ -270,7 +272,7 @@ final class AssessCommand implements Callable<Integer> {
     }
     Plan plan = Plan.of(study);
     if (dryRun) {
-      printEstimate(plan);
+      new DryRun(surroundings, plan, plugins.jars(), threads()).print();
       return Main.DONE;
     }
     ResultsFolder.Start start = overwrite ? ResultsFolder.Start.OVERWRITE : ResultsFolder.Start.NEW;
@@ -291,26 +293,5 @@ final class AssessCommand implements Callable<Integer> {
             : YamlNode.read(file);
     Path folder = file == null ? surroundings.home() : file.toAbsolutePath().getParent();
     return StudyReader.read(root.with(settings), folder == null ? Path.of("/") : folder, families);
-  }
-
-  private void printEstimate(Plan plan) {
-    Estimate estimate = Estimate.of(plan, threads());
-    String upTo = plan.study().earlyStop() == null ? "" : Progress.UP_TO;
-    var to = surroundings.out();
-    to.println("study:    " + plan.study().name());
-    to.println("pictures: " + plan.pictures().size());
-    to.println("codecs:   " + plan.study().codecs().size());
-    to.println("units:    " + upTo + plan.units() + " (picture, impairment, severity, replicate)");
-    to.println("trials:   " + upTo + plan.trials());
-    to.println(
-        "time:     "
-            + upTo
-            + "about "
-            + Progress.duration(Math.round(estimate.seconds()))
-            + " on "
-            + threads()
-            + " threads (a rough figure, for a processor of about 3 GHz)");
-    to.println("memory:   about " + Estimate.mebibytes(estimate.memoryBytes()) + " MiB");
-    to.println("disk:     " + upTo + "about " + Estimate.mebibytes(estimate.diskBytes()) + " MiB");
   }
 }

@@ -36,10 +36,10 @@ final class ShortlistText {
    */
   static ShortlistText of(ResultsFolder results, Path need) {
     results.requireComplete();
-    Measurements measured = new Measurements();
+    YamlNode needs = YamlNode.read(need);
+    Measurements measured = Measurements.forShortlist(Needs.measures(needs));
     long unused = results.trials(measured::add);
-    return new ShortlistText(
-        Shortlist.of(measured, Needs.read(YamlNode.read(need), measured)), measured);
+    return new ShortlistText(Shortlist.of(measured, Needs.read(needs, measured)), measured);
   }
 
   /** Whether a codec is shown to meet all needs. */

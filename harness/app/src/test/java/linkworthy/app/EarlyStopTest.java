@@ -52,9 +52,12 @@ class EarlyStopTest {
   }
 
   @Test
-  void theEstimateIsWhatItTakesAtMost() {
+  void theEstimateIsWhatItTakesAtLeastAndAtMost() {
     // 2 pictures, each clean and 12 replicates of 4 conditions; 5 options.
-    assertThat(assess("--dry-run").out()).contains("up to 98 (", "trials:   up to 490");
+    assertThat(assess("--dry-run").out())
+        .contains("up to 98 (", "trials:   up to 490")
+        .containsPattern("\ntime: +(at least )?about .+ on \\d+ threads\n")
+        .containsPattern("\ndisk: +at least about [\\d.]+, at most about [\\d.]+ MiB\n");
   }
 
   @Test

@@ -48,6 +48,12 @@ public final class Measurements {
     return new Measurements(PSNR::equals);
   }
 
+  /** What a {@link Shortlist} needs that is about these measures. */
+  public static Measurements forShortlist(Set<String> named) {
+    return new Measurements(
+        measure -> measure.equals(PSNR) || measure.equals(BITS) || named.contains(measure));
+  }
+
   /**
    * What hurt the pictures, and how strongly.
    *
@@ -83,6 +89,7 @@ public final class Measurements {
     put(figures, "packets-lost", trial.packetsLost());
     put(figures, OUTAGE_RATE, trial.outage() ? 1 : 0);
     trial.further().forEach((column, figure) -> put(figures, column.replace('_', '-'), figure));
+    measures.addAll(figures.keySet());
     figures.keySet().removeIf(kept.negate());
     Picture picture =
         pictures.computeIfAbsent(trial.picture(), id -> new Picture(pictures.size(), id));
@@ -92,7 +99,6 @@ public final class Measurements {
         .add(picture.number(), picture.id(), figures);
     snrDb.computeIfAbsent(condition, c -> new Moments()).add(trial.snrDb());
     codecs.add(trial.codec());
-    measures.addAll(figures.keySet());
     trials++;
   }
 
@@ -118,7 +124,7 @@ public final class Measurements {
     return List.copyOf(codecs);
   }
 
-  /** Names of all measures that have a figure. */
+  /** Names of all measures that have a figure, kept or not. */
   public List<String> measures() {
     return List.copyOf(measures);
   }

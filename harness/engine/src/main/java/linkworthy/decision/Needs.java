@@ -2,6 +2,8 @@ package linkworthy.decision;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Set;
+import java.util.stream.Collectors;
 import linkworthy.input.BadInput;
 import linkworthy.input.Key;
 import linkworthy.input.KeyGroup;
@@ -90,6 +92,18 @@ public record Needs(double confidence, List<Need> needs) {
       throw new IllegalArgumentException("there is no need; accepted: at least one");
     }
     needs = List.copyOf(needs);
+  }
+
+  /**
+   * The measures that needs are about, whether or not a run has figures of them.
+   *
+   * @throws BadInput if a key is unknown, or a value out of range
+   */
+  public static Set<String> measures(YamlNode root) {
+    KEYS.check(root);
+    return root.get("needs").items().stream()
+        .map(need -> need.get("measure").text())
+        .collect(Collectors.toSet());
   }
 
   /**

@@ -48,7 +48,7 @@ public final class PsnrTable {
               + " is of picture '"
               + trial.picture()
               + "', after another picture of its cell; accepted: the trials of each picture"
-              + " together");
+              + " together, each replicate once");
     }
     if (trial.replicate() <= last) {
       throw new IllegalArgumentException(

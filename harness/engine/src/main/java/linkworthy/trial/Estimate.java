@@ -7,11 +7,11 @@ import linkworthy.noise.Site;
  * What a plan will roughly take, from closed formulas; nothing is run. Where replicates may end
  * early, what it takes at most.
  *
- * @param seconds of wall-clock time on the threads that were asked for
+ * @param seconds of wall-clock time on the threads that were asked for; {@link Rehearsal} knows it
+ *     better
  * @param memoryBytes of working memory
- * @param diskBytes of the results folder
  */
-public record Estimate(double seconds, double memoryBytes, double diskBytes) {
+public record Estimate(double seconds, double memoryBytes) {
   /** Seconds for one sample of one trial: transform, code, decode, compare. */
   private static final double SECONDS_PER_SAMPLE = 25e-9;
 
@@ -21,8 +21,9 @@ public record Estimate(double seconds, double memoryBytes, double diskBytes) {
   /** Seconds to start two programs, look after them and clean up. */
   private static final double SECONDS_PER_COMMAND_TRIAL = 0.03;
 
-  private static final double BYTES_PER_TRIAL = 330;
   private static final double BYTES_PER_SAMPLE = 200;
+  private static final double BYTES_PER_TRIAL = 12;
+  private static final double BYTES_PER_CELL = 8000;
   private static final double BYTES_OF_PROGRAM = 100e6;
 
   /** The estimate for a plan on a number of threads. */
@@ -52,8 +53,10 @@ public record Estimate(double seconds, double memoryBytes, double diskBytes) {
     work += SECONDS_PER_COMMAND_TRIAL * commands * plan.units();
     return new Estimate(
         work / threads,
-        BYTES_OF_PROGRAM + BYTES_PER_SAMPLE * largest * threads,
-        BYTES_PER_TRIAL * plan.trials() + 400_000);
+        BYTES_OF_PROGRAM
+            + BYTES_PER_SAMPLE * largest * threads
+            + BYTES_PER_CELL * (1.0 + plan.conditions().size()) * plan.study().codecs().size()
+            + BYTES_PER_TRIAL * plan.trials());
   }
 
   /** How often the principal components of one picture's rows are found. */

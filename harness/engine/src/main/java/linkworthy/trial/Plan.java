@@ -165,6 +165,30 @@ public final class Plan {
         (rest - 1) % study.replicates());
   }
 
+  /**
+   * The first replicate of a picture in a condition.
+   *
+   * @param condition its place, -1 for the clean picture
+   */
+  WorkUnit unit(int picture, int condition) {
+    int rest = condition < 0 ? 0 : 1 + condition * study.replicates();
+    return unit(picture * unitsOfPicture() + rest);
+  }
+
+  /** The severities of all impairments, in the order of the study. */
+  public List<WorkUnit.Condition> conditions() {
+    return List.copyOf(conditions);
+  }
+
+  /**
+   * The same plan for some of its pictures.
+   *
+   * @param places of the pictures, ascending
+   */
+  public Plan of(List<Integer> places) {
+    return new Plan(study, manifest, places.stream().map(pictures::get).toList());
+  }
+
   /** The id of the trial of one codec of the study in a unit. */
   public String trialId(WorkUnit unit, CodecChoice codec) {
     return new TrialKey(study, unit, codec).id();

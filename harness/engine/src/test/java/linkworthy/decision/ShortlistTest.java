@@ -17,8 +17,7 @@ class ShortlistTest {
   private static final int TABLES = Integer.getInteger("linkworthy.statistics", 400);
 
   /** Ten pictures, two replicates; good is 32 dB at 2 bits, fair 30, poor 20 at 3 bits. */
-  private static Measurements measured() {
-    Measurements measured = new Measurements();
+  private static Measurements measured(Measurements measured) {
     for (int picture = 0; picture < 10; picture++) {
       double own = picture - 4.5;
       for (double snr : new double[] {Double.NaN, 20, 10}) {
@@ -35,8 +34,9 @@ class ShortlistTest {
   }
 
   private static Shortlist shortlist(String needs) {
-    Measurements measured = measured();
-    return Shortlist.of(measured, Needs.read(YamlNode.parse("needs.yaml", needs), measured));
+    YamlNode root = YamlNode.parse("needs.yaml", needs);
+    Measurements measured = measured(Measurements.forShortlist(Needs.measures(root)));
+    return Shortlist.of(measured, Needs.read(root, measured));
   }
 
   private static List<String> verdicts(Shortlist shortlist) {

@@ -323,6 +323,18 @@ class CellsTest {
   }
 
   @Test
+  void theTrialsOfAPictureComeTogether() {
+    psnr("A", "p1", 30);
+    psnr("A", "p2", 30);
+    trials.add(TrialBuilder.of("A").trial("p1", 1, 31));
+    assertThatIllegalArgumentException()
+        .isThrownBy(this::cells)
+        .withMessage(
+            "trial p1/A/1 is of picture 'p1', after another picture of its cell; accepted: the"
+                + " trials of each picture together, each replicate once");
+  }
+
+  @Test
   void refusesAPsnrThatIsNone() {
     Trial bad = TrialBuilder.of("A").trial("p1", 0, Double.NaN);
     assertThatIllegalArgumentException()

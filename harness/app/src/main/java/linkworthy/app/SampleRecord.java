@@ -1,0 +1,333 @@
+package linkworthy.app;
+
+import java.io.IOException;
+import java.io.UncheckedIOException;
+import java.nio.charset.StandardCharsets;
+import java.nio.file.Files;
+import java.nio.file.Path;
+import java.util.ArrayList;
+import java.util.Comparator;
+import java.util.List;
+import java.util.stream.IntStream;
+import java.util.stream.Stream;
+import linkworthy.codec.PluginFolder;
+import linkworthy.corpus.ManifestEntry;
+import linkworthy.input.Unavailable;
+import linkworthy.results.ResultsFolder;
+import linkworthy.results.ResultsWriter;
+import linkworthy.results.RunRecord;
+import linkworthy.results.TimingsCsv;
+import linkworthy.results.TrialsCsv;
+import linkworthy.statistics.Cells;
+import linkworthy.trial.NodeTable;
+import linkworthy.trial.Plan;
+import linkworthy.trial.PredictionTable;
+import linkworthy.trial.Rehearsal;
+import linkworthy.trial.Timing;
+import linkworthy.trial.Trial;
+import linkworthy.trial.WorkUnit;
+
+/**
+ * What the record and the report of a plan take in time and disk. For the pictures of a rehearsal
+ * both are made in a temporary folder, which is removed. Its rows are those of the rehearsal, so
+ * that the report finds its pictures; the severities and replicates that were not run have rows
+ * like them. The tables of rows grow with the plan, the other files are as they will be.
+ */
+final class SampleRecord {
+  /** Seconds that rows are read, for the time of a row. */
+  private static final double SECONDS_OF_READING = 0.3;
+
+  /** Seconds from which on formulas are not worked out a second time. */
+  private static final double LONG = 1;
+
+  /** Weight of the last unit in the time of writing one. */
+  private static final double NEWEST = 0.2;
+
+  private static final int REPLICATES = 2;
+  private static final int MOST_TRIES = 100;
+  private static final String SOME_ID = "0123456789abcdef";
+
+  private final Plan plan;
+  private final Rehearsal rehearsal;
+  private final List<Integer> pictures;
+  private final int replicates;
+  private double secondsOfUnit;
+  private double secondsOfRow;
+  private double secondsBehind;
+  private double bytesOfCleanUnit;
+  private double bytesOfNoisyUnit;
+  private double bytesOfOthers;
+
+  private SampleRecord(Plan plan, Rehearsal rehearsal) {
+    this.plan = plan;
+    this.rehearsal = rehearsal;
+    this.pictures = rehearsal.pictures();
+    this.replicates = Math.min(REPLICATES, plan.study().replicates());
+  }
+
+  /**
+   * Makes, measures and removes it.
+   *
+   * @throws Unavailable if no temporary folder can be written
+   */
+  static SampleRecord of(
+      Surroundings surroundings, Plan plan, List<PluginFolder.Jar> plugins, Rehearsal rehearsal) {
+    SampleRecord sample = new SampleRecord(plan, rehearsal);
+    RunRecord begun =
+        RunRecord.begin(
+                plan.study(),
+                Version.text(),
+                plan.manifest().fingerprint(),
+                plan.pictures(),
+                plan.trials(),
+                surroundings.clock())
+            .withPlugins(plugins);
+    try {
+      Path folder = Files.createTempDirectory("linkworthy-dry-run");
+      Thread onSignal = new Thread(() -> removeOnSignal(folder), "remove");
+      Runtime.getRuntime().addShutdownHook(onSignal);
+      try {
+        sample.measure(folder, begun, surroundings);
+      } finally {
+        if (Files.exists(folder)) {
+          remove(folder);
+        }
+        Assessment.release(onSignal);
+      }
+    } catch (IOException | UncheckedIOException e) {
+      throw new Unavailable("cannot write a temporary folder: " + e.getMessage(), e);
+    }
+    return sample;
+  }
+
+  /** The record may still be growing. */
+  private static void removeOnSignal(Path folder) {
+    for (int i = 0; i < MOST_TRIES && Files.exists(folder); i++) {
+      try {
+        remove(folder);
+      } catch (UncheckedIOException e) {
+        Thread.onSpinWait();
+      }
+    }
+  }
+
+  private static void remove(Path folder) {
+    try (Stream<Path> paths = Files.walk(folder)) {
+      for (Path path : paths.sorted(Comparator.reverseOrder()).toList()) {
+        Files.deleteIfExists(path);
+      }
+    } catch (IOException e) {
+      throw new UncheckedIOException(e);
+    }
+  }
+
+  private void measure(Path folder, RunRecord begun, Surroundings surroundings) throws IOException {
+    Plan part = plan.of(pictures);
+    try (ResultsWriter writer = ResultsFolder.create(folder, false)) {
+      writer.begin(plan.study(), begun);
+      Cells cells = new Cells();
+      long rows = append(writer, cells);
+      long start = System.nanoTime();
+      writer.writeNodes(NodeTable.of(part));
+      writer.writePredictions(PredictionTable.of(part));
+      secondsBehind = secondsSince(start) + secondsOfFurtherFormulas(part, secondsSince(start));
+      start = System.nanoTime();
+      writer.finish(cells.toList(), writer.run().complete(rows, surroundings.clock()));
+      ResultsFolder results = ResultsFolder.open(folder);
+      writer.writeReport(Reports.html(results, () -> part, null));
+      secondsBehind += secondsSince(start);
+      secondsOfRow = secondsOfRow(results);
+    }
+    try (Stream<Path> files = Files.walk(folder)) {
+      for (Path file : files.filter(Files::isRegularFile).toList()) {
+        bytesOfOthers += Files.size(file);
+      }
+    }
+    bytesOfOthers -= bytesOfTables(folder);
+  }
+
+  private static double secondsSince(long start) {
+    return (System.nanoTime() - start) / 1e9;
+  }
+
+  private static long bytesOfTables(Path folder) {
+    try {
+      return Files.size(folder.resolve(TrialsCsv.FILE))
+          + Files.size(folder.resolve(TimingsCsv.FILE));
+    } catch (IOException e) {
+      throw new UncheckedIOException(e);
+    }
+  }
+
+  /** Appends all rows, and takes their bytes and time. */
+  private long append(ResultsWriter writer, Cells cells) {
+    long rows = 0;
+    for (int picture : pictures) {
+      for (int condition = -1; condition < plan.conditions().size(); condition++) {
+        for (int replicate = 0; replicate < (condition < 0 ? 1 : replicates); replicate++) {
+          List<Trial> trials = trials(picture, condition, replicate);
+          List<Timing> timings = timings(picture, condition, trials);
+          long before = bytesOfTables(writer.path());
+          long start = System.nanoTime();
+          writer.append(trials, timings);
+          trials.forEach(cells::add);
+          secondsOfUnit += NEWEST * (secondsSince(start) - secondsOfUnit);
+          double bytes = bytesOfTables(writer.path()) - before;
+          if (condition < 0) {
+            bytesOfCleanUnit += bytes / pictures.size();
+          } else {
+            bytesOfNoisyUnit += bytes / (pictures.size() * plan.conditions().size() * replicates);
+          }
+          rows += trials.size();
+        }
+      }
+    }
+    return rows;
+  }
+
+  /** Seconds of the formulas for the pictures that are not in the part. */
+  private double secondsOfFurtherFormulas(Plan part, double first) {
+    long start = System.nanoTime();
+    if (first < LONG) {
+      Object unused = List.of(NodeTable.of(part), PredictionTable.of(part));
+    }
+    double again = first < LONG ? secondsSince(start) : first;
+    return again * (plan.pictures().size() - pictures.size()) / pictures.size();
+  }
+
+  /** Seconds in which a report reads a row: to check it, for comparisons and for pictures. */
+  private static double secondsOfRow(ResultsFolder results) {
+    long start = System.nanoTime();
+    double last = 0;
+    while (secondsSince(start) < SECONDS_OF_READING) {
+      long now = System.nanoTime();
+      long rows = results.trials(trial -> {});
+      last = secondsSince(now) / rows;
+      now = System.nanoTime();
+      rows = results.rows(trial -> {});
+      last += 2 * secondsSince(now) / rows;
+    }
+    return last;
+  }
+
+  /** The rows of a replicate. */
+  private List<Trial> trials(int picture, int condition, int replicate) {
+    List<Trial> like = rehearsal.trials(picture, condition);
+    WorkUnit.Condition at = condition < 0 ? null : plan.conditions().get(condition);
+    boolean same =
+        replicate == 0
+            && like.get(0).picture().equals(plan.pictures().get(picture).id())
+            && (at == null
+                ? like.get(0).axis().isEmpty()
+                : at.severity().axis().equals(like.get(0).axis())
+                    && at.severity().value() == like.get(0).severity()
+                    && at.impairment().label().equals(like.get(0).impairment()));
+    if (same) {
+      return like;
+    }
+    List<Trial> rows = new ArrayList<>();
+    for (Trial trial : like) {
+      rows.add(moved(trial, picture, condition, replicate));
+    }
+    return rows;
+  }
+
+  private Trial moved(Trial like, int picture, int condition, int replicate) {
+    WorkUnit.Condition at = condition < 0 ? null : plan.conditions().get(condition);
+    double little = 1e-4 * (1 + condition % 7 + replicate) / 3;
+    return new Trial(
+        SOME_ID,
+        plan.pictures().get(picture).id(),
+        at == null ? like.impairment() : at.impairment().label(),
+        at == null ? "" : at.impairment().site().id(),
+        at == null ? "" : at.severity().axis(),
+        at == null ? Double.NaN : at.severity().value(),
+        at == null ? 0 : rehearsal.equivalentNoiseVariance(condition),
+        like.realisedNoiseVariance(),
+        like.snrDb(),
+        like.codec(),
+        like.transform(),
+        like.over(),
+        like.keep(),
+        like.step(),
+        replicate,
+        like.mse(),
+        like.psnrDb() + little,
+        like.ssim(),
+        like.payloadBits(),
+        like.sentBits(),
+        like.bitsPerPixel(),
+        like.packetsSent(),
+        like.packetsLost(),
+        like.outage(),
+        like.failure(),
+        like.further());
+  }
+
+  private List<Timing> timings(int picture, int condition, List<Trial> trials) {
+    List<Timing> like = rehearsal.timings(picture, condition);
+    return IntStream.range(0, trials.size())
+        .mapToObj(
+            i ->
+                new Timing(
+                    trials.get(i).picture(),
+                    trials.get(i).impairment(),
+                    trials.get(i).severity(),
+                    trials.get(i).replicate(),
+                    trials.get(i).codec(),
+                    like.get(i).encodeMs(),
+                    like.get(i).decodeMs()))
+        .toList();
+  }
+
+  private double units(int ofEach) {
+    return plan.pictures().size() * (1 + (double) plan.conditions().size() * ofEach);
+  }
+
+  /**
+   * Seconds of the whole run, from its first unit on.
+   *
+   * @param ofEach replicates of each severity
+   */
+  double seconds(int ofEach) {
+    double rows =
+        (units(ofEach) - pictures.size() * (1 + (double) plan.conditions().size() * replicates))
+            * plan.study().codecs().size();
+    return rehearsal.seconds(ofEach, secondsOfUnit)
+        + secondsBehind
+        + secondsOfRow * Math.max(0, rows);
+  }
+
+  /**
+   * Bytes of the results folder. The names of pictures and the numbers of replicates, which stand
+   * in both tables, are as long as they will be.
+   *
+   * @param ofEach replicates of each severity
+   */
+  double bytes(int ofEach) {
+    int names = 2 * plan.study().codecs().size();
+    double digits =
+        IntStream.range(0, ofEach)
+            .mapToDouble(replicate -> Integer.toString(replicate).length() - 1)
+            .average()
+            .orElse(0);
+    double longer =
+        meanBytesOfIds(IntStream.range(0, plan.pictures().size()))
+            - meanBytesOfIds(pictures.stream().mapToInt(Integer::intValue));
+    double clean = plan.pictures().size();
+    double noisy = units(ofEach) - clean;
+    return bytesOfOthers
+        + clean * bytesOfCleanUnit
+        + noisy * (bytesOfNoisyUnit + names * digits)
+        + units(ofEach) * names * longer;
+  }
+
+  private double meanBytesOfIds(IntStream places) {
+    return places
+        .mapToObj(plan.pictures()::get)
+        .map(ManifestEntry::id)
+        .mapToInt(id -> id.getBytes(StandardCharsets.UTF_8).length)
+        .average()
+        .orElse(0);
+  }
+}

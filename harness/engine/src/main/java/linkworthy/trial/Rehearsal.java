@@ -1,0 +1,373 @@
+package linkworthy.trial;
+
+import java.util.ArrayList;
+import java.util.Collection;
+import java.util.Comparator;
+import java.util.LinkedHashMap;
+import java.util.List;
+import java.util.Map;
+import java.util.TreeMap;
+import java.util.concurrent.Callable;
+import java.util.concurrent.ConcurrentHashMap;
+import java.util.concurrent.ExecutionException;
+import java.util.concurrent.ExecutorService;
+import java.util.concurrent.Executors;
+import java.util.concurrent.Future;
+import java.util.concurrent.atomic.AtomicLong;
+import java.util.stream.IntStream;
+import java.util.stream.Stream;
+import linkworthy.corpus.ManifestEntry;
+import linkworthy.input.Unavailable;
+import linkworthy.noise.SignalStatistics;
+import linkworthy.study.PictureChoice;
+
+/**
+ * A few work units of a plan, run on this machine for their times and rows: of the smallest, the
+ * middle and the largest picture the clean unit, and for each impairment the first replicate of its
+ * mildest, middle and harshest severity. Every thread runs all of them in the order of the plan,
+ * over and over until a time has passed, so that they are timed as in a long run: beside each
+ * other, and with code that has been compiled by then. What the compiling cost is kept apart.
+ *
+ * <p>Where units are slow each is run once. Only where even that takes more than twice the time and
+ * 10 % of the plan's units have been run, the rest is taken to be like the others, in proportion to
+ * the size of the picture.
+ */
+public final class Rehearsal {
+  private static final int CLEAN = -1;
+  private static final int USUAL_PASSES = 4;
+  private static final int MOST_PASSES = 5000;
+
+  /** How many times the wanted time is very long. */
+  private static final int PATIENCE = 2;
+
+  /** Share of the plan's units that may be run even if it takes very long. */
+  private static final double SMALL_SHARE = 0.1;
+
+  private final Plan plan;
+  private final int threads;
+  private final double[] variances;
+
+  /** Places in the plan, by size. */
+  private final List<Integer> pictures;
+
+  private final List<Integer> conditions;
+
+  /** For each condition the places of those that are run on both sides of it, the milder first. */
+  private final int[][] sides;
+
+  private final AtomicLong begun = new AtomicLong();
+  private final Map<Integer, UnitRunner.Rows> rows = new ConcurrentHashMap<>();
+  private final List<Run> runs = new ArrayList<>();
+  private final double[] warm;
+
+  /**
+   * One run of a unit.
+   *
+   * @param unit place of the picture times the number of conditions, and place of the condition
+   * @param start by the clock of {@link System#nanoTime}
+   */
+  private record Run(int unit, long start, double seconds) {}
+
+  private Rehearsal(Plan plan, int threads) {
+    this.plan = plan;
+    this.threads = threads;
+    List<Integer> bySize =
+        IntStream.range(0, plan.pictures().size())
+            .boxed()
+            .sorted(Comparator.comparingDouble(this::samples))
+            .toList();
+    this.pictures =
+        Stream.of(0, (bySize.size() - 1) / 2, bySize.size() - 1)
+            .distinct()
+            .map(bySize::get)
+            .toList();
+    this.variances = variances();
+    List<List<Integer>> impairments = impairments();
+    this.conditions =
+        Stream.concat(
+                Stream.of(CLEAN),
+                impairments.stream().flatMap(severities -> three(severities).stream()))
+            .sorted()
+            .toList();
+    this.sides = new int[variances.length][];
+    impairments.forEach(this::findSides);
+    this.warm = new double[pictures.size() * conditions.size()];
+  }
+
+  private void findSides(List<Integer> severities) {
+    int milder = conditions.indexOf(severities.get(0));
+    for (int condition : severities) {
+      int own = conditions.indexOf(condition);
+      milder = own < 0 ? milder : own;
+      sides[condition] = new int[] {milder, own};
+    }
+    int harsher = 0;
+    for (int i = severities.size() - 1; i >= 0; i--) {
+      int[] of = sides[severities.get(i)];
+      harsher = of[1] < 0 ? harsher : of[1];
+      of[1] = harsher;
+    }
+  }
+
+  /**
+   * Runs them.
+   *
+   * @param threads that the plan is to be run on
+   * @param seconds that it is to take where units are fast
+   */
+  public static Rehearsal of(Plan plan, int threads, double seconds) {
+    Rehearsal rehearsal =
+        new Rehearsal(plan, Math.min(threads, Runtime.getRuntime().availableProcessors()));
+    rehearsal.run(seconds);
+    return rehearsal;
+  }
+
+  private double samples(int picture) {
+    ManifestEntry entry = plan.pictures().get(picture);
+    PictureChoice choice = plan.study().pictures();
+    double longest = Math.max(entry.width(), entry.height());
+    double scale = Math.min(1, choice.longestSide().orElse((int) longest) / longest);
+    return scale * scale * entry.width() * entry.height() * choice.codedSamples(entry);
+  }
+
+  /** Equivalent noise variance of each condition on the first of the pictures. */
+  private double[] variances() {
+    SignalStatistics signal =
+        Subject.signal(
+            plan.planes(plan.pictures().get(pictures.get(0))),
+            plan.study().pictures().signalPower());
+    return plan.conditions().stream()
+        .mapToDouble(condition -> condition.at(signal).equivalentNoiseVariance())
+        .toArray();
+  }
+
+  /** The conditions of each impairment, mildest first. */
+  private List<List<Integer>> impairments() {
+    Map<List<String>, List<Integer>> conditions = new LinkedHashMap<>();
+    for (int i = 0; i < variances.length; i++) {
+      var impairment = plan.conditions().get(i).impairment();
+      conditions
+          .computeIfAbsent(
+              List.of(impairment.label(), impairment.site().id()), k -> new ArrayList<>())
+          .add(i);
+    }
+    Collection<List<Integer>> all = conditions.values();
+    all.forEach(of -> of.sort(Comparator.comparingDouble(i -> variances[i])));
+    return List.copyOf(all);
+  }
+
+  private static List<Integer> three(List<Integer> severities) {
+    int last = severities.size() - 1;
+    return Stream.of(0, last / 2, last).distinct().map(severities::get).toList();
+  }
+
+  private void run(double seconds) {
+    Callable<List<Run>> task = () -> passes(seconds);
+    ExecutorService executor = Executors.newFixedThreadPool(threads);
+    List<Run> late = new ArrayList<>();
+    try {
+      List<Future<List<Run>>> running = new ArrayList<>();
+      for (int i = 0; i < threads; i++) {
+        running.add(executor.submit(task));
+      }
+      for (Future<List<Run>> each : running) {
+        List<Run> of = each.get();
+        runs.addAll(of);
+        late.addAll(of.size() < 2 * warm.length ? of : of.subList(of.size() / 2, of.size()));
+      }
+    } catch (InterruptedException e) {
+      Thread.currentThread().interrupt();
+      throw new Unavailable("interrupted", e);
+    } catch (ExecutionException e) {
+      if (e.getCause() instanceof RuntimeException known) {
+        throw known;
+      }
+      if (e.getCause() instanceof Error serious) {
+        throw serious;
+      }
+      throw new IllegalStateException(e.getCause());
+    } finally {
+      executor.shutdownNow();
+    }
+    weigh(late);
+  }
+
+  private List<Run> passes(double wanted) {
+    List<Run> done = new ArrayList<>();
+    long start = System.nanoTime();
+    double passed = 0;
+    for (int pass = 0;
+        pass == 0
+            || (pass < MOST_PASSES
+                && begun.get() < plan.units()
+                && (passed < wanted || (pass < USUAL_PASSES && passed < PATIENCE * wanted)));
+        pass++) {
+      pass(done, start, PATIENCE * wanted);
+      passed = (System.nanoTime() - start) / 1e9;
+    }
+    return done;
+  }
+
+  private void pass(List<Run> done, long start, double most) {
+    Subjects subjects = new Subjects(plan, 1);
+    for (int unit = 0; unit < warm.length; unit++) {
+      long now = System.nanoTime();
+      boolean late = (now - start) / 1e9 > most;
+      if (late && begun.get() > Math.max(threads, SMALL_SHARE * plan.units())) {
+        return;
+      }
+      begun.incrementAndGet();
+      WorkUnit of =
+          plan.unit(
+              pictures.get(unit / conditions.size()), conditions.get(unit % conditions.size()));
+      UnitRunner.Rows found = new UnitRunner(plan.study(), subjects.get(of), of).run();
+      done.add(new Run(unit, now, (System.nanoTime() - now) / 1e9));
+      rows.putIfAbsent(unit, found);
+    }
+  }
+
+  /** The mean over the later half of the runs of each unit; of units not run, one that is alike. */
+  private void weigh(List<Run> late) {
+    double[] sums = new double[warm.length];
+    int[] numbers = new int[warm.length];
+    for (Run run : late) {
+      sums[run.unit] += run.seconds;
+      numbers[run.unit]++;
+    }
+    int n = conditions.size();
+    for (int unit = 0; unit < warm.length; unit++) {
+      int like = like(unit);
+      double sizes = samples(pictures.get(unit / n)) / samples(pictures.get(like / n));
+      warm[unit] = sizes * sums[like] / numbers[like];
+    }
+  }
+
+  /** The same condition of a smaller picture, or the last one that was run. */
+  private int like(int unit) {
+    int like = unit;
+    while (!rows.containsKey(like)) {
+      like -= like < conditions.size() ? 1 : conditions.size();
+    }
+    return like;
+  }
+
+  /** Whether each of the units was run. */
+  public boolean isWhole() {
+    return rows.size() == warm.length;
+  }
+
+  /** How many different units were run. */
+  public int units() {
+    return rows.size();
+  }
+
+  /** How often units were run, on all threads together. */
+  public int runs() {
+    return runs.size();
+  }
+
+  /** Places in the plan of the pictures, ascending. */
+  public List<Integer> pictures() {
+    return pictures.stream().sorted().toList();
+  }
+
+  /** Equivalent noise variance of a condition of the plan on one of the pictures. */
+  public double equivalentNoiseVariance(int condition) {
+    return variances[condition];
+  }
+
+  /**
+   * The rows of a unit, or if it was not run of one that is like it.
+   *
+   * @param picture one of {@link #pictures}
+   * @param condition in the order of the plan; -1 for the clean picture
+   */
+  public List<Trial> trials(int picture, int condition) {
+    return rowsLike(picture, condition).trials();
+  }
+
+  /** The times of {@link #trials}. */
+  public List<Timing> timings(int picture, int condition) {
+    return rowsLike(picture, condition).timings();
+  }
+
+  private UnitRunner.Rows rowsLike(int picture, int condition) {
+    int unit =
+        pictures.indexOf(picture) * conditions.size()
+            + (condition == CLEAN ? conditions.indexOf(CLEAN) : sides[condition][0]);
+    UnitRunner.Rows found = rows.get(like(unit));
+    if (found == null) {
+      throw new IllegalStateException("no unit was run");
+    }
+    return found;
+  }
+
+  /**
+   * Seconds that the plan's units take on the threads, with the compiling of code.
+   *
+   * @param replicates of each severity
+   * @param perUnit seconds that another thread takes to write the rows of a unit
+   */
+  public double seconds(int replicates, double perUnit) {
+    double[] ofCondition = new double[pictures.size()];
+    for (int p = 0; p < ofCondition.length; p++) {
+      ofCondition[p] = ofPicture(p, replicates);
+    }
+    double work = 0;
+    for (int picture = 0; picture < plan.pictures().size(); picture++) {
+      work += between(ofCondition, samples(picture));
+    }
+    double units = plan.pictures().size() * (1 + (double) variances.length * replicates);
+    work += warmingUp((long) units);
+    double writing = perUnit * units;
+    int processors = Runtime.getRuntime().availableProcessors();
+    return Math.max(
+        writing, Math.max(work / threads, (work + writing) / Math.max(threads, processors)));
+  }
+
+  /** Seconds of all units of one of the pictures. */
+  private double ofPicture(int picture, int replicates) {
+    int first = picture * conditions.size();
+    double sum = warm[first + conditions.indexOf(CLEAN)];
+    for (int[] of : sides) {
+      sum += replicates * (warm[first + of[0]] + warm[first + of[1]]) / 2;
+    }
+    return sum;
+  }
+
+  /**
+   * Between two sizes on a straight line of logarithms; of pictures of the same size the mean;
+   * outside in proportion.
+   */
+  private double between(double[] seconds, double size) {
+    TreeMap<Double, List<Double>> bySize = new TreeMap<>();
+    for (int p = 0; p < seconds.length; p++) {
+      bySize.computeIfAbsent(samples(pictures.get(p)), s -> new ArrayList<>()).add(seconds[p]);
+    }
+    var below = bySize.floorEntry(size);
+    var above = bySize.ceilingEntry(size);
+    if (below == null || above == null || below.getKey().equals(above.getKey())) {
+      var near = below == null ? above : below;
+      return near == null ? 0 : mean(near.getValue()) * size / near.getKey();
+    }
+    double share =
+        StrictMath.log(size / below.getKey()) / StrictMath.log(above.getKey() / below.getKey());
+    return StrictMath.pow(mean(below.getValue()), 1 - share)
+        * StrictMath.pow(mean(above.getValue()), share);
+  }
+
+  private static double mean(List<Double> values) {
+    return values.stream().mapToDouble(Double::doubleValue).average().orElse(0);
+  }
+
+  /** What the first so many runs took more than warm ones. */
+  private double warmingUp(long units) {
+    double excess =
+        runs.stream()
+            .sorted(Comparator.comparingLong(Run::start))
+            .limit(units)
+            .mapToDouble(run -> run.seconds - warm[run.unit])
+            .sum();
+    return Math.max(0, excess);
+  }
+}
