@@ -451,16 +451,18 @@ class PluginsTest {
   }
 
   @Test
-  void aDryRunRunsProgramsWithLeaveAloneAndMissesNone() throws IOException {
-    String copy = "[cp, '{input}', '{output}']";
-    String codec = "command: {encode: " + copy + ", decode: " + copy + "}";
+  void aDryRunStartsNoProgramAndMissesNone() throws IOException {
+    Path mark = home.resolve("mark");
+    String touch = "[touch, '" + mark + "', '{input}', '{output}']";
+    String codec = "command: {encode: " + touch + ", decode: " + touch + "}";
     assertThat(assess(codec, "--dry-run").exitCode()).isEqualTo(Main.BAD_INPUT);
     CommandLineRun run = assess(codec, "--allow-commands", "--dry-run");
     assertThat(run.exitCode()).as(run.err()).isEqualTo(Main.DONE);
-    assertThat(run.out()).contains("nothing of it is kept");
+    assertThat(run.out()).contains("which a dry run does not start");
+    assertThat(mark).doesNotExist();
     assertThat(home.resolve("results")).doesNotExist();
     CommandLineRun missing =
-        assess(codec.replace("cp", "no-such-program"), "--allow-commands", "--dry-run");
+        assess(codec.replace("touch", "no-such-program"), "--allow-commands", "--dry-run");
     assertThat(missing.exitCode()).isEqualTo(Main.BAD_INPUT);
     assertThat(missing.err()).contains("'no-such-program', which is not there");
   }
