@@ -319,8 +319,8 @@ final class ShortlistText {
           "Share of pictures: the pictures that reach the level are counted, and the share is bounded"
               + " one-sidedly by Clopper and Pearson's method (1934), which is wrong at most as"
               + " often as stated.",
-          "Mean: a one-sided bound by Student's t over the pictures' figures, as wrong as stated if"
-              + " they are about normal.",
+          "Mean: a one-sided bound by Student's t over the pictures' figures, or by Johnson's correction"
+              + " for their skewness (1978) where that is more cautious.",
           "Outage rate: the wider of the bound over pictures and of Clopper and Pearson's bound over"
               + " trials.",
           "Meets: shown in every condition. Fails: shown in some condition. Undecided: neither.",
