@@ -77,6 +77,23 @@ final class SyntheticRows {
   }
 
   static Trial row(String codec, int picture, int replicate, double psnrDb, boolean outage) {
+    return row(codec, "dct", 8, picture, replicate, psnrDb, 1, outage);
+  }
+
+  /** A point of a curve: a codec of this transform and number of components. */
+  static Trial rate(String transform, int keep, int picture, double psnrDb, double bitsPerPixel) {
+    return row(transform + " K" + keep, transform, keep, picture, 0, psnrDb, bitsPerPixel, false);
+  }
+
+  private static Trial row(
+      String codec,
+      String transform,
+      int keep,
+      int picture,
+      int replicate,
+      double psnrDb,
+      double bitsPerPixel,
+      boolean outage) {
     return new Trial(
         codec,
         picture(picture),
@@ -88,9 +105,9 @@ final class SyntheticRows {
         40,
         20,
         codec,
-        "dct",
+        transform,
         "blocks8",
-        8,
+        keep,
         "8",
         replicate,
         40,
@@ -98,7 +115,7 @@ final class SyntheticRows {
         Double.NaN,
         8_000,
         9_000,
-        1,
+        bitsPerPixel,
         4,
         0,
         outage,
