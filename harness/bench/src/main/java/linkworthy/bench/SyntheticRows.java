@@ -1,6 +1,7 @@
 package linkworthy.bench;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.List;
 import java.util.Map;
 import java.util.SplittableRandom;
@@ -67,10 +68,17 @@ final class SyntheticRows {
 
   /** Rows of one cell: each picture's level and errors of this spread, in dB. */
   List<Trial> cell(String codec, double[] levels, int replicates, Shape shape, double spread) {
+    double[] spreads = new double[levels.length];
+    Arrays.fill(spreads, spread);
+    return cell(codec, levels, replicates, shape, spreads);
+  }
+
+  /** The same with a spread for each picture. */
+  List<Trial> cell(String codec, double[] levels, int replicates, Shape shape, double[] spreads) {
     List<Trial> rows = new ArrayList<>(levels.length * replicates);
     for (int p = 0; p < levels.length; p++) {
       for (int r = 0; r < replicates; r++) {
-        rows.add(row(codec, p, r, levels[p] + spread * draw(shape), false));
+        rows.add(row(codec, p, r, levels[p] + spreads[p] * draw(shape), false));
       }
     }
     return rows;
