@@ -7,6 +7,7 @@ import java.util.ArrayList;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
+import java.util.function.DoubleFunction;
 
 /** {@link Comparisons} laid out for the template. */
 record ComparisonView(String reference, List<CurveTable> tables, List<CrossingRow> crossings) {
@@ -18,7 +19,9 @@ record ComparisonView(String reference, List<CurveTable> tables, List<CrossingRo
       String family,
       String given,
       String psnr,
+      String psnrInterval,
       String rate,
+      String rateInterval,
       String cubicPsnr,
       String cubicRate,
       String note) {}
@@ -52,10 +55,18 @@ record ComparisonView(String reference, List<CurveTable> tables, List<CrossingRo
         gap.family(),
         MatrixTable.given(gap.condition()),
         Numbers.db(gap.pchip().psnrDb()),
+        interval(gap.psnrDb(), Numbers::db),
         percent(gap.pchip().ratePercent()),
+        interval(gap.ratePercent(), ComparisonView::percent),
         Numbers.db(gap.cubic().psnrDb()),
         percent(gap.cubic().ratePercent()),
         swings ? "the cubic swings: do not use its numbers" : gap.refusal());
+  }
+
+  private static String interval(Comparisons.Interval interval, DoubleFunction<String> text) {
+    return Double.isNaN(interval.lower() + interval.upper())
+        ? ""
+        : text.apply(interval.lower()) + " to " + text.apply(interval.upper());
   }
 
   private static String percent(double percent) {

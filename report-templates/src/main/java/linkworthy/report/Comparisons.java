@@ -25,6 +25,8 @@ public record Comparisons(List<CurveGap> curves, List<Crossing> crossings) {
    * @param family name of the family
    * @param pchip by monotone piecewise cubics
    * @param cubic by polynomials of third order
+   * @param psnrDb interval of the first number by piecewise cubics, over other pictures like these
+   * @param ratePercent likewise of the second
    * @param refusal why there are no numbers, or empty
    */
   public record CurveGap(
@@ -33,7 +35,20 @@ public record Comparisons(List<CurveGap> curves, List<Crossing> crossings) {
       String family,
       Delta pchip,
       Delta cubic,
+      Interval psnrDb,
+      Interval ratePercent,
       String refusal) {}
+
+  /**
+   * An interval in the unit of its number.
+   *
+   * @param lower lower end, or NaN where there is none
+   * @param upper upper end, likewise
+   */
+  public record Interval(double lower, double upper) {
+    /** None. */
+    public static final Interval NONE = new Interval(Double.NaN, Double.NaN);
+  }
 
   /**
    * Two numbers for the gap between two curves; NaN where not available.

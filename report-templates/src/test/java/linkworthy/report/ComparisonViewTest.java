@@ -16,6 +16,8 @@ class ComparisonViewTest {
         "dct blocks8 step8",
         new Comparisons.Delta(1.7, -30.24, true),
         cubic,
+        new Comparisons.Interval(1.2, 2.1),
+        Comparisons.Interval.NONE,
         refusal);
   }
 
@@ -37,7 +39,9 @@ class ComparisonViewTest {
                 "dct blocks8 step8",
                 "SNR 20 dB",
                 "1.70",
+                "1.20 to 2.10",
                 "-30.2 %",
+                "",
                 "1.50",
                 "650.8 %",
                 "the cubic swings: do not use its numbers"),
@@ -45,7 +49,9 @@ class ComparisonViewTest {
                 "dct blocks8 step8",
                 "SNR 20 dB",
                 "1.70",
+                "1.20 to 2.10",
                 "-30.2 %",
+                "",
                 "n/a",
                 "n/a",
                 "the curves share no range of rate"));

@@ -100,6 +100,8 @@ final class SamplePages {
                         "dct blocks8, step8",
                         new Comparisons.Delta(2.5, -40, true),
                         new Comparisons.Delta(2.4, -39, true),
+                        new Comparisons.Interval(1.9, 3.2),
+                        new Comparisons.Interval(-45, -33),
                         "")),
                 List.of(new Comparisons.Crossing(noise, label, "mean rows step16", 17, 15, 19))),
             List.of(
@@ -184,7 +186,14 @@ final class SamplePages {
         new Comparisons(
             List.of(
                 new Comparisons.CurveGap(
-                    condition, text, text, Comparisons.Delta.NONE, Comparisons.Delta.NONE, text)),
+                    condition,
+                    text,
+                    text,
+                    Comparisons.Delta.NONE,
+                    Comparisons.Delta.NONE,
+                    Comparisons.Interval.NONE,
+                    Comparisons.Interval.NONE,
+                    text)),
             List.of(new Comparisons.Crossing(condition, text, text, 1, 1, 1))),
         List.of(
             new Predicted(condition, text, 30, 30, 0.1, ""),

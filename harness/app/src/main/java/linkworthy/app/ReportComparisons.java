@@ -10,6 +10,7 @@ import linkworthy.decision.OrderChange;
 import linkworthy.report.Comparisons;
 import linkworthy.report.Condition;
 import linkworthy.results.ResultsFolder;
+import linkworthy.statistics.BcaInterval;
 import linkworthy.statistics.Cell;
 
 /** Compares the codecs of a run over rates and severities, for its report. */
@@ -19,10 +20,12 @@ final class ReportComparisons {
   /** Of a record whose trials have been {@link ReportTrials checked}. */
   static Comparisons of(ResultsFolder results) {
     List<Cell> cells = results.cells();
-    Measurements measured = Measurements.ofPsnr();
+    Measurements measured = Measurements.ofPsnrAndBits();
     long unused = results.rows(measured::add);
     return new Comparisons(
-        CurveComparison.of(cells).stream().map(ReportComparisons::gap).toList(),
+        CurveComparison.of(cells, measured, results.run().seed()).stream()
+            .map(ReportComparisons::gap)
+            .toList(),
         OrderChange.of(cells, measured).stream().map(ReportComparisons::crossing).toList());
   }
 
@@ -35,7 +38,13 @@ final class ReportComparisons {
         comparison.family(),
         delta(comparison.pchip()),
         delta(comparison.cubic()),
+        interval(comparison.psnrInterval()),
+        interval(comparison.rateInterval()),
         comparison.refusal());
+  }
+
+  private static Comparisons.Interval interval(BcaInterval interval) {
+    return new Comparisons.Interval(interval.lower(), interval.upper());
   }
 
   private static Comparisons.Delta delta(Optional<BjontegaardDelta> delta) {

@@ -319,8 +319,9 @@ final class ShortlistText {
           "Share of pictures: the pictures that reach the level are counted, and the share is bounded"
               + " one-sidedly by Clopper and Pearson's method (1934), which is wrong at most as"
               + " often as stated.",
-          "Mean: a one-sided bound by Student's t over the pictures' figures, as wrong as stated if"
-              + " they are about normal.",
+          "Mean: a one-sided bound by Student's t over the pictures' figures, with Johnson's correction"
+              + " (1978) for skewness where that is more cautious. Six codecs of skewness 1 on 12"
+              + " pictures had a wrong word in 7 % of simulated tables, of 5 % stated.",
           "Outage rate: the wider of the bound over pictures and of Clopper and Pearson's bound over"
               + " trials.",
           "Meets: shown in every condition. Fails: shown in some condition. Undecided: neither.",

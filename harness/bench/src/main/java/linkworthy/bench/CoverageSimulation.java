@@ -21,12 +21,16 @@ import linkworthy.trial.Trial;
  */
 final class CoverageSimulation {
   private static final String FIXED = "Noise and picture intervals, fixed replicates";
+  private static final String UNEQUAL = "Noise intervals, pictures of unequal spread, Gaussian";
   private static final String EARLY = "Noise intervals, replicates that end early";
   private static final double LOWEST = 0.93;
   private static final double HIGHEST = 0.97;
 
   /** Two replicates of several pictures: the degrees of freedom are guessed too low. */
   private static final double HIGHEST_OF_TWO = 0.985;
+
+  /** Two replicates where one picture has nearly all noise and may happen to hide it. */
+  private static final double LOWEST_OF_TWO = 0.90;
 
   /** Early ends under a skewness beyond 0.5: their means lie to one side. */
   private static final double LOWEST_VERY_SKEWED = 0.90;
@@ -48,10 +52,12 @@ final class CoverageSimulation {
       """;
 
   private final int repetitions;
+  private final long seed;
   private final SyntheticRows rows;
 
   CoverageSimulation(int repetitions, long seed) {
     this.repetitions = repetitions;
+    this.seed = seed;
     this.rows = new SyntheticRows(seed);
   }
 
@@ -71,7 +77,41 @@ final class CoverageSimulation {
         }
       }
     }
+    new CoverageSimulation(repetitions, seed).unequalSpreads(claims);
     return claims;
+  }
+
+  private void unequalSpreads(List<Claim> claims) {
+    for (int pictures : new int[] {2, 12, 50}) {
+      for (int replicates : new int[] {2, 3, 5}) {
+        double[] tenfold = new double[pictures];
+        Arrays.setAll(tenfold, p -> OF_NOISE * StrictMath.pow(10, -p / (pictures - 1.0)));
+        unequal("tenfold between first and last", replicates, tenfold, claims);
+        double[] one = new double[pictures];
+        Arrays.fill(one, OF_NOISE / 100);
+        one[0] = OF_NOISE;
+        unequal("one a hundredfold of the others", replicates, one, claims);
+      }
+    }
+  }
+
+  private void unequal(String words, int replicates, double[] spreads, List<Claim> claims) {
+    int hits = 0;
+    double[] levels = new double[spreads.length];
+    for (int i = 0; i < repetitions; i++) {
+      Cell cell = Cells.of(rows.cell(CODEC, levels, replicates, Shape.GAUSSIAN, spreads)).get(0);
+      hits += holds(cell, 0, cell.psnrNoiseHalfWidthDb());
+    }
+    claims.add(
+        new Claim(
+            UNEQUAL,
+            "pictures " + spreads.length + ", " + words,
+            "replicates " + replicates,
+            hits,
+            repetitions,
+            replicates == 2 ? LOWEST_OF_TWO : LOWEST,
+            replicates == 2 ? HIGHEST_OF_TWO : HIGHEST,
+            ""));
   }
 
   private void fixed(Shape shape, int pictures, int replicates, List<Claim> claims) {

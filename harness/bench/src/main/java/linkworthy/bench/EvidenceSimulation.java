@@ -9,7 +9,8 @@ import java.util.Set;
 
 /**
  * Whether intervals and verdicts are as sure as they say, on invented trials whose truth is known:
- * the program's own cells, rule for early ends, drift and shortlist, on as many tables as wanted.
+ * the program's own cells, rule for early ends, drift, shortlist and curves, on as many tables as
+ * wanted.
  */
 public final class EvidenceSimulation {
   private static final int REPETITIONS = 10_000;
@@ -36,6 +37,7 @@ public final class EvidenceSimulation {
     claims.addAll(new CoverageSimulation(repetitions, seed).claims());
     claims.addAll(new DriftSimulation(repetitions, seed).claims());
     claims.addAll(new ShortlistSimulation(repetitions, seed).claims());
+    claims.addAll(new CurveSimulation(repetitions, seed).claims());
     return claims;
   }
 

@@ -1,6 +1,7 @@
 package linkworthy.bench;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.List;
 import java.util.Map;
 import java.util.SplittableRandom;
@@ -67,16 +68,40 @@ final class SyntheticRows {
 
   /** Rows of one cell: each picture's level and errors of this spread, in dB. */
   List<Trial> cell(String codec, double[] levels, int replicates, Shape shape, double spread) {
+    double[] spreads = new double[levels.length];
+    Arrays.fill(spreads, spread);
+    return cell(codec, levels, replicates, shape, spreads);
+  }
+
+  /** The same with a spread for each picture. */
+  List<Trial> cell(String codec, double[] levels, int replicates, Shape shape, double[] spreads) {
     List<Trial> rows = new ArrayList<>(levels.length * replicates);
     for (int p = 0; p < levels.length; p++) {
       for (int r = 0; r < replicates; r++) {
-        rows.add(row(codec, p, r, levels[p] + spread * draw(shape), false));
+        rows.add(row(codec, p, r, levels[p] + spreads[p] * draw(shape), false));
       }
     }
     return rows;
   }
 
   static Trial row(String codec, int picture, int replicate, double psnrDb, boolean outage) {
+    return row(codec, "dct", 8, picture, replicate, psnrDb, 1, outage);
+  }
+
+  /** A point of a curve: a codec of this transform and number of components. */
+  static Trial rate(String transform, int keep, int picture, double psnrDb, double bitsPerPixel) {
+    return row(transform + " K" + keep, transform, keep, picture, 0, psnrDb, bitsPerPixel, false);
+  }
+
+  private static Trial row(
+      String codec,
+      String transform,
+      int keep,
+      int picture,
+      int replicate,
+      double psnrDb,
+      double bitsPerPixel,
+      boolean outage) {
     return new Trial(
         codec,
         picture(picture),
@@ -88,9 +113,9 @@ final class SyntheticRows {
         40,
         20,
         codec,
-        "dct",
+        transform,
         "blocks8",
-        8,
+        keep,
         "8",
         replicate,
         40,
@@ -98,7 +123,7 @@ final class SyntheticRows {
         Double.NaN,
         8_000,
         9_000,
-        1,
+        bitsPerPixel,
         4,
         0,
         outage,

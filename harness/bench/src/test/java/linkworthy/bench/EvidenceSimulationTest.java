@@ -16,8 +16,8 @@ class EvidenceSimulationTest {
   private static final long SEED = Long.getLong("linkworthy.seed", 20261201);
 
   /**
-   * About 190 figures with two limits each, passed with a chance of at most 1e-6 each by a program
-   * that keeps its promise: under a new seed a false alarm in fewer than 1 of 2 500 runs.
+   * About 220 figures with two limits each, passed with a chance of at most 1e-6 each by a program
+   * that keeps its promise: under a new seed a false alarm in fewer than 1 of 2 200 runs.
    */
   private static final double TAIL = 1e-6;
 

@@ -27,48 +27,86 @@ public record BjontegaardDelta(double psnrDb, double ratePercent, boolean rising
    */
   public static BjontegaardDelta of(
       RateCurve reference, RateCurve test, Interpolation interpolation) {
-    Mean psnr =
-        mean(
-            interpolation,
-            reference.logRates(),
-            reference.psnrsDb(),
-            test.logRates(),
-            test.psnrsDb(),
-            "rate");
-    Mean rate =
-        mean(
-            interpolation,
-            reference.psnrsDb(),
-            reference.logRates(),
-            test.psnrsDb(),
-            test.logRates(),
-            "PSNR");
+    Pair psnr = atEqualRate(reference, test, interpolation);
+    Pair rate = atEqualPsnr(reference, test, interpolation);
     return new BjontegaardDelta(
-        psnr.difference,
-        100 * (StrictMath.pow(10, rate.difference) - 1),
-        psnr.rising && rate.rising);
+        psnr.difference(), percent(rate.difference()), psnr.rises() && rate.rises());
   }
 
-  private record Mean(double difference, boolean rising) {}
+  /** The first of the two numbers alone, without a look at whether the curves rise. */
+  static double psnrDb(RateCurve reference, RateCurve test, Interpolation interpolation) {
+    return atEqualRate(reference, test, interpolation).difference();
+  }
 
-  private static Mean mean(
-      Interpolation interpolation,
-      double[] x1,
-      double[] y1,
-      double[] x2,
-      double[] y2,
-      String axis) {
-    double low = Math.max(x1[0], x2[0]);
-    double high = Math.min(x1[x1.length - 1], x2[x2.length - 1]);
-    if (!(high > low)) {
-      throw new IllegalArgumentException(
-          "the curves share no range of " + axis + "; accepted: curves that overlap");
+  /** The second alone. */
+  static double ratePercent(RateCurve reference, RateCurve test, Interpolation interpolation) {
+    return percent(atEqualPsnr(reference, test, interpolation).difference());
+  }
+
+  private static double percent(double logRate) {
+    return 100 * (StrictMath.pow(10, logRate) - 1);
+  }
+
+  private static Pair atEqualRate(RateCurve a, RateCurve b, Interpolation interpolation) {
+    return new Pair(
+        new Curve(a.logRates(), a.psnrsDb(), interpolation),
+        new Curve(b.logRates(), b.psnrsDb(), interpolation),
+        "rate");
+  }
+
+  private static Pair atEqualPsnr(RateCurve a, RateCurve b, Interpolation interpolation) {
+    return new Pair(
+        new Curve(a.psnrsDb(), a.logRates(), interpolation),
+        new Curve(b.psnrsDb(), b.logRates(), interpolation),
+        "PSNR");
+  }
+
+  private static final class Curve {
+    private final double[] knots;
+    private final DoubleUnaryOperator at;
+
+    Curve(double[] x, double[] y, Interpolation interpolation) {
+      knots = x;
+      at = interpolation.through(x, y);
     }
-    DoubleUnaryOperator reference = interpolation.through(x1, y1);
-    DoubleUnaryOperator test = interpolation.through(x2, y2);
-    double difference = integral(test, x2, low, high) - integral(reference, x1, low, high);
-    return new Mean(
-        difference / (high - low), rises(reference, low, high) && rises(test, low, high));
+
+    double first() {
+      return knots[0];
+    }
+
+    double last() {
+      return knots[knots.length - 1];
+    }
+  }
+
+  /** Two curves over the range that they share. */
+  private static final class Pair {
+    private final Curve reference;
+    private final Curve test;
+    private final double low;
+    private final double high;
+
+    Pair(Curve reference, Curve test, String axis) {
+      this.reference = reference;
+      this.test = test;
+      low = Math.max(reference.first(), test.first());
+      high = Math.min(reference.last(), test.last());
+      if (!(high > low)) {
+        throw new IllegalArgumentException(
+            "the curves share no range of " + axis + "; accepted: curves that overlap");
+      }
+    }
+
+    double difference() {
+      return (integral(test.at, test.knots, low, high)
+              - integral(reference.at, reference.knots, low, high))
+          / (high - low);
+    }
+
+    boolean rises() {
+      return BjontegaardDelta.rises(reference.at, low, high)
+          && BjontegaardDelta.rises(test.at, low, high);
+    }
   }
 
   /** Exact for what is cubic between the knots: Gauss-Legendre with two points each. */

@@ -2,7 +2,7 @@ package linkworthy.decision;
 
 import linkworthy.input.Require;
 import linkworthy.statistics.Moments;
-import linkworthy.statistics.StudentT;
+import linkworthy.statistics.SkewedMean;
 import org.apache.commons.statistics.interval.BinomialConfidenceInterval;
 
 /**
@@ -38,25 +38,25 @@ public record Bounds(double lower, double upper) {
   }
 
   /**
-   * Bounds of the mean of a population of which these values are a sample: {@code mean -+ t s /
-   * sqrt(n)} with n - 1 degrees of freedom. As wrong as stated if the values are normal. Equal
-   * values give bounds without width.
+   * Bounds of the mean of a population of which these values are a sample: so many standard errors
+   * from their mean as {@link SkewedMean} says. Equal values give bounds without width.
    *
    * @return no bounds for fewer than two values, or if one is not finite
    * @throws IllegalArgumentException if an error is not above 0 and below 0.5
    */
-  public static Bounds ofMean(Moments values, double lowerError, double upperError) {
+  public static Bounds ofMean(double[] values, double lowerError, double upperError) {
     error(lowerError);
     error(upperError);
-    double variance = values.variance();
+    Moments moments = Moments.of(values);
+    double variance = moments.variance();
     if (Double.isNaN(variance)) {
       return NONE;
     }
-    double scale = Math.sqrt(variance / values.count());
-    double degrees = values.count() - 1.0;
+    double scale = Math.sqrt(variance / values.length);
+    double skewness = SkewedMean.skewness(values);
     return new Bounds(
-        values.mean() - StudentT.quantile(1 - lowerError, degrees) * scale,
-        values.mean() + StudentT.quantile(1 - upperError, degrees) * scale);
+        moments.mean() - SkewedMean.standardErrors(lowerError, values.length, skewness) * scale,
+        moments.mean() + SkewedMean.standardErrors(upperError, values.length, -skewness) * scale);
   }
 
   /** The wider of two pairs on either side; none where one has none. */

@@ -8,6 +8,7 @@ import java.util.Map;
 import java.util.Optional;
 import java.util.Set;
 import linkworthy.input.Require;
+import linkworthy.statistics.BcaInterval;
 import linkworthy.statistics.Cell;
 
 /**
@@ -24,6 +25,9 @@ import linkworthy.statistics.Cell;
  * @param pchip by monotone piecewise cubics; empty if it was refused
  * @param cubic by polynomials of third order; empty if it was refused or the curves have other than
  *     four points
+ * @param psnrInterval interval of the first number by piecewise cubics, in dB, over other pictures
+ *     like these: {@link BcaInterval} with the pictures as cases
+ * @param rateInterval likewise of the second, in per cent
  * @param refusal why there are no numbers, or empty
  */
 public record CurveComparison(
@@ -32,14 +36,22 @@ public record CurveComparison(
     String family,
     Optional<BjontegaardDelta> pchip,
     Optional<BjontegaardDelta> cubic,
+    BcaInterval psnrInterval,
+    BcaInterval rateInterval,
     String refusal) {
   public CurveComparison {
     Require.notBlank(reference, "reference");
     Require.notBlank(family, "family");
   }
 
-  /** All comparisons of a run, in the order of its cells; none for fewer than two families. */
-  public static List<CurveComparison> of(List<Cell> cells) {
+  /**
+   * All comparisons of a run, in the order of its cells; none for fewer than two families.
+   *
+   * @param measured PSNR and sent bits per pixel of the same run; without them there are no
+   *     intervals
+   * @param seed of the intervals
+   */
+  public static List<CurveComparison> of(List<Cell> cells, Measurements measured, long seed) {
     Map<String, Set<String>> families = families(cells);
     Map<Measurements.Condition, List<Cell>> conditions = new LinkedHashMap<>();
     for (Cell cell : cells) {
@@ -58,43 +70,73 @@ public record CurveComparison(
             comparisons.add(
                 compare(
                     condition,
-                    names.get(0),
-                    pick(row, families.getOrDefault(names.get(0), Set.of())),
-                    name,
-                    pick(row, families.getOrDefault(name, Set.of()))));
+                    Family.of(names.get(0), families, row),
+                    Family.of(name, families, row),
+                    measured,
+                    seed));
           }
         });
     return comparisons;
   }
 
-  private static List<Cell> pick(List<Cell> row, Set<String> codecs) {
-    return row.stream().filter(cell -> codecs.contains(cell.codec())).toList();
+  /** The cells of a family in one condition. */
+  private record Family(String name, List<Cell> cells) {
+    static Family of(String name, Map<String, Set<String>> families, List<Cell> row) {
+      Set<String> codecs = families.getOrDefault(name, Set.of());
+      return new Family(name, row.stream().filter(cell -> codecs.contains(cell.codec())).toList());
+    }
+
+    List<String> codecs() {
+      return cells.stream().map(Cell::codec).toList();
+    }
   }
 
   private static CurveComparison compare(
       Measurements.Condition condition,
-      String reference,
-      List<Cell> referenceCells,
-      String family,
-      List<Cell> cells) {
+      Family reference,
+      Family family,
+      Measurements measured,
+      long seed) {
     try {
-      RateCurve a = curve(reference, referenceCells);
-      RateCurve b = curve(family, cells);
+      RateCurve a = curve(reference.name, reference.cells);
+      RateCurve b = curve(family.name, family.cells);
       boolean four =
           Interpolation.CUBIC.takes(a.points().size())
               && Interpolation.CUBIC.takes(b.points().size());
+      BjontegaardDelta pchip = BjontegaardDelta.of(a, b, Interpolation.PCHIP);
+      Optional<PictureCurves> curves =
+          PictureCurves.of(measured, condition, reference.codecs(), family.codecs());
       return new CurveComparison(
           condition,
-          reference,
-          family,
-          Optional.of(BjontegaardDelta.of(a, b, Interpolation.PCHIP)),
+          reference.name,
+          family.name,
+          Optional.of(pchip),
           four ? Optional.of(BjontegaardDelta.of(a, b, Interpolation.CUBIC)) : Optional.empty(),
+          interval(curves, BjontegaardDelta::psnrDb, seed),
+          interval(curves, BjontegaardDelta::ratePercent, seed),
           "");
     } catch (IllegalArgumentException e) {
       String reason = String.valueOf(e.getMessage()).split("; accepted", 2)[0];
       return new CurveComparison(
-          condition, reference, family, Optional.empty(), Optional.empty(), reason);
+          condition,
+          reference.name,
+          family.name,
+          Optional.empty(),
+          Optional.empty(),
+          BcaInterval.NONE,
+          BcaInterval.NONE,
+          reason);
     }
+  }
+
+  private interface Delta {
+    double of(RateCurve reference, RateCurve test, Interpolation interpolation);
+  }
+
+  private static BcaInterval interval(Optional<PictureCurves> curves, Delta delta, long seed) {
+    return curves
+        .map(c -> c.interval((a, b) -> delta.of(a, b, Interpolation.PCHIP), seed))
+        .orElse(BcaInterval.NONE);
   }
 
   private static RateCurve curve(String family, List<Cell> cells) {

@@ -6,7 +6,7 @@ import java.util.List;
 import java.util.Optional;
 import java.util.function.LongPredicate;
 import linkworthy.statistics.Moments;
-import linkworthy.statistics.StudentT;
+import linkworthy.statistics.SkewedMean;
 
 /** Judges one need of all codecs. {@link Shortlist} says how. */
 final class Judge {
@@ -65,10 +65,10 @@ final class Judge {
           Verdict.UNDECIDED, condition, Double.NaN, Double.NaN, target, Double.NaN, 0, 0);
     }
     Sample sample = found.get();
-    Moments means = sample.overPictures(need.measure());
-    double estimate = need.isShare() ? share(sample) : means.mean();
+    double[] figures = sample.figures(need.measure());
+    double estimate = need.isShare() ? share(sample) : Moments.of(figures).mean();
     double margin = signed(estimate - target);
-    Bounds bounds = bounds(sample, means);
+    Bounds bounds = bounds(sample, figures);
     Verdict verdict = verdict(bounds, target);
     boolean high = estimate >= target;
     boolean open = verdict == Verdict.UNDECIDED && margin != 0 && Double.isFinite(margin);
@@ -79,8 +79,8 @@ final class Judge {
         high ? bounds.lower() : bounds.upper(),
         target,
         margin,
-        open ? picturesWanted(sample, means, estimate, margin) : 0,
-        open ? replicatesWanted(sample, means, estimate, margin) : 0);
+        open ? picturesWanted(sample, figures, estimate, margin) : 0,
+        open ? replicatesWanted(sample, figures, estimate, margin) : 0);
   }
 
   private Verdict verdict(Bounds bounds, double target) {
@@ -101,13 +101,13 @@ final class Judge {
     return (int) sample.means(need.measure()).values().stream().filter(need::reached).count();
   }
 
-  private Bounds bounds(Sample sample, Moments means) {
+  private Bounds bounds(Sample sample, double[] figures) {
     if (need.isShare()) {
       return shareBounds(reached(sample), sample.pictures());
     }
     Bounds overPictures =
         Bounds.ofMean(
-            means,
+            figures,
             signed(1) > 0 ? meetsError : failsError,
             signed(1) > 0 ? failsError : meetsError);
     return isRate()
@@ -131,15 +131,16 @@ final class Judge {
     return margin > 0 ? meetsError : failsError;
   }
 
-  private long picturesWanted(Sample sample, Moments means, double estimate, double margin) {
+  private long picturesWanted(Sample sample, double[] figures, double estimate, double margin) {
     if (need.isShare()) {
       return casesWanted(sample.pictures(), estimate, need.share());
     }
-    double variance = means.variance();
+    double variance = Moments.of(figures).variance();
+    double skewness = SkewedMean.skewness(figures);
     long byMean =
         smallest(
             sample.pictures(),
-            n -> quantile(margin, n) * Math.sqrt(variance / n) <= Math.abs(margin));
+            n -> standardErrors(margin, n, skewness) * Math.sqrt(variance / n) <= Math.abs(margin));
     if (!isRate()) {
       return byMean;
     }
@@ -150,24 +151,29 @@ final class Judge {
   }
 
   /** Zero unless the pictures' own differences leave room. */
-  private long replicatesWanted(Sample sample, Moments means, double estimate, double margin) {
+  private long replicatesWanted(Sample sample, double[] figures, double estimate, double margin) {
     if (need.isShare() || sample.pictures() < 2) {
       return 0;
     }
-    double t = quantile(margin, sample.pictures());
-    double allowed = margin * margin / (t * t) * sample.pictures();
+    double errors = standardErrors(margin, sample.pictures(), SkewedMean.skewness(figures));
+    double allowed = margin * margin / (errors * errors) * sample.pictures();
+    double variance = Moments.of(figures).variance();
     if (isRate()) {
       long cases = casesWanted(sample.trials(), estimate, need.level());
-      return means.variance() <= allowed ? rounded((double) cases / sample.pictures()) : 0;
+      return variance <= allowed ? rounded((double) cases / sample.pictures()) : 0;
     }
     double noise = sample.noiseVariance(need.measure());
-    double own = Math.max(0, means.variance() - noise / sample.replicates());
+    double own = Math.max(0, variance - noise / sample.replicates());
     double wanted = noise / (allowed - own);
     return allowed > own && wanted <= MOST ? rounded(wanted) : 0;
   }
 
-  private double quantile(double margin, long count) {
-    return count < 2 ? Double.POSITIVE_INFINITY : StudentT.quantile(1 - error(margin), count - 1.0);
+  /** To the side on which the target lies. */
+  private double standardErrors(double margin, long count, double skewness) {
+    return count < 2
+        ? Double.POSITIVE_INFINITY
+        : SkewedMean.standardErrors(
+            error(margin), count, signed(margin) > 0 ? skewness : -skewness);
   }
 
   /** How many cases with the same share of hits would show it to differ from the target. */

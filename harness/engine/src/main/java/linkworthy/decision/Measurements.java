@@ -43,9 +43,9 @@ public final class Measurements {
     this.kept = kept;
   }
 
-  /** PSNR alone, as {@link OrderChange} needs it. */
-  public static Measurements ofPsnr() {
-    return new Measurements(PSNR::equals);
+  /** PSNR and sent bits per pixel alone, as comparisons of codecs need them. */
+  public static Measurements ofPsnrAndBits() {
+    return new Measurements(List.of(PSNR, BITS)::contains);
   }
 
   /** What a {@link Shortlist} needs that is about these measures. */

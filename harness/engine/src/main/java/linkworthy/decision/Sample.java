@@ -114,9 +114,14 @@ final class Sample {
     return means;
   }
 
-  /** The moments of {@link #means}. */
+  /** The numbers of {@link #means}. */
+  double[] figures(String measure) {
+    return means(measure).values().stream().mapToDouble(mean -> mean).toArray();
+  }
+
+  /** Their moments. */
   Moments overPictures(String measure) {
-    return Moments.of(means(measure).values().stream().mapToDouble(mean -> mean).toArray());
+    return Moments.of(figures(measure));
   }
 
   /** Trials of all pictures. */

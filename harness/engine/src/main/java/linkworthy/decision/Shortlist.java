@@ -31,7 +31,8 @@ import java.util.Set;
  *
  * <p>By Bonferroni's inequality the chance that any word <i>meets</i> or <i>fails</i> of the whole
  * table is wrong is at most alpha, as far as the pictures are a random sample of those that matter
- * and, for means, their figures are about normal.
+ * and, for means, their figures are not skewed beyond what {@link linkworthy.statistics.SkewedMean}
+ * allows for.
  *
  * @param needs what was asked
  * @param conditions conditions of all needs together, over which price and PSNR are averaged

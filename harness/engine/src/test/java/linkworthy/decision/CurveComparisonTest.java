@@ -4,13 +4,17 @@ import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.within;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.List;
 import java.util.Map;
+import linkworthy.statistics.BcaInterval;
 import linkworthy.statistics.Cell;
 import linkworthy.statistics.Standing;
 import org.junit.jupiter.api.Test;
 
 class CurveComparisonTest {
+  private static final Measurements NOTHING = new Measurements();
+
   private static Cell cell(
       String transform,
       String step,
@@ -65,13 +69,67 @@ class CurveComparisonTest {
 
   @Test
   void familiesAreComparedWithTheFirst() {
-    List<CurveComparison> found = CurveComparison.of(twoFamilies());
+    List<CurveComparison> found = CurveComparison.of(twoFamilies(), NOTHING, 7);
     assertThat(found).hasSize(1);
     assertThat(found.get(0).reference()).isEqualTo("pca rows step8");
     assertThat(found.get(0).family()).isEqualTo("dct rows step8");
     assertThat(found.get(0).pchip().orElseThrow().psnrDb()).isCloseTo(1.095878951, within(1e-7));
     assertThat(found.get(0).cubic().orElseThrow().psnrDb()).isCloseTo(1.099030975, within(1e-7));
     assertThat(found.get(0).refusal()).isEmpty();
+    assertThat(found.get(0).psnrInterval()).isEqualTo(BcaInterval.NONE);
+  }
+
+  /**
+   * Two families of equal rates whose PSNR differs by a constant of each picture: their delta is
+   * the mean of these constants whichever pictures are drawn, so its interval is that of a mean.
+   */
+  @Test
+  void intervalsAreOverPictures() {
+    double[] gaps = new double[24];
+    Arrays.setAll(gaps, i -> 0.5 * Math.sqrt(i + 1.0) + (i == 3 ? 2 : 0));
+    double mean = Arrays.stream(gaps).average().orElseThrow();
+    CurveComparison found = shifted(gaps, mean, gaps.length);
+    BcaInterval ofMean =
+        BcaInterval.of(
+            gaps.length,
+            cases -> Arrays.stream(cases).mapToDouble(i -> gaps[i]).average().orElseThrow(),
+            0.95,
+            7);
+    assertThat(found.pchip().orElseThrow().psnrDb()).isCloseTo(mean, within(1e-12));
+    assertThat(found.psnrInterval().lower()).isCloseTo(ofMean.lower(), within(1e-9));
+    assertThat(found.psnrInterval().upper()).isCloseTo(ofMean.upper(), within(1e-9));
+    assertThat(found.rateInterval().upper()).isBetween(-100.0, 0.0);
+    assertThat(found.rateInterval().lower()).isLessThan(found.pchip().get().ratePercent());
+  }
+
+  @Test
+  void codecsOnOtherPicturesOrTooFewHaveNoIntervals() {
+    double[] gaps = new double[24];
+    Arrays.setAll(gaps, i -> 1 + 0.1 * i);
+    assertThat(shifted(gaps, 2.15, 23).psnrInterval()).isEqualTo(BcaInterval.NONE);
+    assertThat(shifted(Arrays.copyOf(gaps, 19), 1.9, 19).psnrInterval())
+        .isEqualTo(BcaInterval.NONE);
+  }
+
+  /**
+   * @param pictures number of pictures that the last codec was measured on
+   */
+  private static CurveComparison shifted(double[] gaps, double mean, int pictures) {
+    List<Cell> cells = new ArrayList<>();
+    Measurements measured = Measurements.ofPsnrAndBits();
+    for (int i = 0; i < 4; i++) {
+      for (String transform : List.of("pca", "dct")) {
+        double gap = transform.equals("dct") ? mean : 0;
+        Cell cell = cell(transform, "8.0", 4 << i, 20, 1 << i, 27 + 3 * i + gap, Standing.BELOW);
+        cells.add(cell);
+        int seen = i == 3 && gap > 0 ? pictures : gaps.length;
+        for (int picture = 0; picture < seen; picture++) {
+          double psnr = 27 + 3 * i + (gap > 0 ? gaps[picture] : 0);
+          measured.add(Trials.of(cell.codec(), 20, "p" + picture, 0, psnr, 1 << i));
+        }
+      }
+    }
+    return CurveComparison.of(cells, measured, 7).get(0);
   }
 
   @Test
@@ -81,7 +139,7 @@ class CurveComparisonTest {
       String step = Integer.toString(4 << i) + ".0";
       cells.add(cell("wht", step, 8, 20, 12 - i, 34 - i, Standing.BELOW));
     }
-    List<CurveComparison> found = CurveComparison.of(cells);
+    List<CurveComparison> found = CurveComparison.of(cells, NOTHING, 7);
     assertThat(found.stream().map(CurveComparison::family))
         .containsExactly("dct rows step8", "wht rows K8");
     assertThat(found.get(1).cubic()).isEmpty();
@@ -92,15 +150,15 @@ class CurveComparisonTest {
   void aCurveThatFallsIsRefusedWithTheReason() {
     List<Cell> cells = twoFamilies();
     cells.add(cell("dct", "8.0", 64, 20, 30, 30, Standing.BELOW));
-    CurveComparison found = CurveComparison.of(cells).get(0);
+    CurveComparison found = CurveComparison.of(cells, NOTHING, 7).get(0);
     assertThat(found.pchip()).isEmpty();
     assertThat(found.refusal()).isEqualTo("dct rows step8: PSNR does not increase with rate");
   }
 
   @Test
   void oneFamilyIsComparedWithNothing() {
-    assertThat(CurveComparison.of(twoFamilies().subList(0, 1))).isEmpty();
-    assertThat(CurveComparison.of(List.of())).isEmpty();
+    assertThat(CurveComparison.of(twoFamilies().subList(0, 1), NOTHING, 7)).isEmpty();
+    assertThat(CurveComparison.of(List.of(), NOTHING, 7)).isEmpty();
   }
 
   /** Only codecs that are best somewhere count. */
