@@ -29,6 +29,9 @@ final class StudyWork {
   static final int LEADING = 64;
   private static final int MANY_VARIABLES = 192;
 
+  /** Halvings of the interval of an eigenvalue, down to a double's precision. */
+  private static final int BISECTIONS = 55;
+
   private final Plan plan;
   private final Study study;
   private final List<Family> families;
@@ -234,29 +237,39 @@ final class StudyWork {
             "d^3; 8 d^3 bytes",
             perOrder(d -> Work.cache(d * d * d, 8 * d * d * d)),
             List.of(
-                "codec.SymmetricEigen$Tridiagonal.<init>",
-                "codec.SymmetricEigen$Tridiagonal.reflect",
-                "codec.SymmetricEigen$Tridiagonal.reflectBothSides")),
+                "codec.Tridiagonal.<init>",
+                "codec.Tridiagonal.reflect",
+                "codec.Tridiagonal.reflectBothSides")),
         new Stage(
             "eigen: values",
-            "about 2.6 d^2 divisions and roots, one after the other",
-            perOrder(d -> Work.divisions(2.6 * d * d)),
-            List.of("codec.SymmetricEigen$Qr.values", "codec.SymmetricEigen", "codec.PcaBasis")),
+            "d >= 192: 55 bisections of 64 lanes; else about 2.6 d^2 divisions and roots in turn",
+            perOrder(
+                d -> Work.divisions(d < MANY_VARIABLES ? 2.6 * d * d : BISECTIONS * LEADING * d)),
+            List.of(
+                "codec.TridiagonalEigen.values",
+                "codec.TridiagonalEigen.countBelow",
+                "codec.SymmetricEigen$Qr.values",
+                "codec.SymmetricEigen",
+                "codec.PcaBasis")),
         new Stage(
             "eigen: leading 64 vectors",
-            "d >= 192: 2.5 64^2 d + 64 d^2; 24 bytes each",
-            perOrder(
-                d ->
-                    d < MANY_VARIABLES
-                        ? Work.NONE
-                        : Work.near(2.5 * LEADING * LEADING * d + LEADING * d * d, 24)),
-            List.of("codec.InverseIteration", "codec.SymmetricEigen$Tridiagonal.reflected")),
+            "d >= 192: 4 64 d divisions; 1.5 64^2 d + K d^2, 12 bytes each",
+            perFamily(
+                (f, p) -> {
+                  double d = f.variables(p);
+                  return !f.isPca() || d < MANY_VARIABLES
+                      ? Work.NONE
+                      : Work.near(1.5 * LEADING * LEADING * d + f.most(p) * d * d, 12)
+                          .plus(Work.divisions(4 * LEADING * d))
+                          .times(seen);
+                }),
+            List.of("codec.TridiagonalEigen", "codec.Tridiagonal.reflected")),
         new Stage(
             "eigen: all vectors",
             "d < 192: about 3.7 d^3; 16 bytes each",
             perOrder(d -> d < MANY_VARIABLES ? Work.near(3.7 * d * d * d, 16) : Work.NONE),
             List.of(
-                "codec.SymmetricEigen$Tridiagonal.vectors",
+                "codec.Tridiagonal.vectors",
                 "codec.SymmetricEigen$Rotations",
                 "codec.SymmetricEigen$Qr.decompose")),
         new Stage(

@@ -68,7 +68,7 @@ final class PcaBasis implements Basis {
     return above(negligible(covariance), SymmetricEigen.of(covariance).largestFirst());
   }
 
-  /** The first 64 of them, with the variances of all. */
+  /** The first 64 of them. */
   static Directions leading(DMatrixRMaj covariance) {
     double floor = negligible(covariance);
     return above(floor, SymmetricEigen.largest(covariance, FEW, floor));
@@ -89,12 +89,8 @@ final class PcaBasis implements Basis {
 
   private static Directions above(double floor, SymmetricEigen largestFirst) {
     double[] variances = Arrays.stream(largestFirst.values()).filter(v -> v > floor).toArray();
-    double[][] rows =
-        Arrays.stream(largestFirst.vectors())
-            .limit(variances.length)
-            .map(PcaBasis::withPositivePeak)
-            .toArray(double[][]::new);
-    return new Directions(rows, variances);
+    return new Directions(
+        variances.length, k -> withPositivePeak(largestFirst.vector(k)), variances);
   }
 
   private static double[] withPositivePeak(double[] vector) {
