@@ -26,11 +26,11 @@ import linkworthy.trial.Plan;
  * says 'about'.
  */
 final class StudyWork {
-  static final int LEADING = 64;
+  static final int LEADING = 32;
   private static final int MANY_VARIABLES = 192;
 
-  /** Halvings of the interval of an eigenvalue, down to a double's precision. */
-  private static final int BISECTIONS = 55;
+  /** What Lanczos' iteration took for 32 directions of most pictures. */
+  private static final double STEPS = 96;
 
   private final Plan plan;
   private final Study study;
@@ -233,37 +233,33 @@ final class StudyWork {
                         : Work.NONE),
             List.of("codec.Matrices.covariance")),
         new Stage(
+            "eigen: Lanczos",
+            "d >= 192: 96 d^2 + 96^2 d + 32 d^2 + d^3 / 6; 8 bytes each",
+            perOrder(
+                d -> {
+                  double work = STEPS * d * d + STEPS * STEPS * d + LEADING * d * d + d * d * d / 6;
+                  return d < MANY_VARIABLES ? Work.NONE : Work.cache(work, 8 * work);
+                }),
+            List.of("codec.Lanczos")),
+        new Stage(
+            "eigen: values and vectors of T",
+            "d >= 192: about 2 times 35 counts and 4 sweeps of 64 lanes in 96 rows",
+            perOrder(
+                d -> d < MANY_VARIABLES ? Work.NONE : Work.divisions(2 * (35 + 4) * 64 * STEPS)),
+            List.of("codec.TridiagonalEigen", "codec.Tridiagonal.reflected")),
+        new Stage(
             "eigen: tridiagonal form",
-            "d^3; 8 d^3 bytes",
-            perOrder(d -> Work.cache(d * d * d, 8 * d * d * d)),
+            "d < 192 (and not counted, where Lanczos gives up): d^3; 8 d^3 bytes",
+            perOrder(d -> d < MANY_VARIABLES ? Work.cache(d * d * d, 8 * d * d * d) : Work.NONE),
             List.of(
                 "codec.Tridiagonal.<init>",
                 "codec.Tridiagonal.reflect",
                 "codec.Tridiagonal.reflectBothSides")),
         new Stage(
-            "eigen: values",
-            "d >= 192: 55 bisections of 64 lanes; else about 2.6 d^2 divisions and roots in turn",
-            perOrder(
-                d -> Work.divisions(d < MANY_VARIABLES ? 2.6 * d * d : BISECTIONS * LEADING * d)),
-            List.of(
-                "codec.TridiagonalEigen.values",
-                "codec.TridiagonalEigen.countBelow",
-                "codec.SymmetricEigen$Qr.values",
-                "codec.SymmetricEigen",
-                "codec.PcaBasis")),
-        new Stage(
-            "eigen: leading 64 vectors",
-            "d >= 192: 4 64 d divisions; 1.5 64^2 d + K d^2, 12 bytes each",
-            perFamily(
-                (f, p) -> {
-                  double d = f.variables(p);
-                  return !f.isPca() || d < MANY_VARIABLES
-                      ? Work.NONE
-                      : Work.near(1.5 * LEADING * LEADING * d + f.most(p) * d * d, 12)
-                          .plus(Work.divisions(4 * LEADING * d))
-                          .times(seen);
-                }),
-            List.of("codec.TridiagonalEigen", "codec.Tridiagonal.reflected")),
+            "eigen: values by QR",
+            "d < 192: about 2.6 d^2 divisions and roots, one after the other",
+            perOrder(d -> d < MANY_VARIABLES ? Work.divisions(2.6 * d * d) : Work.NONE),
+            List.of("codec.SymmetricEigen$Qr.values", "codec.SymmetricEigen", "codec.PcaBasis")),
         new Stage(
             "eigen: all vectors",
             "d < 192: about 3.7 d^3; 16 bytes each",

@@ -21,7 +21,7 @@ public final class EigenStage {
 
   /** Finds the eigenvectors of the largest 64 eigenvalues and returns the first of these. */
   public double leading() {
-    return largest(PcaBasis.leading(covariance));
+    return largest(PcaBasis.leading(covariance, 64));
   }
 
   /** Finds all eigenvectors and returns the largest eigenvalue. */

@@ -14,14 +14,21 @@ import org.ejml.dense.row.decomposition.eig.symm.SymmetricQrAlgorithm_DDRM;
  * (Watkins, Fundamentals of Matrix Computations, second edition, pages 349 to 355). The QR
  * algorithm is EJML's, but for the rotation of vectors.
  *
- * <p>Where only some of the largest are wanted, they come from {@link TridiagonalEigen}; if one of
- * their vectors does not pass the check there, all are computed.
+ * <p>Where only some of the largest are wanted, they come from {@link Lanczos}; if there are too
+ * many of them for that or it gives up, from {@link TridiagonalEigen}; and if one of their vectors
+ * does not pass the check there, all are computed.
  */
 final class SymmetricEigen {
+  /** With fewer rows for each eigenvalue, Lanczos' iteration is not quicker. */
+  private static final int ROWS_FOR_EACH = 6;
+
   private final double[] values;
   private final IntFunction<double[]> vectors;
 
-  private SymmetricEigen(double[] values, IntFunction<double[]> vectors) {
+  /**
+   * @param vectors the vector of each value
+   */
+  SymmetricEigen(double[] values, IntFunction<double[]> vectors) {
     this.values = values;
     this.vectors = vectors;
   }
@@ -37,20 +44,28 @@ final class SymmetricEigen {
   }
 
   /**
-   * The same, of the largest eigenvalues alone, largest first: those above {@code floor}, at most
-   * {@code count}.
+   * The same of a positive semidefinite matrix, of the largest eigenvalues alone, largest first:
+   * those above {@code floor}, at most {@code count}.
    *
    * @throws IllegalStateException if the iteration does not converge
    */
   static SymmetricEigen largest(DMatrixRMaj matrix, int count, double floor) {
+    int d = matrix.getNumRows();
+    SymmetricEigen found = d >= ROWS_FOR_EACH * count ? Lanczos.largest(matrix, count) : null;
+    if (found != null) {
+      return new SymmetricEigen(above(floor, found.values), found.vectors);
+    }
     Tridiagonal tridiagonal = new Tridiagonal(matrix);
     TridiagonalEigen eigen = new TridiagonalEigen(tridiagonal.diagonal(), tridiagonal.beside());
-    double[] values = eigen.values(Math.min(count, tridiagonal.size()));
-    double[] wanted = Arrays.stream(values).filter(v -> v > floor).toArray();
+    double[] wanted = above(floor, eigen.values(Math.min(count, d)));
     double[][] vectors = eigen.vectors(wanted);
     return vectors.length == wanted.length
         ? new SymmetricEigen(wanted, k -> tridiagonal.reflected(vectors[k]))
         : of(matrix).largestFirst(wanted.length);
+  }
+
+  private static double[] above(double floor, double[] values) {
+    return Arrays.stream(values).filter(value -> value > floor).toArray();
   }
 
   /** The same in the order of the eigenvalues, the largest first. */
