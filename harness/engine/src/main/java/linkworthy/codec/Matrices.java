@@ -11,6 +11,13 @@ final class Matrices {
   /** So many observations stay in the first-level cache while all sums go by. */
   private static final int NEAR = 8;
 
+  /**
+   * Columns transposed at once: entries of one column of 512 doubles fall into the same few places
+   * of the first-level cache, and so many of them are written to the end before they are driven
+   * out.
+   */
+  private static final int STREAMS = 8;
+
   private Matrices() {}
 
   /**
@@ -49,11 +56,15 @@ final class Matrices {
     int n = centred[0].length;
     double[][] sums = products(centred);
     DMatrixRMaj covariance = new DMatrixRMaj(d, d);
-    for (int i = 0; i < d; i++) {
-      for (int k = i; k < d; k++) {
-        double value = sums[i][k] / n;
-        covariance.set(i, k, value);
-        covariance.set(k, i, value);
+    double[] data = covariance.data;
+    for (int from = 0; from < d; from += STREAMS) {
+      int to = Math.min(d, from + STREAMS);
+      for (int i = 0; i < to; i++) {
+        for (int k = Math.max(i, from); k < to; k++) {
+          double value = sums[i][k] / n;
+          data[i * d + k] = value;
+          data[k * d + i] = value;
+        }
       }
     }
     return covariance;
@@ -64,9 +75,12 @@ final class Matrices {
     int d = rows.length;
     int n = rows[0].length;
     double[][] columns = new double[n][d];
-    for (int i = 0; i < d; i++) {
-      for (int j = 0; j < n; j++) {
-        columns[j][i] = rows[i][j];
+    for (int from = 0; from < n; from += STREAMS) {
+      int to = Math.min(n, from + STREAMS);
+      for (int i = 0; i < d; i++) {
+        for (int j = from; j < to; j++) {
+          columns[j][i] = rows[i][j];
+        }
       }
     }
     double[][] sums = new double[d][d];
