@@ -21,11 +21,23 @@ public final class EigenStage {
 
   /** Finds the eigenvectors of the largest 64 eigenvalues and returns the first of these. */
   public double leading() {
-    return PcaBasis.leading(covariance).variances()[0];
+    return largest(PcaBasis.leading(covariance, 64));
   }
 
   /** Finds all eigenvectors and returns the largest eigenvalue. */
   public double all() {
-    return PcaBasis.allOf(covariance).variances()[0];
+    return largest(PcaBasis.allOf(covariance));
+  }
+
+  private static double largest(Basis.Directions directions) {
+    return made(directions).variances()[0];
+  }
+
+  /** Makes the directions that would be made when asked for. */
+  public static Basis.Directions made(Basis.Directions directions) {
+    if (directions.rows().length == 0) {
+      throw new IllegalStateException("there is no direction");
+    }
+    return directions;
   }
 }

@@ -72,7 +72,7 @@ final class Analysis {
 
   /** Direction k, d entries. */
   double[] direction(int k) {
-    return directions.rows()[k];
+    return directions.row(k);
   }
 
   /** Coefficients of component k, one for each observation; grey levels. */
@@ -93,7 +93,7 @@ final class Analysis {
       }
       return sums;
     }
-    double[] direction = directions.rows()[k];
+    double[] direction = directions.row(k);
     double shift = 0;
     for (int i = 0; i < direction.length; i++) {
       shift += direction[i] * meanRests[i];

@@ -1,6 +1,9 @@
 package linkworthy.codec;
 
 import java.util.List;
+import java.util.function.IntFunction;
+import java.util.stream.IntStream;
+import org.jspecify.annotations.Nullable;
 
 /**
  * A set of orthonormal directions; the first K of them carry the picture.
@@ -54,7 +57,8 @@ public interface Basis {
 
   /** Directions, most important first. */
   final class Directions {
-    private final double[][] rows;
+    private final double[] @Nullable [] rows;
+    private final IntFunction<double[]> maker;
     private final double[] variances;
 
     /**
@@ -64,12 +68,29 @@ public interface Basis {
      *     empty if it is not known without projecting
      */
     Directions(double[][] rows, double[] variances) {
-      this.rows = rows;
+      this(rows.length, k -> rows[k], variances);
+    }
+
+    /** The same with directions that are made when first asked for. */
+    Directions(int found, IntFunction<double[]> maker, double[] variances) {
+      this.rows = new double[found][];
+      this.maker = maker;
       this.variances = variances;
     }
 
+    /** Direction k. */
+    synchronized double[] row(int k) {
+      double[] row = rows[k];
+      if (row == null) {
+        row = maker.apply(k);
+        rows[k] = row;
+      }
+      return row;
+    }
+
+    /** All directions found. */
     double[][] rows() {
-      return rows;
+      return IntStream.range(0, rows.length).mapToObj(this::row).toArray(double[][]::new);
     }
 
     /** How many there are, those left out included. */

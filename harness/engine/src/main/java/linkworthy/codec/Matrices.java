@@ -11,6 +11,13 @@ final class Matrices {
   /** So many observations stay in the first-level cache while all sums go by. */
   private static final int NEAR = 8;
 
+  /**
+   * Columns transposed at once: entries of one column of 512 doubles fall into the same few places
+   * of the first-level cache, and so many of them are written to the end before they are driven
+   * out.
+   */
+  private static final int STREAMS = 8;
+
   private Matrices() {}
 
   /**
@@ -47,25 +54,40 @@ final class Matrices {
   static DMatrixRMaj covariance(double[][] centred) {
     int d = centred.length;
     int n = centred[0].length;
-    double[][] observations = new double[n][d];
-    for (int i = 0; i < d; i++) {
-      for (int j = 0; j < n; j++) {
-        observations[j][i] = centred[i][j];
+    double[][] sums = products(centred);
+    DMatrixRMaj covariance = new DMatrixRMaj(d, d);
+    double[] data = covariance.data;
+    for (int from = 0; from < d; from += STREAMS) {
+      int to = Math.min(d, from + STREAMS);
+      for (int i = 0; i < to; i++) {
+        for (int k = Math.max(i, from); k < to; k++) {
+          double value = sums[i][k] / n;
+          data[i * d + k] = value;
+          data[k * d + i] = value;
+        }
+      }
+    }
+    return covariance;
+  }
+
+  /** The upper triangle of {@code X X'}, d rows of d sums over n columns. */
+  static double[][] products(double[][] rows) {
+    int d = rows.length;
+    int n = rows[0].length;
+    double[][] columns = new double[n][d];
+    for (int from = 0; from < n; from += STREAMS) {
+      int to = Math.min(n, from + STREAMS);
+      for (int i = 0; i < d; i++) {
+        for (int j = from; j < to; j++) {
+          columns[j][i] = rows[i][j];
+        }
       }
     }
     double[][] sums = new double[d][d];
     for (int j = 0; j < n; j += NEAR) {
-      addObservations(sums, observations, j, Math.min(n, j + NEAR));
+      addObservations(sums, columns, j, Math.min(n, j + NEAR));
     }
-    DMatrixRMaj covariance = new DMatrixRMaj(d, d);
-    for (int i = 0; i < d; i++) {
-      for (int k = i; k < d; k++) {
-        double value = sums[i][k] / n;
-        covariance.set(i, k, value);
-        covariance.set(k, i, value);
-      }
-    }
-    return covariance;
+    return sums;
   }
 
   private static void addObservations(double[][] sums, double[][] observations, int from, int to) {
@@ -99,6 +121,25 @@ final class Matrices {
       upper[k] = (upper[k] + up * pk) + uq * qk;
       lower[k] = (lower[k] + lp * pk) + lq * qk;
     }
+  }
+
+  /** The inner product from one entry on, as four sums that are added in the end. */
+  static double dot(double[] a, double[] b, int from) {
+    double s0 = 0;
+    double s1 = 0;
+    double s2 = 0;
+    double s3 = 0;
+    int i = from;
+    for (; i < a.length - 3; i += 4) {
+      s0 += a[i] * b[i];
+      s1 += a[i + 1] * b[i + 1];
+      s2 += a[i + 2] * b[i + 2];
+      s3 += a[i + 3] * b[i + 3];
+    }
+    for (; i < a.length; i++) {
+      s0 += a[i] * b[i];
+    }
+    return (s0 + s1) + (s2 + s3);
   }
 
   /** {@code sums[k] += factor terms[k]} for k from {@code from}. */

@@ -16,19 +16,22 @@ final class PcaBasis implements Basis {
 
   private static final double NEGLIGIBLE = 1e-10;
 
-  /** A codec of no more components is content with so many directions. */
-  private static final int FEW = 64;
+  /** A codec is content with the first of these numbers of directions that it does not exceed. */
+  private static final int[] FEW = {32, 64};
 
   /** Below so many variables, finding all directions is no slower. */
   private static final int MANY_VARIABLES = 192;
 
-  private final boolean few;
+  private static final int ALL = 0;
+
+  /** Directions wanted, or {@link #ALL}. */
+  private final int few;
 
   PcaBasis() {
-    this(false);
+    this(ALL);
   }
 
-  private PcaBasis(boolean few) {
+  private PcaBasis(int few) {
     this.few = few;
   }
 
@@ -44,23 +47,23 @@ final class PcaBasis implements Basis {
 
   @Override
   public Basis forAtMost(int components) {
-    return new PcaBasis(components <= FEW);
+    return new PcaBasis(Arrays.stream(FEW).filter(n -> n >= components).findFirst().orElse(ALL));
   }
 
   @Override
   public String work(int variables) {
-    return isLeading(variables) ? ID + " of " + FEW : ID;
+    return isLeading(variables) ? ID + " of " + few : ID;
   }
 
   /** Whether directions are left out; where there are few variables, all are found for everyone. */
   private boolean isLeading(int variables) {
-    return few && variables >= MANY_VARIABLES;
+    return few != ALL && variables >= MANY_VARIABLES;
   }
 
   @Override
   public Directions directions(Arrangement arrangement, PictureShape shape, double[][] centred) {
     DMatrixRMaj covariance = Matrices.covariance(centred);
-    return isLeading(centred.length) ? leading(covariance) : of(covariance);
+    return isLeading(centred.length) ? leading(covariance, few) : of(covariance);
   }
 
   /** Principal directions of a covariance, without the negligible ones. */
@@ -68,10 +71,10 @@ final class PcaBasis implements Basis {
     return above(negligible(covariance), SymmetricEigen.of(covariance).largestFirst());
   }
 
-  /** The first 64 of them, with the variances of all. */
-  static Directions leading(DMatrixRMaj covariance) {
+  /** The first {@code count} of them. */
+  static Directions leading(DMatrixRMaj covariance, int count) {
     double floor = negligible(covariance);
-    return above(floor, SymmetricEigen.largest(covariance, FEW, floor));
+    return above(floor, SymmetricEigen.largest(covariance, count, floor));
   }
 
   /** All d principal directions of a covariance. */
@@ -89,12 +92,8 @@ final class PcaBasis implements Basis {
 
   private static Directions above(double floor, SymmetricEigen largestFirst) {
     double[] variances = Arrays.stream(largestFirst.values()).filter(v -> v > floor).toArray();
-    double[][] rows =
-        Arrays.stream(largestFirst.vectors())
-            .limit(variances.length)
-            .map(PcaBasis::withPositivePeak)
-            .toArray(double[][]::new);
-    return new Directions(rows, variances);
+    return new Directions(
+        variances.length, k -> withPositivePeak(largestFirst.vector(k)), variances);
   }
 
   private static double[] withPositivePeak(double[] vector) {
