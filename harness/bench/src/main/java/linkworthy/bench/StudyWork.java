@@ -336,8 +336,8 @@ final class StudyWork {
             List.of("quality.Psnr", "trial.Subject.meanSquaredError")),
         new Stage(
             "SSIM",
-            "57 and a division a sample; 950 bytes a sample",
-            perPicture(p -> new Work(57, 1, 0, 950, 0, 0).times((double) p.size() * shown())),
+            "57 and a division a sample; 830 bytes a sample",
+            perPicture(p -> new Work(57, 1, 0, 830, 0, 0).times((double) p.size() * shown())),
             List.of("quality.Ssim$Windows", "quality.GaussianRows")));
   }
 

@@ -1,7 +1,5 @@
 package linkworthy.codec;
 
-import java.util.Arrays;
-
 /**
  * Bits of every run of a row of symbols under every Rice parameter, as sums from the row's start:
  * what any run costs, and how long a run fits a room, are then found without coding a symbol.
@@ -69,14 +67,30 @@ final class RiceCosts {
       return 0;
     }
     int to = from;
-    for (int[] sums : upTo) {
+    for (int k = 0; k < upTo.length; k++) {
+      int[] sums = upTo[k];
       long room = bits + sums[from];
-      if (room >= sums[length]) {
-        return length - from;
+      if (to < length && sums[to + 1] <= room) {
+        // Each symbol takes k + 1 bits or more.
+        int most = (int) Math.min(length, from + bits / (k + 1));
+        to = last(sums, to + 1, most, room);
       }
-      int reached = Arrays.binarySearch(sums, from, length + 1, (int) room);
-      to = Math.max(to, reached >= 0 ? reached : -reached - 2);
     }
     return to - from;
+  }
+
+  /** The last place from {@code good}, where the sum is no more than {@code room}, to most. */
+  private static int last(int[] sums, int good, int most, long room) {
+    int low = good;
+    int high = most;
+    while (low < high) {
+      int middle = (low + high + 1) >>> 1;
+      if (sums[middle] <= room) {
+        low = middle;
+      } else {
+        high = middle - 1;
+      }
+    }
+    return low;
   }
 }

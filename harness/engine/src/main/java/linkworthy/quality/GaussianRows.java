@@ -25,21 +25,24 @@ final class GaussianRows {
 
   private static final int LANES = 8;
 
-  /** One sweep over a row: three down the columns, then three along the row. */
+  /** One sweep over a row: two down the columns, then three along the row. */
   private interface Pass {
-    void run(GaussianRows rows, double[] means);
+    void run(GaussianRows rows, double[] means, double[] to);
   }
 
-  private static final Pass[] PASSES = {
-    (r, to) -> fold(r.row(4), r.row(5), r.row(6), WEIGHTS[0], WEIGHTS[1], r.folded),
-    (r, to) ->
-        addTwoPairs(r.row(3), r.row(7), WEIGHTS[2], r.row(2), r.row(8), WEIGHTS[3], r.folded),
-    (r, to) ->
-        addTwoPairs(r.row(1), r.row(9), WEIGHTS[4], r.row(0), r.row(10), WEIGHTS[5], r.folded),
-    (r, to) -> foldInner(r.folded, WEIGHTS[0], WEIGHTS[1], to),
-    (r, to) -> addMiddle(r.folded, WEIGHTS[2], WEIGHTS[3], to),
-    (r, to) -> addOuter(r.folded, WEIGHTS[4], WEIGHTS[5], to),
-  };
+  private static final Pass NEAR_ROWS =
+      (r, means, to) -> foldNear(r.row(3), r.row(4), r.row(5), r.row(6), r.row(7), r.folded);
+  private static final Pass FAR_ROWS =
+      (r, means, to) ->
+          addFar(r.row(0), r.row(1), r.row(2), r.row(8), r.row(9), r.row(10), r.folded);
+  private static final Pass INNER = (r, means, to) -> foldInner(r.folded, to);
+  private static final Pass MIDDLE = (r, means, to) -> addMiddle(r.folded, to);
+  private static final Pass OUTER = (r, means, to) -> addOuter(r.folded, to);
+  private static final Pass OUTER_LESS_SQUARES =
+      (r, means, to) -> addOuterLessSquares(r.folded, means, to);
+
+  private static final Pass[] MEANS = {NEAR_ROWS, FAR_ROWS, INNER, MIDDLE, OUTER};
+  private static final Pass[] VARIANCES = {NEAR_ROWS, FAR_ROWS, INNER, MIDDLE, OUTER_LESS_SQUARES};
 
   private final int width;
   private final int strip;
@@ -110,8 +113,17 @@ final class GaussianRows {
 
   /** Means of the windows that end at the newest row into {@code means}, in lanes. */
   void means(double[] means) {
-    for (Pass pass : PASSES) {
-      pass.run(this, means);
+    run(MEANS, means, means);
+  }
+
+  /** Where the rows hold squares: these means less the squares of others. */
+  void variances(double[] means, double[] variances) {
+    run(VARIANCES, means, variances);
+  }
+
+  private void run(Pass[] passes, double[] means, double[] to) {
+    for (Pass pass : passes) {
+      pass.run(this, means, to);
     }
   }
 
@@ -119,29 +131,41 @@ final class GaussianRows {
     return rows[(next + fromOldest) % SIDE];
   }
 
-  private static void fold(
-      double[] before, double[] middle, double[] after, double w0, double w1, double[] to) {
+  /** Rows 0 to 2 from the middle. One loop over all eleven is not made into vectors. */
+  private static void foldNear(
+      double[] a, double[] b, double[] middle, double[] c, double[] d, double[] to) {
+    double w0 = WEIGHTS[0];
+    double w1 = WEIGHTS[1];
+    double w2 = WEIGHTS[2];
     for (int i = 0; i < to.length; i++) {
-      to[i] = w0 * middle[i] + w1 * (before[i] + after[i]);
+      to[i] = (w0 * middle[i] + w1 * (b[i] + c[i])) + w2 * (a[i] + d[i]);
     }
   }
 
-  private static void addTwoPairs(
-      double[] a, double[] b, double w, double[] c, double[] d, double v, double[] to) {
+  /** Rows 3 to 5 from the middle. */
+  private static void addFar(
+      double[] a, double[] b, double[] c, double[] d, double[] e, double[] f, double[] to) {
+    double w3 = WEIGHTS[3];
+    double w4 = WEIGHTS[4];
+    double w5 = WEIGHTS[5];
     for (int i = 0; i < to.length; i++) {
-      to[i] = (to[i] + w * (a[i] + b[i])) + v * (c[i] + d[i]);
+      to[i] = ((to[i] + w3 * (c[i] + d[i])) + w4 * (b[i] + e[i])) + w5 * (a[i] + f[i]);
     }
   }
 
-  /** Columns 0 and 1 from the middle. One loop over all eleven is not made into vectors. */
-  private static void foldInner(double[] f, double w0, double w1, double[] to) {
+  /** Columns 0 and 1 from the middle. */
+  private static void foldInner(double[] f, double[] to) {
+    double w0 = WEIGHTS[0];
+    double w1 = WEIGHTS[1];
     for (int i = 0; i < to.length; i++) {
       to[i] = w0 * f[i + 5 * LANES] + w1 * (f[i + 4 * LANES] + f[i + 6 * LANES]);
     }
   }
 
   /** Columns 2 and 3 from the middle. */
-  private static void addMiddle(double[] f, double w2, double w3, double[] to) {
+  private static void addMiddle(double[] f, double[] to) {
+    double w2 = WEIGHTS[2];
+    double w3 = WEIGHTS[3];
     for (int i = 0; i < to.length; i++) {
       to[i] =
           (to[i] + w2 * (f[i + 3 * LANES] + f[i + 7 * LANES]))
@@ -150,9 +174,22 @@ final class GaussianRows {
   }
 
   /** Columns 4 and 5 from the middle. */
-  private static void addOuter(double[] f, double w4, double w5, double[] to) {
+  private static void addOuter(double[] f, double[] to) {
+    double w4 = WEIGHTS[4];
+    double w5 = WEIGHTS[5];
     for (int i = 0; i < to.length; i++) {
       to[i] = (to[i] + w4 * (f[i + LANES] + f[i + 9 * LANES])) + w5 * (f[i] + f[i + 10 * LANES]);
+    }
+  }
+
+  /** The same, less squares. */
+  private static void addOuterLessSquares(double[] f, double[] means, double[] to) {
+    double w4 = WEIGHTS[4];
+    double w5 = WEIGHTS[5];
+    for (int i = 0; i < to.length; i++) {
+      to[i] =
+          ((to[i] + w4 * (f[i + LANES] + f[i + 9 * LANES])) + w5 * (f[i] + f[i + 10 * LANES]))
+              - means[i] * means[i];
     }
   }
 }

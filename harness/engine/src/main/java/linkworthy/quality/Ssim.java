@@ -72,15 +72,14 @@ public final class Ssim implements QualityMeasure {
       GaussianRows values = new GaussianRows(width);
       GaussianRows squares = new GaussianRows(width);
       for (int y = 0; y < clean.height(); y++) {
-        values.load(clean.samples(), y * width, cleanRows[y]);
         double[] row = cleanRows[y];
+        values.load(clean.samples(), y * width, row);
         System.arraycopy(row, 0, values.nextRow(), 0, row.length);
         multiply(row, row, squares.nextRow());
         int window = y - GaussianRows.SIDE + 1;
         if (window >= 0) {
           values.means(cleanMeans[window]);
-          squares.means(cleanVariances[window]);
-          subtractProduct(cleanMeans[window], cleanMeans[window], cleanVariances[window]);
+          squares.variances(cleanMeans[window], cleanVariances[window]);
         }
       }
     }
@@ -95,21 +94,18 @@ public final class Ssim implements QualityMeasure {
       GaussianRows products = new GaussianRows(width);
       double[] means = new double[length];
       double[] variances = new double[length];
-      double[] covariances = new double[length];
+      double[] meanProducts = new double[length];
       double[] columnSums = new double[length];
       for (int y = 0; y < clean.height(); y++) {
         double[] row = values.nextRow();
         values.load(decoded.samples(), y * width, row);
-        multiply(row, row, squares.nextRow());
-        multiply(row, cleanRows[y], products.nextRow());
+        multiply(row, cleanRows[y], squares.nextRow(), products.nextRow());
         int window = y - GaussianRows.SIDE + 1;
         if (window >= 0) {
           values.means(means);
-          squares.means(variances);
-          products.means(covariances);
-          subtractProduct(means, means, variances);
-          subtractProduct(means, cleanMeans[window], covariances);
-          addSimilarity(window, means, variances, covariances, columnSums);
+          squares.variances(means, variances);
+          products.means(meanProducts);
+          addSimilarity(window, means, variances, meanProducts, columnSums);
         }
       }
       int windowColumns = width - GaussianRows.SIDE + 1;
@@ -120,14 +116,17 @@ public final class Ssim implements QualityMeasure {
       return sum / ((double) cleanMeans.length * windowColumns);
     }
 
+    /** The covariance is the mean product less the product of the means. */
     private void addSimilarity(
-        int window, double[] my, double[] vy, double[] cov, double[] columnSums) {
+        int window, double[] my, double[] vy, double[] meanProducts, double[] columnSums) {
       double[] mx = cleanMeans[window];
       double[] vx = cleanVariances[window];
       double luminanceFloor = c1;
       double contrastFloor = c2;
       for (int i = 0; i < columnSums.length; i++) {
-        double numerator = (2 * mx[i] * my[i] + luminanceFloor) * (2 * cov[i] + contrastFloor);
+        double product = mx[i] * my[i];
+        double numerator =
+            (2 * product + luminanceFloor) * (2 * (meanProducts[i] - product) + contrastFloor);
         double denominator =
             (mx[i] * mx[i] + my[i] * my[i] + luminanceFloor) * (vx[i] + vy[i] + contrastFloor);
         columnSums[i] += numerator / denominator;
@@ -140,9 +139,11 @@ public final class Ssim implements QualityMeasure {
       }
     }
 
-    private static void subtractProduct(double[] a, double[] b, double[] from) {
-      for (int i = 0; i < from.length; i++) {
-        from[i] -= a[i] * b[i];
+    /** The squares of a row and its products with another in one sweep. */
+    private static void multiply(double[] a, double[] b, double[] squares, double[] products) {
+      for (int i = 0; i < products.length; i++) {
+        squares[i] = a[i] * a[i];
+        products[i] = a[i] * b[i];
       }
     }
   }

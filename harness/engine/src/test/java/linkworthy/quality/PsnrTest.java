@@ -56,13 +56,16 @@ class PsnrTest extends QualityContractTest {
     assertThat(Psnr.meanSquaredError(doubled, midway)).isEqualTo(4 * midwayLevels);
   }
 
-  @Test
-  void sumsTheLargestErrorsWithoutOverflow() {
-    Picture black = new Picture(512, 512, 16, new int[512 * 512]);
-    int[] samples = new int[512 * 512];
-    Arrays.fill(samples, 65_535);
-    Picture white = new Picture(512, 512, 16, samples);
-    assertThat(Psnr.meanSquaredError(black, white)).isEqualTo(65_535.0 * 65_535.0);
+  /** Odd sizes leave samples beyond the last whole run of sums. */
+  @ParameterizedTest
+  @CsvSource({"8, 512, 512", "12, 601, 403", "15, 512, 511", "16, 512, 512", "16, 3, 1"})
+  void sumsTheLargestErrorsWithoutOverflow(int bitDepth, int width, int height) {
+    int peak = (1 << bitDepth) - 1;
+    Picture black = new Picture(width, height, bitDepth, new int[width * height]);
+    int[] samples = new int[width * height];
+    Arrays.fill(samples, peak);
+    Picture white = new Picture(width, height, bitDepth, samples);
+    assertThat(Psnr.meanSquaredError(black, white)).isEqualTo((double) peak * peak);
     assertThat(new Psnr().against(black).of(white)).isZero();
   }
 
