@@ -111,6 +111,27 @@ public interface Kind {
     }
   }
 
+  /** One of two numbers. */
+  record Numbers(int one, int other) implements Kind {
+    @Override
+    public void check(YamlNode node) {
+      double value = node.number(words());
+      if (value != one && value != other) {
+        throw node.bad(words());
+      }
+    }
+
+    @Override
+    public String words() {
+      return one + " or " + other;
+    }
+
+    @Override
+    public Map<String, Object> schema(Map<String, Object> shared) {
+      return inOrder("enum", List.of(one, other));
+    }
+  }
+
   /** One of some words. */
   record Words(List<String> accepted) implements Kind {
     public Words {

@@ -24,6 +24,7 @@ class KeyGroupTest {
               "plank",
               Key.required("wood", Kind.Words.of("oak", "pine"), "what it is of"),
               Key.optional("count", new Kind.OneOrMore(COUNT), "1", "how many"),
+              Key.optional("sides", new Kind.Numbers(2, 4), "4", "planed"),
               Key.optional("dry", new Kind.Flag(), "`false`", ""),
               Key.optional("label", Kind.Text.line(5), "none", "name"),
               Key.optional("cut", new Kind.WordOr("none", INNER, "none, or a group"), "none", ""),
@@ -40,7 +41,7 @@ class KeyGroupTest {
       strings = {
         "{wood: oak, share: 1}",
         "{wood: pine, count: [1, 9], dry: true, label: 'a b', cut: none, length-m: 0.5}",
-        "{wood: pine, count: 3, cut: {n: 2}, length-m: 6}",
+        "{wood: pine, count: 3, sides: 2.0, cut: {n: 2}, length-m: 6}",
         "{wood: oak, label: 7, share: 1e-9}",
       })
   void acceptsWhatItDescribes(String text) {
@@ -61,6 +62,8 @@ class KeyGroupTest {
         "{wood: oak, length-m: 0.49}|'length-m' is '0.49'; accepted: 0.5 to 6 m",
         "{wood: oak, share: 1, count: []}|'count' is an empty list",
         "{wood: oak, share: 1, count: [1, 10]}|'count[1]' is '10'; accepted: a whole number from 1 to 9",
+        "{wood: oak, share: 1, sides: 3}|'sides' is '3'; accepted: 2 or 4",
+        "{wood: oak, share: 1, sides: '4'}|accepted: 2 or 4",
         "{wood: oak, share: 1, dry: 1}|accepted: true or false",
         "{wood: oak, share: 1, label: abcdef}|one line of up to 5 characters",
         "{wood: oak, share: 1, cut: some}|'cut' is 'some'; accepted: none, or a group",
@@ -110,6 +113,7 @@ class KeyGroupTest {
                 false,
                 "required",
                 List.of("n")));
+    assertThat(new Kind.Numbers(2, 4).schema(shared)).isEqualTo(Map.of("enum", List.of(2, 4)));
     assertThat(SHARE.schema(shared))
         .isEqualTo(Map.of("type", "number", "exclusiveMinimum", 0L, "maximum", 1L));
   }

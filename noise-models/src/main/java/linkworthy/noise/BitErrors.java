@@ -31,8 +31,10 @@ import org.jspecify.annotations.Nullable;
  * and errors within it are independent: another mean burst than 1 is refused.
  *
  * <p>Parameters: {@code mean-burst}, in bits (default 1, at least 1); {@code errors-bad} (default
- * 1/2, at least 1e-6); {@code frame-check}, on or off (default off). With it the link's header and
- * the check are exposed as well; without it only the payload is, its header being taken as sound.
+ * 1/2, at least 1e-6); {@code frame-check}, on or off (default off); {@code check-bits}, its
+ * length, 16 or 32 (default 16; without frame-check another length is refused). With a check the
+ * link's header and the check are exposed as well; without it only the payload is, its header being
+ * taken as sound.
  *
  * @param curve the curve in force, if any
  */
@@ -49,14 +51,28 @@ public record BitErrors(@Nullable ErrorCurve curve) implements NoiseProcess {
   /** Whether frames are checked and dropped when damaged. */
   public static final String FRAME_CHECK = "frame-check";
 
+  /** Length of the frame check, in bits: 16 or 32. */
+  public static final String CHECK_BITS = "check-bits";
+
   private static final String CURVE = "curve";
   private static final double MAX_RATE = 0.5;
   private static final double MIN_ERRORS_BAD = 1e-6;
   private static final double MAX_MEAN_BURST = 1e9;
+  private static final int USUAL_CHECK = 16;
+  private static final int LONG_CHECK = 32;
 
   private static final Map<String, Double> PARAMETERS =
       Collections.unmodifiableMap(
-          new TreeMap<>(Map.of(MEAN_BURST, 1.0, ERRORS_BAD, 0.5, FRAME_CHECK, 0.0)));
+          new TreeMap<>(
+              Map.of(
+                  MEAN_BURST,
+                  1.0,
+                  ERRORS_BAD,
+                  0.5,
+                  FRAME_CHECK,
+                  0.0,
+                  CHECK_BITS,
+                  (double) USUAL_CHECK)));
 
   /** The process without a curve, as the registry has it. */
   public BitErrors() {
@@ -96,6 +112,11 @@ public record BitErrors(@Nullable ErrorCurve curve) implements NoiseProcess {
   }
 
   @Override
+  public Set<String> laterParameters() {
+    return Set.of(CHECK_BITS);
+  }
+
+  @Override
   public Set<String> settingKeys() {
     return Set.of(CURVE);
   }
@@ -123,6 +144,11 @@ public record BitErrors(@Nullable ErrorCurve curve) implements NoiseProcess {
             new Kind.Flag(),
             "the model's",
             "whether frames are checked, and dropped when damaged"),
+        Key.optional(
+            CHECK_BITS,
+            new Kind.Numbers(USUAL_CHECK, LONG_CHECK),
+            "the model's",
+            "bits of the frame check; 32 only where there is one"),
         SeverityChecks.axis(
             BIT_ERROR_RATE, 0, MAX_RATE, "share of bits; up to what the burst allows"),
         SeverityChecks.decibelAxis(
@@ -147,7 +173,7 @@ public record BitErrors(@Nullable ErrorCurve curve) implements NoiseProcess {
   @Override
   public void check(Severity severity, Map<String, Double> parameters, Site site) {
     SeverityChecks.common(this, severity, parameters, site);
-    SeverityChecks.flag(this, parameters, FRAME_CHECK);
+    int unused = checkBits(parameters);
     double limit = limit(parameters);
     if (severity.axis().equals(BIT_ERROR_RATE)) {
       SeverityChecks.inRange(severity.value(), 0, limit, BIT_ERROR_RATE);
@@ -158,6 +184,22 @@ public record BitErrors(@Nullable ErrorCurve curve) implements NoiseProcess {
         throw tooMany(severity, rate, limit);
       }
     }
+  }
+
+  /** The length of the frame check, 0 if there is none, after checking both parameters. */
+  private int checkBits(Map<String, Double> parameters) {
+    boolean checked = SeverityChecks.flag(this, parameters, FRAME_CHECK);
+    double bits = SeverityChecks.parameter(this, parameters, CHECK_BITS);
+    if (bits != USUAL_CHECK && !(checked && bits == LONG_CHECK)) {
+      throw new BadInput(
+          "%s is %s; accepted %s: %s"
+              .formatted(
+                  CHECK_BITS,
+                  bits,
+                  checked ? "with frame-check" : "without frame-check",
+                  checked ? "16.0 or 32.0" : "16.0"));
+    }
+    return checked ? (int) bits : 0;
   }
 
   /** The largest bit-error rate that the parameters allow, after checking them. */
@@ -200,8 +242,7 @@ public record BitErrors(@Nullable ErrorCurve curve) implements NoiseProcess {
         throw tooMany(severity, rate, limit);
       }
     }
-    return new Flips(
-        variance, SeverityChecks.flag(this, parameters, FRAME_CHECK), channel(rate, parameters));
+    return new Flips(variance, checkBits(parameters), channel(rate, parameters));
   }
 
   private Channel channel(double rate, Map<String, Double> parameters) {
@@ -269,7 +310,7 @@ public record BitErrors(@Nullable ErrorCurve curve) implements NoiseProcess {
         : Math.floor(log / StrictMath.log1p(-probability));
   }
 
-  private record Flips(double equivalentNoiseVariance, boolean frameCheck, Channel channel)
+  private record Flips(double equivalentNoiseVariance, int checkBits, Channel channel)
       implements Impairment.OnBits {
     @Override
     public Impairment.Errors errors(UniformRandomProvider random) {

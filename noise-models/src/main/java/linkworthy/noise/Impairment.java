@@ -33,10 +33,10 @@ public sealed interface Impairment {
   /** An impairment that flips bits of packets. */
   non-sealed interface OnBits extends Impairment {
     /**
-     * Whether a receiver checks each frame and drops what fails; if not, damaged packets reach the
-     * decoder.
+     * Bits of the check by which a receiver drops each frame that fails it: 16 or 32, or 0 if there
+     * is none and damaged packets reach the decoder.
      */
-    boolean frameCheck();
+    int checkBits();
 
     /** Opens one realisation. */
     Errors errors(UniformRandomProvider random);

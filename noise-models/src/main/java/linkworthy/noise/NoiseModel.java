@@ -282,6 +282,15 @@ public record NoiseModel(
     return values;
   }
 
+  /** The parameters without {@link NoiseProcess#laterParameters} at their default. */
+  public Map<String, Double> recordedParameters() {
+    Map<String, Double> recorded = new TreeMap<>(parameters);
+    implementation
+        .laterParameters()
+        .forEach(name -> recorded.remove(name, implementation.parameters().get(name)));
+    return recorded;
+  }
+
   /** Id of the noise process. */
   public String process() {
     return implementation.id();
@@ -339,8 +348,8 @@ public record NoiseModel(
     line(text, "process", process());
     line(text, "revision", Integer.toString(implementation.revision()));
     line(text, "acts-on", actsOn.stream().map(Site::id).collect(Collectors.joining(", ")));
-    parameters.forEach(
-        (name, value) -> line(text, "parameters." + name, Double.toHexString(value)));
+    recordedParameters()
+        .forEach((name, value) -> line(text, "parameters." + name, Double.toHexString(value)));
     new TreeMap<>(implementation.settings())
         .forEach(
             (key, value) ->

@@ -40,6 +40,14 @@ public interface NoiseProcess {
     return Set.of();
   }
 
+  /**
+   * Parameters that came after there were records, which must stay as they are: at their default
+   * these are left out of fingerprints and of what a run writes.
+   */
+  default Set<String> laterParameters() {
+    return Set.of();
+  }
+
   /** Keys, besides the common ones, that a model file may have and a study may not set. */
   default Set<String> settingKeys() {
     return Set.of();

@@ -155,11 +155,38 @@ class BitErrorsTest extends NoiseProcessContractTest {
 
   @Test
   void frameCheckIsOnOrOff() {
-    assertThat(at(0.1, Map.of()).frameCheck()).isFalse();
-    assertThat(at(0.1, Map.of("frame-check", 1.0)).frameCheck()).isTrue();
+    assertThat(at(0.1, Map.of()).checkBits()).isZero();
+    assertThat(at(0.1, Map.of("frame-check", 1.0)).checkBits()).isEqualTo(16);
     assertThatThrownBy(() -> at(0.1, Map.of("frame-check", 0.5)))
         .isInstanceOf(BadInput.class)
         .hasMessage("frame-check is 0.5; accepted: 0.0 (off) or 1.0 (on)");
+  }
+
+  @Test
+  void frameCheckHasOneOfTwoLengths() {
+    Map<String, Double> checked = Map.of("frame-check", 1.0, "check-bits", 32.0);
+    assertThat(at(0.1, checked).checkBits()).isEqualTo(32);
+    assertThatThrownBy(() -> at(0.1, Map.of("frame-check", 1.0, "check-bits", 24.0)))
+        .isInstanceOf(BadInput.class)
+        .hasMessage("check-bits is 24.0; accepted with frame-check: 16.0 or 32.0");
+    assertThatThrownBy(() -> at(0.1, Map.of("check-bits", 32.0)))
+        .isInstanceOf(BadInput.class)
+        .hasMessage("check-bits is 32.0; accepted without frame-check: 16.0");
+  }
+
+  /** Both fingerprints recomputed independently in Python (hashlib) from the canonical text. */
+  @Test
+  void theUsualLengthLeavesNoMarkInTheFingerprint() {
+    NoiseModel model = NoiseLibrary.find("radio-oqpsk-2450");
+    assertThat(model.parameters()).containsEntry("check-bits", 16.0);
+    assertThat(model.canonical()).doesNotContain("check-bits");
+    assertThat(model.fingerprint())
+        .isEqualTo("40cf6d63b17bb6fc9f54b71c6862023a776a023c6bd3aee26aac0b220656b43b");
+    NoiseModel longer = model.with(Map.of("check-bits", 32.0));
+    assertThat(longer.canonical()).contains("\nparameters.check-bits: 0x1.0p5\n");
+    assertThat(longer.fingerprint())
+        .isEqualTo("71bd61a8d0f415039181ea32b2f69ad7b5192bfa1663a9da8dc075367a337170");
+    assertThat(longer.with(Map.of("check-bits", 16.0))).isEqualTo(model);
   }
 
   @Test
@@ -211,6 +238,12 @@ class BitErrorsTest extends NoiseProcessContractTest {
     assertRefused(text.replace("curve: dbpsk\n", ""), "'severity[0]' is 'eb-n0-db'; accepted: snr");
     assertRefused(text.replace("eb-n0-db", "sinr-db"), "'severity[0]' is 'sinr-db'; ");
     assertRefused(text.replace("true", "1"), "'parameters.frame-check' is '1'; accepted: true or");
+    assertRefused(
+        text.replace("true}", "true, check-bits: 24}"),
+        "line 6: 'parameters.check-bits' is '24'; accepted: 16 or 32");
+    assertRefused(
+        text.replace("true}", "false, check-bits: 32}"),
+        "check-bits is 32.0; accepted without frame-check: 16.0");
     assertRefused(text.replace("bit-errors", "gaussian"), "line 5: unknown key 'curve'");
   }
 

@@ -34,6 +34,16 @@ class NoiseLibraryTest {
     }
   }
 
+  /** A study leaves them out at the process's default, so the model must have that as well. */
+  @Test
+  void shippedModelsKeepTheDefaultsOfLaterParameters() {
+    for (NoiseModel model : NoiseLibrary.shipped()) {
+      assertThat(model.recordedParameters())
+          .as(model.id())
+          .doesNotContainKeys(model.implementation().laterParameters().toArray(String[]::new));
+    }
+  }
+
   @Test
   void everyCurveHasAModelThatOffersItsRatio() {
     for (ErrorCurve curve : ErrorCurve.values()) {

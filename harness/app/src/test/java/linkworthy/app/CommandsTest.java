@@ -155,7 +155,7 @@ class CommandsTest {
     assertThat(Program.run(folder, "noise", "show", "radio-bpsk").out())
         .contains(
             "curve:       bpsk\n",
-            "parameters:  {errors-bad=0.5, frame-check=true, mean-burst=1.0}\n");
+            "parameters:  {check-bits=16.0, errors-bad=0.5, frame-check=true, mean-burst=1.0}\n");
     assertThat(Program.run(folder, "noise", "show", "stripes").out())
         .contains("parameters:  {columns=false}\n")
         .doesNotContain("curve:");

@@ -233,7 +233,7 @@ public final class StudyWriter {
     tree.put("version", model.version());
     tree.put("process", model.process());
     tree.put("acts-on", model.actsOn().stream().map(Site::id).toList());
-    if (!model.parameters().isEmpty()) {
+    if (!model.recordedParameters().isEmpty()) {
       tree.put("parameters", parameters(model));
     }
     Set<String> files = model.implementation().fileKeys();
@@ -252,7 +252,8 @@ public final class StudyWriter {
   private static Map<String, Object> parameters(NoiseModel model) {
     Set<String> flags = model.implementation().flags();
     Map<String, Object> tree = new LinkedHashMap<>();
-    new TreeMap<>(model.parameters())
+    model
+        .recordedParameters()
         .forEach(
             (name, number) ->
                 tree.put(name, flags.contains(name) ? (Object) (number == 1) : plainValue(number)));

@@ -51,13 +51,14 @@ interface Passage {
   }
 
   /**
-   * Bits are flipped, the lowest of each byte being sent first. With a frame check they are those
-   * of the whole frame, header and check sequence included, and a frame that fails its check is
-   * dropped; without one, payloads arrive as damaged as they are. The realised noise variance is
-   * the share of payload bits flipped, times P(P+2)/3 for samples up to P.
+   * Bits are flipped, the lowest of each byte being sent first. With a frame check (of 16 or 32
+   * bits; 0 for none) they are those of the whole frame, header and check sequence included, and a
+   * frame that fails its check is dropped; without one, payloads arrive as damaged as they are. The
+   * realised noise variance is the share of payload bits flipped, times P(P+2)/3 for samples up to
+   * P.
    */
-  static Passage flipping(Impairment.Errors errors, boolean frameCheck, int headerBytes, int peak) {
-    return () -> new Flipping(errors, frameCheck, headerBytes, peak);
+  static Passage flipping(Impairment.Errors errors, int checkBits, int headerBytes, int peak) {
+    return () -> new Flipping(errors, checkBits, headerBytes, peak);
   }
 
   /** Which transmissions are lost. */
@@ -94,27 +95,27 @@ interface Passage {
   /** Flips bits. */
   final class Flipping implements Crossing {
     private final Impairment.Errors errors;
-    private final boolean frameCheck;
+    private final @Nullable FrameCheck check;
     private final int headerBytes;
     private final int peak;
     private long payloadBits;
     private long flippedBits;
 
-    Flipping(Impairment.Errors errors, boolean frameCheck, int headerBytes, int peak) {
+    Flipping(Impairment.Errors errors, int checkBits, int headerBytes, int peak) {
       this.errors = errors;
-      this.frameCheck = frameCheck;
+      this.check = checkBits == 0 ? null : FrameCheck.of(checkBits);
       this.headerBytes = headerBytes;
       this.peak = peak;
     }
 
     @Override
     public int checkBits() {
-      return frameCheck ? 8 * FrameCheck.BYTES : 0;
+      return check == null ? 0 : 8 * check.bytes();
     }
 
     @Override
     public byte @Nullable [] carry(int index, int node, byte[] payload) {
-      int first = frameCheck ? 8 * headerBytes : 0;
+      int first = check == null ? 0 : 8 * headerBytes;
       int end = first + 8 * payload.length;
       BitSet flipped = errors.flipped(index, end + checkBits());
       payloadBits += 8L * payload.length;
@@ -122,11 +123,11 @@ interface Passage {
       if (flipped.isEmpty()) {
         return payload;
       }
-      if (!frameCheck) {
+      if (check == null) {
         return flip(payload.clone(), flipped);
       }
-      byte[] frame = flip(FrameCheck.frame(headerBytes, payload), flipped);
-      return FrameCheck.passes(frame) ? FrameCheck.payload(headerBytes, frame) : null;
+      byte[] frame = flip(check.frame(headerBytes, payload), flipped);
+      return check.passes(frame) ? check.payload(headerBytes, frame) : null;
     }
 
     private static byte[] flip(byte[] bytes, BitSet flipped) {

@@ -82,7 +82,7 @@ final class UnitRunner {
     if (impairment instanceof Impairment.OnBits onBits) {
       return Passage.flipping(
           onBits.errors(random),
-          onBits.frameCheck(),
+          onBits.checkBits(),
           study.link().headerBytes(),
           subject.picture().peak());
     }

@@ -114,8 +114,11 @@ class NodeProfileTest {
   /**
    * IEEE 802.15.4-2003/2006, clause 6 (from memory): at 250 kbit/s an octet lasts 32 µs and an
    * acknowledgement, 11 octets with preamble and length, 352 µs; the turnaround of 12 symbols lasts
-   * 192 µs, a unit of back-off, 20 symbols, 320 µs, the long interframe space, 40 symbols, 640 µs.
-   * So the longest frame and its acknowledgement take 4256 + 192 + 352 + 640 µs without back-off.
+   * 192 µs, a unit of back-off, 20 symbols, 320 µs, the long interframe space, 40 symbols, 640 µs,
+   * the short one, 12 symbols, 192 µs, after frames of up to 18 octets, 24 with preamble and
+   * length. So the longest frame and its acknowledgement take 4256 + 192 + 352 + 640 µs without
+   * back-off, the longest with a short space 768 + 192 + 352 + 192 µs, and a unit of back-off adds
+   * 320 µs.
    */
   @Test
   void anAcknowledgedPacketTakesItsPausesToo() {
@@ -138,6 +141,15 @@ class NodeProfileTest {
     assertThat(node.airTimeMs(8 * 11, 0, 0)).isCloseTo(0.352, within(1e-12));
     assertThat(node.airTimeMs(8 * (133 + 11), 1, 1)).isCloseTo(5.440, within(1e-12));
     assertThat(node.airTimeMs(8 * 133, 1, 0)).as("not awaited").isCloseTo(4.896, within(1e-12));
+    NodeProfile shortly =
+        NodeProfile.parse(YamlNode.parse("node.yaml", text.replace("gap-us: 640", "gap-us: 192")));
+    assertThat(shortly.airTimeMs(8 * (24 + 11), 1, 1)).isCloseTo(1.504, within(1e-12));
+    assertThat(shortly.airTimeMs(8 * 24, 1, 0)).isCloseTo(0.960, within(1e-12));
+    assertThat(shortly.airTimeMs(0, 1, 0))
+        .as("12 symbols of 16 µs")
+        .isCloseTo(12 * 0.016, within(1e-12));
+    assertThat(node.airTimeMs(0, 1, 0)).as("40 symbols").isCloseTo(40 * 0.016, within(1e-12));
+    assertThat(node.airTimeMs(0, 0, 1)).as("turnaround").isCloseTo(12 * 0.016, within(1e-12));
     String backOff = text.replace("gap-us: 640", "gap-us: 960");
     assertThat(
             NodeProfile.parse(YamlNode.parse("node.yaml", backOff)).airTimeMs(8 * (133 + 11), 1, 1))

@@ -263,6 +263,14 @@ class StudyReaderTest {
             List.of("line 4", "'impairments[0].frame-check' is '1'", "true or false")),
         Arguments.of(
             "noise: gaussian\n    snr-db: 20",
+            "noise: radio-bpsk\n    check-bits: 24\n    snr-db: 20",
+            List.of("line 4", "'impairments[0].check-bits' is '24'", "accepted: 16 or 32")),
+        Arguments.of(
+            "noise: gaussian\n    snr-db: 20",
+            "noise: bit-errors\n    check-bits: 32\n    snr-db: 20",
+            List.of("line 4", "check-bits is 32.0; accepted without frame-check: 16.0")),
+        Arguments.of(
+            "noise: gaussian\n    snr-db: 20",
             "noise: bit-errors\n    curve: bpsk\n    snr-db: 20",
             List.of("line 4", "unknown key 'curve'")),
         Arguments.of(

@@ -210,6 +210,9 @@ class StudyWriterTest {
                   - noise: ./radio.yaml
                     eb-n0-db: 6
                     frame-check: true
+                  - noise: radio-oqpsk-2450
+                    sinr-db: 0
+                    check-bits: 32
                   - noise: stripes
                     columns: true
                     snr-db: 20
@@ -219,10 +222,13 @@ class StudyWriterTest {
     String text = StudyWriter.canonical(study);
     assertThat(text)
         .contains("frame-check: true\n  mean-burst: 1.0\n  eb-n0-db:\n  - 6.0\n")
+        .contains("  check-bits: 32.0\n  errors-bad: 0.5\n  frame-check: true\n")
         .contains("  columns: true\n")
         .contains("- noise: \"trace\"\n");
 
     Map<String, String> files = StudyWriter.modelFiles(study);
+    assertThat(text.split("check-bits", -1)).as("once, where it is not 16").hasSize(2);
+    assertThat(files.values()).noneMatch(content -> content.contains("check-bits"));
     assertThat(files).hasSize(3).containsValue("0\n1\n0\n");
     Path away = Files.createDirectories(folder.resolve("away/models"));
     for (Map.Entry<String, String> entry : files.entrySet()) {

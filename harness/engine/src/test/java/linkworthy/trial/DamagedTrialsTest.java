@@ -118,8 +118,8 @@ class DamagedTrialsTest {
     for (int round = 0; round < Damages.rounds(); round++) {
       Random random = new Random(round);
       Impairment.Errors errors = errors(random);
-      boolean frameCheck = random.nextInt(4) == 0;
-      Passage.Crossing crossing = Passage.flipping(errors, frameCheck, 23, 255).open();
+      int checkBits = random.nextInt(4) == 0 ? 16 : 0;
+      Passage.Crossing crossing = Passage.flipping(errors, checkBits, 23, 255).open();
       Channel.Outcome outcome =
           new Channel(LINK, protections.get(random.nextInt(protections.size())))
               .send(sender.encoding().packets(), crossing);

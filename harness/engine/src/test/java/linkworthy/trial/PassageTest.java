@@ -61,7 +61,7 @@ class PassageTest {
 
   @Test
   void withoutACheckDamagedPacketsArrive() {
-    Delivery delivery = deliver(Passage.flipping(errors(0, 15, 24), false, 23, 255));
+    Delivery delivery = deliver(Passage.flipping(errors(0, 15, 24), 0, 23, 255));
     assertThat(delivery.arrived())
         .containsExactly(
             new byte[] {0, 0}, new byte[] {0, (byte) (2 ^ 0x80), 3}, new byte[] {4, 5, 6});
@@ -74,20 +74,46 @@ class PassageTest {
   @Test
   void withACheckAnyHitDropsTheFrame() {
     for (int hit : new int[] {0, 183, 184, 207, 208, 223}) {
-      Delivery delivery = deliver(Passage.flipping(errors(hit), true, 23, 255));
+      Delivery delivery = deliver(Passage.flipping(errors(hit), 16, 23, 255));
       assertThat(delivery.arrived()).containsExactly(PACKETS.get(0), PACKETS.get(2));
       double flips = hit >= 184 && hit <= 207 ? 1 : 0;
       assertThat(delivery.realisedNoiseVariance()).isCloseTo(flips / 64 * 21845, within(1e-9));
       assertThat(delivery.checkBits()).isEqualTo(3 * 16);
     }
-    assertThat(deliver(Passage.flipping(errors(224), true, 23, 255)).arrived()).isEqualTo(PACKETS);
+    assertThat(deliver(Passage.flipping(errors(224), 16, 23, 255)).arrived()).isEqualTo(PACKETS);
+  }
+
+  /** Check bits 208 to 239. */
+  @Test
+  void aLongerCheckIsCountedAndExposedInFull() {
+    for (int hit : new int[] {0, 207, 208, 224, 239}) {
+      Delivery delivery = deliver(Passage.flipping(errors(hit), 32, 23, 255));
+      assertThat(delivery.arrived()).containsExactly(PACKETS.get(0), PACKETS.get(2));
+      assertThat(delivery.checkBits()).isEqualTo(3 * 32);
+    }
+    assertThat(deliver(Passage.flipping(errors(240), 32, 23, 255)).arrived()).isEqualTo(PACKETS);
   }
 
   /** x^16 + x^12 + x^5 + 1 divides the pattern 0, 4, 11, 16 of sending order. */
   @Test
   void whatTheCheckDoesNotFindReachesTheDecoder() {
-    Delivery delivery = deliver(Passage.flipping(errors(0, 4, 11, 16), true, 0, 255));
+    Delivery delivery = deliver(Passage.flipping(errors(0, 4, 11, 16), 16, 0, 255));
     assertThat(delivery.arrived())
         .containsExactly(new byte[] {0, 0}, new byte[] {0x10, 0x0A, 2}, new byte[] {4, 5, 6});
+  }
+
+  /**
+   * The polynomial of CRC-32, x^32 + x^26 + x^23 + x^22 + x^16 + x^12 + x^11 + x^10 + x^8 + x^7 +
+   * x^5 + x^4 + x^2 + x + 1 (IEEE 802.3), divides itself: exponent e is bit 32 - e of sending
+   * order. The check of 16 bits finds the same damage.
+   */
+  @Test
+  void whatALongerCheckDoesNotFindReachesTheDecoder() {
+    int[] polynomial = {0, 6, 9, 10, 16, 20, 21, 22, 24, 25, 27, 28, 30, 31, 32};
+    assertThat(deliver(Passage.flipping(errors(polynomial), 32, 0, 255)).arrived())
+        .containsExactly(
+            new byte[] {0, 0}, new byte[] {1 ^ 0x41, 2 ^ 0x06, 3 ^ 0x71}, new byte[] {4, 5, 6});
+    assertThat(deliver(Passage.flipping(errors(polynomial), 16, 0, 255)).arrived())
+        .containsExactly(PACKETS.get(0), PACKETS.get(2));
   }
 }
