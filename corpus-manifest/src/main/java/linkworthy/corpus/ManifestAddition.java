@@ -53,12 +53,16 @@ public record ManifestAddition(String licence, String attribution, String set, S
   /**
    * Adds a folder's pictures. Without one that can be added nothing is written.
    *
-   * @throws BadInput if the folder does not exist or is outside the manifest's, the manifest cannot
-   *     be used, or a text is not as described
+   * @throws BadInput if the folder does not exist, is empty or is outside the manifest's, the
+   *     manifest cannot be used, or a text is not as described
    * @throws Unavailable if the manifest cannot be written
    */
   public Result add(Path manifest, Path folder) {
-    List<Path> files = PictureFile.in(folder);
+    List<Path> files =
+        PictureFile.in(folder).stream().filter(file -> !isManifest(file, manifest)).toList();
+    if (files.isEmpty()) {
+      throw new BadInput(folder + " has no files; accepted: a folder of pictures");
+    }
     if (!Files.isDirectory(folderOf(manifest))) {
       throw new BadInput("the folder of " + manifest + " does not exist");
     }
@@ -77,9 +81,7 @@ public record ManifestAddition(String licence, String attribution, String set, S
     Set<String> ids = new HashSet<>();
     entries.forEach(entry -> ids.add(entry.id()));
     for (Path file : files) {
-      if (!isManifest(file, manifest)) {
-        add(base.relativize(real.resolve(name(file))), file, entries, ids, result);
-      }
+      add(base.relativize(real.resolve(name(file))), file, entries, ids, result);
     }
     if (!result.added.isEmpty()) {
       entries.addAll(result.added);

@@ -109,6 +109,19 @@ class ReportRendererTest {
   }
 
   @Test
+  void everyLinkOfTheHeadLeadsToASectionOfItsOwn() {
+    for (ReportPage page : List.of(SamplePages.full(), SamplePages.rich(), SamplePages.sketch())) {
+      RenderedPage shown = RenderedPage.of(page);
+      List<String> links =
+          shown.texts("//nav[@id='links']/a/@href").stream().map(a -> a.substring(1)).toList();
+      assertThat(links).doesNotHaveDuplicates();
+      assertThat(shown.texts("//section/@id"))
+          .filteredOn(links::contains)
+          .containsExactlyInAnyOrderElementsOf(links);
+    }
+  }
+
+  @Test
   void provenanceCreditsAndModelsAreListed() {
     RenderedPage shown = RenderedPage.of(SamplePages.full());
     String provenance = shown.text("//section[@id='provenance']");

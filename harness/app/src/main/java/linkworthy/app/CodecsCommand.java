@@ -22,14 +22,17 @@ final class CodecsCommand implements Runnable {
         protect: none | a group of keys | a list of groups for classes of their own; it goes before
                  the protect of the study (none). A group has one or more of
                  repeat:       copies of each packet in all, 1 to 16 (1)
-                 reed-solomon: {n, k, depth}: n - k parity packets for every k, symbols of a code
-                               word depth packets apart (none; depth 1)
+                 reed-solomon: {n, k, depth, corrects}: n - k parity packets for every k, symbols
+                               of a code word depth packets apart (none; depth 1); corrects
+                               erasures or errors: missing packets alone, or damaged ones too
+                               (erasures)
+                 hamming:      {depth}: the code (7,4) on the bits of every transmission (none)
                  retransmit:   further tries for a packet that did not arrive, 0 to 255 (0)
                  and may have
                  ack-bytes:    length of an acknowledgement, with retransmit (5)
                  only:         classes of packets: header, basis, first, rest (all four)
       Sent, and counted: every copy, parity packet, further try and acknowledgement; with
-      reed-solomon 1, 4 or 5 bytes in front of each payload.""";
+      reed-solomon 1, 4 or 5 bytes in front of each payload, with hamming 7 bits for every 4.""";
 
   private final Surroundings surroundings;
 

@@ -33,7 +33,9 @@ final class CorpusCommand {
       names = "--manifest",
       paramLabel = "FILE",
       scope = ScopeType.INHERIT,
-      description = "A manifest of your own (default: the shipped pictures).")
+      description =
+          "A manifest of your own (default: the shipped pictures; for add, manifest.csv in the"
+              + " folder).")
   private @Nullable Path file;
 
   CorpusCommand(Surroundings surroundings) {
@@ -89,7 +91,10 @@ final class CorpusCommand {
         .out()
         .println(
             findings.isEmpty()
-                ? pictures + " pictures checked; all are what the manifest says"
+                ? (pictures == 1
+                        ? "1 picture checked; it is"
+                        : pictures + " pictures checked; all are")
+                    + " what the manifest says"
                 : findings.size() + " of " + pictures + " pictures are not what the manifest says");
     return findings.isEmpty() ? Main.DONE : Main.NO;
   }
@@ -98,7 +103,7 @@ final class CorpusCommand {
       name = "add",
       description = {
         "Add the pictures of a folder to a manifest, which is made if there is none. The manifest",
-        "stands in the folder or above it (default: manifest.csv in the folder)."
+        "stands in the folder or above it."
       },
       mixinStandardHelpOptions = true,
       footer = {

@@ -95,7 +95,9 @@ final class DriftCommand implements Callable<Integer> {
     }
     if (folders.size() != 2) {
       throw new BadInput(
-          "drift got " + folders.size() + " folders; accepted: OLD and NEW, or --over FOLDER");
+          "drift got "
+              + (folders.size() == 1 ? "1 folder" : folders.size() + " folders")
+              + "; accepted: OLD and NEW, or --over FOLDER");
     }
     return drift(ResultsFolder.open(folders.get(0)), ResultsFolder.open(folders.get(1)));
   }
@@ -162,7 +164,8 @@ final class DriftCommand implements Callable<Integer> {
     List<ComparisonPage.Table> tables = new ArrayList<>(List.of(DriftWords.runs(history, steps)));
     tables.addAll(DriftWords.tables(history));
     String study = history.runs().get(0).run().study();
-    String answer = history.runs().size() + " complete runs of " + study;
+    int runs = history.runs().size();
+    String answer = runs + (runs == 1 ? " complete run of " : " complete runs of ") + study;
     List<String> remarks = history.leftOut().stream().map(why -> "left out: " + why).toList();
     print(answer, tables);
     remarks.forEach(surroundings.out()::println);

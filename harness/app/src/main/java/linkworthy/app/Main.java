@@ -96,7 +96,8 @@ public final class Main {
 
   private static int badUsage(Surroundings surroundings, ParameterException e) {
     String command = e.getCommandLine().getCommandSpec().qualifiedName();
-    StringBuilder line = new StringBuilder(oneLine(String.valueOf(e.getMessage())));
+    StringBuilder line =
+        new StringBuilder(oneLine(String.valueOf(e.getMessage())).replaceFirst("^Error: ", ""));
     if (line.toString().equals(NO_SUBCOMMAND)) {
       line.append("; accepted: ")
           .append(String.join(", ", new TreeSet<>(e.getCommandLine().getSubcommands().keySet())));

@@ -107,6 +107,9 @@ final class Recheck {
     if (!study.name().equals(run.study()) || !study.purpose().equals(run.purpose())) {
       findings.mismatch("name or purpose in study.yaml are not those in run.json");
     }
+    if (study.seed() != run.seed()) {
+      findings.mismatch("seed in run.json is " + run.seed() + ", in study.yaml " + study.seed());
+    }
     sameText("study.yaml", StudyWriter.canonical(study));
     if (findings.stands()) {
       findings.verified("study", "study.yaml has the fingerprint of the run");
@@ -214,7 +217,20 @@ final class Recheck {
               + manifest.fingerprint()
               + "; the pictures used are the same");
     } else {
+      checkCredits(used, byId);
       findings.verified("corpus", "the manifest has the fingerprint of the run");
+    }
+  }
+
+  private void checkCredits(List<RunRecord.PictureUsed> used, Map<String, ManifestEntry> byId) {
+    for (RunRecord.PictureUsed picture : used) {
+      ManifestEntry entry = byId.get(picture.id());
+      if (entry != null && !picture.equals(RunRecord.PictureUsed.of(entry))) {
+        findings.mismatch(
+            "picture '"
+                + picture.id()
+                + "' has another size, licence or credit in run.json than in the manifest");
+      }
     }
   }
 
@@ -238,6 +254,10 @@ final class Recheck {
       findings.notVerified("rows", "the figures of the other " + (rows - sampled) + " trials");
     }
     findings.notVerified("timings.csv", "measured times, which no rerun repeats");
+    findings.notVerified("run.json", "start, end, Java and system, which no rerun repeats");
+    if (Files.exists(results.path().resolve("report.html"))) {
+      findings.notVerified("report.html", "'report' makes it again from the record");
+    }
   }
 
   /** Reads all rows: each must be the trial that the plan has at its place. */

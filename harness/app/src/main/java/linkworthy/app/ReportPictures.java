@@ -86,7 +86,8 @@ final class ReportPictures {
     return List.of(
         "Pictures, for each noise: of the mean PSNR that "
             + reference
-            + " (the reference, the codec that the answer names) gives them at the middle severity,"
+            + " (the reference: the codec that the answer names or, where needs are met by none,"
+            + " that of the answer without needs) gives them at the middle severity,"
             + " the median one (typical; of an even number the lower), the worst and the best.",
         "Codecs: the one with the best mean PSNR over the noise, the cheapest that no other one"
             + " dominates there, and the reference; where these are fewer than three, the second"

@@ -8,6 +8,7 @@ import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.Comparator;
 import java.util.List;
+import java.util.concurrent.atomic.AtomicReference;
 import java.util.stream.IntStream;
 import java.util.stream.Stream;
 import linkworthy.codec.PluginFolder;
@@ -26,6 +27,7 @@ import linkworthy.trial.Rehearsal;
 import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 import linkworthy.trial.WorkUnit;
+import org.jspecify.annotations.Nullable;
 
 /**
  * What the record and the report of a plan take in time and disk. For the pictures of a rehearsal
@@ -82,27 +84,34 @@ final class SampleRecord {
                 plan.trials(),
                 surroundings.clock())
             .withPlugins(plugins);
+    AtomicReference<@Nullable Path> made = new AtomicReference<>();
+    Thread onSignal = new Thread(() -> removeOnSignal(made.get()), "remove");
+    try {
+      Runtime.getRuntime().addShutdownHook(onSignal);
+    } catch (IllegalStateException e) {
+      throw new Unavailable("stopped", e);
+    }
     try {
       Path folder = Files.createTempDirectory("linkworthy-dry-run");
-      Thread onSignal = new Thread(() -> removeOnSignal(folder), "remove");
-      Runtime.getRuntime().addShutdownHook(onSignal);
+      made.set(folder);
       try {
         sample.measure(folder, begun, surroundings);
       } finally {
         if (Files.exists(folder)) {
           remove(folder);
         }
-        Assessment.release(onSignal);
       }
     } catch (IOException | UncheckedIOException e) {
       throw new Unavailable("cannot write a temporary folder: " + e.getMessage(), e);
+    } finally {
+      Assessment.release(onSignal);
     }
     return sample;
   }
 
   /** The record may still be growing. */
-  private static void removeOnSignal(Path folder) {
-    for (int i = 0; i < MOST_TRIES && Files.exists(folder); i++) {
+  private static void removeOnSignal(@Nullable Path folder) {
+    for (int i = 0; folder != null && i < MOST_TRIES && Files.exists(folder); i++) {
       try {
         remove(folder);
       } catch (UncheckedIOException e) {

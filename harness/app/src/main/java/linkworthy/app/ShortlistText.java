@@ -260,7 +260,7 @@ final class ShortlistText {
     long undecided = count(Verdict.UNDECIDED);
     return "No codec is shown to meet all needs: "
         + count(Verdict.FAILS)
-        + " fail, "
+        + (count(Verdict.FAILS) == 1 ? " fails, " : " fail, ")
         + undecided
         + " undecided"
         + (undecided == 0 ? "." : ", the cheapest of them " + firstUndecided() + ".");

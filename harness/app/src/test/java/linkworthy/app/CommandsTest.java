@@ -140,7 +140,10 @@ class CommandsTest {
         .contains("id:          burst-loss\n", "mean-burst", "source: ")
         .containsPattern("fingerprint: [0-9a-f]{64}\n");
     assertThat(Program.run(folder, "codecs").out())
-        .contains("transform: mean | dct | ", "keep:", "step:", "protect: none | ");
+        .contains("transform: mean | dct | ", "keep:", "step:", "protect: none | ")
+        .contains("reed-solomon: {n, k, depth, corrects}", "hamming:      {depth}");
+    assertThat(Program.run(folder, "noise", "fit").err())
+        .startsWith("linkworthy: Missing required argument");
   }
 
   @Test

@@ -50,10 +50,12 @@ class CorpusChangesTest {
 
   @Test
   void wrongTextsAndFoldersAreRefusedInOneLine() throws IOException {
+    Path empty = Files.createDirectories(folder.resolve("empty"));
     Map<String, String> before = Program.contents(folder);
     for (List<String> wrong :
         List.of(
             List.of("add", "nowhere", "nowhere does not exist"),
+            List.of("add", empty.toString(), empty + " has no files; accepted: a folder of"),
             List.of("add", folder.toString(), "--licence", "CC-BY-NC-4.0", "--licence has"),
             List.of("add", folder.toString(), "--set", " ", "--set is"),
             List.of("fetch", "accepted: --manifest FILE"))) {

@@ -335,13 +335,19 @@ class DriftCommandTest {
   }
 
   @Test
+  void aHistoryOfOneRunSaysSo() {
+    assertThat(Program.run(folder, "drift", "--over", first.toString()).out())
+        .startsWith("1 complete run of small\n");
+  }
+
+  @Test
   void whatIsNoRecordIsRefused() throws IOException {
     String old = first.toString();
     Path empty = Files.createDirectory(folder.resolve("empty"));
     assertRefused(2, List.of("does not exist", "results folder"), "drift", old, old + "/no");
     assertRefused(2, List.of("has no run.json"), "drift", old, empty.toString());
     assertRefused(2, List.of("is no folder"), "drift", old + "/run.json", old);
-    assertRefused(2, List.of("1 folders", "OLD and NEW"), "drift", old);
+    assertRefused(2, List.of("1 folder;", "OLD and NEW"), "drift", old);
     assertRefused(2, List.of("0 folders", "--over FOLDER"), "drift");
     assertRefused(2, List.of("--over goes with"), "drift", old, old, "--over", old);
     assertRefused(2, List.of("no sound and complete run"), "drift", "--over", empty.toString());

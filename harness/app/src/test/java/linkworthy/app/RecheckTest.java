@@ -92,7 +92,9 @@ class RecheckTest {
             "verified      order: each of the 90 rows",
             "verified      cells:",
             "verified      rows: 90 of 90 trials repeated, equal bit for bit",
-            "not verified  timings.csv")
+            "not verified  timings.csv",
+            "not verified  run.json: start, end, Java and system",
+            "not verified  report.html: 'report' makes it again from the record")
         .endsWith("the record stands, as far as it was verified\n")
         .doesNotContain("chance");
     assertThat(outcome.code()).isZero();
@@ -336,6 +338,21 @@ class RecheckTest {
     Outcome outcome = recheck(results, "--sample", "1", "--seed", "1");
     assertThat(outcome.code()).isEqualTo(1);
     assertThat(outcome.out()).contains("MISMATCH      trials.csv, line 31: trial recorded");
+  }
+
+  /** What a report says of seed and pictures is read from run.json. */
+  @Test
+  void aSeedOrACreditThatRunJsonAloneHasIsFound() throws IOException {
+    Path results = copy();
+    Path json = results.resolve("run.json");
+    change(json, text -> text.replace("\"seed\" : 7", "\"seed\" : 8"));
+    assertMismatch(results, "MISMATCH      seed in run.json is 8, in study.yaml 7");
+    change(json, text -> text.replace("\"seed\" : 8", "\"seed\" : 7"));
+    change(json, text -> text.replace("Photograph by", "Picture by"));
+    assertMismatch(
+        results,
+        "MISMATCH      picture 'cat' has another size, licence or credit in run.json than in the"
+            + " manifest");
   }
 
   @Test

@@ -51,10 +51,13 @@ public record NodeProfile(
     double turnaroundMicroseconds) {
   private static final String ID = "[a-z][a-z0-9-]{0,63}";
   private static final String FOLDER = "/linkworthy/noise/library/nodes/";
-  private static final Kind.Real NOT_NEGATIVE =
-      Kind.Real.from(0, Double.MAX_VALUE, "a finite number of at least 0");
+
+  /** No node comes near it, and no cost of a trial grows from it beyond what a double holds. */
+  private static final double MOST = 1e12;
+
+  private static final Kind.Real NOT_NEGATIVE = Kind.Real.from(0, MOST, "a number from 0 to 1e12");
   private static final Kind.Real POSITIVE =
-      Kind.Real.above(0, Double.MAX_VALUE, "a finite number above 0");
+      Kind.Real.from(1 / MOST, MOST, "a number from 1e-12 to 1e12");
 
   /** What a profile file holds. */
   public static final KeyGroup KEYS =

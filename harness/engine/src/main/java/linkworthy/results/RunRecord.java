@@ -112,7 +112,8 @@ public record RunRecord(
       String attribution,
       String source,
       String sha256) {
-    static PictureUsed of(ManifestEntry entry) {
+    /** What a record says of a picture of the manifest. */
+    public static PictureUsed of(ManifestEntry entry) {
       return new PictureUsed(
           entry.id(),
           entry.set(),

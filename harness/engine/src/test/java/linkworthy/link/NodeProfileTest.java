@@ -84,10 +84,10 @@ class NodeProfileTest {
   @CsvSource(
       delimiter = '|',
       value = {
-        "electronics-nj: -1, near-pj-per-m2: 1, far-pj-per-m4: 1, distance-m: 1 | at least 0",
-        "electronics-nj: 1, near-pj-per-m2: 0, far-pj-per-m4: 1, distance-m: 1 | above 0",
-        "electronics-nj: 1, near-pj-per-m2: 1, far-pj-per-m4: 0, distance-m: 1 | above 0",
-        "electronics-nj: 1, near-pj-per-m2: 1, far-pj-per-m4: 1, distance-m: .nan | at least 0",
+        "electronics-nj: -1, near-pj-per-m2: 1, far-pj-per-m4: 1, distance-m: 1 | 0 to 1e12",
+        "electronics-nj: 1, near-pj-per-m2: 0, far-pj-per-m4: 1, distance-m: 1 | 1e-12 to 1e12",
+        "electronics-nj: 1, near-pj-per-m2: 1, far-pj-per-m4: 0, distance-m: 1 | 1e-12 to 1e12",
+        "electronics-nj: 1, near-pj-per-m2: 1, far-pj-per-m4: 1, distance-m: .nan | 0 to 1e12",
         "electronics-nj: 1, near-pj-per-m2: 1, far-pj-per-m4: 1 | missing key 'distance-m'",
         "electronics-nj: 1, near-pj-per-m2: 1, far-pj-per-m4: 1, distance: 1 | 'distance-m'"
       })
@@ -212,9 +212,11 @@ class NodeProfileTest {
   @CsvSource(
       delimiter = '|',
       value = {
-        "mac-nj: 5 | mac-nj: -5 | at least 0",
-        "ram-kib: 64 | ram-kib: 0 | above 0",
-        "battery-j: 9 | battery-j: .inf | above 0",
+        "mac-nj: 5 | mac-nj: -5 | 0 to 1e12",
+        "ram-kib: 64 | ram-kib: 0 | 1e-12 to 1e12",
+        "battery-j: 9 | battery-j: .inf | 1e-12 to 1e12",
+        "sleep-mw: 0 | sleep-mw: 1e308 | 0 to 1e12",
+        "kbit-per-second: 250 | kbit-per-second: 1e-308 | 1e-12 to 1e12",
         "id: n | id: N! | lower-case",
         "mac-nj: 5 | mac-njj: 5 | did you mean 'mac-nj'"
       })

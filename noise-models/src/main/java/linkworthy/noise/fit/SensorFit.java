@@ -103,7 +103,8 @@ public record SensorFit(
 
   /**
    * Half the mean squared difference of neighbouring frames over the mean variance of the frames:
-   * about the noise's share for one scene, about 1 or more for different scenes or flat ones.
+   * about the noise's share for one scene, about 1 or more for different scenes or flat ones, 0 for
+   * equal frames.
    */
   public static double difference(List<Picture> frames) {
     double squares = 0;
@@ -119,6 +120,9 @@ public record SensorFit(
       variance += frames.get(i - 1).variance();
     }
     double mean = variance / frames.size();
+    if (squares == 0) {
+      return 0;
+    }
     return mean == 0 ? 1 : squares / (frames.size() - 1) / mean;
   }
 
@@ -131,10 +135,8 @@ public record SensorFit(
   public static SensorFit of(List<Picture> frames) {
     if (frames.size() < 2 || !sameShape(frames)) {
       throw new BadInput(
-          frames.size()
-              + " frames of "
-              + (frames.size() > 1 ? "different" : "one")
-              + " size; accepted: two or more of equal size and depth");
+          (frames.size() > 1 ? frames.size() + " frames of different size" : "a single frame")
+              + "; accepted: two or more of equal size and depth");
     }
     List<Tally> levels = levels(frames);
     if (levels.isEmpty()) {

@@ -200,6 +200,25 @@ class SensorFitTest {
     Files.write(folder.resolve(name), all);
   }
 
+  /** They are one scene, not different ones, though they have no variance to compare with. */
+  @Test
+  void equalFlatFramesAreNotTakenForDifferentScenes() throws IOException {
+    Picture flat = new Picture(16, 16, 8, IntStream.range(0, 256).map(i -> 99).toArray());
+    write("a.pgm", flat);
+    write("b.pgm", flat);
+    assertThatThrownBy(() -> PicturesFit.of(folder, PicturesFit.Kind.TOLD_BY_PICTURES))
+        .isInstanceOf(BadInput.class)
+        .hasMessageEndingWith(
+            "the frames are equal, sample by sample; accepted: frames with noise");
+  }
+
+  @Test
+  void oneFrameIsNotRepeated() {
+    assertThatThrownBy(() -> SensorFit.of(List.of(new Picture(16, 16, 8, new int[256]))))
+        .isInstanceOf(BadInput.class)
+        .hasMessage("a single frame; accepted: two or more of equal size and depth");
+  }
+
   @Test
   void repeatedFramesAreToldFromDifferentScenes() throws IOException {
     List<Picture> frames = new ArrayList<>(frames(3, 0.3, 2, 1));
