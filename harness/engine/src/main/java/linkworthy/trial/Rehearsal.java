@@ -9,7 +9,6 @@ import java.util.Map;
 import java.util.TreeMap;
 import java.util.concurrent.Callable;
 import java.util.concurrent.ConcurrentHashMap;
-import java.util.concurrent.ExecutionException;
 import java.util.concurrent.ExecutorService;
 import java.util.concurrent.Executors;
 import java.util.concurrent.Future;
@@ -17,7 +16,6 @@ import java.util.concurrent.atomic.AtomicLong;
 import java.util.stream.IntStream;
 import java.util.stream.Stream;
 import linkworthy.corpus.ManifestEntry;
-import linkworthy.input.Unavailable;
 import linkworthy.noise.SignalStatistics;
 import linkworthy.study.PictureChoice;
 
@@ -171,21 +169,10 @@ public final class Rehearsal {
         running.add(executor.submit(task));
       }
       for (Future<List<Run>> each : running) {
-        List<Run> of = each.get();
+        List<Run> of = Awaited.result(each);
         runs.addAll(of);
         late.addAll(of.size() < 2 * warm.length ? of : of.subList(of.size() / 2, of.size()));
       }
-    } catch (InterruptedException e) {
-      Thread.currentThread().interrupt();
-      throw new Unavailable("interrupted", e);
-    } catch (ExecutionException e) {
-      if (e.getCause() instanceof RuntimeException known) {
-        throw known;
-      }
-      if (e.getCause() instanceof Error serious) {
-        throw serious;
-      }
-      throw new IllegalStateException(e.getCause());
     } finally {
       executor.shutdownNow();
     }
