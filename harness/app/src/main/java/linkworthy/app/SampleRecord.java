@@ -74,14 +74,7 @@ final class SampleRecord {
       Surroundings surroundings, Plan plan, List<PluginFolder.Jar> plugins, Rehearsal rehearsal) {
     SampleRecord sample = new SampleRecord(plan, rehearsal);
     RunRecord begun =
-        RunRecord.begin(
-                plan.study(),
-                Version.text(),
-                plan.manifest().fingerprint(),
-                plan.pictures(),
-                plan.trials(),
-                surroundings.clock())
-            .withPlugins(plugins);
+        RunRecord.begin(plan, Version.text(), surroundings.clock()).withPlugins(plugins);
     try {
       Path folder = Files.createTempDirectory("linkworthy-dry-run");
       Thread onSignal = new Thread(() -> removeOnSignal(folder), "remove");

@@ -288,13 +288,7 @@ public final class ScaleFigures {
   }
 
   private RunRecord begin() {
-    return RunRecord.begin(
-        plan.study(),
-        "scale",
-        plan.manifest().fingerprint(),
-        plan.pictures(),
-        plan.trials(),
-        Clock.systemUTC());
+    return RunRecord.begin(plan, "scale", Clock.systemUTC());
   }
 
   private void localRun() {
