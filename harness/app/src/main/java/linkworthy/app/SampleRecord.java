@@ -5,7 +5,6 @@ import java.io.UncheckedIOException;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
-import java.util.ArrayList;
 import java.util.Comparator;
 import java.util.List;
 import java.util.stream.IntStream;
@@ -158,8 +157,9 @@ final class SampleRecord {
     for (int picture : pictures) {
       for (int condition = -1; condition < plan.conditions().size(); condition++) {
         for (int replicate = 0; replicate < (condition < 0 ? 1 : replicates); replicate++) {
-          List<Trial> trials = trials(picture, condition, replicate);
-          List<Timing> timings = timings(picture, condition, trials);
+          WorkUnit unit = plan.unit(picture, condition, replicate);
+          List<Trial> trials = trials(unit, condition);
+          List<Timing> timings = timings(unit, condition);
           long before = bytesOfTables(writer.path());
           long start = System.nanoTime();
           writer.append(trials, timings);
@@ -203,73 +203,26 @@ final class SampleRecord {
     return last;
   }
 
-  /** The rows of a replicate. */
-  private List<Trial> trials(int picture, int condition, int replicate) {
-    List<Trial> like = rehearsal.trials(picture, condition);
-    WorkUnit.Condition at = condition < 0 ? null : plan.conditions().get(condition);
-    boolean same =
-        replicate == 0
-            && like.get(0).picture().equals(plan.pictures().get(picture).id())
-            && (at == null
-                ? like.get(0).axis().isEmpty()
-                : at.severity().axis().equals(like.get(0).axis())
-                    && at.severity().value() == like.get(0).severity()
-                    && at.impairment().label().equals(like.get(0).impairment()));
-    if (same) {
+  /** The rows of a unit: those of the rehearsal, or others like them. */
+  private List<Trial> trials(WorkUnit unit, int condition) {
+    List<Trial> like = rehearsal.trials(unit.picture(), condition);
+    Trial first = like.get(0);
+    if (unit.replicate() == 0
+        && unit.entry().id().equals(first.picture())
+        && unit.axis().equals(first.axis())
+        && Double.compare(unit.severity(), first.severity()) == 0) {
       return like;
     }
-    List<Trial> rows = new ArrayList<>();
-    for (Trial trial : like) {
-      rows.add(moved(trial, picture, condition, replicate));
-    }
-    return rows;
+    double variance = condition < 0 ? 0 : rehearsal.equivalentNoiseVariance(condition);
+    double little = 1e-4 * (1 + condition % 7 + unit.replicate()) / 3;
+    return like.stream()
+        .map(trial -> trial.movedTo(unit, SOME_ID, variance, trial.psnrDb() + little))
+        .toList();
   }
 
-  private Trial moved(Trial like, int picture, int condition, int replicate) {
-    WorkUnit.Condition at = condition < 0 ? null : plan.conditions().get(condition);
-    double little = 1e-4 * (1 + condition % 7 + replicate) / 3;
-    return new Trial(
-        SOME_ID,
-        plan.pictures().get(picture).id(),
-        at == null ? like.impairment() : at.impairment().label(),
-        at == null ? "" : at.impairment().site().id(),
-        at == null ? "" : at.severity().axis(),
-        at == null ? Double.NaN : at.severity().value(),
-        at == null ? 0 : rehearsal.equivalentNoiseVariance(condition),
-        like.realisedNoiseVariance(),
-        like.snrDb(),
-        like.codec(),
-        like.transform(),
-        like.over(),
-        like.keep(),
-        like.step(),
-        replicate,
-        like.mse(),
-        like.psnrDb() + little,
-        like.ssim(),
-        like.payloadBits(),
-        like.sentBits(),
-        like.bitsPerPixel(),
-        like.packetsSent(),
-        like.packetsLost(),
-        like.outage(),
-        like.failure(),
-        like.further());
-  }
-
-  private List<Timing> timings(int picture, int condition, List<Trial> trials) {
-    List<Timing> like = rehearsal.timings(picture, condition);
-    return IntStream.range(0, trials.size())
-        .mapToObj(
-            i ->
-                new Timing(
-                    trials.get(i).picture(),
-                    trials.get(i).impairment(),
-                    trials.get(i).severity(),
-                    trials.get(i).replicate(),
-                    trials.get(i).codec(),
-                    like.get(i).encodeMs(),
-                    like.get(i).decodeMs()))
+  private List<Timing> timings(WorkUnit unit, int condition) {
+    return rehearsal.timings(unit.picture(), condition).stream()
+        .map(like -> Timing.of(unit, like.codec(), like.encodeMs(), like.decodeMs()))
         .toList();
   }
 

@@ -206,7 +206,7 @@ public final class Rehearsal {
       begun.incrementAndGet();
       WorkUnit of =
           plan.unit(
-              pictures.get(unit / conditions.size()), conditions.get(unit % conditions.size()));
+              pictures.get(unit / conditions.size()), conditions.get(unit % conditions.size()), 0);
       UnitRunner.Rows found = new UnitRunner(plan.study(), subjects.get(of), of).run();
       done.add(new Run(unit, now, (System.nanoTime() - now) / 1e9));
       rows.putIfAbsent(unit, found);
