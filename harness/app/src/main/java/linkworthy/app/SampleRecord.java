@@ -5,7 +5,6 @@ import java.io.UncheckedIOException;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
-import java.util.Comparator;
 import java.util.List;
 import java.util.stream.IntStream;
 import java.util.stream.Stream;
@@ -43,7 +42,6 @@ final class SampleRecord {
   private static final double NEWEST = 0.2;
 
   private static final int REPLICATES = 2;
-  private static final int MOST_TRIES = 100;
   private static final String SOME_ID = "0123456789abcdef";
 
   private final Plan plan;
@@ -74,43 +72,12 @@ final class SampleRecord {
     SampleRecord sample = new SampleRecord(plan, rehearsal);
     RunRecord begun =
         RunRecord.begin(plan, Version.text(), surroundings.clock()).withPlugins(plugins);
-    try {
-      Path folder = Files.createTempDirectory("linkworthy-dry-run");
-      Thread onSignal = new Thread(() -> removeOnSignal(folder), "remove");
-      Runtime.getRuntime().addShutdownHook(onSignal);
-      try {
-        sample.measure(folder, begun, surroundings);
-      } finally {
-        if (Files.exists(folder)) {
-          remove(folder);
-        }
-        Assessment.release(onSignal);
-      }
+    try (TemporaryFolder folder = new TemporaryFolder("linkworthy-dry-run")) {
+      sample.measure(folder.path(), begun, surroundings);
     } catch (IOException | UncheckedIOException e) {
       throw new Unavailable("cannot write a temporary folder: " + e.getMessage(), e);
     }
     return sample;
-  }
-
-  /** The record may still be growing. */
-  private static void removeOnSignal(Path folder) {
-    for (int i = 0; i < MOST_TRIES && Files.exists(folder); i++) {
-      try {
-        remove(folder);
-      } catch (UncheckedIOException e) {
-        Thread.onSpinWait();
-      }
-    }
-  }
-
-  private static void remove(Path folder) {
-    try (Stream<Path> paths = Files.walk(folder)) {
-      for (Path path : paths.sorted(Comparator.reverseOrder()).toList()) {
-        Files.deleteIfExists(path);
-      }
-    } catch (IOException e) {
-      throw new UncheckedIOException(e);
-    }
   }
 
   private void measure(Path folder, RunRecord begun, Surroundings surroundings) throws IOException {
