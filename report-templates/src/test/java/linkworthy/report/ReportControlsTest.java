@@ -3,7 +3,6 @@ package linkworthy.report;
 import static org.assertj.core.api.Assertions.assertThat;
 
 import java.io.IOException;
-import java.io.InputStream;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
@@ -31,8 +30,6 @@ import org.openqa.selenium.print.PrintOptions;
 
 /** What the script of a page does, and what a page is without it. */
 class ReportControlsTest {
-  private static final String AXE = "META-INF/resources/webjars/axe-core/4.6.3/axe.min.js";
-
   /** Everything that a reader can operate, as it is shown at the moment. */
   private static final String CONTROLS =
       "[...document.querySelectorAll('a[href], button, input, select, textarea, summary,"
@@ -280,41 +277,17 @@ class ReportControlsTest {
     "shortlist.html, light, 1280",
     "shortlist.html, dark, 390",
   })
-  void noAccessibilityRuleIsBroken(String page, String scheme, int width) throws IOException {
+  void noAccessibilityRuleIsBroken(String page, String scheme, int width) {
     browser.setScheme(scheme);
     browser.show(page, width);
     browser
         .driver()
         .executeScript("document.querySelectorAll('details').forEach(d => d.open = true)");
-    assertThat(violations()).isEmpty();
+    assertThat(browser.violations()).isEmpty();
     if (page.equals("sketch.html")) {
       browser.driver().executeScript("document.querySelector('td[data-f]').click()");
-      assertThat(violations()).isEmpty();
+      assertThat(browser.violations()).isEmpty();
     }
-  }
-
-  private static List<String> violations() throws IOException {
-    try (InputStream in = ReportControlsTest.class.getClassLoader().getResourceAsStream(AXE)) {
-      if (in == null) {
-        throw new AssertionError(AXE + " is not on the class path");
-      }
-      browser.driver().executeScript(new String(in.readAllBytes(), StandardCharsets.UTF_8));
-    }
-    Object found =
-        browser
-            .driver()
-            .executeAsyncScript(
-                "const done = arguments[0]; axe.run({runOnly: ['wcag2a', 'wcag2aa', 'wcag21a',"
-                    + " 'wcag21aa', 'wcag22aa']}).then(r => done(r.passes.length < 10"
-                    + " ? ['too few rules ran'] : r.violations.flatMap(v => v.nodes.slice(0, 4).map("
-                    + "n => v.id + ': ' + n.html.slice(0, 160) + ' ' + n.failureSummary))))");
-    List<String> violations = new ArrayList<>();
-    if (found instanceof List<?> list) {
-      list.forEach(text -> violations.add(String.valueOf(text)));
-    } else {
-      violations.add("no result: " + found);
-    }
-    return violations;
   }
 
   /** Script is kept from running by the page's own policy, with no hash for it. */

@@ -268,25 +268,7 @@ class ReportRendererTest {
 
   @Test
   void textIsEscapedWhereverItComesFrom() {
-    CodecColumn codec = new CodecColumn(HOSTILE, HOSTILE, HOSTILE, HOSTILE, HOSTILE);
-    Condition condition = new Condition(HOSTILE, HOSTILE, HOSTILE, 1, 9, 9, 20);
-    Fact fact = new Fact(HOSTILE, HOSTILE);
-    ReportPage page =
-        new ReportPage(
-            HOSTILE,
-            HOSTILE,
-            new Answer(HOSTILE, HOSTILE, List.of(HOSTILE), List.of(HOSTILE)),
-            List.of(SamplePages.bare(condition, codec, 30, 1)),
-            0.95,
-            List.of(new PictureCredit(HOSTILE, 1, 1, HOSTILE, HOSTILE, "https://x/\"onload=\"a")),
-            new Provenance(
-                new Provenance.Program(HOSTILE, HOSTILE, HOSTILE),
-                new Provenance.Fingerprints(HOSTILE, HOSTILE),
-                List.of(new Provenance.NoiseModel(HOSTILE, HOSTILE, HOSTILE)),
-                1,
-                new Provenance.Run(HOSTILE, HOSTILE, 1, 1),
-                List.of(fact)));
-    String html = new ReportRenderer().render(page);
+    String html = new ReportRenderer().render(SamplePages.hostile(HOSTILE));
     assertThat(html.split("<script", -1)).describedAs("the page's own").hasSize(2);
     assertThat(html).contains("&lt;script&gt;");
     RenderedPage shown = new RenderedPage(html);
@@ -310,18 +292,7 @@ class ReportRendererTest {
                 new Costs.NodeShare("tiles", "camera", 0, 4, 500, 0, 0, 40, 115),
                 new Costs.NodeShare(
                     "tiles", "helper 1", 716_000, 38.5, 0, 31_044, 5788.4, 0, 9.235)));
-    RenderedPage shown =
-        RenderedPage.of(
-            new ReportPage(
-                plain.title(),
-                plain.question(),
-                plain.answer(),
-                plain.figures(),
-                plain.confidenceLevel(),
-                plain.pictures(),
-                plain.provenance(),
-                costs,
-                Comparisons.NONE));
+    RenderedPage shown = RenderedPage.of(new PageBuilder(plain).costs(costs).build());
     assertThat(shown.texts("(//section[@id='costs']//table)[1]/tbody/tr/td[3]"))
         .containsExactly("fits", "too much", "unknown");
     assertThat(shown.texts("//section[@id='costs']//table//td/b")).containsExactly("too much");
@@ -346,23 +317,15 @@ class ReportRendererTest {
     assertThat(RenderedPage.of(plain).texts("//section[@id='predictions']")).isEmpty();
     RenderedPage shown =
         RenderedPage.of(
-            new ReportPage(
-                plain.title(),
-                plain.question(),
-                plain.answer(),
-                plain.figures(),
-                plain.confidenceLevel(),
-                plain.pictures(),
-                plain.provenance(),
-                null,
-                Comparisons.NONE,
-                List.of(
+            new PageBuilder(plain)
+                .predictions(
                     new Predicted(GAUSSIAN, "a", 30, 30.09, 0.01, ""),
                     new Predicted(GAUSSIAN, "b", 30, 30.5, 0.6, ""),
                     new Predicted(GAUSSIAN, "c", 30, 30.5, NaN, ""),
                     new Predicted(GAUSSIAN, "d", 30, 29.5, 0.2, ""),
                     new Predicted(GAUSSIAN, "f", 30, 30.5, 0, ""),
-                    new Predicted(GAUSSIAN, "e", NaN, 30, 0.2, HOSTILE))));
+                    new Predicted(GAUSSIAN, "e", NaN, 30, 0.2, HOSTILE))
+                .build());
     assertThat(shown.texts("(//section[@id='predictions']//table)[1]/tbody/tr/td[last()]"))
         .containsExactly(
             "as predicted",
@@ -381,17 +344,8 @@ class ReportRendererTest {
   void onlyWebAddressesBecomeLinks() {
     for (String source : List.of("javascript:alert(1)", "data:text/html,x", "own picture")) {
       PictureCredit picture = new PictureCredit("a", 1, 1, "CC0", "me", source);
-      ReportPage page = SamplePages.full();
       RenderedPage shown =
-          RenderedPage.of(
-              new ReportPage(
-                  page.title(),
-                  page.question(),
-                  page.answer(),
-                  List.of(),
-                  0.95,
-                  List.of(picture),
-                  page.provenance()));
+          RenderedPage.of(new PageBuilder(SamplePages.page(List.of())).pictures(picture).build());
       assertThat(shown.texts("//section[@id='provenance']//a")).isEmpty();
       assertThat(shown.text("//section[@id='provenance']")).contains(source);
     }
@@ -573,18 +527,9 @@ class ReportRendererTest {
 
   @Test
   void refusesAConfidenceLevelOutOfRange() {
-    ReportPage page = SamplePages.full();
+    PageBuilder page = new PageBuilder(SamplePages.full());
     for (double level : new double[] {0, 1, -0.1, Double.NaN}) {
-      assertThatThrownBy(
-              () ->
-                  new ReportPage(
-                      page.title(),
-                      page.question(),
-                      page.answer(),
-                      page.figures(),
-                      level,
-                      page.pictures(),
-                      page.provenance()))
+      assertThatThrownBy(page.confidenceLevel(level)::build)
           .isInstanceOf(IllegalArgumentException.class)
           .hasMessageContaining("confidence level");
     }

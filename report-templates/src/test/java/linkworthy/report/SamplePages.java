@@ -76,22 +76,17 @@ final class SamplePages {
     ReportPage full = full();
     Condition noise = condition("gaussian", "samples", "snr-db", 20, 20);
     String label = "dct blocks8 K4 step8";
-    ReportPage page =
-        new ReportPage(
-            full.title(),
-            full.question(),
-            full.answer(),
-            full.figures().stream().map(SamplePages::withTrial).toList(),
-            full.confidenceLevel(),
-            full.pictures(),
-            full.provenance(),
+    return new PageBuilder(full)
+        .figures(full.figures().stream().map(SamplePages::withTrial).toList())
+        .costs(
             new Costs(
                 "Node 'mote': 230 nJ to send a bit. Source: made up",
                 64,
                 List.of(new Costs.CodecCost(label, 1_234_567, 63.99, 1.5, 1.5, 20, 4321.9)),
                 List.of(
                     new Costs.NodeShare(
-                        label, "helper 1", 716_000, 38.5, 0, 31_044, 5788.4, 0, 9.235))),
+                        label, "helper 1", 716_000, 38.5, 0, 31_044, 5788.4, 0, 9.235))))
+        .comparisons(
             new Comparisons(
                 List.of(
                     new Comparisons.CurveGap(
@@ -103,17 +98,18 @@ final class SamplePages {
                         new Comparisons.Interval(1.9, 3.2),
                         new Comparisons.Interval(-45, -33),
                         "")),
-                List.of(new Comparisons.Crossing(noise, label, "mean rows step16", 17, 15, 19))),
-            List.of(
-                new Predicted(noise, label, 30, 30.09, 0.01, ""),
-                new Predicted(noise, "pca rows K4 step8", NaN, 30, 0.2, "found in the picture")),
+                List.of(new Comparisons.Crossing(noise, label, "mean rows step16", 17, 15, 19))))
+        .predictions(
+            new Predicted(noise, label, 30, 30.09, 0.01, ""),
+            new Predicted(noise, "pca rows K4 step8", NaN, 30, 0.2, "found in the picture"))
+        .particulars(
             new Particulars(
                 spreads(full),
                 gallery(noise, label),
                 shortlist(label),
                 "name: yard-cameras\nseed: 7\n",
-                List.of("The record is complete.")));
-    return page;
+                List.of("The record is complete.")))
+        .build();
   }
 
   /** The rich page with few codecs and noises: every kind of thing, not many of each. */
@@ -124,28 +120,14 @@ final class SamplePages {
             .filter(f -> f.condition().isClean() || f.condition().impairment().startsWith("b"))
             .filter(f -> f.codec().label().matches("dct blocks8 K(4|8) .*|mean rows step16"))
             .toList();
-    return around(rich, few, rich.particulars());
+    return new PageBuilder(rich).figures(few).build();
   }
 
   /** A page with another spread over pictures. */
   static ReportPage with(ReportPage page, List<Particulars.Spread> spreads) {
-    return around(
-        page, page.figures(), new Particulars(spreads, Gallery.NONE, null, "", List.of()));
-  }
-
-  private static ReportPage around(ReportPage page, List<Figure> figures, Particulars particulars) {
-    return new ReportPage(
-        page.title(),
-        page.question(),
-        page.answer(),
-        figures,
-        page.confidenceLevel(),
-        page.pictures(),
-        page.provenance(),
-        page.costs(),
-        page.comparisons(),
-        page.predictions(),
-        particulars);
+    return new PageBuilder(page)
+        .particulars(new Particulars(spreads, Gallery.NONE, null, "", List.of()))
+        .build();
   }
 
   /** A page on which every text that comes from outside is this one. */
@@ -376,7 +358,11 @@ final class SamplePages {
         figures,
         0.95,
         pictures,
-        provenance());
+        provenance(),
+        null,
+        Comparisons.NONE,
+        List.of(),
+        Particulars.NONE);
   }
 
   static Provenance provenance() {

@@ -137,14 +137,7 @@ final class Assessment {
 
   private ResultsWriter open(Cells cells, Course course) {
     RunRecord now =
-        RunRecord.begin(
-                plan.study(),
-                Version.text(),
-                plan.manifest().fingerprint(),
-                plan.pictures(),
-                plan.trials(),
-                surroundings.clock())
-            .withPlugins(plugins);
+        RunRecord.begin(plan, Version.text(), surroundings.clock()).withPlugins(plugins);
     return ResultsFolder.open(
         folder,
         start,

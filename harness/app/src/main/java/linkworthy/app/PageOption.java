@@ -27,10 +27,6 @@ final class PageOption {
     }
   }
 
-  boolean isGiven() {
-    return html != null;
-  }
-
   /** Writes the page, if one is asked for, and says where it is. */
   void write(Surroundings surroundings, Supplier<ComparisonPage> page) {
     writeText(surroundings, () -> new ReportRenderer().render(page.get()));

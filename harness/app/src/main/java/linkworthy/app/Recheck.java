@@ -7,7 +7,6 @@ import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
 import java.util.Objects;
-import java.util.concurrent.ExecutionException;
 import java.util.concurrent.ExecutorService;
 import java.util.concurrent.Executors;
 import java.util.concurrent.Future;
@@ -28,6 +27,7 @@ import linkworthy.statistics.RowSample;
 import linkworthy.study.CodecChoice;
 import linkworthy.study.Study;
 import linkworthy.study.StudyWriter;
+import linkworthy.trial.Awaited;
 import linkworthy.trial.Course;
 import linkworthy.trial.NodeShare;
 import linkworthy.trial.NodeTable;
@@ -406,7 +406,7 @@ final class Recheck {
         });
     long compared = 0;
     for (Map.Entry<Integer, Map<Integer, Row>> unit : batch.entrySet()) {
-      List<Trial> repeated = result(Objects.requireNonNull(running.get(unit.getKey())));
+      List<Trial> repeated = Awaited.result(Objects.requireNonNull(running.get(unit.getKey())));
       int i = 0;
       for (Row recorded : unit.getValue().values()) {
         compare(recorded, repeated.get(i++));
@@ -428,23 +428,6 @@ final class Recheck {
               + ": "
               + String.join("; ", differences.stream().map(Object::toString).toList()),
           recorded.trial());
-    }
-  }
-
-  private static List<Trial> result(Future<List<Trial>> running) {
-    try {
-      return running.get();
-    } catch (InterruptedException e) {
-      Thread.currentThread().interrupt();
-      throw new Unavailable("interrupted", e);
-    } catch (ExecutionException e) {
-      if (e.getCause() instanceof RuntimeException known) {
-        throw known;
-      }
-      if (e.getCause() instanceof Error serious) {
-        throw serious;
-      }
-      throw new IllegalStateException(e.getCause());
     }
   }
 }

@@ -5,10 +5,7 @@ import java.io.UncheckedIOException;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
-import java.util.ArrayList;
-import java.util.Comparator;
 import java.util.List;
-import java.util.concurrent.atomic.AtomicReference;
 import java.util.stream.IntStream;
 import java.util.stream.Stream;
 import linkworthy.codec.PluginFolder;
@@ -27,7 +24,6 @@ import linkworthy.trial.Rehearsal;
 import linkworthy.trial.Timing;
 import linkworthy.trial.Trial;
 import linkworthy.trial.WorkUnit;
-import org.jspecify.annotations.Nullable;
 
 /**
  * What the record and the report of a plan take in time and disk. For the pictures of a rehearsal
@@ -46,7 +42,6 @@ final class SampleRecord {
   private static final double NEWEST = 0.2;
 
   private static final int REPLICATES = 2;
-  private static final int MOST_TRIES = 100;
   private static final String SOME_ID = "0123456789abcdef";
 
   private final Plan plan;
@@ -76,58 +71,20 @@ final class SampleRecord {
       Surroundings surroundings, Plan plan, List<PluginFolder.Jar> plugins, Rehearsal rehearsal) {
     SampleRecord sample = new SampleRecord(plan, rehearsal);
     RunRecord begun =
-        RunRecord.begin(
-                plan.study(),
-                Version.text(),
-                plan.manifest().fingerprint(),
-                plan.pictures(),
-                plan.trials(),
-                surroundings.clock())
-            .withPlugins(plugins);
-    AtomicReference<@Nullable Path> made = new AtomicReference<>();
-    Thread onSignal = new Thread(() -> removeOnSignal(made.get()), "remove");
-    try {
-      Runtime.getRuntime().addShutdownHook(onSignal);
-    } catch (IllegalStateException e) {
-      throw new Unavailable("stopped", e);
-    }
-    try {
-      Path folder = Files.createTempDirectory("linkworthy-dry-run");
-      made.set(folder);
+        RunRecord.begin(plan, Version.text(), surroundings.clock()).withPlugins(plugins);
+    try (TemporaryFolder folder = new TemporaryFolder("linkworthy-dry-run")) {
       try {
-        sample.measure(folder, begun, surroundings);
-      } finally {
-        if (Files.exists(folder)) {
-          remove(folder);
+        sample.measure(folder.path(), begun, surroundings);
+      } catch (IOException | RuntimeException e) {
+        if (folder.isStopped()) {
+          throw new Unavailable("stopped", e);
         }
+        throw e;
       }
     } catch (IOException | UncheckedIOException e) {
       throw new Unavailable("cannot write a temporary folder: " + e.getMessage(), e);
-    } finally {
-      Assessment.release(onSignal);
     }
     return sample;
-  }
-
-  /** The record may still be growing. */
-  private static void removeOnSignal(@Nullable Path folder) {
-    for (int i = 0; folder != null && i < MOST_TRIES && Files.exists(folder); i++) {
-      try {
-        remove(folder);
-      } catch (UncheckedIOException e) {
-        Thread.onSpinWait();
-      }
-    }
-  }
-
-  private static void remove(Path folder) {
-    try (Stream<Path> paths = Files.walk(folder)) {
-      for (Path path : paths.sorted(Comparator.reverseOrder()).toList()) {
-        Files.deleteIfExists(path);
-      }
-    } catch (IOException e) {
-      throw new UncheckedIOException(e);
-    }
   }
 
   private void measure(Path folder, RunRecord begun, Surroundings surroundings) throws IOException {
@@ -174,8 +131,9 @@ final class SampleRecord {
     for (int picture : pictures) {
       for (int condition = -1; condition < plan.conditions().size(); condition++) {
         for (int replicate = 0; replicate < (condition < 0 ? 1 : replicates); replicate++) {
-          List<Trial> trials = trials(picture, condition, replicate);
-          List<Timing> timings = timings(picture, condition, trials);
+          WorkUnit unit = plan.unit(picture, condition, replicate);
+          List<Trial> trials = trials(unit, condition);
+          List<Timing> timings = timings(unit, condition);
           long before = bytesOfTables(writer.path());
           long start = System.nanoTime();
           writer.append(trials, timings);
@@ -219,73 +177,26 @@ final class SampleRecord {
     return last;
   }
 
-  /** The rows of a replicate. */
-  private List<Trial> trials(int picture, int condition, int replicate) {
-    List<Trial> like = rehearsal.trials(picture, condition);
-    WorkUnit.Condition at = condition < 0 ? null : plan.conditions().get(condition);
-    boolean same =
-        replicate == 0
-            && like.get(0).picture().equals(plan.pictures().get(picture).id())
-            && (at == null
-                ? like.get(0).axis().isEmpty()
-                : at.severity().axis().equals(like.get(0).axis())
-                    && at.severity().value() == like.get(0).severity()
-                    && at.impairment().label().equals(like.get(0).impairment()));
-    if (same) {
+  /** The rows of a unit: those of the rehearsal, or others like them. */
+  private List<Trial> trials(WorkUnit unit, int condition) {
+    List<Trial> like = rehearsal.trials(unit.picture(), condition);
+    Trial first = like.get(0);
+    if (unit.replicate() == 0
+        && unit.entry().id().equals(first.picture())
+        && unit.axis().equals(first.axis())
+        && Double.compare(unit.severity(), first.severity()) == 0) {
       return like;
     }
-    List<Trial> rows = new ArrayList<>();
-    for (Trial trial : like) {
-      rows.add(moved(trial, picture, condition, replicate));
-    }
-    return rows;
+    double variance = condition < 0 ? 0 : rehearsal.equivalentNoiseVariance(condition);
+    double little = 1e-4 * (1 + condition % 7 + unit.replicate()) / 3;
+    return like.stream()
+        .map(trial -> trial.movedTo(unit, SOME_ID, variance, trial.psnrDb() + little))
+        .toList();
   }
 
-  private Trial moved(Trial like, int picture, int condition, int replicate) {
-    WorkUnit.Condition at = condition < 0 ? null : plan.conditions().get(condition);
-    double little = 1e-4 * (1 + condition % 7 + replicate) / 3;
-    return new Trial(
-        SOME_ID,
-        plan.pictures().get(picture).id(),
-        at == null ? like.impairment() : at.impairment().label(),
-        at == null ? "" : at.impairment().site().id(),
-        at == null ? "" : at.severity().axis(),
-        at == null ? Double.NaN : at.severity().value(),
-        at == null ? 0 : rehearsal.equivalentNoiseVariance(condition),
-        like.realisedNoiseVariance(),
-        like.snrDb(),
-        like.codec(),
-        like.transform(),
-        like.over(),
-        like.keep(),
-        like.step(),
-        replicate,
-        like.mse(),
-        like.psnrDb() + little,
-        like.ssim(),
-        like.payloadBits(),
-        like.sentBits(),
-        like.bitsPerPixel(),
-        like.packetsSent(),
-        like.packetsLost(),
-        like.outage(),
-        like.failure(),
-        like.further());
-  }
-
-  private List<Timing> timings(int picture, int condition, List<Trial> trials) {
-    List<Timing> like = rehearsal.timings(picture, condition);
-    return IntStream.range(0, trials.size())
-        .mapToObj(
-            i ->
-                new Timing(
-                    trials.get(i).picture(),
-                    trials.get(i).impairment(),
-                    trials.get(i).severity(),
-                    trials.get(i).replicate(),
-                    trials.get(i).codec(),
-                    like.get(i).encodeMs(),
-                    like.get(i).decodeMs()))
+  private List<Timing> timings(WorkUnit unit, int condition) {
+    return rehearsal.timings(unit.picture(), condition).stream()
+        .map(like -> Timing.of(unit, like.codec(), like.encodeMs(), like.decodeMs()))
         .toList();
   }
 

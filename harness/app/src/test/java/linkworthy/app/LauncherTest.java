@@ -136,8 +136,8 @@ class LauncherTest {
   void aTestThatChangedBuildsNothing() throws IOException {
     java("17.0.2");
     mvn();
-    launch();
     Path test = Files.createDirectories(checkout.resolve("harness/app/src/test"));
+    launch();
     Files.setLastModifiedTime(
         Files.writeString(test.resolve("T.java"), ""),
         FileTime.from(Instant.now().plusSeconds(60)));

@@ -12,6 +12,7 @@ import java.util.List;
 import java.util.regex.Matcher;
 import java.util.regex.Pattern;
 import java.util.stream.Stream;
+import linkworthy.report.TestBrowser;
 import org.junit.jupiter.api.AfterAll;
 import org.junit.jupiter.api.BeforeAll;
 import org.junit.jupiter.api.Test;
@@ -36,7 +37,7 @@ class PagesInBrowserTest {
   private static final String HOSTILE_FILE = "<img src=x> [[${page}]].csv";
 
   @TempDir private static Path folder;
-  private static Chromium browser;
+  private static TestBrowser browser;
 
   @BeforeAll
   static void open() throws IOException {
@@ -73,7 +74,7 @@ class PagesInBrowserTest {
     run(0, "recheck", "" + a, "--all", "--quiet", "--html", page("recheck-all"));
     alter(b.resolve("trials.csv"));
     run(1, "recheck", "" + b, "--all", "--quiet", "--html", page("recheck-altered"));
-    browser = new Chromium(folder.resolve("profile"));
+    browser = new TestBrowser(folder);
   }
 
   @AfterAll

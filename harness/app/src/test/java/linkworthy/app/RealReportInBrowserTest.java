@@ -3,6 +3,7 @@ package linkworthy.app;
 import static org.assertj.core.api.Assertions.assertThat;
 
 import java.nio.file.Path;
+import linkworthy.report.TestBrowser;
 import org.junit.jupiter.api.AfterAll;
 import org.junit.jupiter.api.BeforeAll;
 import org.junit.jupiter.api.io.TempDir;
@@ -13,14 +14,14 @@ import org.openqa.selenium.By;
 /** The report of a study that was really run, as a browser lays it out. */
 class RealReportInBrowserTest {
   @TempDir private static Path folder;
-  private static Chromium browser;
+  private static TestBrowser browser;
 
   @BeforeAll
   static void open() {
     String study = SmallStudy.in(folder).toString();
     assertThat(Program.run(folder, "assess", study, "--out", folder + "/out", "--quiet").code())
         .isZero();
-    browser = new Chromium(folder.resolve("profile"));
+    browser = new TestBrowser(folder);
   }
 
   @AfterAll

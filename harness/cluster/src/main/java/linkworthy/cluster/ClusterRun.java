@@ -96,15 +96,7 @@ final class ClusterRun {
   void run(JavaSparkContext spark) {
     Cells cells = new Cells();
     Course course = new Course(plan);
-    RunRecord now =
-        RunRecord.begin(
-                plan.study(),
-                request.program(),
-                plan.manifest().fingerprint(),
-                plan.pictures(),
-                plan.trials(),
-                clock)
-            .withPlugins(jars);
+    RunRecord now = RunRecord.begin(plan, request.program(), clock).withPlugins(jars);
     try (ResultsWriter writer =
         ResultsFolder.open(
             request.out(),

@@ -108,7 +108,7 @@ public final class ScaleFigures {
   /**
    * What the model is made of.
    *
-   * @param unitSeconds measured processor times of units
+   * @param unitSeconds measured processor times of units, ascending
    * @param mean their mean
    * @param start seconds until tasks can run
    * @param task processor seconds that a task takes besides its units
@@ -176,6 +176,15 @@ public final class ScaleFigures {
     double mean = Arrays.stream(units).average().orElse(0);
     Constants constants =
         new Constants(Arrays.stream(units).boxed().toList(), mean, started, task, empty, merge);
+    printConstants(constants, rowBytes);
+    out.println();
+    printRuns(constants, local, first, measured);
+    out.println();
+    predict(constants, rowBytes);
+  }
+
+  private void printConstants(Constants constants, int rowBytes) {
+    List<Double> units = constants.unitSeconds();
     out.println("| constant | measured |");
     out.println("|---|---|");
     out.printf(
@@ -184,21 +193,28 @@ public final class ScaleFigures {
         Locale.ROOT,
         "| processor time of a unit: mean, median, 95 percent, longest | %.1f, %.1f, %.1f, %.1f ms |\n",
         1e3 * constants.mean(),
-        1e3 * units[units.length / 2],
-        1e3 * units[(int) (units.length * 0.95)],
-        1e3 * units[units.length - 1]);
-    out.printf(Locale.ROOT, "| Spark's start | %.1f s |\n", started);
+        1e3 * units.get(units.size() / 2),
+        1e3 * units.get((int) (units.size() * 0.95)),
+        1e3 * units.get(units.size() - 1));
+    out.printf(Locale.ROOT, "| Spark's start | %.1f s |\n", constants.start());
     out.printf(
         Locale.ROOT,
         "| an empty task, as %d in a row go on %d cores | %.2f ms |\n",
         EMPTY_TASKS,
         cores,
-        1e3 * empty);
+        1e3 * constants.handOut());
     out.printf(
-        Locale.ROOT, "| processor time of a task besides its units | %.0f ms |\n", 1e3 * task);
-    out.printf(Locale.ROOT, "| processor time of a row in the driver | %.3f ms |\n", 1e3 * merge);
+        Locale.ROOT,
+        "| processor time of a task besides its units | %.0f ms |\n",
+        1e3 * constants.task());
+    out.printf(
+        Locale.ROOT,
+        "| processor time of a row in the driver | %.3f ms |\n",
+        1e3 * constants.merge());
     out.printf(Locale.ROOT, "| a row of trials.csv | %d bytes |\n", rowBytes);
-    out.println();
+  }
+
+  private void printRuns(Constants constants, Took local, Took first, List<Took> measured) {
     int codecs = plan.study().codecs().size();
     out.println(
         "| run | wall s | processor s | model: processor s | model/measured | model: wall s on idle"
@@ -231,8 +247,6 @@ public final class ScaleFigures {
           model / run.processor(),
           constants.job(plan.units(), PARTITIONS[i], cores, codecs));
     }
-    out.println();
-    predict(constants, rowBytes);
   }
 
   private void predict(Constants constants, int rowBytes) {
@@ -288,13 +302,7 @@ public final class ScaleFigures {
   }
 
   private RunRecord begin() {
-    return RunRecord.begin(
-        plan.study(),
-        "scale",
-        plan.manifest().fingerprint(),
-        plan.pictures(),
-        plan.trials(),
-        Clock.systemUTC());
+    return RunRecord.begin(plan, "scale", Clock.systemUTC());
   }
 
   private void localRun() {

@@ -131,9 +131,4 @@ public record Shortlist(
   public Optional<Candidate> cheapest() {
     return candidates.stream().filter(c -> c.verdict() == Verdict.MEETS).findFirst();
   }
-
-  /** Codecs that no other one beats in both price and mean PSNR, cheapest first. */
-  public List<Candidate> nonDominated() {
-    return candidates.stream().filter(candidate -> !candidate.dominated()).toList();
-  }
 }

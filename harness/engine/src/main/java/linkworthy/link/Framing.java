@@ -4,8 +4,6 @@ import java.nio.ByteBuffer;
 import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.BitSet;
-import java.util.Collections;
-import java.util.Comparator;
 import java.util.EnumMap;
 import java.util.HashSet;
 import java.util.LinkedHashMap;
@@ -28,8 +26,8 @@ import org.jspecify.annotations.Nullable;
  * index: from 0 for data, from k for parity. A parity packet has a fifth byte, the data symbols of
  * its word.
  *
- * <p>A data symbol is the length of a payload in two bytes, the payload, and zeros up to the
- * longest of its word. Data packets carry the payload alone; parity packets carry whole symbols.
+ * <p>Data packets carry the payload alone; parity packets carry whole symbols, as {@link
+ * DataSymbol} has them.
  *
  * <p>Packets of a rule are coded in groups of k times depth, in sending order. Packet t of a group,
  * data first and then parity, belongs to word t modulo depth, so the symbols of a word are depth
@@ -41,10 +39,9 @@ import org.jspecify.annotations.Nullable;
 final class Framing {
   private static final int WORD_HEADER = 4;
   private static final int PARITY_HEADER = 5;
-  private static final int LENGTH = 2;
 
   /** A parity packet is longer than the longest payload of its word by its header and a length. */
-  static final int MAX_OVERHEAD = PARITY_HEADER + LENGTH;
+  static final int MAX_OVERHEAD = PARITY_HEADER + DataSymbol.OVERHEAD;
 
   private static final int WORD_BITS = 21;
 
@@ -200,16 +197,10 @@ final class Framing {
         payloads.add(waiting.get(t));
       }
       int longest = payloads.stream().mapToInt(p -> p.length).max().orElse(0);
-      return payloads.stream().map(p -> symbol(p, LENGTH + longest)).toArray(byte[][]::new);
+      return payloads.stream()
+          .map(p -> DataSymbol.of(p, DataSymbol.OVERHEAD + longest))
+          .toArray(byte[][]::new);
     }
-  }
-
-  private static byte[] symbol(byte[] payload, int length) {
-    byte[] symbol = new byte[length];
-    symbol[0] = (byte) (payload.length >> 8);
-    symbol[1] = (byte) payload.length;
-    System.arraycopy(payload, 0, symbol, LENGTH, payload.length);
-    return symbol;
   }
 
   /**
@@ -223,7 +214,7 @@ final class Framing {
       return arrived;
     }
     List<byte[]> payloads = new ArrayList<>();
-    SortedMap<Integer, Word> words = new TreeMap<>();
+    SortedMap<Integer, ReceivedWord> words = new TreeMap<>();
     Set<ByteBuffer> known = new HashSet<>();
     for (byte[] packet : arrived) {
       if (known.add(ByteBuffer.wrap(packet))) {
@@ -235,7 +226,7 @@ final class Framing {
       }
     }
     BitSet refuted = new BitSet();
-    for (Word word : words.values()) {
+    for (ReceivedWord word : words.values()) {
       word.restoreInto(payloads, refuted);
     }
     for (int i = refuted.length() - 1; i >= 0; i = refuted.previousSetBit(i - 1)) {
@@ -244,7 +235,7 @@ final class Framing {
     return payloads;
   }
 
-  private void open(byte[] packet, List<byte[]> payloads, SortedMap<Integer, Word> words) {
+  private void open(byte[] packet, List<byte[]> payloads, SortedMap<Integer, ReceivedWord> words) {
     if (packet.length > 0 && packet[0] == 0) {
       if (!correctsAll) {
         payloads.add(tail(packet, 1));
@@ -272,148 +263,15 @@ final class Framing {
     }
   }
 
-  private static Word word(
-      SortedMap<Integer, Word> words, int tag, ReedSolomon code, Protection.ErasureCode sizes) {
-    return words.computeIfAbsent(tag, t -> new Word(code, sizes.correctsErrors()));
+  private static ReceivedWord word(
+      SortedMap<Integer, ReceivedWord> words,
+      int tag,
+      ReedSolomon code,
+      Protection.ErasureCode sizes) {
+    return words.computeIfAbsent(tag, t -> new ReceivedWord(code, sizes.correctsErrors()));
   }
 
   private static byte[] tail(byte[] packet, int from) {
     return Arrays.copyOfRange(packet, from, packet.length);
-  }
-
-  /** The symbols of one code word that arrived; the first of each index counts. */
-  private static final class Word {
-    private final ReedSolomon code;
-    private final boolean correctsErrors;
-
-    /** Where the payloads of each index stand among all, the first that came first. */
-    private final SortedMap<Integer, List<Integer>> data = new TreeMap<>();
-
-    /** Parity symbols by what their packets say of the word, the first that came first. */
-    private final Map<Shape, SortedMap<Integer, byte[]>> parity = new LinkedHashMap<>();
-
-    /** Data symbols of a word, and bytes of a symbol. */
-    private record Shape(int count, int length) {}
-
-    Word(ReedSolomon code, boolean correctsErrors) {
-      this.code = code;
-      this.correctsErrors = correctsErrors;
-    }
-
-    void addData(int index, int place) {
-      data.computeIfAbsent(index, i -> new ArrayList<>()).add(place);
-    }
-
-    void addParity(int index, int count, byte[] symbol) {
-      parity
-          .computeIfAbsent(new Shape(count, symbol.length), shape -> new TreeMap<>())
-          .putIfAbsent(index, symbol);
-    }
-
-    /**
-     * The word's shape, about which damaged packets may contradict each other: what most say, or
-     * the first one if packets that came are taken to be right.
-     */
-    private Shape shape() {
-      return correctsErrors
-          ? Collections.max(parity.keySet(), Comparator.comparing(s -> symbols(s).size()))
-          : parity.keySet().iterator().next();
-    }
-
-    private SortedMap<Integer, byte[]> symbols(Shape shape) {
-      return Objects.requireNonNull(parity.get(shape));
-    }
-
-    /**
-     * Adds what could be restored to the payloads, and puts what could be set right in its place.
-     *
-     * @param refuted takes the places of payloads that are shown not to be what they claim
-     */
-    void restoreInto(List<byte[]> payloads, BitSet refuted) {
-      if (parity.isEmpty()) {
-        return;
-      }
-      Shape shape = shape();
-      byte[] @Nullable [] rows = new byte[shape.count()][];
-      int have = 0;
-      for (int i = 0; i < rows.length; i++) {
-        byte[] payload = data.containsKey(i) ? payloads.get(data.get(i).get(0)) : null;
-        if (payload != null && payload.length <= shape.length() - LENGTH) {
-          rows[i] = symbol(payload, shape.length());
-          have++;
-        }
-      }
-      byte[] @Nullable [] checks = new byte[code.parity()][];
-      symbols(shape).forEach((index, symbol) -> checks[index] = symbol);
-      if (correctsErrors) {
-        correct(rows, checks, payloads, refuted);
-      } else if (have < rows.length) {
-        restore(rows, checks, payloads);
-      }
-    }
-
-    private void restore(
-        byte[] @Nullable [] rows, byte[] @Nullable [] checks, List<byte[]> payloads) {
-      if (code.restore(rows, checks)) {
-        for (int i = 0; i < rows.length; i++) {
-          byte[] row = rows[i];
-          if (row != null && !data.containsKey(i) && isSound(row)) {
-            payloads.add(payload(row));
-          }
-        }
-      }
-    }
-
-    /**
-     * A payload that is known in full stands for all that claimed its place; one of which some
-     * bytes stayed as they came replaces the first that claimed it, and is left out if none did.
-     */
-    private void correct(
-        byte[] @Nullable [] rows,
-        byte[] @Nullable [] checks,
-        List<byte[]> payloads,
-        BitSet refuted) {
-      boolean[] came = new boolean[rows.length];
-      for (int i = 0; i < rows.length; i++) {
-        came[i] = rows[i] != null;
-      }
-      BitSet beyond = code.correct(rows, checks);
-      for (int i = 0; i < rows.length; i++) {
-        byte[] row = rows[i];
-        if (row == null || !isSound(row)) {
-          continue;
-        }
-        int firstBeyond = beyond.nextSetBit(0);
-        boolean known = firstBeyond < 0 || firstBeyond >= LENGTH + lengthIn(row);
-        List<Integer> places = data.getOrDefault(i, List.of());
-        if (known) {
-          places.forEach(refuted::set);
-        }
-        if (came[i]) {
-          payloads.set(places.get(0), payload(row));
-          refuted.clear(places.get(0));
-        } else if (known) {
-          payloads.add(payload(row));
-        }
-      }
-    }
-
-    private static byte[] payload(byte[] symbol) {
-      return Arrays.copyOfRange(symbol, LENGTH, LENGTH + lengthIn(symbol));
-    }
-
-    private static int lengthIn(byte[] symbol) {
-      return (symbol[0] & 0xFF) << 8 | (symbol[1] & 0xFF);
-    }
-
-    /** Whether length and padding are possible; damage elsewhere in the word may break them. */
-    private static boolean isSound(byte[] symbol) {
-      int end = LENGTH + lengthIn(symbol);
-      boolean sound = end <= symbol.length;
-      for (int i = end; sound && i < symbol.length; i++) {
-        sound = symbol[i] == 0;
-      }
-      return sound;
-    }
   }
 }

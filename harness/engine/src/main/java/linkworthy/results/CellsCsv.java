@@ -6,7 +6,6 @@ import static linkworthy.results.CsvTable.whole;
 import static linkworthy.results.CsvTable.words;
 
 import java.nio.file.Path;
-import java.util.ArrayList;
 import java.util.HashSet;
 import java.util.List;
 import java.util.Set;
@@ -77,8 +76,7 @@ public final class CellsCsv {
    * @throws linkworthy.input.Unavailable if it cannot be read
    */
   public static List<Cell> read(Path file) {
-    List<Cell> cells = new ArrayList<>();
-    TABLE.read(file, cells::add);
+    List<Cell> cells = TABLE.read(file);
     Set<List<Object>> seen = new HashSet<>();
     for (Cell cell : cells) {
       if (!seen.add(

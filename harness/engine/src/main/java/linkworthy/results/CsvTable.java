@@ -197,6 +197,18 @@ final class CsvTable<T> {
   }
 
   /**
+   * All rows of a file.
+   *
+   * @throws BadInput if it is missing, has other columns or a row that is none
+   * @throws linkworthy.input.Unavailable if it cannot be read
+   */
+  List<T> read(Path file) {
+    List<T> rows = new ArrayList<>();
+    long unused = read(file, rows::add);
+    return rows;
+  }
+
+  /**
    * The row that a line of a file is. The line must have the very bytes that this table writes for
    * the row.
    *

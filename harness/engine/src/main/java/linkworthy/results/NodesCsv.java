@@ -5,7 +5,6 @@ import static linkworthy.results.CsvTable.whole;
 import static linkworthy.results.CsvTable.words;
 
 import java.nio.file.Path;
-import java.util.ArrayList;
 import java.util.List;
 import linkworthy.trial.NodeShare;
 
@@ -48,9 +47,7 @@ public final class NodesCsv {
    * @throws linkworthy.input.Unavailable if it cannot be read
    */
   public static List<NodeShare> read(Path file) {
-    List<NodeShare> shares = new ArrayList<>();
-    long unused = TABLE.read(file, shares::add);
-    return shares;
+    return TABLE.read(file);
   }
 
   private static NodeShare share(CsvRow row) {

@@ -5,7 +5,6 @@ import java.util.BitSet;
 import java.util.List;
 import linkworthy.input.BadInput;
 import linkworthy.study.CodecChoice;
-import linkworthy.study.ImpairmentChoice;
 import linkworthy.trial.Course;
 import linkworthy.trial.Plan;
 import linkworthy.trial.Timing;
@@ -72,19 +71,10 @@ final class PlannedRows {
     nextTimed = index + 1;
     timedUnits = place + 1;
     firsts.set(place, unit.replicate() == 0);
-    WorkUnit.Condition condition = unit.condition();
     for (int i = 0; i < rows.size(); i++) {
       CodecChoice codec = plan.study().codecs().get(i);
       Timing found = rows.get(i);
-      Timing expected =
-          new Timing(
-              unit.entry().id(),
-              condition == null ? ImpairmentChoice.CLEAN : condition.impairment().label(),
-              condition == null ? Double.NaN : condition.severity().value(),
-              unit.replicate(),
-              codec.label(),
-              found.encodeMs(),
-              found.decodeMs());
+      Timing expected = Timing.of(unit, codec.label(), found.encodeMs(), found.decodeMs());
       if (!found.equals(expected)) {
         throw otherStudy(timingsFile, line + i, key(found), key(expected));
       }

@@ -4,7 +4,6 @@ import static linkworthy.results.CsvTable.number;
 import static linkworthy.results.CsvTable.words;
 
 import java.nio.file.Path;
-import java.util.ArrayList;
 import java.util.List;
 import linkworthy.trial.Prediction;
 
@@ -45,9 +44,7 @@ public final class PredictionsCsv {
    * @throws linkworthy.input.Unavailable if it cannot be read
    */
   public static List<Prediction> read(Path file) {
-    List<Prediction> predictions = new ArrayList<>();
-    long unused = TABLE.read(file, predictions::add);
-    return predictions;
+    return TABLE.read(file);
   }
 
   private static Prediction prediction(CsvRow row) {

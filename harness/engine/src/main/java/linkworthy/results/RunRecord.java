@@ -17,6 +17,7 @@ import linkworthy.study.ImpairmentChoice;
 import linkworthy.study.PictureChoice.ManifestFile;
 import linkworthy.study.Study;
 import linkworthy.study.StudyWriter;
+import linkworthy.trial.Plan;
 import org.jspecify.annotations.Nullable;
 import tools.jackson.core.JacksonException;
 import tools.jackson.databind.DeserializationFeature;
@@ -155,7 +156,17 @@ public record RunRecord(
   }
 
   /** The record of a run that begins now, on this machine. */
-  public static RunRecord begin(
+  public static RunRecord begin(Plan plan, String programVersion, Clock clock) {
+    return begin(
+        plan.study(),
+        programVersion,
+        plan.manifest().fingerprint(),
+        plan.pictures(),
+        plan.trials(),
+        clock);
+  }
+
+  static RunRecord begin(
       Study study,
       String programVersion,
       String corpusFingerprint,

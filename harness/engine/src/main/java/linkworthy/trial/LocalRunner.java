@@ -105,13 +105,7 @@ public final class LocalRunner {
     } catch (InterruptedException | CancellationException e) {
       Thread.currentThread().interrupt();
     } catch (ExecutionException e) {
-      if (e.getCause() instanceof RuntimeException known) {
-        throw known;
-      }
-      if (e.getCause() instanceof Error serious) {
-        throw serious;
-      }
-      throw new IllegalStateException(e.getCause());
+      throw Awaited.failure(e);
     } finally {
       executor.shutdownNow();
       awaitEnd(executor);

@@ -166,12 +166,12 @@ public final class Plan {
   }
 
   /**
-   * The first replicate of a picture in a condition.
+   * A replicate of a picture in a condition.
    *
-   * @param condition its place, -1 for the clean picture
+   * @param condition its place, -1 for the clean picture, which has replicate 0 alone
    */
-  WorkUnit unit(int picture, int condition) {
-    int rest = condition < 0 ? 0 : 1 + condition * study.replicates();
+  public WorkUnit unit(int picture, int condition, int replicate) {
+    int rest = condition < 0 ? 0 : 1 + condition * study.replicates() + replicate;
     return unit(picture * unitsOfPicture() + rest);
   }
 

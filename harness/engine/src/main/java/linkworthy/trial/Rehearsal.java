@@ -1,25 +1,18 @@
 package linkworthy.trial;
 
 import java.util.ArrayList;
-import java.util.Collection;
 import java.util.Comparator;
-import java.util.LinkedHashMap;
+import java.util.DoubleSummaryStatistics;
 import java.util.List;
 import java.util.Map;
+import java.util.NavigableMap;
 import java.util.TreeMap;
 import java.util.concurrent.Callable;
 import java.util.concurrent.ConcurrentHashMap;
-import java.util.concurrent.ExecutionException;
 import java.util.concurrent.ExecutorService;
 import java.util.concurrent.Executors;
 import java.util.concurrent.Future;
 import java.util.concurrent.atomic.AtomicLong;
-import java.util.stream.IntStream;
-import java.util.stream.Stream;
-import linkworthy.corpus.ManifestEntry;
-import linkworthy.input.Unavailable;
-import linkworthy.noise.SignalStatistics;
-import linkworthy.study.PictureChoice;
 
 /**
  * A few work units of a plan, run on this machine for their times and rows: of the smallest, the
@@ -33,7 +26,6 @@ import linkworthy.study.PictureChoice;
  * the size of the picture.
  */
 public final class Rehearsal {
-  private static final int CLEAN = -1;
   private static final int USUAL_PASSES = 4;
   private static final int MOST_PASSES = 5000;
 
@@ -45,25 +37,17 @@ public final class Rehearsal {
 
   private final Plan plan;
   private final int threads;
-  private final double[] variances;
-
-  /** Places in the plan, by size. */
-  private final List<Integer> pictures;
-
-  private final List<Integer> conditions;
-
-  /** For each condition the places of those that are run on both sides of it, the milder first. */
-  private final int[][] sides;
-
+  private final RehearsalUnits units;
   private final AtomicLong begun = new AtomicLong();
   private final Map<Integer, UnitRunner.Rows> rows = new ConcurrentHashMap<>();
   private final List<Run> runs = new ArrayList<>();
+
+  /** Seconds of each unit with compiled code. */
   private final double[] warm;
 
   /**
    * One run of a unit.
    *
-   * @param unit place of the picture times the number of conditions, and place of the condition
    * @param start by the clock of {@link System#nanoTime}
    */
   private record Run(int unit, long start, double seconds) {}
@@ -71,42 +55,8 @@ public final class Rehearsal {
   private Rehearsal(Plan plan, int threads) {
     this.plan = plan;
     this.threads = threads;
-    List<Integer> bySize =
-        IntStream.range(0, plan.pictures().size())
-            .boxed()
-            .sorted(Comparator.comparingDouble(this::samples))
-            .toList();
-    this.pictures =
-        Stream.of(0, (bySize.size() - 1) / 2, bySize.size() - 1)
-            .distinct()
-            .map(bySize::get)
-            .toList();
-    this.variances = variances();
-    List<List<Integer>> impairments = impairments();
-    this.conditions =
-        Stream.concat(
-                Stream.of(CLEAN),
-                impairments.stream().flatMap(severities -> three(severities).stream()))
-            .sorted()
-            .toList();
-    this.sides = new int[variances.length][];
-    impairments.forEach(this::findSides);
-    this.warm = new double[pictures.size() * conditions.size()];
-  }
-
-  private void findSides(List<Integer> severities) {
-    int milder = conditions.indexOf(severities.get(0));
-    for (int condition : severities) {
-      int own = conditions.indexOf(condition);
-      milder = own < 0 ? milder : own;
-      sides[condition] = new int[] {milder, own};
-    }
-    int harsher = 0;
-    for (int i = severities.size() - 1; i >= 0; i--) {
-      int[] of = sides[severities.get(i)];
-      harsher = of[1] < 0 ? harsher : of[1];
-      of[1] = harsher;
-    }
+    this.units = new RehearsalUnits(plan);
+    this.warm = new double[units.size()];
   }
 
   /**
@@ -122,45 +72,6 @@ public final class Rehearsal {
     return rehearsal;
   }
 
-  private double samples(int picture) {
-    ManifestEntry entry = plan.pictures().get(picture);
-    PictureChoice choice = plan.study().pictures();
-    double longest = Math.max(entry.width(), entry.height());
-    double scale = Math.min(1, choice.longestSide().orElse((int) longest) / longest);
-    return scale * scale * entry.width() * entry.height() * choice.codedSamples(entry);
-  }
-
-  /** Equivalent noise variance of each condition on the first of the pictures. */
-  private double[] variances() {
-    SignalStatistics signal =
-        Subject.signal(
-            plan.planes(plan.pictures().get(pictures.get(0))),
-            plan.study().pictures().signalPower());
-    return plan.conditions().stream()
-        .mapToDouble(condition -> condition.at(signal).equivalentNoiseVariance())
-        .toArray();
-  }
-
-  /** The conditions of each impairment, mildest first. */
-  private List<List<Integer>> impairments() {
-    Map<List<String>, List<Integer>> conditions = new LinkedHashMap<>();
-    for (int i = 0; i < variances.length; i++) {
-      var impairment = plan.conditions().get(i).impairment();
-      conditions
-          .computeIfAbsent(
-              List.of(impairment.label(), impairment.site().id()), k -> new ArrayList<>())
-          .add(i);
-    }
-    Collection<List<Integer>> all = conditions.values();
-    all.forEach(of -> of.sort(Comparator.comparingDouble(i -> variances[i])));
-    return List.copyOf(all);
-  }
-
-  private static List<Integer> three(List<Integer> severities) {
-    int last = severities.size() - 1;
-    return Stream.of(0, last / 2, last).distinct().map(severities::get).toList();
-  }
-
   private void run(double seconds) {
     Callable<List<Run>> task = () -> passes(seconds);
     ExecutorService executor = Executors.newFixedThreadPool(threads);
@@ -171,21 +82,10 @@ public final class Rehearsal {
         running.add(executor.submit(task));
       }
       for (Future<List<Run>> each : running) {
-        List<Run> of = each.get();
+        List<Run> of = Awaited.result(each);
         runs.addAll(of);
         late.addAll(of.size() < 2 * warm.length ? of : of.subList(of.size() / 2, of.size()));
       }
-    } catch (InterruptedException e) {
-      Thread.currentThread().interrupt();
-      throw new Unavailable("interrupted", e);
-    } catch (ExecutionException e) {
-      if (e.getCause() instanceof RuntimeException known) {
-        throw known;
-      }
-      if (e.getCause() instanceof Error serious) {
-        throw serious;
-      }
-      throw new IllegalStateException(e.getCause());
     } finally {
       executor.shutdownNow();
     }
@@ -217,9 +117,7 @@ public final class Rehearsal {
         return;
       }
       begun.incrementAndGet();
-      WorkUnit of =
-          plan.unit(
-              pictures.get(unit / conditions.size()), conditions.get(unit % conditions.size()));
+      WorkUnit of = units.get(unit);
       UnitRunner.Rows found = new UnitRunner(plan.study(), subjects.get(of), of).run();
       done.add(new Run(unit, now, (System.nanoTime() - now) / 1e9));
       rows.putIfAbsent(unit, found);
@@ -234,10 +132,10 @@ public final class Rehearsal {
       sums[run.unit] += run.seconds;
       numbers[run.unit]++;
     }
-    int n = conditions.size();
     for (int unit = 0; unit < warm.length; unit++) {
       int like = like(unit);
-      double sizes = samples(pictures.get(unit / n)) / samples(pictures.get(like / n));
+      double sizes =
+          units.samples(units.get(unit).picture()) / units.samples(units.get(like).picture());
       warm[unit] = sizes * sums[like] / numbers[like];
     }
   }
@@ -246,7 +144,7 @@ public final class Rehearsal {
   private int like(int unit) {
     int like = unit;
     while (!rows.containsKey(like)) {
-      like -= like < conditions.size() ? 1 : conditions.size();
+      like = units.before(like);
     }
     return like;
   }
@@ -268,12 +166,12 @@ public final class Rehearsal {
 
   /** Places in the plan of the pictures, ascending. */
   public List<Integer> pictures() {
-    return pictures.stream().sorted().toList();
+    return units.pictures().stream().sorted().toList();
   }
 
   /** Equivalent noise variance of a condition of the plan on one of the pictures. */
   public double equivalentNoiseVariance(int condition) {
-    return variances[condition];
+    return units.equivalentNoiseVariance(condition);
   }
 
   /**
@@ -292,10 +190,7 @@ public final class Rehearsal {
   }
 
   private UnitRunner.Rows rowsLike(int picture, int condition) {
-    int unit =
-        pictures.indexOf(picture) * conditions.size()
-            + (condition == CLEAN ? conditions.indexOf(CLEAN) : sides[condition][0]);
-    UnitRunner.Rows found = rows.get(like(unit));
+    UnitRunner.Rows found = rows.get(like(units.milder(picture, condition)));
     if (found == null) {
       throw new IllegalStateException("no unit was run");
     }
@@ -309,17 +204,19 @@ public final class Rehearsal {
    * @param perUnit seconds that another thread takes to write the rows of a unit
    */
   public double seconds(int replicates, double perUnit) {
-    double[] ofCondition = new double[pictures.size()];
-    for (int p = 0; p < ofCondition.length; p++) {
-      ofCondition[p] = ofPicture(p, replicates);
+    NavigableMap<Double, DoubleSummaryStatistics> bySize = new TreeMap<>();
+    for (int picture : units.pictures()) {
+      bySize
+          .computeIfAbsent(units.samples(picture), size -> new DoubleSummaryStatistics())
+          .accept(ofPicture(picture, replicates));
     }
     double work = 0;
     for (int picture = 0; picture < plan.pictures().size(); picture++) {
-      work += between(ofCondition, samples(picture));
+      work += between(bySize, units.samples(picture));
     }
-    double units = plan.pictures().size() * (1 + (double) variances.length * replicates);
-    work += warmingUp((long) units);
-    double writing = perUnit * units;
+    double all = plan.pictures().size() * (1 + (double) plan.conditions().size() * replicates);
+    work += warmingUp((long) all);
+    double writing = perUnit * all;
     int processors = Runtime.getRuntime().availableProcessors();
     return Math.max(
         writing, Math.max(work / threads, (work + writing) / Math.max(threads, processors)));
@@ -327,10 +224,10 @@ public final class Rehearsal {
 
   /** Seconds of all units of one of the pictures. */
   private double ofPicture(int picture, int replicates) {
-    int first = picture * conditions.size();
-    double sum = warm[first + conditions.indexOf(CLEAN)];
-    for (int[] of : sides) {
-      sum += replicates * (warm[first + of[0]] + warm[first + of[1]]) / 2;
+    double sum = warm[units.milder(picture, RehearsalUnits.CLEAN)];
+    for (int condition = 0; condition < plan.conditions().size(); condition++) {
+      double milder = warm[units.milder(picture, condition)];
+      sum += replicates * (milder + warm[units.harsher(picture, condition)]) / 2;
     }
     return sum;
   }
@@ -339,33 +236,25 @@ public final class Rehearsal {
    * Between two sizes on a straight line of logarithms; of pictures of the same size the mean;
    * outside in proportion.
    */
-  private double between(double[] seconds, double size) {
-    TreeMap<Double, List<Double>> bySize = new TreeMap<>();
-    for (int p = 0; p < seconds.length; p++) {
-      bySize.computeIfAbsent(samples(pictures.get(p)), s -> new ArrayList<>()).add(seconds[p]);
-    }
+  private static double between(NavigableMap<Double, DoubleSummaryStatistics> bySize, double size) {
     var below = bySize.floorEntry(size);
     var above = bySize.ceilingEntry(size);
     if (below == null || above == null || below.getKey().equals(above.getKey())) {
       var near = below == null ? above : below;
-      return near == null ? 0 : mean(near.getValue()) * size / near.getKey();
+      return near == null ? 0 : near.getValue().getAverage() * size / near.getKey();
     }
     double share =
         StrictMath.log(size / below.getKey()) / StrictMath.log(above.getKey() / below.getKey());
-    return StrictMath.pow(mean(below.getValue()), 1 - share)
-        * StrictMath.pow(mean(above.getValue()), share);
-  }
-
-  private static double mean(List<Double> values) {
-    return values.stream().mapToDouble(Double::doubleValue).average().orElse(0);
+    return StrictMath.pow(below.getValue().getAverage(), 1 - share)
+        * StrictMath.pow(above.getValue().getAverage(), share);
   }
 
   /** What the first so many runs took more than warm ones. */
-  private double warmingUp(long units) {
+  private double warmingUp(long all) {
     double excess =
         runs.stream()
             .sorted(Comparator.comparingLong(Run::start))
-            .limit(units)
+            .limit(all)
             .mapToDouble(run -> run.seconds - warm[run.unit])
             .sum();
     return Math.max(0, excess);

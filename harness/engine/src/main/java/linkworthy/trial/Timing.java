@@ -15,4 +15,16 @@ public record Timing(
     int replicate,
     String codec,
     double encodeMs,
-    double decodeMs) {}
+    double decodeMs) {
+  /** The times of a codec in a unit. */
+  public static Timing of(WorkUnit unit, String codec, double encodeMs, double decodeMs) {
+    return new Timing(
+        unit.entry().id(),
+        unit.impairment(),
+        unit.severity(),
+        unit.replicate(),
+        codec,
+        encodeMs,
+        decodeMs);
+  }
+}

@@ -68,4 +68,35 @@ public record Trial(
   public Trial {
     further = Collections.unmodifiableMap(new LinkedHashMap<>(further));
   }
+
+  /** A row like this one under the key of another unit, with another id, noise and PSNR. */
+  public Trial movedTo(WorkUnit unit, String id, double otherNoiseVariance, double otherPsnrDb) {
+    return new Trial(
+        id,
+        unit.entry().id(),
+        unit.impairment(),
+        unit.actsOn(),
+        unit.axis(),
+        unit.severity(),
+        otherNoiseVariance,
+        realisedNoiseVariance,
+        snrDb,
+        codec,
+        transform,
+        over,
+        keep,
+        step,
+        unit.replicate(),
+        mse,
+        otherPsnrDb,
+        ssim,
+        payloadBits,
+        sentBits,
+        bitsPerPixel,
+        packetsSent,
+        packetsLost,
+        outage,
+        failure,
+        further);
+  }
 }

@@ -184,14 +184,7 @@ final class UnitRunner {
         mishaps.add(new Mishap(choice.label(), unit.entry().id(), judged.failure()));
       }
       timings.add(
-          new Timing(
-              unit.entry().id(),
-              impairmentLabel(),
-              unit.condition() == null ? Double.NaN : unit.condition().severity().value(),
-              unit.replicate(),
-              choice.label(),
-              (encoded - start) / 1e6,
-              (decoded - encoded) / 1e6));
+          Timing.of(unit, choice.label(), (encoded - start) / 1e6, (decoded - encoded) / 1e6));
     }
     return new Rows(trials, timings, mishaps);
   }
@@ -255,12 +248,6 @@ final class UnitRunner {
       boolean outage,
       @Nullable Failure failure) {}
 
-  private String impairmentLabel() {
-    return unit.condition() == null
-        ? ImpairmentChoice.CLEAN
-        : unit.condition().impairment().label();
-  }
-
   private Trial trial(
       CodecChoice choice,
       double expectedVariance,
@@ -268,18 +255,17 @@ final class UnitRunner {
       Encoding encoding,
       Channel.Outcome outcome,
       Judged judged) {
-    WorkUnit.Condition condition = unit.condition();
     Codec.Description description = choice.codec().description();
     return new Trial(
         new TrialKey(study, unit, choice).id(),
         unit.entry().id(),
-        impairmentLabel(),
-        condition == null ? "" : condition.impairment().site().id(),
-        condition == null ? "" : condition.severity().axis(),
-        condition == null ? Double.NaN : condition.severity().value(),
+        unit.impairment(),
+        unit.actsOn(),
+        unit.axis(),
+        unit.severity(),
         expectedVariance,
         realisedVariance,
-        condition == null
+        unit.condition() == null
             ? Double.NaN
             : 10 * StrictMath.log10(subject.signal().power() / expectedVariance),
         choice.label(),

@@ -28,4 +28,24 @@ public record WorkUnit(
       return impairment.model().at(severity, impairment.site(), signal);
     }
   }
+
+  /** Name of the noise model, {@code none} for clean. */
+  public String impairment() {
+    return condition == null ? ImpairmentChoice.CLEAN : condition.impairment().label();
+  }
+
+  /** Id of the site of the noise, empty for clean. */
+  public String actsOn() {
+    return condition == null ? "" : condition.impairment().site().id();
+  }
+
+  /** Key the severity is given by, empty for clean. */
+  public String axis() {
+    return condition == null ? "" : condition.severity().axis();
+  }
+
+  /** Value on that axis; NaN for clean. */
+  public double severity() {
+    return condition == null ? Double.NaN : condition.severity().value();
+  }
 }

@@ -48,7 +48,9 @@ class ShortlistTest {
     Shortlist shortlist = shortlist("needs: [{measure: psnr-db, mean-at-least: 30}]");
     assertThat(verdicts(shortlist)).containsExactly("fair undecided", "good meets", "poor fails");
     assertThat(shortlist.cheapest().orElseThrow().codec()).isEqualTo("good");
-    assertThat(shortlist.nonDominated().stream().map(Shortlist.Candidate::codec))
+    assertThat(shortlist.candidates())
+        .filteredOn(candidate -> !candidate.dominated())
+        .extracting(Shortlist.Candidate::codec)
         .containsExactly("fair", "good");
     assertThat(shortlist.errorOfOne()).isCloseTo(0.05 / 3, within(1e-15));
     assertThat(shortlist.conditions()).hasSize(2);

@@ -20,6 +20,19 @@ import tools.jackson.dataformat.yaml.YAMLMapper;
  * Python.
  */
 class NodeProfileTest {
+  private static final String PROFILE =
+      """
+      id: n
+      sent-nj-per-bit: 1
+      received-nj-per-bit: 1
+      mac-nj: 5
+      sleep-mw: 0
+      ram-kib: 64
+      kbit-per-second: 250
+      battery-j: 9
+      source: a test
+      """;
+
   private static NodeProfile radio(double metres) {
     return new NodeProfile(
         "radio", 50 + 0.1 * metres * metres, 50, 5, 0, 64, 250, 20_000, "the model");
@@ -122,20 +135,7 @@ class NodeProfileTest {
    */
   @Test
   void anAcknowledgedPacketTakesItsPausesToo() {
-    String text =
-        """
-        id: n
-        sent-nj-per-bit: 1
-        received-nj-per-bit: 1
-        mac-nj: 5
-        sleep-mw: 0
-        ram-kib: 64
-        kbit-per-second: 250
-        gap-us: 640
-        turnaround-us: 192
-        battery-j: 9
-        source: a test
-        """;
+    String text = PROFILE + "gap-us: 640\nturnaround-us: 192\n";
     NodeProfile node = NodeProfile.parse(YamlNode.parse("node.yaml", text));
     assertThat(node.airTimeMs(8, 0, 0)).isCloseTo(0.032, within(1e-12));
     assertThat(node.airTimeMs(8 * 11, 0, 0)).isCloseTo(0.352, within(1e-12));
@@ -221,21 +221,10 @@ class NodeProfileTest {
         "mac-nj: 5 | mac-njj: 5 | did you mean 'mac-nj'"
       })
   void wrongProfilesAreRefused(String from, String to, String complaint) {
-    String text =
-        """
-        id: n
-        sent-nj-per-bit: 1
-        received-nj-per-bit: 1
-        mac-nj: 5
-        sleep-mw: 0
-        ram-kib: 64
-        kbit-per-second: 250
-        battery-j: 9
-        source: a test
-        """;
-    assertThat(NodeProfile.parse(YamlNode.parse("node.yaml", text)).ramKib()).isEqualTo(64);
-    assertThat(text).contains(from);
-    assertThatThrownBy(() -> NodeProfile.parse(YamlNode.parse("node.yaml", text.replace(from, to))))
+    assertThat(NodeProfile.parse(YamlNode.parse("node.yaml", PROFILE)).ramKib()).isEqualTo(64);
+    assertThat(PROFILE).contains(from);
+    assertThatThrownBy(
+            () -> NodeProfile.parse(YamlNode.parse("node.yaml", PROFILE.replace(from, to))))
         .isInstanceOf(BadInput.class)
         .hasMessageStartingWith("node.yaml, line ")
         .hasMessageContaining(complaint);

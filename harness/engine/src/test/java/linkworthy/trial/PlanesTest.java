@@ -156,6 +156,13 @@ class PlanesTest {
     assertThat(run(STUDY, 5)).isEqualTo(run(STUDY, 1));
   }
 
+  private static PlaneCoding.Decoded decoded(Subject subject, Codec codec, List<byte[]> payloads) {
+    return subject
+        .coding()
+        .decode(
+            (plane, shape, packets) -> codec.decode(shape, packets), subject.shapes(), payloads);
+  }
+
   @Test
   void planesAreToldApartByTheirFirstByte() {
     Plan plan = plan(STUDY);
@@ -168,34 +175,16 @@ class PlanesTest {
         .isEqualTo((subject.shapes().get(0).width() + 1) / 2);
 
     List<byte[]> blue = encoding.payloads().stream().filter(p -> p[0] == 1).toList();
-    PlaneCoding.Decoded decoded =
-        subject
-            .coding()
-            .decode(
-                (plane, shape, packets) -> codec.decode(shape, packets), subject.shapes(), blue);
+    PlaneCoding.Decoded decoded = decoded(subject, codec, blue);
     assertThat(decoded.completeness()).isEqualTo(Decoding.Completeness.PARTIAL);
     assertThat(decoded.luma().samples()).containsOnly(128);
     assertThat(decoded.planes().get(1).samples()).isNotEqualTo(decoded.luma().samples());
     assertThat(decoded.planes().stream().map(PictureShape::of).distinct()).hasSize(1);
 
     List<byte[]> strange = List.of(new byte[0], new byte[] {3, 1, 2}, new byte[] {-1});
-    assertThat(
-            subject
-                .coding()
-                .decode(
-                    (plane, shape, packets) -> codec.decode(shape, packets),
-                    subject.shapes(),
-                    strange)
-                .completeness())
+    assertThat(decoded(subject, codec, strange).completeness())
         .isEqualTo(Decoding.Completeness.NOTHING);
-    assertThat(
-            subject
-                .coding()
-                .decode(
-                    (plane, shape, packets) -> codec.decode(shape, packets),
-                    subject.shapes(),
-                    encoding.payloads())
-                .completeness())
+    assertThat(decoded(subject, codec, encoding.payloads()).completeness())
         .isEqualTo(Decoding.Completeness.COMPLETE);
   }
 

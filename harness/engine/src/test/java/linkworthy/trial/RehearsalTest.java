@@ -41,7 +41,7 @@ class RehearsalTest {
   }
 
   private List<Trial> inThePlan(int picture, int condition) {
-    return units.get(plan.unit(picture, condition).index());
+    return units.get(plan.unit(picture, condition, 0).index());
   }
 
   @Test
