@@ -343,11 +343,13 @@ public final class YamlNode {
    * @throws BadInput if the text is none of these words
    */
   public String oneOf(List<String> accepted) {
-    String text = text();
-    if (!accepted.contains(text)) {
-      throw refuse("is '" + shortened(text) + "'; " + Spelling.hint(text, accepted));
+    if (!(value instanceof Scalar scalar) || scalar.text.isBlank() || scalar.isNull) {
+      throw refuse("is " + found() + "; " + Spelling.hint("", accepted));
     }
-    return text;
+    if (!accepted.contains(scalar.text)) {
+      throw refuse("is '" + shortened(scalar.text) + "'; " + Spelling.hint(scalar.text, accepted));
+    }
+    return scalar.text;
   }
 
   /** An error at this place: what was found here and what is accepted instead. */

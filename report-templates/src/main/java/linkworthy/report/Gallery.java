@@ -83,6 +83,7 @@ public record Gallery(List<String> rule, String missing, List<Shown> noises) {
    * @param role why it was chosen, as in {@code best mean PSNR}
    * @param picture the crop as decoded
    * @param error the crop's error: mid-grey is none
+   * @param outage whether nothing could be decoded, so that grey stands in
    * @param trial id of the trial
    */
   public record Decoded(
@@ -93,5 +94,6 @@ public record Gallery(List<String> rule, String missing, List<Shown> noises) {
       double bitsPerPixel,
       double psnrDb,
       double ssim,
+      boolean outage,
       String trial) {}
 }

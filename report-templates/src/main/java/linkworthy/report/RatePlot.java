@@ -1,12 +1,16 @@
 package linkworthy.report;
 
 import java.util.ArrayList;
+import java.util.Collection;
 import java.util.Comparator;
+import java.util.LinkedHashMap;
 import java.util.List;
+import java.util.stream.Collectors;
 
 /**
- * Mean PSNR against sent bits per pixel in one condition: a line for each family, a marker for each
- * codec, a ring around those that no other codec dominates.
+ * Mean PSNR against sent bits per pixel in one condition: a marker for each codec, a line through
+ * those of a family whose labels differ in numbers alone, a ring around those that no other codec
+ * dominates.
  */
 record RatePlot(
     String id,
@@ -28,7 +32,7 @@ record RatePlot(
   static final int TOP = 28;
   static final int BOTTOM = 266;
 
-  /** A family: its line as path data, and its codecs. */
+  /** A family: its lines as path data, and its codecs. */
   record Curve(String css, String path, List<Marker> markers) {}
 
   /** A codec: its place in the study, its marker as path data, and whether it has a ring. */
@@ -117,27 +121,40 @@ record RatePlot(
         .toList();
   }
 
+  /** Codecs of a family whose labels differ in numbers alone, by their bits: one line each. */
+  private static Collection<List<Point>> lines(CodecFamily family, List<Point> points) {
+    return points.stream()
+        .filter(p -> p.family().index() == family.index())
+        .sorted(Comparator.comparingDouble(Point::bits))
+        .collect(
+            Collectors.groupingBy(
+                p -> p.member().label().replaceAll("[0-9.]+", "0"),
+                LinkedHashMap::new,
+                Collectors.toList()))
+        .values();
+  }
+
   private static List<Curve> curves(
       List<CodecFamily> families, List<Point> points, Axis x, Axis y) {
     List<Curve> curves = new ArrayList<>();
     for (CodecFamily family : families) {
       StringBuilder path = new StringBuilder();
       List<Marker> markers = new ArrayList<>();
-      points.stream()
-          .filter(p -> p.family().index() == family.index())
-          .sorted(Comparator.comparingDouble(Point::bits))
-          .forEach(
-              p -> {
-                String across = Numbers.coordinate(x.at(p.bits()));
-                String up = Numbers.coordinate(y.at(p.psnr()));
-                path.append(path.isEmpty() ? 'M' : 'L').append(across).append(' ').append(up);
-                markers.add(
-                    new Marker(
-                        p.at(),
-                        Shape.at(p.member().index(), x.at(p.bits()), y.at(p.psnr())),
-                        new LinePlot.Spot(across, up, p.id()),
-                        p.front()));
-              });
+      for (List<Point> line : lines(family, points)) {
+        char step = 'M';
+        for (Point p : line) {
+          String across = Numbers.coordinate(x.at(p.bits()));
+          String up = Numbers.coordinate(y.at(p.psnr()));
+          path.append(step).append(across).append(' ').append(up);
+          step = 'L';
+          markers.add(
+              new Marker(
+                  p.at(),
+                  Shape.at(p.member().index(), x.at(p.bits()), y.at(p.psnr())),
+                  new LinePlot.Spot(across, up, p.id()),
+                  p.front()));
+        }
+      }
       String css = "c" + family.index() % 6 + " d" + family.index() % Shape.KINDS;
       curves.add(new Curve(css, path.toString(), markers));
     }

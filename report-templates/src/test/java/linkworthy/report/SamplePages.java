@@ -278,7 +278,16 @@ final class SamplePages {
   }
 
   private static Gallery.Decoded decoded(String codec, Gallery.Image image) {
-    return new Gallery.Decoded(codec, "reference", image, image, 0.5, 28, 0.8, "0123456789abcdef");
+    return new Gallery.Decoded(
+        codec,
+        "reference",
+        image,
+        image,
+        0.5,
+        28,
+        0.8,
+        codec.startsWith("mean"),
+        "0123456789abcdef");
   }
 
   private static Gallery.Image image() {

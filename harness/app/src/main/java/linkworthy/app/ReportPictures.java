@@ -271,6 +271,7 @@ final class ReportPictures {
                   trial.bitsPerPixel(),
                   trial.psnrDb(),
                   trial.ssim(),
+                  trial.outage(),
                   trial.trial()));
     }
 

@@ -1,12 +1,14 @@
 package linkworthy.decision;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.LinkedHashMap;
 import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Map;
 import java.util.Optional;
 import java.util.Set;
+import java.util.regex.Pattern;
 import linkworthy.input.Require;
 import linkworthy.statistics.BcaInterval;
 import linkworthy.statistics.Cell;
@@ -15,9 +17,9 @@ import linkworthy.statistics.Cell;
  * Two families of codecs in one condition, in numbers: mean PSNR against mean sent bits per pixel
  * of the families' codecs.
  *
- * <p>A family is three or more codecs of one transform and arrangement that differ in the
- * components kept (or JPEG quality) at one step; or, of what is left, in the step at one number of
- * components. The first family of the study is the reference of all others.
+ * <p>A family is three or more codecs of one transform, arrangement and protection that differ in
+ * the components kept (or JPEG quality) at one step; or, of what is left, in the step at one number
+ * of components. The first family of the study is the reference of all others.
  *
  * @param condition where
  * @param reference name of the family that the other is compared with
@@ -39,6 +41,10 @@ public record CurveComparison(
     BcaInterval psnrInterval,
     BcaInterval rateInterval,
     String refusal) {
+  /** A setting that differs along a curve, as labels write it. */
+  private static final Pattern SWEPT =
+      Pattern.compile("(K|share|bpp|floor|step|q)?([0-9.]+|none)(bpp)?");
+
   public CurveComparison {
     Require.notBlank(reference, "reference");
     Require.notBlank(family, "family");
@@ -171,8 +177,19 @@ public record CurveComparison(
     families.computeIfAbsent(name, n -> new LinkedHashSet<>()).add(label);
   }
 
+  /**
+   * Transform, arrangement and the setting in common, then those words of the codec's own label
+   * that are no setting which a curve runs through, as its protection. A label that the study chose
+   * has no such words.
+   */
   private static String name(Cell cell, String last) {
-    return String.join(" ", cell.transform(), cell.over(), last).replaceAll(" +", " ").strip();
+    List<String> name = new ArrayList<>(List.of(cell.transform(), cell.over(), last));
+    if (cell.codec().startsWith(cell.transform() + " ")) {
+      Arrays.stream(cell.codec().split(" +"))
+          .filter(word -> !name.contains(word) && !SWEPT.matcher(word).matches())
+          .forEach(name::add);
+    }
+    return String.join(" ", name).replaceAll(" +", " ").strip();
   }
 
   private static String step(Cell cell) {

@@ -6,7 +6,9 @@ import java.time.Instant;
 import java.time.temporal.ChronoUnit;
 import java.util.LinkedHashSet;
 import java.util.List;
+import java.util.Objects;
 import java.util.Set;
+import java.util.stream.Collectors;
 import linkworthy.codec.Confinement;
 import linkworthy.codec.PluginFolder;
 import linkworthy.corpus.ManifestEntry;
@@ -328,15 +330,31 @@ public record RunRecord(
    */
   public static RunRecord parse(String source, String text) {
     try {
-      return JSON.readValue(text, RunRecord.class);
+      RunRecord record = JSON.readValue(text, RunRecord.class);
+      if (record == null) {
+        throw new BadInput(source + ", line 1: not the record of a run: it is null");
+      }
+      return record;
     } catch (JacksonException e) {
       int line = e.getLocation() == null ? 1 : Math.max(1, e.getLocation().getLineNr());
-      String problem =
-          e.getCause() instanceof IllegalArgumentException own
-              ? String.valueOf(own.getMessage())
-              : String.valueOf(e.getOriginalMessage()).split("[;\n(]", 2)[0].strip();
-      throw new BadInput(source + ", line " + line + ": not the record of a run: " + problem, e);
+      throw new BadInput(source + ", line " + line + ": not the record of a run: " + problem(e), e);
     }
+  }
+
+  private static String problem(JacksonException e) {
+    if (e.getCause() instanceof IllegalArgumentException own) {
+      return String.valueOf(own.getMessage());
+    }
+    String message = String.valueOf(e.getOriginalMessage());
+    if (message.startsWith("Cannot ")) {
+      String key =
+          e.getPath().stream()
+              .map(JacksonException.Reference::getPropertyName)
+              .filter(Objects::nonNull)
+              .collect(Collectors.joining("."));
+      return (key.isEmpty() ? "it" : key) + " is no value of the kind that 'assess' writes there";
+    }
+    return message.split("[;\n(]", 2)[0].strip();
   }
 
   /** The noise models of a study, in its order, each once. */

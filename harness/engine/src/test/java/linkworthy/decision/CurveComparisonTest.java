@@ -23,7 +23,19 @@ class CurveComparisonTest {
       double bits,
       double psnr,
       Standing standing) {
-    String label = transform + " rows K" + keep + " step" + step;
+    return cell(transform, step, keep, "", severity, bits, psnr, standing);
+  }
+
+  private static Cell cell(
+      String transform,
+      String step,
+      int keep,
+      String protection,
+      double severity,
+      double bits,
+      double psnr,
+      Standing standing) {
+    String label = (transform + " rows K" + keep + " step" + step + " " + protection).strip();
     return new Cell(
         "gaussian",
         "samples",
@@ -144,6 +156,21 @@ class CurveComparisonTest {
         .containsExactly("dct rows step8", "wht rows K8");
     assertThat(found.get(1).cubic()).isEmpty();
     assertThat(found.get(1).pchip()).isPresent();
+  }
+
+  /** Bits that protection adds are no point of the curve without it. */
+  @Test
+  void anotherProtectionIsAnotherFamily() {
+    List<Cell> cells = twoFamilies();
+    for (String protection : List.of("repeat2", "rs12-8")) {
+      for (int i = 0; i < 3; i++) {
+        int bits = 4 << i;
+        cells.add(cell("dct", "8.0", bits, protection, 20, bits, 27 + 2 * i, Standing.BELOW));
+      }
+    }
+    cells.add(cell("dct", "8.0", 4, "retry3", 20, 3, 30, Standing.BELOW));
+    assertThat(CurveComparison.of(cells, NOTHING, 7).stream().map(CurveComparison::family))
+        .containsExactly("dct rows step8", "dct rows step8 repeat2", "dct rows step8 rs12-8");
   }
 
   @Test

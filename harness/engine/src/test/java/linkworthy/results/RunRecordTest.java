@@ -16,6 +16,7 @@ import linkworthy.study.StudyWriter;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
+import org.junit.jupiter.params.provider.ValueSource;
 
 class RunRecordTest {
   private final Study study = Samples.study();
@@ -82,8 +83,8 @@ class RunRecordTest {
         "\"seed\" : 1 | \"seed\" : 1, \"sead\" : 1 | sead",
         "\"study\" : \"my-study\" | \"study\" : \"\" | study is empty",
         "\"study\" : \"my-study\" | \"study\" : null | line",
-        "\"seed\" : 1 | \"seed\" : null | null",
-        "\"seed\" : 1 | \"seed\" : [] | line",
+        "\"seed\" : 1 | \"seed\" : null | seed is no value of the kind",
+        "\"seed\" : 1 | \"seed\" : [] | seed is no value of the kind that 'assess' writes there",
         "\"trials_done\" : 0 | \"trials_done\" : 31 | 0 to 30",
         "\"complete\" : false | \"complete\" : true | complete is true",
         "{ | [ | line 1"
@@ -96,6 +97,15 @@ class RunRecordTest {
         .withMessageStartingWith("run.json, line ")
         .withMessageContaining(complaint)
         .satisfies(e -> assertThat(String.valueOf(e.getMessage()).lines()).hasSize(1));
+  }
+
+  @ParameterizedTest
+  @ValueSource(strings = {"null", "[]", "3", "\"text\""})
+  void whatIsNoObjectIsRefusedInOneLine(String json) {
+    assertThatExceptionOfType(BadInput.class)
+        .isThrownBy(() -> RunRecord.parse("run.json", json))
+        .withMessageStartingWith("run.json, line 1: not the record of a run: it is ")
+        .satisfies(e -> assertThat(e.getMessage()).doesNotContain("RunRecord"));
   }
 
   @Test
