@@ -32,8 +32,10 @@ public sealed interface Arrangement {
   /**
    * Puts variable i of all observations back into its place, rounded and clipped as {@link
    * PictureShape#toSample} does.
+   *
+   * @param raised room to work in, at least as long as the values, or these if they may be lost
    */
-  void scatter(double[] values, int variable, PictureShape shape, int[] samples);
+  void scatter(double[] values, int variable, PictureShape shape, double[] raised, int[] samples);
 
   /** Each picture row is a variable, each picture column an observation. */
   record Rows() implements Arrangement {
@@ -70,10 +72,11 @@ public sealed interface Arrangement {
     }
 
     @Override
-    public void scatter(double[] values, int variable, PictureShape shape, int[] samples) {
+    public void scatter(
+        double[] values, int variable, PictureShape shape, double[] raised, int[] samples) {
       int start = variable * shape.width();
-      double[] raised = shape.raised(values);
-      for (int x = 0; x < raised.length; x++) {
+      shape.raise(values, raised);
+      for (int x = 0; x < values.length; x++) {
         samples[start + x] = (int) raised[x];
       }
     }
@@ -155,10 +158,11 @@ public sealed interface Arrangement {
     }
 
     @Override
-    public void scatter(double[] values, int variable, PictureShape shape, int[] samples) {
+    public void scatter(
+        double[] values, int variable, PictureShape shape, double[] raised, int[] samples) {
       int across = across(shape);
       int left = variable % side;
-      double[] raised = shape.raised(values);
+      shape.raise(values, raised);
       for (int y = variable / side, block = 0; y < shape.height(); y += side, block += across) {
         int row = y * shape.width();
         for (int x = left, b = block; x < shape.width(); x += side, b++) {

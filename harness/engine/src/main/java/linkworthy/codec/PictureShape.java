@@ -21,14 +21,12 @@ public record PictureShape(int width, int height, int bitDepth) {
     return (int) raised(value, (1 << bitDepth) - 1);
   }
 
-  /** Values that become those of {@link #toSample} when their fraction is cut off. */
-  double[] raised(double[] values) {
+  /** Writes values that become those of {@link #toSample} when their fraction is cut off. */
+  void raise(double[] values, double[] raised) {
     double peak = (1 << bitDepth) - 1;
-    double[] raised = new double[values.length];
-    for (int i = 0; i < raised.length; i++) {
+    for (int i = 0; i < values.length; i++) {
       raised[i] = raised(values[i], peak);
     }
-    return raised;
   }
 
   private static double raised(double value, double peak) {

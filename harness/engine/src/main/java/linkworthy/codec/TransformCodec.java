@@ -343,7 +343,7 @@ final class TransformCodec implements Codec {
         }
         Matrices.addCombination(values, factors, rows);
       }
-      arrangement.scatter(values, i, shape, samples);
+      arrangement.scatter(values, i, shape, values, samples);
     }
     return new Picture(shape.width(), shape.height(), shape.bitDepth(), samples);
   }

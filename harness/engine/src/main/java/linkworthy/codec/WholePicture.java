@@ -47,8 +47,9 @@ final class WholePicture {
     }
     reached = kept;
     int[] samples = new int[shape.size()];
+    double[] raised = new double[analysis.observations()];
     for (int i = 0; i < sums.length; i++) {
-      arrangement.scatter(sums[i], i, shape, samples);
+      arrangement.scatter(sums[i], i, shape, raised, samples);
     }
     return new Picture(shape.width(), shape.height(), shape.bitDepth(), samples);
   }

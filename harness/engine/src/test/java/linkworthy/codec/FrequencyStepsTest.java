@@ -134,7 +134,7 @@ class FrequencyStepsTest {
         sum += (back[i][j] - values[i][j]) * (back[i][j] - values[i][j]);
         shifted[j] += 128;
       }
-      blocks.scatter(shifted, i, shape, samples);
+      blocks.scatter(shifted, i, shape, shifted, samples);
     }
     double sumOfSamples = 0;
     for (int i = 0; i < samples.length; i++) {
