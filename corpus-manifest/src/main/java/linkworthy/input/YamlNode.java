@@ -16,6 +16,7 @@ import java.util.List;
 import java.util.Map;
 import java.util.Optional;
 import java.util.Set;
+import org.jspecify.annotations.Nullable;
 import org.snakeyaml.engine.v2.api.LoadSettings;
 import org.snakeyaml.engine.v2.api.lowlevel.Parse;
 import org.snakeyaml.engine.v2.events.CollectionStartEvent;
@@ -274,10 +275,17 @@ public final class YamlNode {
    * @throws BadInput if this is no text (a number counts as text)
    */
   public String text() {
-    if (value instanceof Scalar scalar && !scalar.text.isBlank() && !scalar.isNull) {
-      return scalar.text;
+    String text = textOrNull();
+    if (text == null) {
+      throw bad("some text");
     }
-    throw bad("some text");
+    return text;
+  }
+
+  private @Nullable String textOrNull() {
+    return value instanceof Scalar scalar && !scalar.text.isBlank() && !scalar.isNull
+        ? scalar.text
+        : null;
   }
 
   /**
@@ -343,13 +351,14 @@ public final class YamlNode {
    * @throws BadInput if the text is none of these words
    */
   public String oneOf(List<String> accepted) {
-    if (!(value instanceof Scalar scalar) || scalar.text.isBlank() || scalar.isNull) {
+    String text = textOrNull();
+    if (text == null) {
       throw refuse("is " + found() + "; " + Spelling.hint("", accepted));
     }
-    if (!accepted.contains(scalar.text)) {
-      throw refuse("is '" + shortened(scalar.text) + "'; " + Spelling.hint(scalar.text, accepted));
+    if (!accepted.contains(text)) {
+      throw refuse("is '" + shortened(text) + "'; " + Spelling.hint(text, accepted));
     }
-    return scalar.text;
+    return text;
   }
 
   /** An error at this place: what was found here and what is accepted instead. */

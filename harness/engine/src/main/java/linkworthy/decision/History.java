@@ -24,11 +24,13 @@ public final class History {
   private final List<String> leftOut;
   private final Map<CellKey, double[]> means = new LinkedHashMap<>();
 
-  private History(List<ResultsFolder> runs, List<String> leftOut) {
-    this.runs = List.copyOf(runs);
+  private record Run(ResultsFolder folder, List<Cell> cells) {}
+
+  private History(List<Run> found, List<String> leftOut) {
+    this.runs = found.stream().map(Run::folder).toList();
     this.leftOut = List.copyOf(leftOut);
-    for (int i = 0; i < runs.size(); i++) {
-      for (Cell cell : runs.get(i).cells()) {
+    for (int i = 0; i < found.size(); i++) {
+      for (Cell cell : found.get(i).cells()) {
         means.computeIfAbsent(CellKey.of(cell), key -> unknown())[i] = cell.psnrMeanDb();
       }
     }
@@ -47,7 +49,7 @@ public final class History {
    * @throws linkworthy.input.Unavailable if a folder cannot be read
    */
   public static History over(Path folder) {
-    List<ResultsFolder> runs = new ArrayList<>();
+    List<Run> runs = new ArrayList<>();
     List<String> leftOut = new ArrayList<>();
     for (Path path : ResultsFolder.below(folder)) {
       if (!Files.exists(path.resolve(RunRecord.FILE))) {
@@ -56,9 +58,8 @@ public final class History {
       try {
         ResultsFolder found = ResultsFolder.open(path);
         if (found.run().complete()) {
-          long unusedRows = found.trials(trial -> {});
-          List<Cell> unusedCells = found.cells();
-          runs.add(found);
+          long unused = found.trials(trial -> {});
+          runs.add(new Run(found, found.cells()));
         } else {
           leftOut.add(path + " is not complete");
         }
@@ -73,7 +74,8 @@ public final class History {
               + leftOut.stream().findFirst().map(why -> " (" + why + ")").orElse("")
               + "; accepted: a folder with results folders in it");
     }
-    Set<String> studies = new TreeSet<>(runs.stream().map(run -> run.run().study()).toList());
+    Set<String> studies =
+        new TreeSet<>(runs.stream().map(run -> run.folder().run().study()).toList());
     if (studies.size() > 1) {
       throw new BadInput(
           folder
@@ -82,8 +84,8 @@ public final class History {
               + "); accepted: the runs of one");
     }
     runs.sort(
-        Comparator.comparing((ResultsFolder run) -> run.run().start())
-            .thenComparing(run -> run.path().toString()));
+        Comparator.comparing((Run run) -> run.folder().run().start())
+            .thenComparing(run -> run.folder().path().toString()));
     return new History(runs, leftOut);
   }
 
