@@ -11,6 +11,7 @@ import java.util.List;
 import java.util.Locale;
 import java.util.Map;
 import java.util.TimeZone;
+import java.util.function.Consumer;
 import java.util.function.UnaryOperator;
 import linkworthy.results.TrialsCsv;
 import linkworthy.statistics.RowSample;
@@ -54,6 +55,17 @@ class RecheckTest {
     Files.writeString(file, after);
   }
 
+  /** Changes the lines of trials.csv, the header's included. */
+  private static void changeRows(Path results, Consumer<List<String>> how) throws IOException {
+    change(
+        results.resolve("trials.csv"),
+        text -> {
+          List<String> lines = new ArrayList<>(text.lines().toList());
+          how.accept(lines);
+          return String.join("\n", lines) + "\n";
+        });
+  }
+
   private Outcome recheck(Path results, String... options) {
     List<String> arguments = new ArrayList<>(List.of("recheck", results.toString(), "--quiet"));
     arguments.addAll(List.of(options));
@@ -66,16 +78,14 @@ class RecheckTest {
   private static void alter(Path results, int first, int count) throws IOException {
     List<Trial> trials = new ArrayList<>();
     assertThat(TrialsCsv.read(results.resolve("trials.csv"), trials::add)).isEqualTo(ROWS);
-    change(
-        results.resolve("trials.csv"),
-        text -> {
-          List<String> lines = new ArrayList<>(text.lines().toList());
+    changeRows(
+        results,
+        lines -> {
           for (int row = first; row < first + count; row++) {
             long bits = trials.get(row).payloadBits();
             lines.set(
                 row + 1, lines.get(row + 1).replaceFirst("," + bits + ",", "," + (bits + 8) + ","));
           }
-          return String.join("\n", lines) + "\n";
         });
   }
 
@@ -235,17 +245,15 @@ class RecheckTest {
     assertThat(Program.run(folder, "assess", study + "", "--quiet", "--out", out + "").code())
         .isZero();
     long row = 613;
-    change(
-        out.resolve("trials.csv"),
-        text -> {
-          List<String> lines = new ArrayList<>(text.lines().toList());
+    changeRows(
+        out,
+        lines -> {
           assertThat(lines).hasSize(1001);
           List<String> fields = new ArrayList<>(List.of(lines.get((int) row + 1).split(",", -1)));
           // The last digit of the payload's bits.
           String bits = fields.get(18);
           fields.set(18, bits.substring(0, bits.length() - 1) + (bits.endsWith("1") ? 2 : 1));
           lines.set((int) row + 1, String.join(",", fields));
-          return String.join("\n", lines) + "\n";
         });
     Outcome all = recheck(out, "--all");
     assertThat(all.code()).isEqualTo(1);
@@ -304,13 +312,7 @@ class RecheckTest {
   @Test
   void aRowDoubledInTheMiddleIsNamedAndTheRowsBehindItAreNot() throws IOException {
     Path results = copy();
-    change(
-        results.resolve("trials.csv"),
-        text -> {
-          List<String> lines = new ArrayList<>(text.lines().toList());
-          lines.add(30, lines.get(29));
-          return String.join("\n", lines) + "\n";
-        });
+    changeRows(results, lines -> lines.add(30, lines.get(29)));
     Outcome outcome = recheck(results, "--all");
     assertThat(outcome.code()).isEqualTo(1);
     assertThat(outcome.out())
@@ -328,13 +330,7 @@ class RecheckTest {
   @Test
   void rowsOutOfPlaceAreFoundWithoutRepeatingAny() throws IOException {
     Path results = copy();
-    change(
-        results.resolve("trials.csv"),
-        text -> {
-          List<String> lines = new ArrayList<>(text.lines().toList());
-          lines.add(31, lines.remove(30));
-          return String.join("\n", lines) + "\n";
-        });
+    changeRows(results, lines -> lines.add(31, lines.remove(30)));
     Outcome outcome = recheck(results, "--sample", "1", "--seed", "1");
     assertThat(outcome.code()).isEqualTo(1);
     assertThat(outcome.out()).contains("MISMATCH      trials.csv, line 31: trial recorded");
